@@ -1,0 +1,123 @@
+import type * as z from 'zod';
+import type { Day } from '#shared/calendar/day.ts';
+import { monthOfDay } from '#shared/calendar/day.ts';
+import { monthParts, monthRange, type Month } from '#shared/calendar/month.ts';
+import { monthFromRecord, settleGap, summariseMonth, type ClimateValues, type MonthSummary } from '#shared/climate/month-climate.ts';
+import { fieldProblem } from '#shared/problems.ts';
+import type { gapChoiceInput } from '#shared/schemas/climate.ts';
+import type { MonthClimate } from '#shared/water-balance/engine-input.ts';
+import { recordChange } from '../../audit/record-change.ts';
+import type { Transaction } from '../../db/transaction.ts';
+import type { Context } from '../../http/route.ts';
+import { siteOf } from '../sites/site-service.ts';
+import * as repository from './climate-repository.ts';
+
+/** Climate of a site's month, with where each part comes from and what was chosen about its gaps. */
+export interface SiteMonthClimate extends MonthSummary {
+  rainStation: string | null;
+  temperatureStation: string | null;
+  choice: string | null;
+  /** The month as the balance takes it; null while a gap is open or the month is left out. */
+  settled: MonthClimate | null;
+}
+
+interface StationRecord {
+  id: string;
+  name: string;
+  days: Map<Day, ClimateValues>;
+  months: Map<Month, ClimateValues>;
+  monthsWithDays: Set<Month>;
+}
+
+const toNumber = (text: string | null) => (text === null ? null : Number(text));
+const valuesOf = (row: { precipitationMm: string | null; tMinC: string | null; tMaxC: string | null; tMeanC: string | null; petMm: string | null }): ClimateValues => ({
+  precipitationMm: toNumber(row.precipitationMm), tMinC: toNumber(row.tMinC), tMaxC: toNumber(row.tMaxC), tMeanC: toNumber(row.tMeanC), petMm: toNumber(row.petMm),
+});
+
+/** An accumulated reading is spread over its days and stays marked; its sum is kept. */
+function spreadAccumulated(days: Map<Day, ClimateValues>, siteDay: Day, count: number, values: ClimateValues): void {
+  const end = Date.parse(`${siteDay}T00:00Z`);
+  for (let back = 0; back < count; back += 1) {
+    const day = new Date(end - back * 86_400_000).toISOString().slice(0, 10);
+    days.set(day, { ...(days.get(day) ?? values), precipitationMm: (values.precipitationMm ?? 0) / count });
+  }
+}
+
+async function readStations(tx: Transaction, siteId: string): Promise<StationRecord[]> {
+  const stations = await repository.listStations(tx, siteId);
+  if (!stations.length) return [];
+  const ids = stations.map((station) => station.id);
+  const records = new Map(stations.map((station) => [station.id, { id: station.id, name: station.name, days: new Map(), months: new Map(), monthsWithDays: new Set<Month>() } as StationRecord]));
+  for (const row of await repository.listLiveDays(tx, ids)) {
+    const record = records.get(row.stationId)!;
+    if (row.kind === 'accumulated' && row.accumulatedDays) spreadAccumulated(record.days, row.siteDay, row.accumulatedDays, valuesOf(row));
+    else record.days.set(row.siteDay, valuesOf(row));
+    record.monthsWithDays.add(monthOfDay(row.siteDay));
+  }
+  for (const row of await repository.listLiveMonths(tx, ids)) records.get(row.stationId)!.months.set(row.month, valuesOf(row));
+  return [...records.values()];
+}
+
+function monthOfStation(station: StationRecord, month: Month): MonthSummary | null {
+  const monthly = station.months.get(month);
+  if (monthly) return monthFromRecord(month, monthly);
+  return station.monthsWithDays.has(month) ? summariseMonth(month, station.days) : null;
+}
+
+/** Rain from the first station that has any, temperature from the first that has any; both are named. */
+function joinStations(stations: StationRecord[], month: Month): Omit<SiteMonthClimate, 'choice' | 'settled'> | null {
+  const found = stations.map((station) => ({ station, summary: monthOfStation(station, month) })).filter((one) => one.summary !== null);
+  const rain = found.find(({ summary }) => summary!.rainDayCount > 0);
+  const warm = found.find(({ summary }) => summary!.temperatureDayCount > 0);
+  const pet = found.find(({ summary }) => summary!.petMm !== null);
+  const base = rain?.summary ?? warm?.summary;
+  if (!base) return null;
+  return {
+    ...base,
+    tMeanC: warm?.summary!.tMeanC ?? null, tMinC: warm?.summary!.tMinC ?? null, tMaxC: warm?.summary!.tMaxC ?? null, petMm: pet?.summary!.petMm ?? null,
+    temperatureDayCount: warm?.summary!.temperatureDayCount ?? 0,
+    isComplete: base.rainDayCount === base.dayCount && (warm?.summary!.temperatureDayCount ?? 0) === base.dayCount,
+    rainStation: rain?.station.name ?? null, temperatureStation: warm?.station.name ?? null,
+  };
+}
+
+function stationNormal(months: readonly MonthSummary[], month: Month): MonthClimate | null {
+  const same = months.filter((one) => one.isComplete && monthParts(one.month).monthOfYear === monthParts(month).monthOfYear);
+  if (!same.length) return null;
+  const mean = (pick: (row: MonthSummary) => number | null) => {
+    const values = same.map(pick).filter((value): value is number => value !== null);
+    return values.length ? values.reduce((sum, value) => sum + value, 0) / values.length : null;
+  };
+  return { month, precipitationMm: mean((row) => row.precipitationMm) ?? 0, tMeanC: mean((row) => row.tMeanC), tMinC: mean((row) => row.tMinC), tMaxC: mean((row) => row.tMaxC), petMm: mean((row) => row.petMm), dailyPrecipitationMm: null };
+}
+
+/** Every month of a site that has any climate, in order. */
+export async function listSiteClimate(tx: Transaction, siteId: string): Promise<SiteMonthClimate[]> {
+  const stations = await readStations(tx, siteId);
+  const named = stations.flatMap((station) => [...station.months.keys(), ...station.monthsWithDays]).sort();
+  if (!named.length) return [];
+  const choices = new Map((await repository.listGapChoices(tx, siteId)).map((row) => [row.month, row]));
+  const joined = monthRange(named[0]!, named.at(-1)!).map((month) => ({ month, summary: joinStations(stations, month) }));
+  const complete = joined.flatMap(({ summary }) => (summary ? [summary] : []));
+  return joined.map(({ month, summary }) => {
+    const empty = { ...summariseMonth(month, new Map()), rainStation: null, temperatureStation: null };
+    const row = summary ?? empty;
+    const choice = choices.get(month);
+    if (row.isComplete) return { ...row, choice: null, settled: row };
+    const other = stations.find((station) => station.id === choice?.otherStationId);
+    const settled = choice ? settleGap(row, choice.choice, stationNormal(complete, month), other ? monthOfStation(other, month) : null) : null;
+    return { ...row, choice: choice?.choice ?? null, settled };
+  });
+}
+
+/** Stores what an engineer chose for a month with missing days. */
+export async function chooseForGap(tx: Transaction, context: Context, input: z.output<typeof gapChoiceInput>) {
+  const siteId = siteOf(context);
+  const row = (await listSiteClimate(tx, siteId)).find((one) => one.month === input.month);
+  if (!row) throw fieldProblem('/month', `There is no climate record around ${input.month}.`);
+  if (row.isComplete) throw fieldProblem('/month', `${input.month} has no missing days.`);
+  if (input.choice === 'other-station' && !input.otherStationId) throw fieldProblem('/otherStationId', 'Choose the station to fill from.');
+  await repository.insertGapChoice(tx, { organisationId: context.organisationId, id: input.id, recordedById: context.personId, siteId, month: input.month, variable: 'precipitation', choice: input.choice, otherStationId: input.otherStationId ?? null, reason: input.reason });
+  await recordChange(tx, context, { action: 'choose', subjectType: 'climate-months', subjectId: input.id, sentence: `Missing climate of ${input.month}: ${input.choice.replaceAll('-', ' ')}.`, reason: input.reason, after: input });
+  return { id: input.id };
+}

@@ -1,0 +1,149 @@
+import { Decimal } from 'decimal.js';
+import { isDay, type Day } from '../calendar/day.ts';
+import { isMonth, monthOf, type Month } from '../calendar/month.ts';
+import { parseNumber } from '../ledger/parse-number.ts';
+import { cellText, columnLetter, type Sheet, type SheetCell } from '../sheets/sheet.ts';
+import { depthUnitsMm, fahrenheitToCelsius, type DepthUnit } from '../units/unit-factors.ts';
+
+export const climateFields = ['precipitationMm', 'tMinC', 'tMaxC', 'tMeanC', 'petMm'] as const;
+export type ClimateField = (typeof climateFields)[number];
+export const climateFieldNames: Record<ClimateField, string> = {
+  precipitationMm: 'precipitation', tMinC: 'minimum temperature', tMaxC: 'maximum temperature', tMeanC: 'mean temperature', petMm: 'potential evapotranspiration',
+};
+
+export type ClimateUnit = DepthUnit | 'C' | 'F';
+
+/** How a sheet is read: which column is what, in which unit. The person can change it before confirming. */
+export interface ClimateMapping {
+  sheetName: string;
+  headerRow: number;
+  kind: 'daily' | 'monthly';
+  dateColumn: number | null;
+  yearColumn: number | null;
+  monthColumn: number | null;
+  columns: { field: ClimateField; column: number; unit: ClimateUnit }[];
+}
+
+export interface ClimateRow {
+  rowNumber: number;
+  /** Day or month the row is for; '' when it could not be read. */
+  when: Day | Month;
+  values: Partial<Record<ClimateField, string>>;
+  state: 'ok' | 'warned' | 'held';
+  messages: string[];
+}
+
+const fieldPatterns: [ClimateField, RegExp][] = [
+  ['tMaxC', /^(t|temp).{0,3}max|max.{0,6}temp/i],
+  ['tMinC', /^(t|temp).{0,3}min|min.{0,6}temp/i],
+  ['tMeanC', /^(t|temp).{0,3}(mean|avg|med)|mean.{0,6}temp|^temp(erature)?\b|^tavg/i],
+  ['petMm', /^(pet|eto?)\b|evapotransp/i],
+  ['precipitationMm', /^(prcp|precip|rain|prec|ppt)/i],
+];
+
+function unitOf(header: string, field: ClimateField): ClimateUnit {
+  const isTemperature = field.startsWith('t');
+  if (isTemperature) return /[_ (°]f\)?$/i.test(header) ? 'F' : 'C';
+  if (/[_ (,]in(ch(es)?)?\)?$/i.test(header)) return 'in';
+  if (/[_ (,]cm\)?$/i.test(header)) return 'cm';
+  return 'mm';
+}
+
+/** Proposes how a climate sheet is read from its header words; null when no row looks like a header. */
+export function detectClimateMapping(sheet: Sheet): ClimateMapping | null {
+  for (const row of sheet.rows.slice(0, 30)) {
+    const headers = row.cells.map(cellText);
+    const columns = fieldPatterns.flatMap(([field, pattern]) => {
+      const column = headers.findIndex((header) => pattern.test(header));
+      return column < 0 ? [] : [{ field, column, unit: unitOf(headers[column]!, field) }];
+    });
+    const dateColumn = headers.findIndex((header) => /^(date|day|datum)$/i.test(header));
+    const yearColumn = headers.findIndex((header) => /^(year|yr)$/i.test(header));
+    const monthColumn = headers.findIndex((header) => /^(month|mo)$/i.test(header));
+    if (!columns.length || (dateColumn < 0 && (yearColumn < 0 || monthColumn < 0))) continue;
+    const orNull = (index: number) => (index < 0 ? null : index);
+    return { sheetName: sheet.name, headerRow: row.number, kind: dateColumn >= 0 ? 'daily' : 'monthly', dateColumn: orNull(dateColumn), yearColumn: orNull(yearColumn), monthColumn: orNull(monthColumn), columns };
+  }
+  return null;
+}
+
+function dayOfCell(cell: SheetCell | null | undefined): string {
+  if (cell?.kind === 'date') return cell.day;
+  const text = cellText(cell).slice(0, 10);
+  return isDay(text) ? text : '';
+}
+
+function whenOf(cells: (SheetCell | null)[], mapping: ClimateMapping): string {
+  if (mapping.kind === 'daily') return dayOfCell(cells[mapping.dateColumn ?? 0]);
+  const year = Number(cellText(cells[mapping.yearColumn ?? 0]));
+  const monthOfYear = Number(cellText(cells[mapping.monthColumn ?? 1]));
+  const month = Number.isInteger(year) && Number.isInteger(monthOfYear) ? monthOf(year, monthOfYear) : '';
+  return isMonth(month) ? month : '';
+}
+
+const missingMarks = new Set(['', '-', '--', 'NA', 'N/A', 'null', '-9999', '-99.9', 'M']);
+
+/** A value in millimetres or degrees Celsius as exact text. */
+function convert(value: string, unit: ClimateUnit): string {
+  if (unit === 'C') return new Decimal(value).toFixed();
+  if (unit === 'F') return fahrenheitToCelsius(value).toDecimalPlaces(3).toFixed();
+  return new Decimal(value).times(depthUnitsMm[unit]).toDecimalPlaces(3).toFixed();
+}
+
+const warmestC = 60;
+
+function checkRow(row: ClimateRow, kind: ClimateMapping['kind']): void {
+  const number = (field: ClimateField) => (row.values[field] === undefined ? null : Number(row.values[field]));
+  const [rain, tMin, tMax] = [number('precipitationMm'), number('tMinC'), number('tMaxC')];
+  const hold = (message: string) => {
+    row.state = 'held';
+    row.messages.push(message);
+  };
+  if (rain !== null && rain < 0) hold('Precipitation is below 0. Correct the cell or leave it empty.');
+  const rainMax = kind === 'daily' ? 500 : 3000;
+  if (rain !== null && rain > rainMax) hold(`${rain} mm of precipitation is not plausible for a ${kind === 'daily' ? 'day' : 'month'}. Check the unit: tenths of a millimetre?`);
+  if (tMin !== null && tMax !== null && tMin > tMax) hold(`The minimum temperature (${tMin} °C) is above the maximum (${tMax} °C).`);
+  for (const field of ['tMinC', 'tMaxC', 'tMeanC'] as const) {
+    const value = number(field);
+    if (value !== null && (value > warmestC || value < -90)) hold(`${value} °C is not a temperature on Earth. Check the unit: °F, or tenths?`);
+  }
+}
+
+/**
+ * Reads every row of a climate sheet by its mapping. A blank stays missing; nothing is filled or scaled.
+ * @returns rows in the order of the sheet, doubles of a day or month held
+ */
+export function readClimateSheet(sheet: Sheet, mapping: ClimateMapping): ClimateRow[] {
+  const seen = new Map<string, number>();
+  return sheet.rows
+    .filter((row) => row.number > mapping.headerRow)
+    .map(({ number, cells }) => {
+      const row: ClimateRow = { rowNumber: number, when: whenOf(cells, mapping), values: {}, state: 'ok', messages: [] };
+      if (!row.when) {
+        row.state = 'held';
+        row.messages.push(`No ${mapping.kind === 'daily' ? 'day' : 'year and month'} could be read in this row.`);
+      }
+      for (const { field, column, unit } of mapping.columns) {
+        const text = cellText(cells[column]);
+        if (missingMarks.has(text)) continue;
+        const parsed = parseNumber(text, { decimals: 3 });
+        if (parsed.kind === 'number') row.values[field] = convert(parsed.value, unit);
+        else {
+          row.state = 'held';
+          row.messages.push(`Column ${columnLetter(column)}, "${text}": ${parsed.kind === 'wrong' ? parsed.reason : parsed.question}`);
+        }
+      }
+      if (row.when && Object.keys(row.values).length === 0) {
+        row.state = 'warned';
+        row.messages.push('No value in this row: the day stays missing.');
+      }
+      checkRow(row, mapping.kind);
+      const before = seen.get(row.when);
+      if (row.when && before !== undefined) {
+        row.state = 'held';
+        row.messages.push(`${row.when} stands in row ${before} already.`);
+      }
+      seen.set(row.when, number);
+      return row;
+    });
+}

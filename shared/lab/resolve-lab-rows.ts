@@ -1,0 +1,215 @@
+import { Decimal } from 'decimal.js';
+import { daysBetween, type Day } from '../calendar/day.ts';
+import { basisFactor, readUnit } from './concentration-units.ts';
+import type { LabRow, RawLabRow } from './lab-row.ts';
+import { parseResultText, type ResultText } from './parse-result-text.ts';
+import { decideDateOrder, readSampledDate } from './read-sampled-date.ts';
+
+export interface LabCatalog {
+  points: { id: string; code: string; aliases: string[] }[];
+  analytes: { id: string; code: string; name: string; cas: string | null; basis: string | null; defaultFraction: string | null; standardUnit: string; aliases: string[] }[];
+  /** The laboratory's own letters, in capitals. */
+  qualifiers: ReadonlyMap<string, string>;
+  /** Remembered answers of the laboratory: kind and tidy text to value. */
+  mappings: ReadonlyMap<string, string>;
+  /** Live results of the site by `point analyte fraction day`. */
+  existing: ReadonlyMap<string, { id: string; comparator: string; value: string | null; unit: string }>;
+  receivedOn: Day;
+  answers: { dateOrder: 'day-first' | 'month-first' | null };
+}
+
+export const tidyName = (text: string): string => text.toLowerCase().normalize('NFKD').replace(/[^a-z0-9]+/g, '');
+const mappingKey = (kind: string, text: string) => `${kind} ${tidyName(text)}`;
+const daysBeforeReceiptMax = 180;
+
+/** Name, fraction and basis that a laboratory writes into one text: "Zinc, Total", "Ammonia (as N)". */
+export function splitAnalyteText(text: string): { name: string; fraction: string; basis: string | null; unit: string } {
+  const unit = /\s((?:m|u|µ|μ|n)?g\/l)$/i.exec(text)?.[1] ?? '';
+  const withoutUnit = unit ? text.slice(0, -unit.length) : text;
+  const basis = /\(?\bas ([A-Za-z0-9]+)\)?/.exec(withoutUnit)?.[1] ?? null;
+  const fraction = /\bdissolved\b|\bdiss\.?/i.test(withoutUnit) ? 'dissolved' : /\btotal recoverable\b/i.test(withoutUnit) ? 'total recoverable' : /\btotal\b/i.test(withoutUnit) ? 'total' : '';
+  const name = withoutUnit.replace(/\(?\bas [A-Za-z0-9]+\)?/, '').replace(/[,(]?\s*\b(total recoverable|total|dissolved|diss\.?)\b\)?/i, '').replace(/[,\s]+$/, '').trim();
+  return { name, fraction, basis, unit };
+}
+
+function emptyRow(raw: RawLabRow): LabRow {
+  return {
+    ...raw, state: 'ok', messages: [], question: null, samplePointId: null, analyteId: null, fraction: '', sampledOn: null, sampledTime: null, comparator: '=', value: null, unit: '', reportingLimit: null,
+    detectionLimit: null, qualifier: null, qualifierMeaning: null, missingReason: null, printedDecimals: null, supersedesId: null, supersedesWords: null,
+  };
+}
+
+function hold(row: LabRow, kind: NonNullable<LabRow['question']>['kind'], text: string): void {
+  row.state = 'held';
+  row.messages.push(text);
+  row.question ??= { kind, text };
+}
+
+function warn(row: LabRow, text: string): void {
+  if (row.state === 'ok') row.state = 'warned';
+  row.messages.push(text);
+}
+
+function resolvePoint(row: LabRow, catalog: LabCatalog): void {
+  const tidy = tidyName(row.pointText);
+  const mapped = catalog.mappings.get(mappingKey('sample-point', row.pointText));
+  const point = catalog.points.find((one) => one.id === mapped || tidyName(one.code) === tidy || one.aliases.some((alias) => tidyName(alias) === tidy));
+  if (!row.pointText) hold(row, 'sample-point', 'No sample point is given in this row.');
+  else if (!point) hold(row, 'sample-point', `Sample point "${row.pointText}" is not known here.`);
+  else row.samplePointId = point.id;
+}
+
+function resolveAnalyte(row: LabRow, catalog: LabCatalog): { basis: string | null; standardUnit: string; reportedBasis: string | null; unitInName: string } | null {
+  const split = splitAnalyteText(row.analyteText);
+  const tidy = tidyName(split.name);
+  const mapped = catalog.mappings.get(mappingKey('analyte', row.analyteText));
+  const cas = row.cas.replace(/^0+/, '');
+  const analyte = catalog.analytes.find(
+    (one) => one.id === mapped || tidyName(one.name) === tidy || tidyName(one.code) === tidy || one.aliases.some((alias) => tidyName(alias) === tidy) || (one.cas !== null && one.cas === cas),
+  );
+  if (!analyte) {
+    hold(row, 'analyte', `Parameter "${row.analyteText}" is not known here.`);
+    return null;
+  }
+  row.analyteId = analyte.id;
+  row.fraction = split.fraction || row.fractionText || analyte.defaultFraction || '';
+  return { basis: analyte.basis, standardUnit: analyte.standardUnit, reportedBasis: split.basis, unitInName: split.unit };
+}
+
+/** Converts a number text into the analyte's unit and basis, exact, without losing printed digits. */
+function convert(valueText: string, factors: readonly string[]): string {
+  const value = factors.reduce((product, factor) => product.times(factor), new Decimal(valueText));
+  return value.toSignificantDigits(12).toFixed();
+}
+
+const isPlainNumber = (text: string) => /^\d*\.?\d+$/.test(text.replace(/,/g, ''));
+const limitText = (text: string) => text.replace(/,/g, text.includes('.') || /,\d{3}$/.test(text) ? '' : '.');
+
+function applyText(row: LabRow, text: ResultText, factors: string[], limitFactors: string[]): void {
+  if (isPlainNumber(row.reportingLimitText)) row.reportingLimit = convert(limitText(row.reportingLimitText), limitFactors);
+  if (isPlainNumber(row.detectionLimitText)) row.detectionLimit = convert(limitText(row.detectionLimitText), limitFactors);
+  if (text.kind === 'missing') {
+    row.missingReason = text.reason;
+    warn(row, text.reason === 'pending' ? 'Still pending: a late result to be filled.' : `No result: ${text.reason}.`);
+  } else if (text.kind === 'question') hold(row, 'value', text.sentence);
+  else if (text.kind === 'below') {
+    const limit = text.limitText ? convert(text.limitText, factors) : (row.reportingLimit ?? row.detectionLimit);
+    if (limit === null) return hold(row, 'limit', `"${row.resultText}" gives no limit. ND alone is not zero and not a number.`);
+    row.comparator = '<';
+    row.value = limit;
+    row.qualifier = text.qualifier;
+    row.reportingLimit ??= limit;
+  } else {
+    row.comparator = text.comparator;
+    row.value = convert(text.valueText, factors);
+    row.qualifier = text.qualifier;
+    row.printedDecimals = text.valueText.split('.')[1]?.length ?? 0;
+    if (new Decimal(row.value).isZero() && row.unit === 'mg/L') warn(row, 'A true zero? Most laboratories cannot report zero.');
+  }
+}
+
+/** A comma that may group or divide is settled by the limit beside it or by the other cells of the column. */
+function settleComma(row: LabRow, text: ResultText, column: readonly string[]): ResultText {
+  if (text.kind !== 'value' || text.isGroupedOrDecimal === null) return text;
+  const limit = Number(row.reportingLimitText.replace(/,/g, ''));
+  const hasPoint = column.some((one) => /^\D*\d+\.\d+/.test(one));
+  if ((Number.isFinite(limit) && limit > 0 && Number(text.isGroupedOrDecimal) < limit) || hasPoint) {
+    warn(row, `"${row.resultText}" read as ${text.valueText}: ${hasPoint ? 'other values of the column use a point' : `as a decimal it would lie below the limit ${row.reportingLimitText}`}.`);
+    return text;
+  }
+  return { kind: 'question', sentence: `Is "${row.resultText}" ${text.valueText} or ${text.isGroupedOrDecimal}?` };
+}
+
+function resolveQualifier(row: LabRow, catalog: LabCatalog): void {
+  const letters = [...new Set([row.qualifier, row.qualifierText.toUpperCase() || null].filter((one): one is string => Boolean(one)))];
+  for (const letter of letters) {
+    const meaning = catalog.qualifiers.get(letter);
+    if (!meaning) return hold(row, 'qualifier', `The letter "${letter}" is not in this laboratory's table yet. Say what it means once.`);
+    row.qualifier = letter;
+    row.qualifierMeaning = meaning;
+    if (meaning === 'non-detect' && row.comparator === '=') row.comparator = '<';
+  }
+}
+
+function resolveDate(row: LabRow, catalog: LabCatalog, order: ReturnType<typeof decideDateOrder>): void {
+  const read = readSampledDate(row.sampledText, order);
+  if (read === null) return hold(row, 'date', row.sampledText ? `"${row.sampledText}" is not a date.` : 'No sampling date is given.');
+  if (read === 'ambiguous') return hold(row, 'date', `"${row.sampledText}" can be read two ways, and nothing else in the file decides. Say which part is the day.`);
+  row.sampledOn = read.day;
+  row.sampledTime = read.time;
+  if (read.day > catalog.receivedOn) hold(row, 'date', `Sampled on ${read.day}, after the file was received on ${catalog.receivedOn}.`);
+  else if (daysBetween(read.day, catalog.receivedOn) > daysBeforeReceiptMax) warn(row, `Sampled on ${read.day}, more than ${daysBeforeReceiptMax} days before the file came.`);
+}
+
+const qualityKinds = /^(ms|msd|mb|tb|fb|lcs|lcsd|blank|spike|method blank|trip blank|field blank|lab duplicate)$/i;
+
+const wordsOf = (comparator: string, value: string | null, unit: string) => (value === null ? 'no value' : `${comparator === '<' ? 'below ' : comparator === '>' ? 'above ' : ''}${new Decimal(value).toFixed()} ${unit}`);
+
+/** What the record already holds for this sample: the same (nothing to do), another value, or nothing. */
+function compareWithRecord(row: LabRow, catalog: LabCatalog): void {
+  const known = catalog.existing.get(`${row.samplePointId} ${row.analyteId} ${row.fraction} ${row.sampledOn}`);
+  if (!known) return;
+  const isSame = known.comparator === row.comparator && known.unit === row.unit && (known.value === null ? row.value === null : row.value !== null && new Decimal(known.value).eq(row.value));
+  if (isSame) {
+    row.state = 'skipped';
+    row.messages.push('Already here with the same value.');
+    return;
+  }
+  row.supersedesId = known.id;
+  row.supersedesWords = wordsOf(known.comparator, known.value, known.unit);
+  warn(row, `Changes what is recorded: was ${row.supersedesWords}.`);
+}
+
+/** A second row of the same sample and parameter in one file: identical is one, different holds both. */
+function settleDoubles(rows: readonly LabRow[]): void {
+  const seen = new Map<string, LabRow>();
+  for (const row of rows.filter((one) => one.state !== 'held' && one.state !== 'skipped')) {
+    const key = `${row.samplePointId} ${row.analyteId} ${row.fraction} ${row.sampledOn}`;
+    const first = seen.get(key);
+    if (!first) seen.set(key, row);
+    else if (first.value === row.value && first.comparator === row.comparator) {
+      row.state = 'skipped';
+      row.messages.push(`The same as row ${first.rowNumber}.`);
+    } else {
+      for (const one of [first, row]) hold(one, 'value', `Rows ${first.rowNumber} and ${row.rowNumber} give two values for one sample and parameter.`);
+    }
+  }
+}
+
+/**
+ * Looks every row up in the site's points, analytes, the laboratory's letters and its remembered answers.
+ * Nothing is guessed: what is not known holds its row, never the file.
+ */
+export function resolveLabRows(raws: readonly RawLabRow[], catalog: LabCatalog): LabRow[] {
+  const order = catalog.answers.dateOrder ?? decideDateOrder(raws.map((raw) => raw.sampledText));
+  const rows = raws.map((raw) => {
+    const row = emptyRow(raw);
+    if (qualityKinds.test(raw.kindText)) {
+      row.state = 'skipped';
+      row.messages.push('Quality control of the laboratory: kept, not a sample.');
+      return row;
+    }
+    resolvePoint(row, catalog);
+    resolveDate(row, catalog, order);
+    const analyte = resolveAnalyte(row, catalog);
+    const unitText = raw.unitText || analyte?.unitInName || catalog.mappings.get(mappingKey('unit', raw.analyteText)) || (analyte?.standardUnit === 'pH' ? 'pH' : '');
+    const unit = unitText ? readUnit(unitText) : null;
+    if (!unit) hold(row, 'unit', unitText ? `The unit "${unitText}" is not known.` : `${raw.analyteText}: ${raw.resultText}, and no unit. Which one?`);
+    if (analyte && unit) {
+      const basis = basisFactor(unit.basis ?? analyte.reportedBasis, analyte.basis);
+      if (basis === null || unit.standard !== analyte.standardUnit) hold(row, 'unit', `"${unitText}" cannot be turned into ${analyte.standardUnit}${analyte.basis ? ` as ${analyte.basis}` : ''}.`);
+      else {
+        row.unit = unit.standard;
+        if (basis !== '1') warn(row, `Reported as ${unit.basis ?? analyte.reportedBasis}, kept as ${analyte.basis}: × ${new Decimal(basis).toSignificantDigits(4).toFixed()}.`);
+        const limitUnit = raw.reportingLimitUnitText ? readUnit(raw.reportingLimitUnitText) : unit;
+        const column = raws.filter((one) => one.sheet === raw.sheet && one.cell.replace(/\d+/, '') === raw.cell.replace(/\d+/, '')).map((one) => one.resultText);
+        applyText(row, settleComma(row, parseResultText(raw.resultText), column), [unit.factor, basis], [limitUnit?.factor ?? unit.factor, basis]);
+      }
+    }
+    resolveQualifier(row, catalog);
+    if (row.state !== 'held') compareWithRecord(row, catalog);
+    return row;
+  });
+  settleDoubles(rows);
+  return rows;
+}

@@ -1,0 +1,140 @@
+import * as z from 'zod';
+import { isTimeZone } from '../calendar/site-days.ts';
+import { volumeUnits } from '../units/unit-factors.ts';
+import { coverKinds } from '../water-balance/cover-types.ts';
+import { dayText, monthText, optionalDay } from './days.ts';
+import { optionalNumber, typedNumber } from './numbers.ts';
+import { optionalText, recordId, requiredText } from './text.ts';
+
+const code = (what: string) => requiredText(what, 20).regex(/^[\p{L}\p{N}][\p{L}\p{N} ._-]*$/u, 'Use letters, digits, spaces, points and dashes.');
+const fractionOf = (what: string) => typedNumber({ what, unit: '', min: 0, max: 1, decimals: 6, aboveMax: 'Enter a share of one: 0.18, not 18.' });
+
+export const siteInput = z.object({
+  id: recordId,
+  name: requiredText('the name of the site', 80),
+  latitudeDeg: typedNumber({ what: 'the latitude', unit: '°', min: -66, max: 66, decimals: 6 }),
+  elevationM: typedNumber({ what: 'the height above the sea', unit: 'm', min: -430, max: 6000 }),
+  timeZone: requiredText('the time zone').refine(isTimeZone, 'Enter a time zone by its IANA name, like Europe/London or America/Chicago.'),
+  dayBoundary: z.string().regex(/^([01]\d|2[0-3]):[0-5]\d$/, 'Enter the time the site day begins, like 00:00 or 08:00.'),
+  openedOn: dayText('the day the site opened'),
+  displayUnits: z.enum(['metric', 'us']).default('metric'),
+});
+export type SiteInput = z.input<typeof siteInput>;
+
+export const siteSettingsInput = z.object({
+  name: requiredText('the name of the site', 80),
+  displayUnits: z.enum(['metric', 'us']),
+  reportDueDays: z.coerce.number('Enter the days as a whole number.').int().min(1, 'Enter at least 1 day.').max(366, 'Enter at most 366 days.'),
+  certificationText: optionalText(4000),
+});
+export type SiteSettingsInput = z.input<typeof siteSettingsInput>;
+
+export const plotInput = z.object({
+  id: recordId,
+  name: requiredText('the name of the plot', 60),
+  areaM2: typedNumber({ what: 'the area of the plot', unit: 'm²', minExclusive: 0, max: 2_000_000 }),
+  coverTypeId: recordId,
+});
+
+export const cellInput = z.object({
+  id: recordId,
+  code: code('the code of the cell'),
+  name: requiredText('the name of the cell', 60),
+  linedAreaM2: typedNumber({ what: 'the lined area', unit: 'm²', minExclusive: 0, max: 5_000_000 }),
+  openedOn: dayText('the day the cell opened'),
+  evidence: requiredText('where the area comes from: a survey or an as-built drawing'),
+  plots: z.array(plotInput).min(1, 'Enter at least one plot.'),
+  areaReason: optionalText(),
+});
+export type CellInput = z.input<typeof cellInput>;
+
+export const coverChangeInput = z.object({
+  plotId: recordId,
+  onDay: dayText('the day the ground was covered'),
+  coverTypeId: recordId,
+  areaM2: typedNumber({ what: 'the area that was covered', unit: 'm²', minExclusive: 0 }),
+  newPlotId: recordId,
+  restPlotId: recordId,
+  newPlotName: requiredText('a name for the covered part', 60),
+  evidence: requiredText('the evidence: a survey, a photo or a certificate'),
+  initialSoilStoreMm: optionalNumber({ what: 'the water in the placed soil', unit: 'mm', min: 0, max: 2000 }),
+});
+export type CoverChangeInput = z.input<typeof coverChangeInput>;
+
+export const coverTypeInput = z.object({
+  id: recordId,
+  kind: z.enum(coverKinds),
+  name: requiredText('the name of the cover', 60),
+  availableWaterMm: typedNumber({ what: 'the available water of the soil', unit: 'mm', min: 0, max: 1500 }),
+  membranePassFraction: z.preprocess((typed) => (typed === '' || typed === null ? undefined : typed), fractionOf('the share that passes the membrane').optional()),
+  runoffCoefficientWet: fractionOf('the runoff share in the wet season'),
+  runoffCoefficientDry: fractionOf('the runoff share in the dry season'),
+  runoffDestination: z.enum(['storm-water', 'leachate']),
+  petFactor: typedNumber({ what: 'the evapotranspiration factor', unit: '', min: 0, max: 1.5 }),
+  source: requiredText('the source of these values'),
+});
+export type CoverTypeInput = z.input<typeof coverTypeInput>;
+
+export const wasteInput = z.object({
+  id: recordId,
+  cellId: recordId,
+  month: monthText,
+  massT: typedNumber({ what: 'the waste placed', unit: 't', min: 0 }),
+  bulkDensityTPerM3: typedNumber({ what: 'the bulk density', unit: 't/m³', minExclusive: 0, max: 2.5, aboveMax: 'Waste in place is rarely above 1.5 t/m³.' }),
+  moistureFraction: fractionOf('the moisture by wet weight'),
+  fieldCapacityFraction: fractionOf('the field capacity by volume'),
+  source: requiredText('where the tonnes come from'),
+});
+
+export const sumpInput = z.object({
+  id: recordId,
+  placeId: recordId,
+  cellId: recordId,
+  code: code('the code of the sump'),
+  kind: z.enum(['primary', 'leak-detection']),
+  areaServedM2: typedNumber({ what: 'the area the sump drains', unit: 'm²', minExclusive: 0 }),
+  linerLowPointAboveFloorM: typedNumber({ what: 'the height of the liner’s low point above the sump floor', unit: 'm', min: 0, max: 10 }),
+  sensorAboveFloorM: typedNumber({ what: 'the height of the sensor above the sump floor', unit: 'm', min: 0, max: 10 }),
+  headLimitM: optionalNumber({ what: 'the head limit', unit: 'm', minExclusive: 0, max: 5 }),
+  actionRateLPerHaDay: optionalNumber({ what: 'the action rate', unit: 'L/ha·d', minExclusive: 0 }),
+});
+export type SumpInput = z.input<typeof sumpInput>;
+
+export const placeInput = z.object({
+  id: recordId,
+  kind: z.enum(['header', 'treatment', 'outfall', 'sewer', 'haulage', 'truck']),
+  name: requiredText('the name of the place', 60),
+});
+
+export const meterInput = z.object({
+  id: recordId,
+  code: code('the code of the meter'),
+  name: requiredText('the name of the meter', 60),
+  fromPlaceId: recordId,
+  toPlaceId: recordId,
+  sumpId: recordId.optional(),
+  digits: z.coerce.number('Enter how many digits the register shows.').int().min(3, 'A register shows at least 3 digits.').max(12, 'A register shows at most 12 digits.'),
+  decimals: z.coerce.number().int().min(0).max(4).default(0),
+  unit: z.enum(volumeUnits, { error: 'Choose the unit printed on the register.' }),
+  multiplier: typedNumber({ what: 'the multiplier', unit: '', minExclusive: 0, max: 100_000, decimals: 6 }),
+  rateM3PerDayMax: typedNumber({ what: 'the largest plausible day', unit: 'm³/d', minExclusive: 0 }),
+  installedOn: dayText('the day the meter was installed'),
+});
+export type MeterInput = z.input<typeof meterInput>;
+
+export const storeInput = z.object({
+  id: recordId,
+  placeId: recordId,
+  code: code('the code of the store'),
+  name: requiredText('the name of the store', 60),
+  isCovered: z.boolean(),
+  linedAreaM2: typedNumber({ what: 'the lined area draining in', unit: 'm²', min: 0 }),
+  crestLevelM: typedNumber({ what: 'the crest level', unit: 'm', minExclusive: 0, max: 50 }),
+  operatingLevelM: typedNumber({ what: 'the highest operating level', unit: 'm', minExclusive: 0, max: 50 }),
+  strapping: z
+    .array(z.object({ levelM: typedNumber({ what: 'a level', unit: 'm', min: 0 }), volumeM3: typedNumber({ what: 'a volume', unit: 'm³', min: 0 }), surfaceM2: typedNumber({ what: 'a surface', unit: 'm²', min: 0 }) }))
+    .min(2, 'Enter at least two rows of level, volume and surface.'),
+});
+export type StoreInput = z.input<typeof storeInput>;
+
+export const closeDateInput = z.object({ toOn: optionalDay('the last day') });

@@ -1,0 +1,64 @@
+/** Every term of one plot and step, mm over the plot (method section 1). */
+export interface StepTerms {
+  precipitationMm: number;
+  rainMm: number;
+  snowfallMm: number;
+  meltMm: number;
+  dSnowMm: number;
+  petMm: number;
+  surfaceReturnMm: number;
+  soilWaterBroughtMm: number;
+  runoffToStormMm: number;
+  runoffToLeachateMm: number;
+  infiltrationMm: number;
+  aetMm: number;
+  dSoilMm: number;
+  soilStoreMm: number;
+  percolationMm: number;
+  passedMm: number;
+  coverDrainMm: number;
+  returnToWasteMm: number;
+  freeMoistureMm: number;
+  absorbedMm: number;
+  dWasteMm: number;
+  wasteStoreMm: number;
+  wasteDeficitMm: number;
+  drainedMm: number;
+  collectedMm: number;
+  leakedMm: number;
+  /** Collected + runoff to leachate: what is expected at the sump. */
+  leachateMm: number;
+}
+
+export type TermName = keyof StepTerms;
+
+/** What a term is called, where it comes from and which way it counts; feeds tables, workings and the workbook. */
+export const termRegister: Record<TermName, { name: string; words: string; source: string }> = {
+  precipitationMm: { name: 'Precipitation', words: 'rain + snowfall', source: 'climate record' },
+  rainMm: { name: 'Rain', words: 'precipitation × share falling as rain', source: 'McCabe & Markstrom 2007' },
+  snowfallMm: { name: 'Snowfall', words: 'precipitation × share falling as snow', source: 'McCabe & Markstrom 2007' },
+  meltMm: { name: 'Snow melt', words: 'pack × largest melt share × warmth', source: 'McCabe & Markstrom 2007' },
+  dSnowMm: { name: 'Into snow', words: 'pack after − pack before', source: 'method 2' },
+  petMm: { name: 'Potential ET', words: 'PET of the month × cover factor × share of days', source: 'method 3' },
+  surfaceReturnMm: { name: 'Returned at the surface', words: 'volume ÷ area of the plots named', source: 'ledger' },
+  soilWaterBroughtMm: { name: 'Water brought with soil', words: 'store of the new soil − store of the old', source: 'method 1' },
+  runoffToStormMm: { name: 'Runoff to storm water', words: 'runoff share × (rain + melt)', source: 'Fenn et al. 1975, Table 3' },
+  runoffToLeachateMm: { name: 'Runoff to leachate', words: 'runoff share × (rain + melt), contact water', source: 'method 4' },
+  infiltrationMm: { name: 'Into the soil', words: 'rain + melt + returned − runoff', source: 'method 4' },
+  aetMm: { name: 'Evapotranspiration', words: 'PET while the soil gains; what enters + what the soil gives while it dries', source: 'Thornthwaite & Mather 1957' },
+  dSoilMm: { name: 'Into soil', words: 'soil store after − before', source: 'method 5' },
+  soilStoreMm: { name: 'Soil store at the end', words: 'min(capacity, before + surplus), or before × exp(shortfall ÷ capacity)', source: 'Thornthwaite & Mather 1957' },
+  percolationMm: { name: 'Percolation', words: 'max(0, before + surplus − capacity)', source: 'Thornthwaite & Mather 1957' },
+  passedMm: { name: 'Through the membrane', words: 'percolation × entered share (all of it without a membrane)', source: 'method 6' },
+  coverDrainMm: { name: 'Cover drain', words: 'percolation × (1 − entered share)', source: 'method 6' },
+  returnToWasteMm: { name: 'Returned into waste', words: 'volume ÷ area of the plots named', source: 'ledger' },
+  freeMoistureMm: { name: 'Free moisture of placed waste', words: 'placed waste wetter than field capacity', source: 'method 7' },
+  absorbedMm: { name: 'Absorbed by waste', words: 'min(deficit, inflow × (1 − channelled share))', source: 'method 7' },
+  dWasteMm: { name: 'Into waste', words: 'waste store after − before', source: 'method 7' },
+  wasteStoreMm: { name: 'Waste store at the end', words: 'before × exp(−c·t) + inflow × φ', source: 'method 7' },
+  wasteDeficitMm: { name: 'Deficit to field capacity', words: 'before + placed − absorbed', source: 'method 7' },
+  drainedMm: { name: 'Drained', words: 'inflow × (1 − φ) + before × (1 − exp(−c·t))', source: 'method 7' },
+  collectedMm: { name: 'Collected', words: 'drained × (1 − leak share)', source: 'method 8' },
+  leakedMm: { name: 'Leaked', words: 'drained × leak share', source: 'method 8' },
+  leachateMm: { name: 'Leachate at the sump', words: 'collected + runoff to leachate', source: 'method 1' },
+};
