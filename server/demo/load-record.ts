@@ -1,6 +1,6 @@
 import { Decimal } from 'decimal.js';
 import { addDays, dayNumber, weekday, type Day } from '#shared/calendar/day.ts';
-import { addMonths } from '#shared/calendar/month.ts';
+import { addMonths, monthRange } from '#shared/calendar/month.ts';
 import { computeDayVolumes } from '#shared/ledger/day-volumes.ts';
 import { computeIntervals } from '#shared/ledger/intervals.ts';
 import { runWaterBalance } from '#shared/water-balance/run-water-balance.ts';
@@ -60,10 +60,11 @@ async function trueLeachate(tx: Transaction, ids: DemoIds, plan: DemoPlan, rando
       if (cellId === cell.id) result.set(`${cell.code} ${month}`, sum.volumesM3.leachateMm * Math.exp(random.normal(0, 0.04)));
     }
   }
-  // The running month has no complete climate yet: it goes on as the month before.
+  // Months whose climate is not complete yet go on as the month before.
   for (const cell of record.cells) {
-    const known = result.get(`${cell.code} ${plan.anchor}`) ?? result.get(`${cell.code} ${addMonths(plan.anchor, -1)}`) ?? 0;
-    result.set(`${cell.code} ${plan.anchor}`, known);
+    for (const month of monthRange(addMonths(plan.anchor, -1), plan.anchor)) {
+      if (!result.has(`${cell.code} ${month}`)) result.set(`${cell.code} ${month}`, result.get(`${cell.code} ${addMonths(month, -1)}`) ?? 0);
+    }
   }
   return result;
 }

@@ -6,6 +6,7 @@ import { explainStep } from '#shared/water-balance/explain-step.ts';
 import { stepCover } from '#shared/water-balance/run-water-balance.ts';
 import { headLine, sumSteps } from '#shared/water-balance/sum-steps.ts';
 import { termRegister, type StepTerms, type TermName } from '#shared/water-balance/terms.ts';
+import type { BalanceView, WorkingView } from '#shared/views/balance-view.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
 import { measuredByCell } from '../compare/measured-service.ts';
@@ -29,7 +30,7 @@ function closureOf(steps: readonly ReturnType<typeof asStep>[]) {
 }
 
 /** The balance of a month: site, cells and plots, of the working run or a frozen one. */
-export async function readBalance(tx: Transaction, context: Context, deps: Dependencies, month: Month, runId: string | undefined) {
+export async function readBalance(tx: Transaction, context: Context, deps: Dependencies, month: Month, runId: string | undefined): Promise<BalanceView> {
   const siteId = siteOf(context);
   const record = await readSite(tx, siteId);
   const working = await workingRun(tx, context, deps, record);
@@ -62,7 +63,7 @@ export async function readBalance(tx: Transaction, context: Context, deps: Depen
 }
 
 /** The working of one number: a term of one plot and step. */
-export async function readWorking(tx: Transaction, context: Context, deps: Dependencies, stepId: string, term: string) {
+export async function readWorking(tx: Transaction, context: Context, deps: Dependencies, stepId: string, term: string): Promise<WorkingView> {
   if (!(term in termRegister)) throw new Problem('not-found', 'There is no such term.');
   const siteId = siteOf(context);
   const record = await readSite(tx, siteId);

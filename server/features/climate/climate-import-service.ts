@@ -4,6 +4,7 @@ import { detectClimateMapping, readClimateSheet, type ClimateMapping, type Clima
 import { Problem } from '#shared/problems.ts';
 import type { climateMappingInput, climateUploadInput } from '#shared/schemas/climate.ts';
 import { cellText, type SheetFile } from '#shared/sheets/sheet.ts';
+import type { ClimateImportView } from '#shared/views/lab-view.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import { sha256Of } from '../../files/file-store.ts';
@@ -115,7 +116,7 @@ export async function undoClimate(tx: Transaction, context: Context, deps: Depen
 }
 
 /** A staged or written upload as the page shows it. */
-export async function readClimateImport(tx: Transaction, context: Context, importId: string) {
+export async function readClimateImport(tx: Transaction, context: Context, importId: string): Promise<ClimateImportView> {
   const row = await openImport(tx, siteOf(context), importId);
   const rows = (await importRepository.listRows(tx, importId)).map((one) => one.payload as ClimateRow);
   const { mapping, headers, notes } = row.reading as Reading;

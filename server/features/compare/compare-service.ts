@@ -11,6 +11,7 @@ import { coverKindNames, type CoverKind } from '#shared/water-balance/cover-type
 import type { BalanceParameters } from '#shared/water-balance/engine-input.ts';
 import type { StepResult } from '#shared/water-balance/run-water-balance.ts';
 import { sumSteps } from '#shared/water-balance/sum-steps.ts';
+import type { CompareView } from '#shared/views/balance-view.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import { compareNotes } from '../../db/schema/balance.ts';
 import type { Transaction } from '../../db/transaction.ts';
@@ -83,7 +84,7 @@ function findingsOf(rows: ReturnType<typeof compareMonths>, cellCode: string): F
 }
 
 /** Predicted against measured for one cell, the months up to the chosen one. */
-export async function readCompare(tx: Transaction, context: Context, deps: Dependencies, cellCode: string, last: Month, monthCount: number) {
+export async function readCompare(tx: Transaction, context: Context, deps: Dependencies, cellCode: string, last: Month, monthCount: number): Promise<CompareView> {
   const siteId = siteOf(context);
   const record = await readSite(tx, siteId);
   const cell = record.cells.find((one) => one.code === cellCode) ?? record.cells[0];

@@ -6,6 +6,7 @@ import { resolveLabRows, tidyName, type LabCatalog } from '#shared/lab/resolve-l
 import { Problem, fieldProblem } from '#shared/problems.ts';
 import type { labAnswerInput, labUploadInput } from '#shared/schemas/lab.ts';
 import { cellText, type SheetFile } from '#shared/sheets/sheet.ts';
+import type { LabImportView } from '#shared/views/lab-view.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import { sha256Of } from '../../files/file-store.ts';
@@ -161,7 +162,7 @@ export async function undoResults(tx: Transaction, context: Context, deps: Depen
 }
 
 /** An upload as the check page shows it, in its three bands. */
-export async function readLabImport(tx: Transaction, context: Context, importId: string) {
+export async function readLabImport(tx: Transaction, context: Context, importId: string): Promise<LabImportView> {
   const siteId = siteOf(context);
   const row = await openImport(tx, context, importId);
   const rows = (await importRepository.listRows(tx, importId)).map((one) => one.payload as LabRow);
@@ -174,4 +175,3 @@ export async function readLabImport(tx: Transaction, context: Context, importId:
     points: points.map((one) => ({ id: one.id, code: one.code, name: one.name })), analytes: analyteRows.map((one) => ({ id: one.id, name: one.name, basis: one.basis })),
   };
 }
-export type LabImportView = Awaited<ReturnType<typeof readLabImport>>;

@@ -3,6 +3,7 @@ import { addMonths, type Month } from '#shared/calendar/month.ts';
 import type * as z from 'zod';
 import { analyteTemplates } from '#shared/lab/analyte-templates.ts';
 import type { laboratoryInput, samplePointInput } from '#shared/schemas/lab.ts';
+import type { LabView } from '#shared/views/lab-view.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
@@ -12,7 +13,7 @@ import { siteOf } from '../sites/site-service.ts';
 import * as repository from './lab-repository.ts';
 
 /** Uploads, results of the last twelve months, and what the plan still waits for. */
-export async function readLab(tx: Transaction, context: Context, month: Month) {
+export async function readLab(tx: Transaction, context: Context, month: Month): Promise<LabView> {
   const siteId = siteOf(context);
   const names = await listNames(tx);
   const points = await repository.listSamplePoints(tx, siteId);

@@ -1,5 +1,6 @@
 import { eq, inArray } from 'drizzle-orm';
 import { Problem } from '#shared/problems.ts';
+import type { EntrySourceView } from '#shared/views/month-view.ts';
 import { meterEvents } from '../../db/schema/metering.ts';
 import { adjustments, entries, loadsOut, readings } from '../../db/schema/ledger.ts';
 import type { Transaction } from '../../db/transaction.ts';
@@ -9,7 +10,7 @@ import { readSite, siteDaysOf, siteOf } from '../sites/site-service.ts';
 import { recomputeDays } from './posting-service.ts';
 
 /** Where the number of an entry comes from: the readings, events, layers or ticket behind it, and the intervals of its day. */
-export async function readEntrySource(tx: Transaction, context: Context, entryId: string) {
+export async function readEntrySource(tx: Transaction, context: Context, entryId: string): Promise<EntrySourceView> {
   const record = await readSite(tx, siteOf(context));
   const [entry] = await tx.select().from(entries).where(eq(entries.id, entryId));
   if (!entry || entry.siteId !== record.site.id) throw new Problem('not-found', 'There is no such entry at this site.');

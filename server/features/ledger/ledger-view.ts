@@ -1,8 +1,9 @@
 import { firstDay, lastDay } from '#shared/calendar/day.ts';
 import type { SiteDays } from '#shared/calendar/site-days.ts';
 import { addMonths, type Month } from '#shared/calendar/month.ts';
-import { balanceStore, type Flow, type StoreBalance } from '#shared/ledger/balance-store.ts';
+import { balanceStore, type Flow } from '#shared/ledger/balance-store.ts';
 import { storeAtLevel } from '#shared/ledger/store-volume.ts';
+import type { LedgerView } from '#shared/views/month-view.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context } from '../../http/route.ts';
 import { referencePetOfMonth } from '../balance/month-pet.ts';
@@ -52,20 +53,7 @@ function flowsOf(record: SiteRecord, entries: readonly Entry[], side: 'fromPlace
   return [...sums.values()];
 }
 
-export interface StoreView {
-  id: string;
-  placeId: string;
-  code: string;
-  name: string;
-  openingLevelM: number | null;
-  closingLevelM: number | null;
-  balance: StoreBalance | null;
-  /** Why there is no balance. */
-  missing: string | null;
-  weather: string;
-}
-
-async function storeView(tx: Transaction, record: SiteRecord, store: Store, days: SiteDays, month: Month, entries: readonly Entry[], climate: { rainMm: number | null; petMm: number | null }): Promise<StoreView> {
+async function storeView(tx: Transaction, record: SiteRecord, store: Store, days: SiteDays, month: Month, entries: readonly Entry[], climate: { rainMm: number | null; petMm: number | null }): Promise<LedgerView['stores'][number]> {
   const opening = await storeStateAt(tx, record, store, days.startMs(firstDay(month)));
   const closing = await storeStateAt(tx, record, store, days.startMs(firstDay(addMonths(month, 1))));
   const name = record.places.find((place) => place.id === store.placeId)?.name ?? store.code;
@@ -83,7 +71,7 @@ async function storeView(tx: Transaction, record: SiteRecord, store: Store, days
 }
 
 /** The month's water from place to place, its stores from opening to closing, and every entry behind it. */
-export async function readLedger(tx: Transaction, context: Context, month: Month) {
+export async function readLedger(tx: Transaction, context: Context, month: Month): Promise<LedgerView> {
   const siteId = siteOf(context);
   const record = await readSite(tx, siteId);
   const days = await siteDaysOf(tx, siteId);
@@ -109,7 +97,7 @@ export async function readLedger(tx: Transaction, context: Context, month: Month
     month, flows: [...flows.values()].filter((flow) => Math.abs(flow.volumeM3) > 1e-9).sort((a, b) => b.volumeM3 - a.volumeM3), stores,
     entries: [...entries].reverse().map((entry) => ({
       id: entry.id, siteDay: entry.siteDay, from: placeName(entry.fromPlaceId), to: placeName(entry.toPlaceId), volumeM3: entry.volumeM3, basis: entry.basis, reason: entry.reason,
-      meterCode: record.meters.find((meter) => meter.id === entry.meterId)?.code ?? null, by: names.get(entry.recordedById) ?? '', recordedAt: entry.recordedAt, reversesId: entry.reversesId, factIds: entry.factIds as string[],
+      meterCode: record.meters.find((meter) => meter.id === entry.meterId)?.code ?? null, by: names.get(entry.recordedById) ?? '', recordedAt: entry.recordedAt, reversesId: entry.reversesId,
     })),
     loads: { count: loads.length, nominalM3: sum((load) => load.nominalVolumeM3), receivedM3: sum((load) => load.receivedVolumeM3), receivedCount: loads.filter((load) => load.receivedVolumeM3 !== null).length,
       rows: loads.map((load) => ({ id: load.id, siteDay: load.siteDay, ticket: load.ticket, hauler: load.hauler, nominalVolumeM3: load.nominalVolumeM3, receivedVolumeM3: load.receivedVolumeM3, officialVolume: load.officialVolume })) },

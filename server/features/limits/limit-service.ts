@@ -2,6 +2,7 @@ import type * as z from 'zod';
 import { quarterMonths, quarterOf, type Month } from '#shared/calendar/month.ts';
 import { Problem, fieldProblem, type FieldProblem } from '#shared/problems.ts';
 import type { limitInput, permitInput } from '#shared/schemas/lab.ts';
+import type { LimitChoicesView, LimitsView } from '#shared/views/lab-view.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
@@ -49,7 +50,7 @@ export async function confirmLimit(tx: Transaction, context: Context, deps: Depe
 }
 
 /** Limits of the quarter that holds the month: every verdict with its working, exceedances with their clocks. */
-export async function readLimits(tx: Transaction, context: Context, deps: Dependencies, month: Month) {
+export async function readLimits(tx: Transaction, context: Context, deps: Dependencies, month: Month): Promise<LimitsView> {
   const siteId = siteOf(context);
   const months = quarterMonths(quarterOf(month)).filter((one) => one <= month);
   const names = await listNames(tx);
@@ -70,7 +71,7 @@ export async function readLimits(tx: Transaction, context: Context, deps: Depend
 }
 
 /** Everything a limit form needs to choose from. */
-export async function readLimitChoices(tx: Transaction, context: Context) {
+export async function readLimitChoices(tx: Transaction, context: Context): Promise<LimitChoicesView> {
   const siteId = siteOf(context);
   const record = await readSite(tx, siteId);
   return { permits: await repository.listPermits(tx, siteId), samplePoints: await listSamplePoints(tx, siteId), analytes: await listAnalytes(tx), places: record.places };

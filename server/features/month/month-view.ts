@@ -1,6 +1,7 @@
 import { dayNameShort, firstDay, lastDay, monthDays, monthOfDay } from '#shared/calendar/day.ts';
 import { monthName, type Month } from '#shared/calendar/month.ts';
 import { notReadReasonNames } from '#shared/schemas/readings.ts';
+import type { DayState, GridLine, MonthLine, MonthView } from '#shared/views/month-view.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
 import { listStations, listLiveDays } from '../climate/climate-repository.ts';
@@ -12,22 +13,6 @@ import { judgeMonths } from '../limits/verdict-service.ts';
 import * as readingRepository from '../readings/reading-repository.ts';
 import { readSite, siteDaysOf, siteOf, type SiteRecord } from '../sites/site-service.ts';
 
-/** State of one expected record of a day. */
-export type DayState = 'read' | 'apportioned' | 'estimated' | 'not-read' | 'missing' | 'held' | 'none';
-
-export interface GridLine {
-  name: string;
-  series: 'rain' | 'pumped' | 'effluent';
-  days: DayState[];
-}
-
-export interface MonthLine {
-  subject: string;
-  sentence: string;
-  link: string | null;
-  linkText: string | null;
-}
-
 async function meterLines(tx: Transaction, record: SiteRecord, month: Month, today: string): Promise<{ grid: GridLine[]; lines: MonthLine[] }> {
   const meters = record.meters;
   if (!meters.length) return { grid: [], lines: [] };
@@ -38,14 +23,15 @@ async function meterLines(tx: Transaction, record: SiteRecord, month: Month, tod
   const grid = record.roundPoints.filter((point) => point.kind === 'meter').map((point): GridLine => {
     const meter = meters.find((one) => one.id === point.subjectId)!;
     const days = monthDays(month).map((day): DayState => {
+      if (point.everyDays > 1 && !readings.some((one) => one.meterId === meter.id && one.siteDay === day)) return 'none';
       const own = readings.filter((one) => one.meterId === meter.id && one.siteDay === day);
       if (own.some((one) => one.answer === 'held')) return 'held';
       const basis = entries.find((one) => one.meterId === meter.id && one.siteDay === day && one.reversesId === null && !entries.some((other) => other.reversesId === one.id))?.basis;
       if (basis === 'estimated') return 'estimated';
-      if (basis === 'apportioned') return 'apportioned';
+      if (basis === 'apportioned' && point.everyDays === 1) return 'apportioned';
       if (own.length) return 'read';
       if (notRead.some((one) => one.roundPointId === point.id && one.siteDay === day)) return 'not-read';
-      return day >= today || day < meter.installedOn || point.everyDays > 1 ? 'none' : 'missing';
+      return day >= today || day < meter.installedOn ? 'none' : 'missing';
     });
     const missing = monthDays(month).filter((_, index) => days[index] === 'missing');
     if (missing.length) lines.push({ subject: `${meter.name}, ${listDays(missing)}.`, sentence: 'No reading and no reason given.', link: `round/${missing[0]}`, linkText: 'Enter or give the reason' });
@@ -75,10 +61,15 @@ async function climateGrid(tx: Transaction, siteId: string, month: Month, today:
 }
 
 /** The month at a glance: what is missing, what is wrong or odd, what is next, and the leachate of each cell. */
-export async function readMonth(tx: Transaction, context: Context, deps: Dependencies, month: Month) {
+export async function readMonth(tx: Transaction, context: Context, deps: Dependencies, month: Month): Promise<MonthView> {
   const siteId = siteOf(context);
   const record = await readSite(tx, siteId);
   const today = (await siteDaysOf(tx, siteId)).dayOf(deps.now().getTime());
+  const climate = await climateGrid(tx, siteId, month, today);
+  const climateMissing = climate.flatMap((line): MonthLine[] => {
+    const days = monthDays(month).filter((_, index) => line.days[index] === 'missing');
+    return days.length ? [{ subject: `${line.name}, ${listDays(days)}.`, sentence: 'No record of the day.', link: 'site', linkText: 'Climate' }] : [];
+  });
   const meters = await meterLines(tx, record, month, today);
   const lab = await readLab(tx, context, month);
   const late = lab.plan.filter((item) => item.receivedCount < item.expectedCount && month < monthOfDay(today));
@@ -103,8 +94,8 @@ export async function readMonth(tx: Transaction, context: Context, deps: Depende
   for (const one of pending) odd.push({ subject: 'A change waits.', sentence: one.sentence, link: `trail?subject=${one.factId}`, linkText: 'Trail' });
   const obstacles = act?.act === 'close' ? [] : await closingObstacles(tx, record, month, today);
   return {
-    month, title: monthName(month), today, grid: [...(await climateGrid(tx, siteId, month, today)), ...meters.grid],
-    missing: [...meters.lines, ...late.map((item): MonthLine => ({ subject: `${item.analyteName}, ${item.pointCode}.`, sentence: `${item.receivedCount} of ${item.expectedCount} results are in.`, link: `lab/${month}`, linkText: 'Lab' }))],
+    month, title: monthName(month), today, grid: [...climate, ...meters.grid],
+    missing: [...climateMissing, ...meters.lines, ...late.map((item): MonthLine => ({ subject: `${item.analyteName}, ${item.pointCode}.`, sentence: `${item.receivedCount} of ${item.expectedCount} results are in.`, link: `lab/${month}`, linkText: 'Lab' }))],
     odd, cells, obstacles, act: act && { act: act.act, at: act.recordedAt, reason: act.reason }, lateCount: late.length,
   };
 }

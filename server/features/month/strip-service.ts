@@ -1,27 +1,13 @@
 import { addDays, daysBetween, firstDay, lastDay, monthOfDay } from '#shared/calendar/day.ts';
 import { addMonths, daysInMonth, monthOf, monthParts, monthRange, type Month } from '#shared/calendar/month.ts';
 import { sql } from 'drizzle-orm';
+import type { StripView, TubeState } from '#shared/views/month-view.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
 import { listSiteClimate } from '../climate/climate-service.ts';
 import { listLiveResults, listPlan, listSamplePoints } from '../lab/lab-repository.ts';
 import { listMonthActs } from '../ledger/entry-repository.ts';
 import { readSite, siteDaysOf, siteOf, type SiteRecord } from '../sites/site-service.ts';
-
-export interface TubeState {
-  receivedCount: number;
-  expectedCount: number;
-}
-
-export interface StripMonth {
-  month: Month;
-  climate: TubeState;
-  meters: TubeState;
-  lab: TubeState;
-  lid: 'closed' | 'ajar' | 'none';
-  isFuture: boolean;
-  isRunning: boolean;
-}
 
 /** First month of the site's reporting year that holds a month. */
 export function reportingYearStart(month: Month, startMonth: number): Month {
@@ -43,7 +29,7 @@ async function readDayCounts(tx: Transaction, record: SiteRecord, first: string,
 }
 
 /** The share of expected records that has arrived, per month of a reporting year. */
-export async function readStrip(tx: Transaction, context: Context, deps: Dependencies, month: Month): Promise<{ months: StripMonth[]; yearStart: Month; today: string }> {
+export async function readStrip(tx: Transaction, context: Context, deps: Dependencies, month: Month): Promise<StripView> {
   const siteId = siteOf(context);
   const record = await readSite(tx, siteId);
   const today = (await siteDaysOf(tx, siteId)).dayOf(deps.now().getTime());

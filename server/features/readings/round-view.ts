@@ -1,4 +1,5 @@
 import { addDays, type Day } from '#shared/calendar/day.ts';
+import type { PointDone, RoundPointView, RoundView } from '#shared/views/round-view.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
 import { listEntries, listLoadsOut } from '../ledger/entry-repository.ts';
@@ -9,16 +10,8 @@ import { registerAt } from './reading-service.ts';
 
 const usualDays = 21;
 
-interface PointDone {
-  id: string;
-  text: string;
-  at: string;
-  by: string;
-  state: 'stored' | 'held' | 'dispute';
-}
-
 /** The operator's list for a day, in walking order: what was seen last, what is usual, what is in already. */
-export async function readRound(tx: Transaction, context: Context, deps: Dependencies, day: Day) {
+export async function readRound(tx: Transaction, context: Context, deps: Dependencies, day: Day): Promise<RoundView> {
   const siteId = siteOf(context);
   const record = await readSite(tx, siteId);
   const days = await siteDaysOf(tx, siteId);
@@ -28,7 +21,7 @@ export async function readRound(tx: Transaction, context: Context, deps: Depende
   const entries = await listEntries(tx, siteId, addDays(day, -usualDays), addDays(day, -1));
   const notRead = await repository.listNotRead(tx, siteId, day, day);
   const local = (at: string) => days.localTime(Date.parse(at));
-  const points = [];
+  const points: RoundPointView[] = [];
   for (const point of record.roundPoints) {
     const skipped = notRead.find((one) => one.roundPointId === point.id);
     const common = { id: point.id, position: point.position, kind: point.kind, subjectId: point.subjectId, everyDays: point.everyDays, notRead: skipped ? { reasonCode: skipped.reasonCode, note: skipped.note } : null };
@@ -46,7 +39,6 @@ export async function readRound(tx: Transaction, context: Context, deps: Depende
     notes: (await repository.listRoundNotes(tx, siteId, day)).map((note) => ({ id: note.id, siteDay: note.siteDay, note: note.note, by: names.get(note.recordedById) ?? '' })),
   };
 }
-export type RoundView = Awaited<ReturnType<typeof readRound>>;
 
 const iso = (ms: number) => new Date(ms).toISOString();
 

@@ -4,6 +4,7 @@ import { dayName, monthOfDay } from '#shared/calendar/day.ts';
 import { monthName, quarterName } from '#shared/calendar/month.ts';
 import { Problem } from '#shared/problems.ts';
 import type { signReportInput } from '#shared/schemas/lab.ts';
+import type { ReportView } from '#shared/views/lab-view.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import { checkTrail, sealTrail } from '../../audit/trail-seals.ts';
 import { reports } from '../../db/schema/reporting.ts';
@@ -22,11 +23,7 @@ import { collectQuarter, dueWords, quarterFigures, type Quarter } from './quarte
 
 const workbookType = 'application/vnd.openxmlformats-officedocument.spreadsheetml.sheet';
 
-export interface ReadinessLine {
-  state: 'ready' | 'stops' | 'ask';
-  sentence: string;
-  link: string | null;
-}
+type ReadinessLine = ReportView['readiness'][number];
 
 const listReports = (tx: Transaction, siteId: string) => tx.select().from(reports).where(eq(reports.siteId, siteId)).orderBy(asc(reports.quarter), asc(reports.issue));
 
@@ -68,7 +65,7 @@ async function readinessOf(tx: Transaction, siteId: string, quarter: Quarter): P
 }
 
 /** Whether the quarter can be signed, what it will say, and the issues there are. */
-export async function readReport(tx: Transaction, context: Context, deps: Dependencies, quarterKey: string) {
+export async function readReport(tx: Transaction, context: Context, deps: Dependencies, quarterKey: string): Promise<ReportView> {
   const siteId = siteOf(context);
   const quarter = await collectQuarter(tx, context, deps, quarterKey);
   const today = (await siteDaysOf(tx, siteId)).dayOf(deps.now().getTime());
@@ -84,7 +81,6 @@ export async function readReport(tx: Transaction, context: Context, deps: Depend
     issues: issued.map((one) => ({ id: one.id, quarter: one.quarter, issue: one.issue, signedAt: one.signedAt, signedBy: names.get(one.signedById) ?? '', fileName: one.fileName, fileSha256: one.fileSha256, isStale: one.id === last?.id && changedFigures(one.snapshot as Record<string, number>, figures).length > 0, isLast: !issued.some((other) => other.quarter === one.quarter && other.issue > one.issue) })),
   };
 }
-export type ReportView = Awaited<ReturnType<typeof readReport>>;
 
 const fileNameOf = (quarter: Quarter, issue: string) => `${quarter.site.slug}-${quarter.quarter.toLowerCase()}-${issue}.xlsx`;
 

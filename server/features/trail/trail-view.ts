@@ -1,4 +1,5 @@
 import { and, desc, eq, lt } from 'drizzle-orm';
+import type { TrailView } from '#shared/views/site-view.ts';
 import { checkTrail } from '../../audit/trail-seals.ts';
 import { trailEntries } from '../../db/schema/reporting.ts';
 import type { Transaction } from '../../db/transaction.ts';
@@ -9,7 +10,7 @@ import { siteOf } from '../sites/site-service.ts';
 const pageSize = 60;
 
 /** Newest changes of the site, a page at a time; one record's history when a subject is named. */
-export async function readTrail(tx: Transaction, context: Context, filter: { before?: number | undefined; subject?: string | undefined }) {
+export async function readTrail(tx: Transaction, context: Context, filter: { before?: number | undefined; subject?: string | undefined }): Promise<TrailView> {
   const names = await listNames(tx);
   const rows = await tx
     .select()
