@@ -193,7 +193,7 @@ export function resolveLabRows(raws: readonly RawLabRow[], catalog: LabCatalog):
     resolveDate(row, catalog, order);
     const analyte = resolveAnalyte(row, catalog);
     const unitText = raw.unitText || analyte?.unitInName || catalog.mappings.get(mappingKey('unit', raw.analyteText)) || (analyte?.standardUnit === 'pH' ? 'pH' : '');
-    const unit = unitText ? readUnit(unitText) : null;
+    const unit = unitText ? readUnit(catalog.mappings.get(mappingKey('unit', unitText)) ?? unitText) : null;
     if (!unit) hold(row, 'unit', unitText ? `The unit "${unitText}" is not known.` : `${raw.analyteText}: ${raw.resultText}, and no unit. Which one?`);
     if (analyte && unit) {
       const basis = basisFactor(unit.basis ?? analyte.reportedBasis, analyte.basis);

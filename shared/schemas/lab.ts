@@ -1,4 +1,5 @@
 import * as z from 'zod';
+import { qualifierMeanings } from '../lab/qualifier-meanings.ts';
 import { dayText, optionalDay } from './days.ts';
 import { optionalText, recordId, requiredText } from './text.ts';
 
@@ -8,6 +9,10 @@ export const labAnswerInput = z.object({
   kind: z.enum(['sample-point', 'analyte', 'unit', 'qualifier', 'date-order']),
   fromText: requiredText('the text of the sheet'),
   toValue: requiredText('the answer'),
+}).superRefine((input, context) => {
+  const choices: Partial<Record<typeof input.kind, readonly string[]>> = { qualifier: qualifierMeanings, 'date-order': ['day-first', 'month-first'] };
+  if (choices[input.kind] && !choices[input.kind]!.includes(input.toValue)) context.addIssue({ code: 'custom', path: ['toValue'], message: 'Choose one of the answers offered.' });
+  if ((input.kind === 'sample-point' || input.kind === 'analyte') && !recordId.safeParse(input.toValue).success) context.addIssue({ code: 'custom', path: ['toValue'], message: 'Choose one of the answers offered.' });
 });
 export type LabAnswerInput = z.input<typeof labAnswerInput>;
 

@@ -1,3 +1,4 @@
+import { qualifierMeanings } from '#shared/lab/qualifier-meanings.ts';
 import { boolean, integer, jsonb, pgTable, text, unique, uuid } from 'drizzle-orm/pg-core';
 import { belongsTo, day, exact, fact, instant, owned, ownedKey } from './columns.ts';
 import { places } from './metering.ts';
@@ -51,7 +52,7 @@ export const labQualifiers = pgTable(
     laboratoryId: uuid('laboratory_id').notNull(),
     letter: text('letter').notNull(),
     meaning: text('meaning', {
-      enum: ['non-detect', 'estimated-below-reporting', 'above-range', 'in-blank', 'diluted', 'holding-time', 'rejected', 'other'],
+      enum: qualifierMeanings,
     }).notNull(),
     wording: text('wording'),
   },

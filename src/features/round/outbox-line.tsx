@@ -10,7 +10,9 @@ export function OutboxLine({ siteId }: { siteId: string }) {
   const personId = client.getQueryData(meQuery.queryKey)?.personId ?? '';
   useEffect(() => {
     const refresh = () => void listOutbox(siteId).then(setItems, () => setItems([]));
-    const send = () => void flushOutbox(siteId, personId).then((count) => count > 0 && client.invalidateQueries({ queryKey: ['site', siteId] }));
+    const send = () => void flushOutbox(siteId, personId).then((count) => {
+      if (count > 0) void client.invalidateQueries({ queryKey: ['site', siteId] });
+    });
     refresh();
     send();
     const stopListening = onOutboxChange(refresh);
