@@ -1,6 +1,6 @@
 import * as z from 'zod';
 import { roles } from '../permissions.ts';
-import { emailAddress, recordId, requiredText } from './text.ts';
+import { emailAddress, optionalId, recordId, requiredText } from './text.ts';
 
 /** A new password: long rather than odd. */
 export const newPassword = z
@@ -11,7 +11,7 @@ export const newPassword = z
 export const signInInput = z.object({
   email: emailAddress,
   password: z.string({ error: 'Enter your password.' }).min(1, 'Enter your password.'),
-  organisationId: recordId.optional(),
+  organisationId: optionalId,
 });
 export type SignInInput = z.input<typeof signInInput>;
 
@@ -32,7 +32,7 @@ export const invitationInput = z
     email: emailAddress,
     displayName: requiredText('the name of the person'),
     role: z.enum(roles, { error: 'Choose a role.' }),
-    laboratoryId: recordId.optional(),
+    laboratoryId: optionalId,
   })
   .refine((input) => input.role !== 'lab' || input.laboratoryId, { path: ['laboratoryId'], message: 'Choose the laboratory the person works for.' });
 export type InvitationInput = z.input<typeof invitationInput>;

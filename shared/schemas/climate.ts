@@ -1,7 +1,7 @@
 import * as z from 'zod';
 import { climateFields } from '../climate/read-climate-sheet.ts';
 import { monthText } from './days.ts';
-import { recordId, requiredText } from './text.ts';
+import { optionalId, recordId, requiredText } from './text.ts';
 
 const columnIndex = z.number().int().min(0).max(199).nullable();
 
@@ -22,6 +22,6 @@ export const gapChoiceInput = z.object({
   id: recordId,
   month: monthText,
   choice: z.enum(['leave-out', 'scale-by-days', 'other-station', 'station-normal'], { error: 'Choose what to do about the missing days.' }),
-  otherStationId: recordId.optional(),
+  otherStationId: optionalId,
   reason: requiredText('the reason', 500),
 });

@@ -1,7 +1,7 @@
 import * as z from 'zod';
 import { qualifierMeanings } from '../lab/qualifier-meanings.ts';
 import { dayText, optionalDay } from './days.ts';
-import { optionalText, recordId, requiredText } from './text.ts';
+import { optionalId, optionalText, recordId, requiredText } from './text.ts';
 
 export const laboratoryInput = z.object({ id: recordId, name: requiredText('the name of the laboratory', 80) });
 export const labUploadInput = z.object({ id: recordId, laboratoryId: recordId });
@@ -18,7 +18,7 @@ export type LabAnswerInput = z.input<typeof labAnswerInput>;
 
 export const samplePointInput = z.object({
   id: recordId,
-  placeId: recordId.optional(),
+  placeId: optionalId,
   code: requiredText('the code of the sample point', 30),
   name: requiredText('the name of the sample point', 80),
   kind: z.enum(['raw-leachate', 'leak-detection', 'influent', 'effluent', 'storm-water', 'groundwater'], { error: 'Choose what is sampled.' }),
@@ -47,7 +47,7 @@ export const limitInput = z
     samplePointId: recordId,
     analyteId: recordId,
     fraction: z.string().trim().default(''),
-    flowPlaceId: recordId.optional(),
+    flowPlaceId: optionalId,
     statistic: z.enum(['daily-maximum', 'daily-minimum', 'monthly-average', 'range'], { error: 'Choose how the limit is meant.' }),
     quantity: z.enum(['concentration', 'load']),
     valueText: limitValue,

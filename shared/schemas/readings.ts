@@ -2,12 +2,12 @@ import * as z from 'zod';
 import { volumeUnits } from '../units/unit-factors.ts';
 import { dayText } from './days.ts';
 import { optionalNumber, typedNumber } from './numbers.ts';
-import { optionalText, recordId, requiredText } from './text.ts';
+import { optionalId, optionalText, recordId, requiredText } from './text.ts';
 
 /** When something was seen: an instant from the device, or a wall-clock time at the site. */
 export const observedFields = {
   observedAt: z.iso.datetime({ offset: true, error: 'Enter the time of the reading.' }).optional(),
-  observedLocal: z.string().regex(/^\d{4}-\d{2}-\d{2}T\d{2}:\d{2}$/, 'Enter the day and time of the reading.').optional(),
+  observedLocal: z.preprocess((typed) => (typeof typed === 'string' ? typed.trim().replace(' ', 'T') : typed), z.string().regex(/^\d{4}-\d{2}-\d{2}T\d{2}:\d{2}$/, 'Enter the day and time of the reading, like 2026-03-04 07:50.').optional()),
   /** Which of the two, when the clock shows an hour twice. */
   repeatedHour: z.enum(['earlier', 'later']).optional(),
   deviceId: z.string().max(80).optional(),
@@ -19,7 +19,7 @@ export const readingInput = z.object({
   registerText: z.string({ error: 'Enter what the register shows.' }).trim().min(1, 'Enter what the register shows.').max(40),
   answer: z.enum(['none', 'rollover', 'confirmed', 'held']).default('none'),
   note: optionalText(),
-  supersedesId: recordId.optional(),
+  supersedesId: optionalId,
   reason: optionalText(),
   ...observedFields,
 });
@@ -27,12 +27,12 @@ export type ReadingInput = z.input<typeof readingInput>;
 
 export const levelInput = z.object({
   id: recordId,
-  storeId: recordId.optional(),
-  sumpId: recordId.optional(),
+  storeId: optionalId,
+  sumpId: optionalId,
   levelText: z.string({ error: 'Enter the level.' }).trim().min(1, 'Enter the level.').max(40),
   isConfirmed: z.boolean().default(false),
   note: optionalText(),
-  supersedesId: recordId.optional(),
+  supersedesId: optionalId,
   reason: optionalText(),
   ...observedFields,
 });

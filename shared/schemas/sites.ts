@@ -4,7 +4,7 @@ import { volumeUnits } from '../units/unit-factors.ts';
 import { coverKinds } from '../water-balance/cover-types.ts';
 import { dayText, monthText, optionalDay } from './days.ts';
 import { optionalNumber, typedNumber } from './numbers.ts';
-import { optionalText, recordId, requiredText } from './text.ts';
+import { optionalId, optionalText, recordId, requiredText } from './text.ts';
 
 const code = (what: string) => requiredText(what, 20).regex(/^[\p{L}\p{N}][\p{L}\p{N} ._-]*$/u, 'Use letters, digits, spaces, points and dashes.');
 const fractionOf = (what: string) => typedNumber({ what, unit: '', min: 0, max: 1, decimals: 6, aboveMax: 'Enter a share of one: 0.18, not 18.' });
@@ -85,6 +85,7 @@ export const wasteInput = z.object({
   fieldCapacityFraction: fractionOf('the field capacity by volume'),
   source: requiredText('where the tonnes come from'),
 });
+export type WasteInput = z.input<typeof wasteInput>;
 
 export const sumpInput = z.object({
   id: recordId,
@@ -112,7 +113,7 @@ export const meterInput = z.object({
   name: requiredText('the name of the meter', 60),
   fromPlaceId: recordId,
   toPlaceId: recordId,
-  sumpId: recordId.optional(),
+  sumpId: optionalId,
   digits: z.coerce.number('Enter how many digits the register shows.').int().min(3, 'A register shows at least 3 digits.').max(12, 'A register shows at most 12 digits.'),
   decimals: z.coerce.number().int().min(0).max(4).default(0),
   unit: z.enum(volumeUnits, { error: 'Choose the unit printed on the register.' }),

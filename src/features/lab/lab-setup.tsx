@@ -33,7 +33,7 @@ export function LabSetup({ view }: { view: LabView }) {
         </RecordForm>
       </Panel>
       <Panel title="Add a sample point" isOpen={open === 'point'} onClose={close}>
-        <RecordForm<SamplePointInput> schema={samplePointInput} defaults={{ id: newId(), code: '', name: '' }} submitLabel="Add the sample point" onSubmit={(values) => savePoint.mutateAsync({ ...values, ...(values.placeId ? {} : { placeId: undefined }) })} onDone={close}>
+        <RecordForm<SamplePointInput> schema={samplePointInput} defaults={{ id: newId(), code: '', name: '' }} submitLabel="Add the sample point" onSubmit={(values) => savePoint.mutateAsync(values)} onDone={close}>
           <TextField name="code" label="Code, as on the bottle" />
           <TextField name="name" label="Name" />
           <ChoiceField name="kind" label="What is sampled" options={pointKinds.map(([value, label]) => ({ value, label }))} />

@@ -31,13 +31,12 @@ function PermitForm({ onDone }: { onDone: () => void }) {
 function LimitForm({ choices, onDone }: { choices: LimitChoicesView; onDone: () => void }) {
   const { site } = usePlace();
   const save = useWrite<LimitInput>(site.id, '/limits');
-  const withoutEmpty = (values: LimitInput): LimitInput => ({ ...values, ...(values.flowPlaceId ? {} : { flowPlaceId: undefined }) });
   return (
     <RecordForm<LimitInput>
       schema={limitInput}
       defaults={{ id: newId(), fraction: '', quantity: 'concentration', valueText: '', lowText: '', highText: '', unit: 'mg/L', isInclusive: true, samplesMin: '4', decimals: '2', citation: '', noticeHours: '', writtenNoticeDays: '', resampleDays: '', fromOn: '', toOn: '', belowDetectionRule: 'half' }}
       submitLabel="Save the limit"
-      onSubmit={(values) => save.mutateAsync(withoutEmpty(values))}
+      onSubmit={(values) => save.mutateAsync(values)}
       onDone={onDone}
     >
       <ChoiceField name="permitId" label="Permit" options={choices.permits.map((one) => ({ value: one.id, label: one.number }))} />
