@@ -132,7 +132,7 @@ async function loadPostings(tx: Transaction, actors: DemoActors, ids: DemoIds, p
     const { intervals } = computeIntervals(await readMeterFacts(tx, record, meter, '2000-01-01T00:00:00Z', `${plan.today}T23:59:59Z`));
     await insertEntries(tx, computeDayVolumes(intervals, days, record.site.measuredIntervalHoursMax).map((day) => ({
       organisationId: operator.organisationId, id: newId(), recordedById: operator.personId, recordedAt: `${addDays(day.siteDay, 1)}T08:00:00Z`, siteId: ids.site, siteDay: day.siteDay, fromPlaceId: meter.fromPlaceId, toPlaceId: meter.toPlaceId,
-      volumeM3: day.volumeM3.toFixed(6), basis: day.basis, meterId: meter.id, factIds: day.factIds, reason: 'Daily round',
+      volumeM3: day.volumeM3.toFixed(6), basis: day.basis, meterId: meter.id, factIds: day.factIds, reason: null,
     })));
   }
   let ticket = 4402;

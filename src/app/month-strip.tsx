@@ -41,13 +41,13 @@ export function Glass({ month, isFaint = false }: { month: Pick<StripMonth, 'cli
 }
 
 function StripLink({ row, isChosen, href, today }: { row: StripMonth; isChosen: boolean; href: string; today: string }) {
-  const name = `${monthName(row.month)}: ${words('climate', row.climate)}, ${words('meters', row.meters)}, ${words('lab', row.lab)}, ${lidWords[row.lid]}`;
+  const name = `${monthShortName(row.month)}${row.isRunning ? ` ${Number(today.slice(8))}` : ''}, ${monthName(row.month)}: ${words('climate', row.climate)}, ${words('meters', row.meters)}, ${words('lab', row.lab)}, ${lidWords[row.lid]}`;
   const look = isChosen ? 'border-2 border-primary bg-tint' : row.isFuture ? 'border border-dashed border-line' : 'border border-line bg-surface';
   return (
     <Link to={href} aria-label={name} aria-current={isChosen ? 'true' : undefined} className={`block w-[76px] h-[74px] px-1.5 pt-1 rounded-sm text-ink no-underline shrink-0 ${look}`}>
       <Glass month={row} isFaint={row.isFuture} />
       <span aria-hidden className={`flex justify-between text-sm leading-5 px-1 ${isChosen ? 'font-semibold' : row.isFuture ? 'text-muted' : ''}`}>
-        {monthShortName(row.month)}
+        {monthShortName(row.month)}{' '}
         {row.isRunning && <span className="text-muted font-normal">{Number(today.slice(8))}</span>}
       </span>
     </Link>

@@ -27,10 +27,10 @@ type ReadinessLine = ReportView['readiness'][number];
 
 const listReports = (tx: Transaction, siteId: string) => tx.select().from(reports).where(eq(reports.siteId, siteId)).orderBy(asc(reports.quarter), asc(reports.issue));
 
-/** Figures that differ between an issue and now: counted as different beyond the last digit a reader sees. */
+/** Figures that would be printed differently now than in an issue: volumes in whole m³, rates to 0.1, values as judged. */
 export function changedFigures(issued: Record<string, number>, now: Record<string, number>): { name: string; issued: number; now: number }[] {
-  const differs = (a: number | undefined, b: number | undefined) => a === undefined || b === undefined || Math.abs(a - b) > 1e-6 * Math.max(1, Math.abs(a));
-  return [...new Set([...Object.keys(issued), ...Object.keys(now)])].filter((name) => differs(issued[name], now[name])).map((name) => ({ name, issued: issued[name] ?? NaN, now: now[name] ?? NaN }));
+  const printed = (name: string, value: number | undefined) => (value === undefined ? 'none' : name.endsWith('m³') ? value.toFixed(0) : name.endsWith('L/ha·d') ? value.toFixed(1) : String(value));
+  return [...new Set([...Object.keys(issued), ...Object.keys(now)])].filter((name) => printed(name, issued[name]) !== printed(name, now[name])).map((name) => ({ name, issued: issued[name] ?? NaN, now: now[name] ?? NaN }));
 }
 
 async function readinessOf(tx: Transaction, siteId: string, quarter: Quarter): Promise<ReadinessLine[]> {

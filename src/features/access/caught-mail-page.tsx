@@ -22,7 +22,7 @@ export function CaughtMailPage() {
                 <li key={row.id} className="sheet pad">
                   <h2 className="text-base">{row.subject}</h2>
                   <p className="hint">to {row.to}, {formatInstant(row.caughtAt)}</p>
-                  <div className="mt-3 whitespace-pre-wrap break-words">
+                  <div className="mt-3 whitespace-pre-wrap break-all">
                     {row.text.split(/(https?:\/\/\S+)/).map((part, index) => (index % 2 ? <a key={part} href={part}>{part}</a> : part))}
                   </div>
                 </li>

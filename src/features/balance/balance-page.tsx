@@ -107,7 +107,7 @@ function PlotTable({ view, onOpen }: { view: BalanceView; onOpen: (stepId: strin
               <th scope="row" className="sticky left-0 bg-surface">{cell.code} {plot.plotName}<span className="hint block">{plot.coverName}{plot.fromOn.endsWith('-01') ? '' : `, from ${dayNameShort(plot.fromOn)}`}</span></th>
               <td className="r">{formatHa(plot.areaM2)}</td><td className="r">{plot.dayCount}</td>
               {plotTerms.map((term) => (
-                <td key={term} className="r"><button type="button" className="number-button" aria-label={`Working of ${termRegister[term].name}, ${cell.code} ${plot.plotName}`} onClick={() => onOpen(plot.stepId, term)}>{formatM3((plot.terms[term] * plot.areaM2) / 1000)}</button></td>
+                <td key={term} className="r"><button type="button" className="number-button" aria-label={`${formatM3((plot.terms[term] * plot.areaM2) / 1000)} m³, working of ${termRegister[term].name}, ${cell.code} ${plot.plotName}`} onClick={() => onOpen(plot.stepId, term)}>{formatM3((plot.terms[term] * plot.areaM2) / 1000)}</button></td>
               ))}
             </tr>
           )))}

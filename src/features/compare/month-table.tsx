@@ -1,4 +1,4 @@
-import { monthName } from '#shared/calendar/month.ts';
+import { monthShortName } from '#shared/calendar/month.ts';
 import type { CompareView, ComparedRow } from '#shared/views/balance-view.ts';
 import { ScrollBox } from '../../components/page.tsx';
 import { Word } from '../../components/words.tsx';
@@ -14,7 +14,7 @@ const niceMax = (value: number): number => {
 
 function WhatHappened({ row }: { row: ComparedRow }) {
   return (
-    <div className="text-sm leading-tight min-w-[190px] py-1">
+    <div className="text-sm leading-tight min-w-[150px] py-1">
       {row.events.map((event) => <p key={event.onDay + event.sentence}><strong>{event.when}</strong> {event.sentence}</p>)}
       {row.estimatedPercent > 0 && <p>◌ {row.estimatedPercent.toFixed(1)} % estimated</p>}
       {row.note && <p><Word look={noteLooks[row.note.state] ?? 'open'}>{row.note.state}</Word> {row.note.cause}</p>}
@@ -49,11 +49,11 @@ export function MonthTable({ view, onOpen }: { view: CompareView; onOpen: (month
     <>
       <HatchDefs />
       <ScrollBox label={`Predicted and pumped by month, ${view.cell.code}`}>
-        <table className="tbl [&_td]:px-2 [&_th]:px-2">
+        <table className="tbl [&_td]:!px-1.5 [&_th]:!px-1.5">
           <caption className="sr-only">Predicted and pumped leachate of {view.cell.code} {view.cell.name} by month, m³</caption>
           <thead>
             <tr>
-              <th scope="col" className="sticky left-0 bg-surface">Month</th><th scope="col">Cover, share of area</th><th scope="col" className="r">Rain, mm</th><th aria-hidden>0 to {rainMax}</th>
+              <th scope="col" className="sticky left-0 bg-surface">Month</th><th scope="col">Cover, share</th><th scope="col" className="r">Rain, mm</th><th aria-hidden>0 to {rainMax}</th>
               <th scope="col" className="r">ET, mm</th><th aria-hidden>0 to {aetMax}</th><th scope="col">Storage, mm<br />{formatM3(Math.min(...storage))} to {formatM3(Math.max(...storage))}</th>
               <th scope="col" className="r">Predicted, m³</th><th scope="col" className="r">Pumped, m³</th><th aria-hidden>0 to {formatM3(volumeMax)}</th>
               <th scope="col" className="r">Gap, m³</th><th aria-hidden>±{formatM3(gapMax)}</th><th scope="col">What happened</th>
@@ -62,7 +62,7 @@ export function MonthTable({ view, onOpen }: { view: CompareView; onOpen: (month
           <tbody>
             {rows.map((row, index) => (
               <tr key={row.month} className="h-11">
-                <th scope="row" className={`${cell} sticky left-0 bg-surface`}><button type="button" className="number-button whitespace-nowrap" onClick={() => onOpen(row.month)}>{monthName(row.month)}</button></th>
+                <th scope="row" className={`${cell} sticky left-0 bg-surface`}><button type="button" className="number-button whitespace-nowrap" onClick={() => onOpen(row.month)}>{monthShortName(row.month)} <span className="font-normal text-muted">{row.month.slice(0, 4)}</span></button></th>
                 <td className={cell}><span className="sr-only">{row.covers.map((cover) => `${cover.name} ${Math.round(cover.share * 100)} %`).join(', ')}</span><CoverTrack covers={row.covers} /></td>
                 <td className={`${cell} r`}>{formatMm(row.rainMm)}</td><td className={cell}><BarTrack value={row.rainMm} max={rainMax} colour="var(--color-s-rain)" /></td>
                 <td className={`${cell} r`}>{formatMm(row.aetMm)}</td><td className={cell}><BarTrack value={row.aetMm} max={aetMax} colour="var(--color-s-et)" isDashed /></td>

@@ -8,8 +8,8 @@ import { formatM3, formatNumber, formatPercent, formatSigned } from '../../lib/f
 function Statistics({ view }: { view: CompareView }) {
   const { statistics: s } = view;
   const rows: [string, string, string][] = [
-    ['Pairs', String(s.pairCount), s.leftOutCount ? `${s.leftOutCount} months left out: nothing was read` : 'every month has both'],
-    ['PBIAS', s.pbiasPercent === null ? 'not defined' : formatPercent(s.pbiasPercent), 'positive: the model predicts more than was pumped'],
+    ['Pairs', String(s.pairCount), s.leftOutCount ? `${s.leftOutCount} ${s.leftOutCount === 1 ? 'month' : 'months'} left out: nothing was read` : 'every month has both'],
+    ['PBIAS', s.pbiasPercent === null ? 'not defined' : formatPercent(s.pbiasPercent), s.pbiasPercent === null ? '' : s.pbiasPercent > 0 ? 'model too high: it predicts more than was pumped' : s.pbiasPercent < 0 ? 'model too low: it predicts less than was pumped' : 'no bias'],
     ['RMSE', s.rmse === null ? 'not defined' : `${formatM3(s.rmse)} m³`, 'typical size of a monthly difference'],
     ['Nash–Sutcliffe', s.nashSutcliffe === null ? 'not defined' : formatNumber(s.nashSutcliffe, 2), '1 agrees fully; 0 is no better than the mean'],
   ];

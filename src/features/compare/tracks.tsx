@@ -6,7 +6,7 @@ const height = 44;
 const middle = height / 2;
 
 /** Share of the cell under each cover, as hatches side by side. */
-export function CoverTrack({ covers, width = 84 }: { covers: readonly CoverShare[]; width?: number }) {
+export function CoverTrack({ covers, width = 66 }: { covers: readonly CoverShare[]; width?: number }) {
   const starts = covers.map((_, index) => covers.slice(0, index).reduce((sum, one) => sum + one.share, 0));
   return (
     <svg aria-hidden width={width} height={height} className="block">
@@ -18,7 +18,7 @@ export function CoverTrack({ covers, width = 84 }: { covers: readonly CoverShare
 }
 
 /** A bar from zero; dashed when the value is computed and not measured. */
-export function BarTrack({ value, max, colour, isDashed = false, width = 64 }: { value: number; max: number; colour: string; isDashed?: boolean; width?: number }) {
+export function BarTrack({ value, max, colour, isDashed = false, width = 50 }: { value: number; max: number; colour: string; isDashed?: boolean; width?: number }) {
   const length = max > 0 ? Math.max(0, (value / max) * width) : 0;
   return (
     <svg aria-hidden width={width} height={height} className="block">
@@ -49,7 +49,7 @@ const pointOf = (rows: readonly ComparedRow[], index: number, pick: (row: Compar
 };
 
 export function StorageTrack({ rows, index, min, max }: { rows: readonly ComparedRow[]; index: number; min: number; max: number }) {
-  const width = 76;
+  const width = 62;
   const x = (value: number) => 6 + ((value - min) / (max - min || 1)) * (width - 12);
   const point = pointOf(rows, index, (row) => row.storageMm);
   const at = x(point.value!);
@@ -64,7 +64,7 @@ export function StorageTrack({ rows, index, min, max }: { rows: readonly Compare
 
 /** Predicted (dashed, hollow squares) beside pumped (solid, filled circles) on one scale. */
 export function VolumeTrack({ rows, index, max }: { rows: readonly ComparedRow[]; index: number; max: number }) {
-  const width = 220;
+  const width = 180;
   const x = (value: number) => 8 + (value / (max || 1)) * (width - 16);
   const predicted = pointOf(rows, index, (row) => row.predictedM3);
   const measured = pointOf(rows, index, (row) => row.measuredM3);
@@ -81,7 +81,7 @@ export function VolumeTrack({ rows, index, max }: { rows: readonly ComparedRow[]
 
 /** The signed difference; the grey ground is what lies inside the month's tolerance. */
 export function GapTrack({ row, max }: { row: ComparedRow; max: number }) {
-  const width = 96;
+  const width = 80;
   const x = (value: number) => width / 2 + (value / (max || 1)) * (width / 2 - 2);
   const band = row.tolerance?.valueM3 ?? 0;
   const gap = row.differenceM3;

@@ -52,6 +52,7 @@ function Results({ view, checkPath }: { view: LabView; checkPath: string }) {
   const analyteId = search.get('parameter') ?? '';
   const choose = (name: string, value: string) => setSearch((before) => { const next = new URLSearchParams(before); if (value) next.set(name, value); else next.delete(name); return next; });
   const shown = view.results.filter((one) => (!pointId || one.samplePointId === pointId) && (!analyteId || one.analyteId === analyteId)).sort((a, b) => (a.siteDay > b.siteDay ? -1 : 1));
+  const [count, setCount] = useState(40);
   const used = view.analytes.filter((analyte) => view.results.some((one) => one.analyteId === analyte.id));
   return (
     <div className="grid gap-4">
@@ -60,8 +61,8 @@ function Results({ view, checkPath }: { view: LabView; checkPath: string }) {
         <div><label className="label" htmlFor="parameter">Parameter</label><select id="parameter" className="input" value={analyteId} onChange={(event) => choose('parameter', event.target.value)}><option value="">All parameters</option>{used.map((one) => <option key={one.id} value={one.id}>{one.name}</option>)}</select></div>
       </div>
       {pointId && analyteId && <ResultPicture results={shown} />}
-      <ResultTable results={shown.slice(0, 120)} checkPath={checkPath} />
-      {shown.length > 120 && <p className="hint">The latest 120 of {shown.length} results. Choose a point or a parameter to see the rest.</p>}
+      <ResultTable results={shown.slice(0, count)} checkPath={checkPath} />
+      {shown.length > count && <p className="no-print"><button type="button" className="btn btn-second" onClick={() => setCount(count + 100)}>Show more of {shown.length} results</button></p>}
     </div>
   );
 }

@@ -15,7 +15,7 @@ import { EstimateForm } from './estimate-form.tsx';
 import { FlowPicture } from './flow-picture.tsx';
 import { StoresTable } from './stores-table.tsx';
 
-const pageSize = 60;
+const pageSize = 25;
 
 function stateSentence(view: LedgerView): string {
   const stores = view.stores.map((store) => (store.balance ? `${store.name} ${store.balance.isInside ? 'closes' : 'does not close'}: ${formatSigned(store.balance.unaccountedM3)} m³ unaccounted, tolerance ±${formatM3(store.balance.toleranceM3)}.` : `${store.name}: ${store.missing}`));
@@ -60,7 +60,7 @@ function Entries({ view, onOpen }: { view: LedgerView; onOpen: (id: string) => v
             {rows.slice(0, count).map((entry) => (
               <tr key={entry.id}>
                 <th scope="row" className="whitespace-nowrap">{dayNameShort(entry.siteDay)}</th><td>{entry.from}</td><td>{entry.to}</td>
-                <td className="r"><button type="button" className="number-button" aria-label={`Source of ${Number(entry.volumeM3).toFixed(2)} m³, ${entry.from}, ${dayNameShort(entry.siteDay)}`} onClick={() => onOpen(entry.id)}>{formatNumber(Number(entry.volumeM3), 2)}</button></td>
+                <td className="r"><button type="button" className="number-button" aria-label={`${formatNumber(Number(entry.volumeM3), 2)} m³, ${entry.from}, ${dayNameShort(entry.siteDay)}: where it comes from`} onClick={() => onOpen(entry.id)}>{formatNumber(Number(entry.volumeM3), 2)}</button></td>
                 <td><Basis basis={entry.basis} /></td><td>{entry.reversesId ? 'reverses an earlier entry' : entry.meterCode ? `meter ${entry.meterCode}` : 'ticket'}{entry.reason && <span className="hint block">{entry.reason}</span>}</td><td>{entry.by}</td>
               </tr>
             ))}

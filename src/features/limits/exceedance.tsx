@@ -62,7 +62,7 @@ export function Exceedance({ exceedance, now }: { exceedance: ExceedanceView; no
               {exceedance.clocks.map((clock) => (
                 <tr key={clock.id}>
                   <th scope="row">{clock.step}<span className="hint block">{clock.citation}</span></th><td>{formatInstant(clock.dueAt)}</td>
-                  <td>{clock.doneAt ? <><Word look="good">Done</Word><span className="hint block">{formatInstant(clock.doneAt)}, {clock.doneBy}: {clock.doneNote}</span></> : <><Word look={clock === running ? 'clock' : 'open'}>Open</Word>{can('follow:exceedance') && !exceedance.closedAt && <button type="button" className="link block" aria-label={`Record that it was done: ${clock.step}`} onClick={() => setDoing({ kind: 'clock', clock })}>Record it</button>}</>}</td>
+                  <td>{clock.doneAt ? <><Word look="good">Done</Word><span className="hint block">{formatInstant(clock.doneAt)}, {clock.doneBy}: {clock.doneNote}</span></> : <><Word look={clock === running ? 'clock' : 'open'}>Open</Word>{can('follow:exceedance') && !exceedance.closedAt && <button type="button" className="link block" aria-label={`Record it: ${clock.step}`} onClick={() => setDoing({ kind: 'clock', clock })}>Record it</button>}</>}</td>
                 </tr>
               ))}
             </tbody>

@@ -43,7 +43,7 @@ function Grid({ view }: { view: MonthView }) {
             <tr>
               <th scope="col">Source</th>
               {Array.from({ length: days }, (_, index) => (
-                <th key={index} scope="col" className="!px-0 text-center min-w-[20px]"><span aria-hidden={(index + 1) % 5 !== 0 && index !== 0} className={(index + 1) % 5 === 0 || index === 0 ? '' : 'opacity-0'}>{index + 1}</span></th>
+                <th key={index} scope="col" className="!px-0 text-center min-w-[20px]"><span className={(index + 1) % 5 === 0 || index === 0 ? '' : 'sr-only'}>{index + 1}</span></th>
               ))}
             </tr>
           </thead>

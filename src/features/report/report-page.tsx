@@ -73,13 +73,23 @@ function VolumeTable({ view }: { view: ReportView }) {
   );
 }
 
+/** One row a limit, one column a month. */
 function VerdictTable({ view }: { view: ReportView }) {
+  const key = (row: ReportView['verdicts'][number]) => `${row.pointCode} ${row.analyteName} ${row.statistic} ${row.quantity} ${row.limit}`;
+  const limits = [...new Map(view.verdicts.map((row) => [key(row), row])).entries()];
   return (
     <ScrollBox label="Effluent against limits">
       <table className="tbl tbl-tight">
-        <caption className="sr-only">Effluent against limits</caption>
-        <thead><tr><th scope="col">Parameter</th><th scope="col">Month</th><th scope="col" className="r">Limit</th><th scope="col" className="r">Deciding value</th><th scope="col">Verdict</th></tr></thead>
-        <tbody>{view.verdicts.map((row, index) => <tr key={index}><th scope="row">{row.pointCode}, {row.analyteName}<span className="hint block">{row.statistic.replace('-', ' ')}{row.quantity === 'load' ? ', load' : ''}, {row.unit}</span></th><td>{monthName(row.month)}</td><td className="r">{row.limit}</td><td className="r">{row.valueText ?? '–'}</td><td><VerdictWord word={row.word} /></td></tr>)}</tbody>
+        <caption className="sr-only">Effluent against limits by month</caption>
+        <thead><tr><th scope="col">Parameter</th><th scope="col" className="r">Limit</th>{view.months.map((month) => <th key={month} scope="col">{monthName(month)}</th>)}</tr></thead>
+        <tbody>
+          {limits.map(([id, first]) => (
+            <tr key={id}>
+              <th scope="row">{first.pointCode}, {first.analyteName}<span className="hint block">{first.statistic.replace('-', ' ')}{first.quantity === 'load' ? ', load' : ''}</span></th><td className="r">{first.limit} {first.unit}</td>
+              {view.months.map((month) => { const row = view.verdicts.find((one) => key(one) === id && one.month === month); return <td key={month}>{row ? <><VerdictWord word={row.word} /> <span className="hint">{row.valueText ?? ''}</span></> : '–'}</td>; })}
+            </tr>
+          ))}
+        </tbody>
       </table>
     </ScrollBox>
   );
@@ -146,17 +156,26 @@ function Issues({ view }: { view: ReportView }) {
           </table>
         </div>
       )}
-      {view.changes.length > 0 && (
-        <div className="scroll" role="region" aria-label="Changes since the last issue" tabIndex={0}>
-          <table className="tbl tbl-tight">
-            <caption>Since issue {view.issues.filter((one) => one.quarter === view.quarter).at(-1)?.issue}: the issued file stays as it was</caption>
-            <thead><tr><th scope="col">Number</th><th scope="col" className="r">Issued</th><th scope="col" className="r">Now</th></tr></thead>
-            <tbody>{view.changes.map((one) => <tr key={one.name}><th scope="row">{one.name}</th><td className="r">{Number.isFinite(one.issued) ? formatNumber(one.issued, 3) : 'none'}</td><td className="r font-semibold">{Number.isFinite(one.now) ? formatNumber(one.now, 3) : 'none'}</td></tr>)}</tbody>
-          </table>
-        </div>
-      )}
       {view.issues.filter((one) => one.quarter === view.quarter).map((one) => <p key={one.id} className="hint break-all">Issue {one.issue}, {formatInstant(one.signedAt)}, SHA-256 {one.fileSha256}</p>)}
     </div>
+  );
+}
+
+/** What an issued report would say differently now; the issued file stays as it was. */
+function Changes({ view }: { view: ReportView }) {
+  if (!view.changes.length) return null;
+  const decimals = (name: string) => (name.endsWith('m³') ? 0 : 3);
+  const value = (name: string, number: number) => (Number.isFinite(number) ? formatNumber(number, decimals(name)) : 'none');
+  return (
+    <Section title={`Since issue ${view.issues.filter((one) => one.quarter === view.quarter).at(-1)?.issue}`} aside="the issued file stays as it was">
+      <ScrollBox label="Changes since the last issue">
+        <table className="tbl tbl-tight">
+          <caption className="sr-only">Numbers that would be printed differently now</caption>
+          <thead><tr><th scope="col">Number</th><th scope="col" className="r">Issued</th><th scope="col" className="r">Now</th></tr></thead>
+          <tbody>{view.changes.map((one) => <tr key={one.name}><th scope="row">{one.name}</th><td className="r">{value(one.name, one.issued)}</td><td className="r font-semibold">{value(one.name, one.now)}</td></tr>)}</tbody>
+        </table>
+      </ScrollBox>
+    </Section>
   );
 }
 
@@ -170,17 +189,12 @@ export function ReportPage() {
       <PageHead title={`Report, ${quarterName(quarter)}`} sentence={query.data && stateSentence(query.data)} crumb={query.data && `Predicted by ${query.data.run.kind === 'frozen' ? `frozen run ${query.data.run.number}${query.data.run.isAccepted ? ', accepted' : ''}` : 'the working run'}.`} />
       <Viewed query={query}>
         {(view) => (
-          <TwoColumns
-            left={
-              <>
-                <Readiness view={view} />
-                <Section title="Leachate" aside="m³; ◌ estimated, ⊕ allocated in part"><VolumeTable view={view} /></Section>
-                {view.leakDetection.length > 0 && <Section title="Leak detection"><LeakTable view={view} /></Section>}
-                <Section title="Effluent against limits">{view.verdicts.length ? <VerdictTable view={view} /> : <p className="text-muted">No limit is in force in this quarter.</p>}<p className="hint mt-2">A computed pass is not a compliance determination. The permit and the laboratory’s report govern.</p></Section>
-              </>
-            }
-            right={<><Signing view={view} /><Issues view={view} /></>}
-          />
+          <>
+            <TwoColumns left={<><Readiness view={view} /><Changes view={view} /></>} right={<><Signing view={view} /><Issues view={view} /></>} />
+            <Section title="Leachate" aside="m³; ◌ estimated, ⊕ allocated in part"><VolumeTable view={view} /></Section>
+            {view.leakDetection.length > 0 && <Section title="Leak detection"><LeakTable view={view} /></Section>}
+            <Section title="Effluent against limits">{view.verdicts.length ? <VerdictTable view={view} /> : <p className="text-muted">No limit is in force in this quarter.</p>}<p className="hint mt-2">A computed pass is not a compliance determination. The permit and the laboratory’s report govern.</p></Section>
+          </>
         )}
       </Viewed>
     </>

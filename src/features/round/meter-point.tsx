@@ -80,7 +80,7 @@ export function MeterPoint({ point, round, isToday, onDone }: { point: RoundPoin
   return (
     <form className="grid gap-3" onSubmit={(event) => { event.preventDefault(); void send('none', point.done.some((one) => one.state === 'held') ? { supersedesId: point.done.find((one) => one.state === 'held')!.id, reason: 'Read again' } : {}); }}>
       <CounterField label={<>Register, in {unit.words}{multiplier !== 1 && <strong> × {multiplier}</strong>} <span className="hint font-normal">{register.digits} digits, {register.decimals === 0 ? 'no decimals' : `${register.decimals} decimals`}</span></>} unit={multiplier === 1 ? unit.label : `× ${multiplier} ${unit.label}`} value={text} onChange={setText} isWrong={state.kind === 'problem'} />
-      <div aria-live="polite" className="min-h-6">{check && <CheckLine point={point} check={check} />}{!check && point.last && <p className="hint">Last {point.last.text} on {formatLocal(point.last.at)}.{point.usual && ` Usual day: ${formatNumber(point.usual.lowM3, 0)} to ${formatNumber(point.usual.highM3, 0)} m³.`}</p>}</div>
+      <div aria-live="polite" className="min-h-6">{check && <CheckLine point={point} check={check} />}{!check && point.last && <p className="hint">Last {point.last.text} {volumeUnitsM3[point.register!.unit].label} on {formatLocal(point.last.at)}.{point.usual && ` Usual day: ${formatNumber(point.usual.lowM3, 0)} to ${formatNumber(point.usual.highM3, 0)} m³.`}</p>}</div>
       <ReadAt nowLocal={round.nowLocal} value={at} onChange={setAt} />
       <SaveLine state={state} />
       <button type="submit" className="btn btn-big" disabled={state.kind === 'saving'}>Save {point.code}</button>

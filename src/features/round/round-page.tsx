@@ -1,6 +1,7 @@
 import { useId, useState } from 'react';
 import { Link, useParams } from 'react-router';
 import { addDays, dayName, weekday } from '#shared/calendar/day.ts';
+import { volumeUnitsM3 } from '#shared/units/unit-factors.ts';
 import { notReadReasonNames } from '#shared/schemas/readings.ts';
 import type { RoundPointView, RoundView } from '#shared/views/round-view.ts';
 import { usePlace } from '../../app/place.ts';
@@ -13,6 +14,14 @@ import { LevelPoint, LoadOut, RainPoint } from './other-points.tsx';
 import { NotRead, SaveLine } from './point-parts.tsx';
 import { useSave } from './use-save.ts';
 
+/** Unit of what a point shows, as it stands beside the number. */
+function unitOf(point: RoundPointView): string {
+  if (point.kind === 'level') return 'm';
+  if (!point.register) return '';
+  const { unit, multiplier } = point.register;
+  return `${volumeUnitsM3[unit].label}${Number(multiplier) === 1 ? '' : ` × ${Number(multiplier)}`}`;
+}
+
 const stateOf = (point: RoundPointView) =>
   point.done.some((one) => one.state !== 'stored') ? 'ask' : point.done.length ? 'done' : point.notRead ? 'skipped' : 'open';
 
@@ -23,7 +32,7 @@ function PointValue({ point }: { point: RoundPointView }) {
   if (last) {
     return (
       <span className="text-right leading-tight">
-        <span className="block font-medium">{last.text}</span>
+        <span className="block font-medium">{last.text} {point.kind === 'meter' && unitOf(point)}</span>
         <span className="hint">{last.state === 'held' ? 'held, your answer' : last.state === 'dispute' ? 'two readings differ' : `${formatLocal(last.at).split(' ').at(-1)}, ${last.by}`}</span>
       </span>
     );
@@ -42,7 +51,7 @@ function PointRow({ point, round, isOpen, onOpen, onDone }: { point: RoundPointV
     <li className={`border-b border-line last:border-0 ${isOpen ? 'outline-2 outline-primary -outline-offset-1' : ''}`}>
       <button type="button" className="w-full grid grid-cols-[32px_minmax(0,1fr)_auto] gap-3 items-center min-h-16 px-3 md:px-4 py-2 text-left cursor-pointer" aria-expanded={isOpen} aria-controls={panelId} onClick={onOpen}>
         <span aria-hidden className={`size-7 rounded-full border grid place-items-center text-sm font-semibold ${isOpen ? 'bg-primary border-primary text-white' : circle[state]}`}>{point.position}</span>
-        <span className="leading-tight"><span className="font-semibold block text-[18px] md:text-base">{point.name}</span><span className="hint">{point.last ? `last ${point.last.text} on ${formatLocal(point.last.at)}` : 'never read'}{point.everyDays > 1 ? `, every ${point.everyDays} days` : ''}</span></span>
+        <span className="leading-tight"><span className="font-semibold block text-[18px] md:text-base">{point.name}</span><span className="hint">{point.last ? `last ${point.last.text} ${unitOf(point)} on ${formatLocal(point.last.at)}` : 'never read'}{point.everyDays > 1 ? `, every ${point.everyDays} days` : ''}</span></span>
         <PointValue point={point} />
       </button>
       {isOpen && (

@@ -29,7 +29,7 @@ function CoverTypeForm({ onDone }: { onDone: () => void }) {
 function Confirm({ id, name }: { id: string; name: string }) {
   const { site } = usePlace();
   const confirm = useWrite<Record<string, never>>(site.id, `/cover-types/${id}/confirmation`);
-  return <button type="button" className="link block" aria-label={`Confirm the values of ${name}`} onClick={() => confirm.mutate({})}>Confirm for this site</button>;
+  return <button type="button" className="link block" aria-label={`Confirm for this site: ${name}`} onClick={() => confirm.mutate({})}>Confirm for this site</button>;
 }
 
 /** Cover types: four properties, each with its source; templates until an engineer confirms them. */

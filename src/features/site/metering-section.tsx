@@ -2,7 +2,7 @@ import { useFieldArray } from 'react-hook-form';
 import { dayName } from '#shared/calendar/day.ts';
 import { meterEventInput, type MeterEventInput } from '#shared/schemas/readings.ts';
 import { meterInput, placeInput, storeInput, sumpInput, type MeterInput, type StoreInput, type SumpInput } from '#shared/schemas/sites.ts';
-import { volumeUnits, volumeUnitsM3 } from '#shared/units/unit-factors.ts';
+import { volumeUnits, volumeUnitsM3, type VolumeUnit } from '#shared/units/unit-factors.ts';
 import { usePlace } from '../../app/place.ts';
 import { CheckField, ChoiceField, RecordForm, TextField } from '../../components/form.tsx';
 import { ScrollBox, Section } from '../../components/page.tsx';
@@ -131,8 +131,8 @@ function MeterTable({ view }: SectionProps) {
         <tbody>
           {view.meters.map((meter) => (
             <tr key={meter.id}>
-              <th scope="row">{meter.code} {meter.name}<span className="hint block">since {dayName(meter.installedOn)}</span></th><td>{place(meter.fromPlaceId)} → {place(meter.toPlaceId)}</td><td>{meter.digits} digits{meter.decimals ? `, ${meter.decimals} after the point` : ''}, {meter.unit}{Number(meter.multiplier) === 1 ? '' : ` × ${meter.multiplier}`}</td><td className="r">{meter.rateM3PerDayMax}</td>
-              <td>{view.meterEvents.filter((event) => event.meterId === meter.id).map((event) => <span key={event.id} className="block">{dayName(event.siteDay)}: {eventNames[event.kind as keyof typeof eventNames]}{event.registerBefore ? `, ${Number(event.registerBefore)} → ${Number(event.registerAfter)}` : ''}{event.unitAfter ? ` ${event.unitAfter}` : ''}{event.multiplierAfter ? ` × ${Number(event.multiplierAfter)}` : ''}</span>)}</td>
+              <th scope="row">{meter.code} {meter.name}<span className="hint block">since {dayName(meter.installedOn)}</span></th><td>{place(meter.fromPlaceId)} → {place(meter.toPlaceId)}</td><td>{meter.digits} digits{meter.decimals ? `, ${meter.decimals} after the point` : ''}, {volumeUnitsM3[meter.unit as VolumeUnit].label}{Number(meter.multiplier) === 1 ? '' : ` × ${meter.multiplier}`}</td><td className="r">{meter.rateM3PerDayMax}</td>
+              <td>{view.meterEvents.filter((event) => event.meterId === meter.id).map((event) => <span key={event.id} className="block">{dayName(event.siteDay)}: {eventNames[event.kind as keyof typeof eventNames]}{event.registerBefore ? `, ${Number(event.registerBefore)} → ${Number(event.registerAfter)}` : ''}{event.unitAfter ? ` ${volumeUnitsM3[event.unitAfter as VolumeUnit].label}` : ''}{event.multiplierAfter ? ` × ${Number(event.multiplierAfter)}` : ''}</span>)}</td>
             </tr>
           ))}
         </tbody>

@@ -63,7 +63,7 @@ export function TrailPage() {
             <tbody>
               {rows.map((row) => (
                 <tr key={row.id}><td className="r text-muted">{row.sequence}</td><td className="whitespace-nowrap">{formatInstant(row.at)}</td><td>{row.by}</td>
-                  <td className="min-w-[260px]">{row.sentence}{row.reason && <span className="hint block">Reason: {row.reason}</span>}<Values row={row} />{!subject && <Link className="text-sm" to={`?subject=${row.subjectId}`} aria-label={`All changes of this record: ${row.sentence}`}>all changes of this record</Link>}</td></tr>
+                  <td className="min-w-[260px]">{row.sentence}{row.reason && <span className="hint block">Reason: {row.reason}</span>}<div className="flex flex-wrap gap-x-5"><Values row={row} />{!subject && <Link to={`?subject=${row.subjectId}`} aria-label={`All changes of this record: ${row.sentence}`}>all changes of this record</Link>}</div></td></tr>
               ))}
             </tbody>
           </table>
