@@ -29,7 +29,7 @@ export async function buildClient(env: Env): Promise<void> {
   const marker = join(root, 'dist', 'client', 'built-from.txt');
   const wanted = sourceHash();
   if (existsSync(marker) && readFileSync(marker, 'utf8') === wanted) return;
-  console.log('Building the pages …');
+  process.stdout.write('Building the pages …\n');
   const { build } = await import('vite');
   await build({ root, logLevel: 'warn' });
   writeFileSync(marker, wanted);

@@ -1,4 +1,4 @@
-import { Decimal } from 'decimal.js';
+import type { Decimal } from 'decimal.js';
 import { registerModulus, registerVolumeM3, type RegisterSpec } from './register.ts';
 
 export interface ReadingCheckInput {

@@ -1,5 +1,5 @@
 import { boolean, index, integer, jsonb, pgTable, text, uuid } from 'drizzle-orm/pg-core';
-import { belongsTo, day, endsAfterStart, exact, instant, monthCheck, notNegative, owned, ownedKey } from './columns.ts';
+import { belongsTo, day, endsAfterStart, instant, monthCheck, notNegative, owned, ownedKey } from './columns.ts';
 import { analytes, samplePoints } from './lab.ts';
 import { places } from './metering.ts';
 import { sites } from './sites.ts';

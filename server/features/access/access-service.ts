@@ -1,11 +1,13 @@
 import { createHash, randomBytes } from 'node:crypto';
 import bcrypt from 'bcryptjs';
 import type { Role } from '#shared/permissions.ts';
+import type { MeView } from '#shared/schemas/access.ts';
 import { Problem } from '#shared/problems.ts';
 import { withOrganisation, type Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
 import { idleLimitMs, type SessionClaims } from '../../http/session-cookie.ts';
 import { siteExists } from '../sites/site-repository.ts';
+import { listSites } from '../sites/site-service.ts';
 import * as repository from './access-repository.ts';
 
 const passwordRounds = 12;
@@ -147,4 +149,13 @@ export async function startFirstRun(deps: Dependencies, input: { organisationNam
   );
   if (!made) throw new Problem('already-done', 'This installation already has an organisation. Ask its administrator for an invitation.');
   return openSession(deps, ids.personId, ids.organisationId, device);
+}
+
+/** Who is signed in, at which sites, with which roles. */
+export async function readMe(tx: Transaction, context: Context, deps: Dependencies): Promise<MeView> {
+  const session = (await repository.findSession(tx, context.sessionId))!;
+  return {
+    personId: context.personId, displayName: session.person.displayName, email: session.person.email, organisationId: context.organisationId, organisationName: session.organisation.name, roles: context.roles,
+    sites: await listSites(tx, context, deps),
+  };
 }

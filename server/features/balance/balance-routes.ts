@@ -6,20 +6,17 @@ import { recordId } from '#shared/schemas/text.ts';
 import { tryBalance } from '#shared/water-balance/try-balance.ts';
 import { route, type Route } from '../../http/route.ts';
 import { confirmClimate, readClimateImport, remapClimate, undoClimate, uploadClimate } from '../climate/climate-import-service.ts';
-import { chooseForGap, listSiteClimate } from '../climate/climate-service.ts';
+import { chooseForGap, readClimate } from '../climate/climate-service.ts';
 import { readCompare, writeNote } from '../compare/compare-service.ts';
-import { listImports } from '../imports/import-repository.ts';
-import { siteOf } from '../sites/site-service.ts';
-import { listParameterSets } from './balance-repository.ts';
 import { readBalance, readWorking } from './balance-view.ts';
-import { acceptRun, createParameterSet, currentParameters, freezeRun, recheckRun } from './run-service.ts';
+import { acceptRun, createParameterSet, freezeRun, readParameterSets, recheckRun } from './run-service.ts';
 
 export const balanceRoutes: Route[] = [
   route({ method: 'get', path: '/sites/:siteId/balance/:month', permission: 'read:record', params: siteMonthParams, query: z.object({ run: recordId.optional() }), handle: ({ tx, context, deps, params, query }) => readBalance(tx, context, deps, params.month, query.run) }),
   route({ method: 'get', path: '/sites/:siteId/balance-steps/:id/:term', permission: 'read:record', params: z.object({ siteId: recordId, id: recordId, term: z.string() }), handle: ({ tx, context, deps, params }) => readWorking(tx, context, deps, params.id, params.term) }),
   route({
     method: 'get', path: '/sites/:siteId/parameter-sets', permission: 'read:record', params: siteParams,
-    handle: async ({ tx, context, deps }) => ({ current: await currentParameters(tx, context, deps), sets: await listParameterSets(tx, siteOf(context)) }),
+    handle: ({ tx, context, deps }) => readParameterSets(tx, context, deps),
   }),
   route({ method: 'post', path: '/sites/:siteId/parameter-sets', permission: 'change:parameters', params: siteParams, body: parameterSetInput, handle: ({ tx, context, deps, body }) => createParameterSet(tx, context, deps, body) }),
   route({ method: 'post', path: '/sites/:siteId/balance-runs', permission: 'freeze:run', params: siteParams, body: freezeInput, handle: ({ tx, context, deps, body }) => freezeRun(tx, context, deps, body) }),
@@ -31,17 +28,7 @@ export const balanceRoutes: Route[] = [
     handle: ({ tx, context, deps, params, query }) => readCompare(tx, context, deps, query.cell ?? '', params.month, query.months),
   }),
   route({ method: 'post', path: '/sites/:siteId/compare-notes', permission: 'note:comparison', params: siteParams, body: compareNoteInput, handle: ({ tx, context, deps, body }) => writeNote(tx, context, deps, body) }),
-  route({
-    method: 'get', path: '/sites/:siteId/climate', permission: 'read:record', params: siteParams,
-    handle: async ({ tx, context }) => {
-      const climate = await listSiteClimate(tx, siteOf(context));
-      const uploads = await listImports(tx, siteOf(context), 'climate', null);
-      return {
-        months: climate.map(({ settled, dailyPrecipitationMm: _daily, ...row }) => ({ ...row, isSettled: settled !== null })),
-        uploads: uploads.map((row) => ({ id: row.id, fileName: row.fileName, uploadedAt: row.uploadedAt, counts: row.counts as { read: number; held: number }, confirmedAt: row.confirmedAt, undoneAt: row.undoneAt })),
-      };
-    },
-  }),
+  route({ method: 'get', path: '/sites/:siteId/climate', permission: 'read:record', params: siteParams, handle: ({ tx, context }) => readClimate(tx, context) }),
   route({ method: 'post', path: '/sites/:siteId/climate-imports', permission: 'import:climate', params: siteParams, body: climateUploadInput, takesFile: true, handle: ({ tx, context, deps, body, file }) => uploadClimate(tx, context, deps, body, file) }),
   route({ method: 'get', path: '/sites/:siteId/climate-imports/:id', permission: 'read:record', params: siteRecordParams, handle: ({ tx, context, params }) => readClimateImport(tx, context, params.id) }),
   route({ method: 'post', path: '/sites/:siteId/climate-imports/:id/mapping', permission: 'import:climate', params: siteRecordParams, body: climateMappingInput, handle: ({ tx, context, deps, params, body }) => remapClimate(tx, context, deps, params.id, body) }),

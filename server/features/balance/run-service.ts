@@ -133,3 +133,8 @@ export async function createParameterSet(tx: Transaction, context: Context, deps
   await recordChange(tx, context, { action: 'create', subjectType: 'parameter-sets', subjectId: input.id, sentence: `Parameter set ${input.name}, version ${version}, is the current one.`, before: before.values, after: input.values });
   return { id: input.id, version };
 }
+
+/** The set in force and every earlier one, newest first. */
+export async function readParameterSets(tx: Transaction, context: Context, deps: Dependencies) {
+  return { current: await currentParameters(tx, context, deps), sets: await repository.listParameterSets(tx, siteOf(context)) };
+}

@@ -6,9 +6,11 @@ import { monthFromRecord, settleGap, summariseMonth, type ClimateValues, type Mo
 import { fieldProblem } from '#shared/problems.ts';
 import type { gapChoiceInput } from '#shared/schemas/climate.ts';
 import type { MonthClimate } from '#shared/water-balance/engine-input.ts';
+import type { ClimateView } from '#shared/views/site-view.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context } from '../../http/route.ts';
+import { listImports } from '../imports/import-repository.ts';
 import { siteOf } from '../sites/site-service.ts';
 import * as repository from './climate-repository.ts';
 
@@ -120,4 +122,14 @@ export async function chooseForGap(tx: Transaction, context: Context, input: z.o
   await repository.insertGapChoice(tx, { organisationId: context.organisationId, id: input.id, recordedById: context.personId, siteId, month: input.month, variable: 'precipitation', choice: input.choice, otherStationId: input.otherStationId ?? null, reason: input.reason });
   await recordChange(tx, context, { action: 'choose', subjectType: 'climate-months', subjectId: input.id, sentence: `Missing climate of ${input.month}: ${input.choice.replaceAll('-', ' ')}.`, reason: input.reason, after: input });
   return { id: input.id };
+}
+
+/** Climate of the site by month, with what is missing, and the uploads it came from. */
+export async function readClimate(tx: Transaction, context: Context): Promise<ClimateView> {
+  const climate = await listSiteClimate(tx, siteOf(context));
+  const uploads = await listImports(tx, siteOf(context), 'climate', null);
+  return {
+    months: climate.map(({ settled, dailyPrecipitationMm: _daily, ...row }) => ({ ...row, isSettled: settled !== null })),
+    uploads: uploads.map((row) => ({ id: row.id, fileName: row.fileName, uploadedAt: row.uploadedAt, counts: row.counts as { read: number; held: number }, confirmedAt: row.confirmedAt, undoneAt: row.undoneAt })),
+  };
 }

@@ -2,6 +2,7 @@ import type * as z from 'zod';
 import { roleNames } from '#shared/permissions.ts';
 import { Problem, fieldProblem } from '#shared/problems.ts';
 import type { invitationInput } from '#shared/schemas/access.ts';
+import type { PeopleView } from '#shared/views/site-view.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
@@ -9,9 +10,10 @@ import { sendAccessLink } from '../access/access-service.ts';
 import { siteOf } from '../sites/site-service.ts';
 import * as repository from './people-repository.ts';
 
-export async function listPeople(tx: Transaction, context: Context) {
+/** People with a role at the site, and the laboratories an invitation can name. */
+export async function readPeople(tx: Transaction, context: Context): Promise<PeopleView> {
   const rows = await repository.listPeopleOf(tx, siteOf(context));
-  return rows.map(({ passwordHash, ...row }) => ({ ...row, hasPassword: passwordHash !== null }));
+  return { people: rows.map(({ passwordHash, ...row }) => ({ ...row, hasPassword: passwordHash !== null })), laboratories: await repository.listLaboratories(tx) };
 }
 
 /** Gives a person a role at this site and sends them a link to choose a password. */

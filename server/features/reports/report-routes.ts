@@ -9,8 +9,7 @@ import { readEntrySource } from '../ledger/entry-source.ts';
 import { readLedger } from '../ledger/ledger-view.ts';
 import { readMonth } from '../month/month-view.ts';
 import { readStrip } from '../month/strip-service.ts';
-import { listLaboratories } from '../people/people-repository.ts';
-import { endRole, invite, listPeople } from '../people/people-service.ts';
+import { endRole, invite, readPeople } from '../people/people-service.ts';
 import { readTrail, readTrailCheck } from '../trail/trail-view.ts';
 import { downloadReport, previewReport, readReport, signReport } from './report-service.ts';
 
@@ -27,7 +26,7 @@ export const reportRoutes: Route[] = [
   route({ method: 'get', path: '/sites/:siteId/report-files/:id', permission: 'read:record', params: siteRecordParams, handle: ({ tx, context, deps, params }) => downloadReport(tx, context, deps, params.id) }),
   route({ method: 'get', path: '/sites/:siteId/trail', permission: 'read:trail', params: siteParams, query: z.object({ before: z.coerce.number().int().optional(), subject: recordId.optional() }), handle: ({ tx, context, query }) => readTrail(tx, context, query) }),
   route({ method: 'get', path: '/sites/:siteId/trail-check', permission: 'read:trail', params: siteParams, handle: ({ tx, context }) => readTrailCheck(tx, context) }),
-  route({ method: 'get', path: '/sites/:siteId/people', permission: 'read:people', params: siteParams, handle: async ({ tx, context }) => ({ people: await listPeople(tx, context), laboratories: await listLaboratories(tx) }) }),
+  route({ method: 'get', path: '/sites/:siteId/people', permission: 'read:people', params: siteParams, handle: ({ tx, context }) => readPeople(tx, context) }),
   route({ method: 'post', path: '/sites/:siteId/people', permission: 'manage:people', params: siteParams, body: invitationInput, handle: ({ tx, context, deps, body }) => invite(tx, context, deps, body) }),
   route({ method: 'post', path: '/sites/:siteId/people/:id/end', permission: 'manage:people', params: siteRecordParams, handle: ({ tx, context, deps, params }) => endRole(tx, context, deps, params.id) }),
 ];

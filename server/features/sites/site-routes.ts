@@ -1,32 +1,16 @@
-import type { MeView } from '#shared/schemas/access.ts';
 import { siteParams, siteRecordParams } from '#shared/schemas/params.ts';
 import { cellInput, coverChangeInput, coverTypeInput, meterInput, placeInput, siteInput, siteSettingsInput, storeInput, sumpInput, wasteInput } from '#shared/schemas/sites.ts';
 import { meterEventInput } from '#shared/schemas/readings.ts';
 import { route, type Route } from '../../http/route.ts';
-import { findSession } from '../access/access-repository.ts';
+import { readMe } from '../access/access-service.ts';
 import { addWaste, changeCover, confirmCoverType, createCell, createCoverType } from './cell-service.ts';
 import { addMeterEvent, createMeter, createPlace, createStore, createSump } from './metering-service.ts';
-import { createSite, listSites, readSite, settingsTag, siteOf, updateSettings } from './site-service.ts';
+import { createSite, readSiteStructure, updateSettings } from './site-service.ts';
 
 export const siteRoutes: Route[] = [
-  route({
-    method: 'get', path: '/me', permission: 'signed-in',
-    handle: async ({ tx, context, deps }): Promise<MeView> => {
-      const session = (await findSession(tx, context.sessionId))!;
-      return {
-        personId: context.personId, displayName: session.person.displayName, email: session.person.email, organisationId: context.organisationId, organisationName: session.organisation.name, roles: context.roles,
-        sites: await listSites(tx, context, deps),
-      };
-    },
-  }),
+  route({ method: 'get', path: '/me', permission: 'signed-in', handle: ({ tx, context, deps }) => readMe(tx, context, deps) }),
   route({ method: 'post', path: '/sites', permission: 'create:site', body: siteInput, handle: ({ tx, context, deps, body }) => createSite(tx, context, deps, body) }),
-  route({
-    method: 'get', path: '/sites/:siteId', permission: 'read:site', params: siteParams,
-    handle: async ({ tx, context }) => {
-      const record = await readSite(tx, siteOf(context));
-      return { ...record, settingsTag: settingsTag(record.site) };
-    },
-  }),
+  route({ method: 'get', path: '/sites/:siteId', permission: 'read:site', params: siteParams, handle: ({ tx, context }) => readSiteStructure(tx, context) }),
   route({ method: 'put', path: '/sites/:siteId', permission: 'change:site', params: siteParams, body: siteSettingsInput, handle: ({ tx, context, body, request }) => updateSettings(tx, context, body, request.get('if-match')) }),
   route({ method: 'post', path: '/sites/:siteId/cells', permission: 'change:site', params: siteParams, body: cellInput, handle: ({ tx, context, deps, body }) => createCell(tx, context, deps, body) }),
   route({ method: 'post', path: '/sites/:siteId/cover-periods', permission: 'change:site', params: siteParams, body: coverChangeInput, handle: ({ tx, context, deps, body }) => changeCover(tx, context, deps, body) }),

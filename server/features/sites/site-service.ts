@@ -82,6 +82,12 @@ export type SiteRecord = Awaited<ReturnType<typeof readSite>>;
 export const settingsTag = (site: { name: string; displayUnits: string; reportDueDays: number; certificationText: string | null }): string =>
   `"${sha256Of(JSON.stringify([site.name, site.displayUnits, site.reportDueDays, site.certificationText])).slice(0, 16)}"`;
 
+/** The site as its page shows it, with the tag that a change of settings must name. */
+export async function readSiteStructure(tx: Transaction, context: Context) {
+  const record = await readSite(tx, siteOf(context));
+  return { ...record, settingsTag: settingsTag(record.site) };
+}
+
 /** Changes settings when nobody else did since they were read. */
 export async function updateSettings(tx: Transaction, context: Context, input: z.output<typeof siteSettingsInput>, ifMatch: string | undefined) {
   const siteId = siteOf(context);

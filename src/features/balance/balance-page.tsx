@@ -53,11 +53,11 @@ function HeadLine({ group }: { group: BalanceGroup }) {
 
 /** Signed bars from one zero line: each term begins where the last one ended. */
 function SignedBars({ group }: { group: BalanceGroup }) {
-  let at = 0;
-  const bars = headTerms(group).map((term) => {
-    const from = at;
-    at += term.sign === '+' ? term.valueM3 : -term.valueM3;
-    return { ...term, from, to: at };
+  const terms = headTerms(group);
+  const signedOf = (term: (typeof terms)[number]) => (term.sign === '+' ? term.valueM3 : -term.valueM3);
+  const bars = terms.map((term, index) => {
+    const from = terms.slice(0, index).reduce((sum, one) => sum + signedOf(one), 0);
+    return { ...term, from, to: from + signedOf(term) };
   });
   const ends = [...bars.map((bar) => Math.max(bar.from, bar.to)), group.headLine.leachateM3, group.pumpedM3 ?? 0, 1];
   const low = Math.min(0, ...bars.map((bar) => Math.min(bar.from, bar.to)));
@@ -73,12 +73,10 @@ function SignedBars({ group }: { group: BalanceGroup }) {
           {rows.map((row) => (
             <tr key={row.name} className={row.isDashed ? 'total' : ''}>
               <th scope="row">{row.name}</th>
-              <td className="r">{row.name === 'Leachate, predicted' || row.name === 'Pumped, metered' ? formatM3(row.shown) : formatM3(row.shown)}</td>
+              <td className="r">{formatM3(row.shown)}</td>
               <td className="r">{group.areaM2 ? formatMm((row.shown / group.areaM2) * 1000) : '–'}</td>
               <td aria-hidden>
-                <div className="relative h-5 border-l border-ink" style={{ marginLeft: scale(0) }}>
-                  <div className="absolute h-5" style={{ left: 0, right: 0 }} />
-                </div>
+                <div className="h-5 border-l border-ink" style={{ marginLeft: scale(0) }} />
                 <div className="relative h-5 -mt-5">
                   <div className="absolute h-5" style={{ left: scale(Math.min(row.from, row.to)), width: `calc(${scale(Math.max(row.from, row.to))} - ${scale(Math.min(row.from, row.to))})`, background: row.isDashed ? 'transparent' : row.colour, border: row.isDashed ? '2px dashed var(--color-s-leachate)' : undefined }} />
                 </div>

@@ -28,7 +28,7 @@ function ClockBar({ seenAt, clock, now }: { seenAt: string; clock: Clock; now: s
     <div className="max-w-[480px]">
       <p className="font-semibold">{clock.step}: {leftWords(clock.dueAt, now)}</p>
       <div aria-hidden className="h-2.5 bg-line mt-1"><div className="h-2.5 bg-error" style={{ width: `${share * 100}%` }} /></div>
-      <p className="hint flex justify-between"><span>seen {formatInstant(seenAt)}</span><span>due {formatInstant(clock.dueAt)}</span></p>
+      <p className="hint flex flex-wrap justify-between gap-x-3"><span>seen {formatInstant(seenAt)}</span><span>due {formatInstant(clock.dueAt)}</span></p>
     </div>
   );
 }

@@ -32,14 +32,14 @@ function VerdictTable({ rows, onOpen }: { rows: readonly Judged[]; onOpen: (row:
     <ScrollBox label={`Verdicts at ${rows[0]!.pointCode}`}>
       <table className="tbl">
         <caption className="sr-only">Verdicts at {rows[0]!.pointCode}</caption>
-        <thead><tr><th scope="col">Parameter</th><th scope="col" className="r">Limit</th><th aria-hidden><span className="flex justify-between w-[230px] pl-2"><span>nothing</span><span className="text-s-limit">the limit</span></span></th><th scope="col">Verdict</th></tr></thead>
+        <thead><tr><th scope="col">Parameter</th><th scope="col" className="r">Limit</th><th aria-hidden className="hidden sm:table-cell"><span className="flex justify-between w-[230px] pl-2"><span>nothing</span><span className="text-s-limit">the limit</span></span></th><th scope="col">Verdict</th></tr></thead>
         <tbody>
           {rows.map((row) => (
             <tr key={row.limit.id + row.month}>
               <th scope="row">{row.analyteName}{row.limit.fraction && ` ${row.limit.fraction}`}{row.limit.quantity === 'load' && ', load'}<span className="hint block">{statisticNames[row.limit.statistic as 'range']}, {monthName(row.month)}{!row.limit.confirmedAt && <> <Template /></>}</span></th>
               <td className="r">{row.limit.statistic === 'range' ? `${row.limit.lowText} to ${row.limit.highText}` : row.limit.valueText}<span className="hint block">{row.limit.unit}</span></td>
-              <td className="!py-0 !align-middle"><ShareTrack verdict={row.verdict} /></td>
-              <td className="min-w-[220px]"><VerdictWord word={row.verdict.word} /><span className="hint block">{row.verdict.sentence} <button type="button" className="link" aria-label={`Working: ${row.analyteName}, ${statisticNames[row.limit.statistic as 'range']}, ${monthName(row.month)}`} onClick={() => onOpen(row)}>Working</button></span></td>
+              <td className="!py-0 !align-middle hidden sm:table-cell"><ShareTrack verdict={row.verdict} /></td>
+              <td className="sm:min-w-[220px]"><VerdictWord word={row.verdict.word} /><span className="hint block">{row.verdict.sentence} <button type="button" className="link" aria-label={`Working: ${row.analyteName}, ${statisticNames[row.limit.statistic as 'range']}, ${monthName(row.month)}`} onClick={() => onOpen(row)}>Working</button></span></td>
             </tr>
           ))}
         </tbody>

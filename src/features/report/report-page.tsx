@@ -117,7 +117,7 @@ function Signing({ view }: { view: ReportView }) {
   return (
     <div className="sheet pad grid gap-3">
       <h2>Due {dayName(view.dueOn)}</h2>
-      <p>{view.due}</p>
+      <p>{own.length ? `Issue 0 was signed on ${dayName(own[0]!.signedAt.slice(0, 10))}.` : view.due}</p>
       <h3>Signing</h3>
       {view.certification ? <p className="hint">“{view.certification}”</p> : <p>The words of the certification are not entered yet. They are the permit’s, entered under <Link to={`/sites/${site.slug}/site#settings`}>Site, settings</Link>; nothing is worded by the program.</p>}
       {isCurrent ? <p className="hint">Signed. A new issue is prepared when a number changes.</p> : stops ? <p className="hint">The site manager can sign when the lines marked “Stops” are settled. Signing locks the three months.</p> : !can('sign:report') ? <p className="hint">The site manager signs. Signing locks the three months.</p> : view.certification && <p><button type="button" className="btn" onClick={() => setIsOpen(true)}>{own.length ? `Prepare issue ${own.length}` : 'Sign and issue'}</button></p>}

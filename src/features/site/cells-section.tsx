@@ -64,7 +64,7 @@ function CoverForm({ view, plotId, onDone }: SectionProps & { plotId: string; on
   );
 }
 
-function WasteForm({ view, cellId, onDone }: SectionProps & { cellId: string; onDone: () => void }) {
+function WasteForm({ cellId, onDone }: { cellId: string; onDone: () => void }) {
   const { site } = usePlace();
   const save = useWrite<WasteInput>(site.id, '/waste-placed');
   return (
@@ -108,7 +108,7 @@ export function CellsSection({ view }: SectionProps) {
           const waste = view.wastePlaced.filter((one) => one.cellId === cell.id);
           return (
             <div key={cell.id}>
-              <p className="mb-2 flex flex-wrap gap-x-4"><strong>{cell.code} {cell.name}</strong><span>{area && `${m2(area.linedAreaM2)} m² lined`}, opened {dayName(cell.openedOn)}{cell.closedOn && `, closed ${dayName(cell.closedOn)}`}</span><span className="text-muted">{waste.length ? `${formatNumber(waste.reduce((sum, one) => sum + Number(one.massT), 0))} t placed in ${waste.length} months` : 'no waste recorded'}</span>{can('change:site') && <FormLink label="Record waste" title={`Record waste, ${cell.code}`}>{(onDone) => <WasteForm view={view} cellId={cell.id} onDone={onDone} />}</FormLink>}</p>
+              <p className="mb-2 flex flex-wrap gap-x-4"><strong>{cell.code} {cell.name}</strong><span>{area && `${m2(area.linedAreaM2)} m² lined`}, opened {dayName(cell.openedOn)}{cell.closedOn && `, closed ${dayName(cell.closedOn)}`}</span><span className="text-muted">{waste.length ? `${formatNumber(waste.reduce((sum, one) => sum + Number(one.massT), 0))} t placed in ${waste.length} months` : 'no waste recorded'}</span>{can('change:site') && <FormLink label="Record waste" title={`Record waste, ${cell.code}`}>{(onDone) => <WasteForm cellId={cell.id} onDone={onDone} />}</FormLink>}</p>
               <ScrollBox label={`Plots of ${cell.code}`}>
                 <table className="tbl tbl-tight">
                   <caption className="sr-only">Plots of {cell.code} {cell.name} and their covers</caption>

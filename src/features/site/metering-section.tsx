@@ -7,7 +7,7 @@ import { usePlace } from '../../app/place.ts';
 import { CheckField, ChoiceField, RecordForm, TextField } from '../../components/form.tsx';
 import { ScrollBox, Section } from '../../components/page.tsx';
 import { Empty } from '../../components/state.tsx';
-import { formatLocal, formatNumber } from '../../lib/format-quantity.ts';
+import { formatNumber } from '../../lib/format-quantity.ts';
 import { newId } from '../../lib/new-id.ts';
 import { useWrite } from '../../lib/record.ts';
 import { cellName, FormLink, optionsOf, type SectionProps } from './site-parts.tsx';
