@@ -74,7 +74,7 @@ export function createSiteDays(rules: readonly SiteDayRule[]): SiteDays {
       }
       const isMissing = later.toPlainDateTime().toString().slice(0, 16) !== localTime.slice(0, 16);
       return isMissing
-        ? { kind: 'missing-hour', firstInstantAfter: later.toInstant().toString() }
+        ? { kind: 'missing-hour', firstInstantAfter: (earlier.getTimeZoneTransition('next') ?? later).toInstant().toString() }
         : { kind: 'repeated-hour', earlier: earlier.toInstant().toString(), later: later.toInstant().toString() };
     },
   };

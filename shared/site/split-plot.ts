@@ -1,5 +1,5 @@
 import { Decimal } from 'decimal.js';
-import type { Day } from '../calendar/day.ts';
+import { dayName, type Day } from '../calendar/day.ts';
 
 export interface PlotSplit {
   /** Areas of the covered part and of the rest; the rest is null when the whole plot was covered. */
@@ -13,8 +13,8 @@ export interface PlotSplit {
  */
 export function splitPlot(plot: { areaM2: string; fromOn: Day; toOn: Day | null; name: string }, change: { areaM2: string; onDay: Day }): PlotSplit | { refused: string } {
   if (change.onDay < plot.fromOn || (plot.toOn !== null && change.onDay >= plot.toOn)) {
-    const until = plot.toOn ? ` and ended on ${plot.toOn}` : '';
-    return { refused: `Plot ${plot.name} began on ${plot.fromOn}${until}. Choose a day in that time, or the plot that was live on ${change.onDay}.` };
+    const until = plot.toOn ? ` and ended on ${dayName(plot.toOn)}` : '';
+    return { refused: `Plot ${plot.name} began on ${dayName(plot.fromOn)}${until}. Choose a day in that time, or the plot that was live on ${dayName(change.onDay)}.` };
   }
   const rest = new Decimal(plot.areaM2).minus(change.areaM2);
   if (rest.lt(0)) {

@@ -1,5 +1,5 @@
 import { dayOfYear, monthDays } from '../calendar/day.ts';
-import { daysInMonth, monthParts, type Month } from '../calendar/month.ts';
+import { monthName, daysInMonth, monthParts, type Month } from '../calendar/month.ts';
 import type { BalanceParameters, MonthClimate } from './engine-input.ts';
 import { hargreavesMmPerDay } from './hargreaves.ts';
 import { daylightHours, declinationRad, extraterrestrialRadiation } from './solar-geometry.ts';
@@ -33,15 +33,15 @@ export class PetMissing extends Error {}
 export function referencePetMm(row: MonthClimate, latitudeDeg: number, parameters: Pick<BalanceParameters, 'petMethod' | 'hotMonths' | 'petFactor'>, heatIndex: number | null): number {
   const dayCount = daysInMonth(row.month);
   if (parameters.petMethod === 'given') {
-    if (row.petMm === null) throw new PetMissing(`${row.month} has no given PET. Upload it, or choose another method.`);
+    if (row.petMm === null) throw new PetMissing(`${monthName(row.month)} has no given PET. Upload it, or choose another method.`);
     return row.petMm * parameters.petFactor;
   }
   if (parameters.petMethod === 'hargreaves') {
-    if (row.tMinC === null || row.tMaxC === null) throw new PetMissing(`${row.month} has no minimum and maximum temperature, which Hargreaves–Samani needs.`);
+    if (row.tMinC === null || row.tMaxC === null) throw new PetMissing(`${monthName(row.month)} has no minimum and maximum temperature, which Hargreaves–Samani needs.`);
     const radiationMjPerM2Day = monthlyRadiation(latitudeDeg, row.month);
     return hargreavesMmPerDay({ tMinC: row.tMinC, tMaxC: row.tMaxC, radiationMjPerM2Day }) * dayCount * parameters.petFactor;
   }
-  if (row.tMeanC === null) throw new PetMissing(`${row.month} has no mean temperature, which Thornthwaite needs.`);
+  if (row.tMeanC === null) throw new PetMissing(`${monthName(row.month)} has no mean temperature, which Thornthwaite needs.`);
   if (heatIndex === null) throw new PetMissing('Thornthwaite needs every month of the year at least once in the record for its heat index.');
   const middle = declinationRad(dayOfYear(`${row.month}-15`));
   return thornthwaiteMm({ tMeanC: row.tMeanC, heatIndex, daylightHours: daylightHours(latitudeDeg, middle), dayCount, hotMonths: parameters.hotMonths }) * parameters.petFactor;

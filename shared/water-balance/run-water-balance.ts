@@ -1,4 +1,4 @@
-import { daysInMonth, monthParts, type Month } from '../calendar/month.ts';
+import { monthName, daysInMonth, monthParts, type Month } from '../calendar/month.ts';
 import type { Day } from '../calendar/day.ts';
 import { computeStep, type GroundState, type StepCover, type StepForcing, type StepSettings } from './compute-step.ts';
 import type { BalanceParameters, EngineCell, EngineCover, EngineInput, EnginePlot, MonthClimate } from './engine-input.ts';
@@ -39,12 +39,12 @@ function prepareMonths(input: EngineInput, warnings: string[]): MonthForcing[] {
   let packMm = 0;
   return climate.map((row) => {
     const needsWarmth = parameters.snow.isOn || parameters.isFrostOn;
-    if (needsWarmth && row.tMeanC === null) throw new RangeError(`${row.month} has no mean temperature. Bring it, or switch snow and frost off.`);
+    if (needsWarmth && row.tMeanC === null) throw new RangeError(`${monthName(row.month)} has no mean temperature. Bring it, or switch snow and frost off.`);
     const snow = computeSnow(packMm, row.precipitationMm, row.tMeanC ?? 20, parameters.snow);
     packMm = snow.packMm;
-    if (packMm > 1 && (row.tMeanC ?? 0) > 10) warnings.push(`${row.month}: ${packMm.toFixed(0)} mm of snow remain above 10 °C. Look at the snow settings.`);
+    if (packMm > 1 && (row.tMeanC ?? 0) > 10) warnings.push(`${monthName(row.month)}: ${packMm.toFixed(0)} mm of snow remain above 10 °C. Look at the snow settings.`);
     const isFrozen = parameters.isFrostOn && (row.tMeanC ?? 20) <= parameters.tFrostC;
-    if (isFrozen) warnings.push(`${row.month}: counted as frozen; no percolation, the excess runs off.`);
+    if (isFrozen) warnings.push(`${monthName(row.month)}: counted as frozen; no percolation, the excess runs off.`);
     return { row, dayCount: daysInMonth(row.month), snow, petMm: referencePetMm(row, latitudeDeg, parameters, heatIndex), isFrozen };
   });
 }

@@ -13,7 +13,7 @@ interface FileUploadProps {
   onDone: (answer: { id: string }) => void;
 }
 
-const bytesMax = 20 * 1024 * 1024;
+const bytesMax = 10 * 1024 * 1024;
 
 /** A file chosen by button, sent, and its check page opened. What went wrong is said in one sentence; the choice stays. */
 export function FileUpload({ siteId, path, label, hint, fields, onDone }: FileUploadProps) {
@@ -27,7 +27,7 @@ export function FileUpload({ siteId, path, label, hint, fields, onDone }: FileUp
     if ('missing' in ready) return setProblem(ready.missing);
     if (!file) return setProblem('Choose a file first.');
     if (file.size === 0) return setProblem(`${file.name} is empty.`);
-    if (file.size > bytesMax) return setProblem(`${file.name} is larger than 20 MB. Split it, or save it without pictures.`);
+    if (file.size > bytesMax) return setProblem(`${file.name} is larger than 10 MB. Split it, or save it without pictures.`);
     setProblem(null);
     setIsSending(true);
     try {

@@ -1,7 +1,7 @@
 import type * as z from 'zod';
 import type { Day } from '#shared/calendar/day.ts';
 import { monthOfDay } from '#shared/calendar/day.ts';
-import { monthParts, monthRange, type Month } from '#shared/calendar/month.ts';
+import { monthName, monthParts, monthRange, type Month } from '#shared/calendar/month.ts';
 import { monthFromRecord, settleGap, summariseMonth, type ClimateValues, type MonthSummary } from '#shared/climate/month-climate.ts';
 import { fieldProblem } from '#shared/problems.ts';
 import type { gapChoiceInput } from '#shared/schemas/climate.ts';
@@ -116,11 +116,11 @@ export async function listSiteClimate(tx: Transaction, siteId: string): Promise<
 export async function chooseForGap(tx: Transaction, context: Context, input: z.output<typeof gapChoiceInput>) {
   const siteId = siteOf(context);
   const row = (await listSiteClimate(tx, siteId)).find((one) => one.month === input.month);
-  if (!row) throw fieldProblem('/month', `There is no climate record around ${input.month}.`);
-  if (row.isComplete) throw fieldProblem('/month', `${input.month} has no missing days.`);
+  if (!row) throw fieldProblem('/month', `There is no climate record around ${monthName(input.month)}.`);
+  if (row.isComplete) throw fieldProblem('/month', `${monthName(input.month)} has no missing days.`);
   if (input.choice === 'other-station' && !input.otherStationId) throw fieldProblem('/otherStationId', 'Choose the station to fill from.');
   await repository.insertGapChoice(tx, { organisationId: context.organisationId, id: input.id, recordedById: context.personId, siteId, month: input.month, variable: 'precipitation', choice: input.choice, otherStationId: input.otherStationId ?? null, reason: input.reason });
-  await recordChange(tx, context, { action: 'choose', subjectType: 'climate-months', subjectId: input.id, sentence: `Missing climate of ${input.month}: ${input.choice.replaceAll('-', ' ')}.`, reason: input.reason, after: input });
+  await recordChange(tx, context, { action: 'choose', subjectType: 'climate-months', subjectId: input.id, sentence: `Missing climate of ${monthName(input.month)}: ${input.choice.replaceAll('-', ' ')}.`, reason: input.reason, after: input });
   return { id: input.id };
 }
 

@@ -1,5 +1,6 @@
 import type * as z from 'zod';
 import { dayName, monthOfDay } from '#shared/calendar/day.ts';
+import { monthName } from '#shared/calendar/month.ts';
 import type { LabRow, RawLabRow } from '#shared/lab/lab-row.ts';
 import { readLabSheets, type LabReading, type SkippedRow } from '#shared/lab/read-lab-sheet.ts';
 import { resolveLabRows, tidyName, type LabCatalog } from '#shared/lab/resolve-lab-rows.ts';
@@ -138,7 +139,7 @@ export async function confirmResults(tx: Transaction, context: Context, deps: De
   await importRepository.updateImport(tx, importId, { confirmedAt: deps.now().toISOString(), confirmedById: context.personId });
   const closed = await listClosedMonths(tx, siteId);
   for (const month of new Set(good.map((one) => monthOfDay(one.sampledOn!)))) {
-    if (closed.has(month)) await insertPendingChange(tx, { organisationId: context.organisationId, id: deps.newId(), siteId, month, factId: importId, sentence: `Results of ${row.fileName} arrived after ${month} was closed.` });
+    if (closed.has(month)) await insertPendingChange(tx, { organisationId: context.organisationId, id: deps.newId(), siteId, month, factId: importId, sentence: `Results of ${row.fileName} arrived after ${monthName(month)} was closed.` });
   }
   const heldCount = rows.filter((one) => one.state === 'held').length;
   await recordChange(tx, context, { action: 'confirm', subjectType: 'imports', subjectId: importId, sentence: `${good.length} results were written from ${row.fileName}; ${heldCount} rows stay held.`, after: row.counts });
@@ -154,7 +155,7 @@ export async function undoResults(tx: Transaction, context: Context, deps: Depen
   const live = await repository.listResultsOfImport(tx, importId);
   const closed = await listClosedMonths(tx, siteId);
   const closedMonth = live.map((one) => monthOfDay(one.siteDay)).find((month) => closed.has(month));
-  if (closedMonth) throw new Problem('month-is-closed', `${closedMonth} is closed. Ask the laboratory for a revised file instead; it is kept beside the old values.`);
+  if (closedMonth) throw new Problem('month-is-closed', `${monthName(closedMonth)} is closed. Ask the laboratory for a revised file instead; it is kept beside the old values.`);
   await repository.insertResults(tx, live.map(({ sequence: _sequence, recordedAt: _recordedAt, ...one }) => ({ ...one, id: deps.newId(), recordedById: context.personId, supersedesId: one.id, isVoid: 'yes' as const, reason: `Import of ${row.fileName} undone` })));
   await importRepository.updateImport(tx, importId, { undoneAt: deps.now().toISOString(), undoneById: context.personId });
   await recordChange(tx, context, { action: 'undo', subjectType: 'imports', subjectId: importId, sentence: `The import of ${row.fileName} was undone: ${live.length} results.` });

@@ -1,6 +1,6 @@
 import { Decimal } from 'decimal.js';
 import type * as z from 'zod';
-import { addDays } from '#shared/calendar/day.ts';
+import { addDays, dayName } from '#shared/calendar/day.ts';
 import { parseNumber } from '#shared/ledger/parse-number.ts';
 import { Problem, fieldProblem } from '#shared/problems.ts';
 import { notReadReasonNames, type levelInput, type notReadInput, type rainInput, type roundNoteInput } from '#shared/schemas/readings.ts';
@@ -57,6 +57,7 @@ export async function createRainDay(tx: Transaction, context: Context, deps: Dep
   const observed = await resolveObservedAt(tx, siteId, deps.now(), input);
   let depthMm = '0';
   if (input.kind !== 'trace') {
+    if (/cm|snow/i.test(input.depthText)) throw fieldProblem('/depthText', 'Rain: a depth of snow is not rain. Melt what fell into the gauge, choose “snow, as water” and enter the millimetres of water.');
     const parsed = parseNumber(input.depthText, { decimals: 1, unit: input.unit });
     if (parsed.kind !== 'number') throw fieldProblem('/depthText', `Rain: ${parsed.kind === 'wrong' ? parsed.reason : parsed.question}`);
     const depth = new Decimal(parsed.value);
@@ -73,7 +74,7 @@ export async function createRainDay(tx: Transaction, context: Context, deps: Dep
     tMinC: before[0]?.tMinC ?? null, tMaxC: before[0]?.tMaxC ?? null, tMeanC: before[0]?.tMeanC ?? null,
     supersedesId: before[0]?.id ?? null, reason: before[0] ? 'Read again' : null,
   }]);
-  await recordChange(tx, context, { action: before[0] ? 'replace' : 'create', subjectType: 'climate-days', subjectId: input.id, sentence: `Rain of ${siteDay}: ${input.kind === 'trace' ? 'trace' : `${depthMm} mm`}.`, before: before[0], after: input });
+  await recordChange(tx, context, { action: before[0] ? 'replace' : 'create', subjectType: 'climate-days', subjectId: input.id, sentence: `Rain of ${dayName(siteDay)}: ${input.kind === 'trace' ? 'trace' : `${depthMm} mm`}.`, before: before[0], after: input });
   return { id: input.id, state: 'stored' as const, siteDay, observedAt: observed.observedAt };
 }
 
@@ -85,7 +86,7 @@ export async function createNotRead(tx: Transaction, context: Context, deps: Dep
   const today = (await siteDaysOf(tx, siteId)).dayOf(deps.now().getTime());
   if (input.siteDay > today) throw fieldProblem('/siteDay', 'This day is still to come.');
   await repository.insertNotRead(tx, { ...fact(context, deps, input.id), siteId, roundPointId: input.roundPointId, siteDay: input.siteDay, reasonCode: input.reasonCode, note: input.note ?? null });
-  await recordChange(tx, context, { action: 'create', subjectType: 'not-read', subjectId: input.id, sentence: `A point was not read on ${input.siteDay}: ${notReadReasonNames[input.reasonCode].toLowerCase()}.`, reason: input.note, after: input });
+  await recordChange(tx, context, { action: 'create', subjectType: 'not-read', subjectId: input.id, sentence: `A point was not read on ${dayName(input.siteDay)}: ${notReadReasonNames[input.reasonCode].toLowerCase()}.`, reason: input.note, after: input });
   return { id: input.id, state: 'stored' as const };
 }
 
@@ -93,6 +94,6 @@ export async function createRoundNote(tx: Transaction, context: Context, deps: D
   const siteId = siteOf(context);
   if (!(await readSite(tx, siteId)).site) throw new Problem('not-found', 'There is no such site.');
   await repository.insertRoundNote(tx, { ...fact(context, deps, input.id), siteId, siteDay: input.siteDay, note: input.note });
-  await recordChange(tx, context, { action: 'create', subjectType: 'round-notes', subjectId: input.id, sentence: `The round of ${input.siteDay} was handed over.`, after: input });
+  await recordChange(tx, context, { action: 'create', subjectType: 'round-notes', subjectId: input.id, sentence: `The round of ${dayName(input.siteDay)} was handed over.`, after: input });
   return { id: input.id, state: 'stored' as const };
 }

@@ -1,4 +1,6 @@
 import type * as z from 'zod';
+import { dayName } from '#shared/calendar/day.ts';
+import { monthName } from '#shared/calendar/month.ts';
 import { Problem, fieldProblem, type FieldProblem } from '#shared/problems.ts';
 import type { cellInput, coverChangeInput, coverTypeInput, wasteInput } from '#shared/schemas/sites.ts';
 import { checkPlotAreas } from '#shared/site/check-plot-areas.ts';
@@ -45,8 +47,8 @@ export async function changeCover(tx: Transaction, context: Context, deps: Depen
   const periods = record.coverPeriods.filter((period) => period.plotId === plot.id);
   const current = periods.find((period) => period.fromOn <= input.onDay && (period.toOn === null || period.toOn > input.onDay));
   const later = periods.find((period) => period.fromOn >= input.onDay);
-  if (later) throw fieldProblem('/onDay', `Plot ${plot.name} already has a cover from ${later.fromOn} to ${later.toOn ?? 'now'}. Two covers cannot lie on one plot at once; choose a later day.`);
-  if (!current) throw fieldProblem('/onDay', `Plot ${plot.name} has no cover on ${input.onDay} to change from.`);
+  if (later) throw fieldProblem('/onDay', `Plot ${plot.name} already has a cover from ${dayName(later.fromOn)} to ${later.toOn ? dayName(later.toOn) : 'now'}. Two covers cannot lie on one plot at once; choose a later day.`);
+  if (!current) throw fieldProblem('/onDay', `Plot ${plot.name} has no cover on ${dayName(input.onDay)} to change from.`);
   await repository.endCoverPeriod(tx, current.id, input.onDay);
   const cover = { organisationId, fromOn: input.onDay, evidence: input.evidence };
   const initialSoilStoreMm = input.initialSoilStoreMm ?? null;
@@ -64,7 +66,7 @@ export async function changeCover(tx: Transaction, context: Context, deps: Depen
       { ...cover, id: deps.newId(), plotId: input.restPlotId, coverTypeId: current.coverTypeId },
     ]);
   }
-  await recordChange(tx, context, { action: 'change', subjectType: 'plots', subjectId: plot.id, sentence: `${split.coveredAreaM2} m² of plot ${plot.name} became ${coverType.name} on ${input.onDay}.`, reason: input.evidence, before: { plot, cover: current }, after: input });
+  await recordChange(tx, context, { action: 'change', subjectType: 'plots', subjectId: plot.id, sentence: `${split.coveredAreaM2} m² of plot ${plot.name} became ${coverType.name} on ${dayName(input.onDay)}.`, reason: input.evidence, before: { plot, cover: current }, after: input });
   return { id: split.restAreaM2 === null ? plot.id : input.newPlotId };
 }
 
@@ -91,9 +93,9 @@ export async function addWaste(tx: Transaction, context: Context, input: z.outpu
   const cell = record.cells.find((one) => one.id === input.cellId);
   if (!cell) throw fieldProblem('/cellId', 'Choose a cell of this site.');
   if (record.wastePlaced.some((row) => row.cellId === cell.id && row.month === input.month)) {
-    throw fieldProblem('/month', `${cell.code} already has waste recorded for ${input.month}.`);
+    throw fieldProblem('/month', `${cell.code} already has waste recorded for ${monthName(input.month)}.`);
   }
   await repository.insertWaste(tx, { organisationId: context.organisationId, ...input });
-  await recordChange(tx, context, { action: 'create', subjectType: 'waste-placed', subjectId: input.id, sentence: `${input.massT} t of waste were placed in ${cell.code} in ${input.month}.`, after: input });
+  await recordChange(tx, context, { action: 'create', subjectType: 'waste-placed', subjectId: input.id, sentence: `${input.massT} t of waste were placed in ${cell.code} in ${monthName(input.month)}.`, after: input });
   return { id: input.id };
 }
