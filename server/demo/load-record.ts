@@ -2,6 +2,7 @@ import { Decimal } from 'decimal.js';
 import { addDays, dayNumber, weekday, type Day } from '#shared/calendar/day.ts';
 import { addMonths, monthRange } from '#shared/calendar/month.ts';
 import { computeDayVolumes } from '#shared/ledger/day-volumes.ts';
+import { planPosting } from '#shared/ledger/post-days.ts';
 import { computeIntervals } from '#shared/ledger/intervals.ts';
 import { runWaterBalance } from '#shared/water-balance/run-water-balance.ts';
 import { sumByCellAndMonth } from '#shared/water-balance/sum-steps.ts';
@@ -11,7 +12,7 @@ import { stations } from '../db/schema/climate.ts';
 import type { Transaction } from '../db/transaction.ts';
 import { buildEngineInput } from '../features/balance/engine-input-service.ts';
 import { insertDays } from '../features/climate/climate-repository.ts';
-import { insertEntries } from '../features/ledger/entry-repository.ts';
+import { insertEntries, listLiveEntriesOfMeter } from '../features/ledger/entry-repository.ts';
 import { readMeterFacts } from '../features/ledger/posting-service.ts';
 import { createLoadOut } from '../features/loads-out/load-out-service.ts';
 import { createNotRead } from '../features/readings/point-service.ts';
@@ -130,7 +131,9 @@ async function loadPostings(tx: Transaction, actors: DemoActors, ids: DemoIds, p
   const newId = actors.at(`${plan.today}T08:00:00Z`).newId;
   for (const meter of record.meters) {
     const { intervals } = computeIntervals(await readMeterFacts(tx, record, meter, '2000-01-01T00:00:00Z', `${plan.today}T23:59:59Z`));
-    await insertEntries(tx, computeDayVolumes(intervals, days, record.site.measuredIntervalHoursMax).map((day) => ({
+    const live = await listLiveEntriesOfMeter(tx, meter.id, plan.start, plan.today);
+    const { postings } = planPosting(computeDayVolumes(intervals, days, record.site.measuredIntervalHoursMax), live, new Set());
+    await insertEntries(tx, postings.map((day) => ({
       organisationId: operator.organisationId, id: newId(), recordedById: operator.personId, recordedAt: `${addDays(day.siteDay, 1)}T08:00:00Z`, siteId: ids.site, siteDay: day.siteDay, fromPlaceId: meter.fromPlaceId, toPlaceId: meter.toPlaceId,
       volumeM3: day.volumeM3.toFixed(6), basis: day.basis, meterId: meter.id, factIds: day.factIds, reason: null,
     })));

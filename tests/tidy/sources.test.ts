@@ -63,7 +63,7 @@ describe('the code', () => {
   });
 
   it('never silences the type checker', () => {
-    expect(places(product, /@ts-(ignore|nocheck|expect-error)|eslint-disable|: any\b|as any\b/)).toEqual([]);
+    expect(places(product, /@ts-(ignore|nocheck|expect-error)|eslint-disable|: any\b|\bas any\b/)).toEqual([]);
   });
 });
 

@@ -1,4 +1,5 @@
 import type * as z from 'zod';
+import { dayName } from '#shared/calendar/day.ts';
 import { Problem, fieldProblem, type FieldProblem } from '#shared/problems.ts';
 import type { meterInput, placeInput, storeInput, sumpInput } from '#shared/schemas/sites.ts';
 import type { meterEventInput } from '#shared/schemas/readings.ts';
@@ -93,7 +94,8 @@ export async function addMeterEvent(tx: Transaction, context: Context, deps: Dep
     observedAt: observed.observedAt, siteDay: observed.siteDay, registerBefore: input.registerBefore ?? null, registerAfter: input.registerAfter ?? null,
     digitsAfter: input.digitsAfter ?? null, unitAfter: input.unitAfter ?? null, multiplierAfter: input.multiplierAfter ?? null, note: input.note ?? null,
   });
-  await recordChange(tx, context, { action: 'create', subjectType: 'meter-events', subjectId: input.id, sentence: `Meter ${meter.code}: ${input.kind.replace('-', ' ')} on ${observed.siteDay}.`, reason: input.note, after: input });
-  await repostMeter(tx, context, deps, meter.id, { atMs: Date.parse(observed.observedAt), factId: input.id, why: `Meter event: ${input.kind}` });
+  await recordChange(tx, context, { action: 'create', subjectType: 'meter-events', subjectId: input.id, sentence: `Meter ${meter.code}: ${input.kind.replace('-', ' ')} on ${dayName(observed.siteDay)}.`, reason: input.note, after: input });
+  // A register keeps its new unit and multiplier, so every later day is computed again.
+  await repostMeter(tx, context, deps, meter.id, { atMs: Date.parse(observed.observedAt), toMs: deps.now().getTime(), factId: input.id, why: `Meter event: ${input.kind.replace('-', ' ')}` });
   return { id: input.id };
 }
