@@ -1,13 +1,16 @@
 import * as z from 'zod';
+import { isDay } from '../calendar/day.ts';
 import { volumeUnits } from '../units/unit-factors.ts';
 import { dayText } from './days.ts';
 import { optionalNumber, typedNumber } from './numbers.ts';
 import { optionalId, optionalText, recordId, requiredText } from './text.ts';
 
+const wallTimeHint = 'Enter the day and time of the reading, like 2026-03-04 07:50.';
+
 /** When something was seen: an instant from the device, or a wall-clock time at the site. */
 export const observedFields = {
   observedAt: z.iso.datetime({ offset: true, error: 'Enter the time of the reading.' }).optional(),
-  observedLocal: z.preprocess((typed) => (typeof typed === 'string' ? typed.trim().replace(' ', 'T') : typed), z.string().regex(/^\d{4}-\d{2}-\d{2}T\d{2}:\d{2}$/, 'Enter the day and time of the reading, like 2026-03-04 07:50.').optional()),
+  observedLocal: z.preprocess((typed) => (typeof typed === 'string' ? typed.trim().replace(' ', 'T') : typed), z.string().regex(/^\d{4}-\d{2}-\d{2}T([01]\d|2[0-3]):[0-5]\d$/, wallTimeHint).refine((text) => isDay(text.slice(0, 10)), wallTimeHint).optional()),
   /** Which of the two, when the clock shows an hour twice. */
   repeatedHour: z.enum(['earlier', 'later']).optional(),
   deviceId: z.string().max(80).optional(),
