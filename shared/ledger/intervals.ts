@@ -118,7 +118,15 @@ function intervalsBetween(before: Point, after: Point, specBefore: RegisterSpec,
   return { intervals, spec };
 }
 
-/** An estimate takes the place of the intervals inside its span. */
+/** The parts of an interval outside a span, each with its share by time. */
+function outside(interval: Interval, span: { fromMs: number; toMs: number }): Interval[] {
+  if (interval.fromMs >= span.toMs || interval.toMs <= span.fromMs) return [interval];
+  const parts = [{ fromMs: interval.fromMs, toMs: span.fromMs }, { fromMs: span.toMs, toMs: interval.toMs }].filter((part) => part.toMs > part.fromMs);
+  const lengthMs = interval.toMs - interval.fromMs;
+  return parts.map((part) => ({ ...interval, ...part, volumeM3: interval.volumeM3?.times(part.toMs - part.fromMs).div(lengthMs) ?? null }));
+}
+
+/** An estimate takes the place of what lies inside its span; nothing is counted twice. */
 function withEstimates(intervals: Interval[], adjustments: readonly AdjustmentFact[]): Interval[] {
   let result = intervals;
   for (const estimate of adjustments.filter((one) => one.kind === 'estimate' && one.volumeM3 !== null)) {
@@ -129,7 +137,7 @@ function withEstimates(intervals: Interval[], adjustments: readonly AdjustmentFa
       multiplier: first?.multiplier ?? '1', unit: first?.unit ?? 'm3', volumeM3: new Decimal(estimate.volumeM3!), basis: 'estimated',
       heldBecause: null, factIds: [estimate.id, ...new Set(inside.flatMap((one) => one.factIds))],
     };
-    result = [...result.filter((one) => !inside.includes(one)), replaced].sort((a, b) => a.fromMs - b.fromMs);
+    result = [...result.flatMap((one) => outside(one, estimate)), replaced].sort((a, b) => a.fromMs - b.fromMs);
   }
   return result;
 }

@@ -1,5 +1,6 @@
 import { Decimal } from 'decimal.js';
 import { describe, expect, it } from 'vitest';
+import { alignEstimate } from '#shared/ledger/align-estimate.ts';
 import { checkReading } from '#shared/ledger/check-reading.ts';
 import { atMs, daysOf, reading, replacement, sevenDigits, siteDaysFrom } from '../factories/meter-facts.ts';
 
@@ -98,5 +99,15 @@ describe('readings and meters', () => {
     const readings = [reading('a', t[0]!, '55000'), reading('b', t[1]!, '55310'), reading('c', t[1]!, '55130'), reading('d', t[2]!, '55400')];
     expect(daysOf({ readings }, at8).intervals.map((one) => one.heldBecause)).toEqual(['dispute', 'dispute']);
     expect(daysOf({ readings, chosen: ['c'] }, at8).intervals.map((one) => one.volumeM3!.toFixed())).toEqual(['130', '270']);
+  });
+
+  it('an estimate goes from reading to reading and never counts a stretch twice', () => {
+    const h = 3_600_000;
+    const intervals = [{ fromMs: 0, toMs: 24 * h }, { fromMs: 24 * h, toMs: 48 * h }];
+    expect(alignEstimate(intervals, { fromMs: 1 * h, toMs: 25 * h }, 3 * h)).toEqual({ kind: 'aligned', fromMs: 0, toMs: 24 * h });
+    expect(alignEstimate(intervals, { fromMs: 12 * h, toMs: 48 * h }, 3 * h)).toEqual({ kind: 'cuts', end: 'from', beforeMs: 0, afterMs: 24 * h });
+    const estimate = { id: 'e', kind: 'estimate' as const, fromMs: 12 * h, toMs: 24 * h, volumeM3: '5', divisor: null };
+    const { intervals: cut } = daysOf({ readings: [reading('a', 0, '0'), reading('b', 48 * h, '80')], adjustments: [estimate] }, at8);
+    expect(cut.map((one) => [one.fromMs / h, one.toMs / h, one.volumeM3!.toFixed()])).toEqual([[0, 12, '20'], [12, 24, '5'], [24, 48, '40']]);
   });
 });

@@ -1,6 +1,7 @@
 import { Decimal } from 'decimal.js';
 import type * as z from 'zod';
 import { dayName } from '#shared/calendar/day.ts';
+import { alignEstimate } from '#shared/ledger/align-estimate.ts';
 import { checkReading, type ReadingCheck } from '#shared/ledger/check-reading.ts';
 import { parseNumber } from '#shared/ledger/parse-number.ts';
 import type { RegisterSpec } from '#shared/ledger/register.ts';
@@ -11,8 +12,8 @@ import type { VolumeUnit } from '#shared/units/unit-factors.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
-import { repostMeter } from '../ledger/posting-service.ts';
-import { readSite, siteOf, type SiteRecord } from '../sites/site-service.ts';
+import { recomputeDays, repostMeter } from '../ledger/posting-service.ts';
+import { readSite, siteDaysOf, siteOf, type SiteRecord } from '../sites/site-service.ts';
 import { resolveObservedAt } from './observed-time.ts';
 import * as repository from './reading-repository.ts';
 
@@ -86,7 +87,7 @@ export async function createReading(tx: Transaction, context: Context, deps: Dep
     note: input.note ?? null, supersedesId: input.supersedesId ?? null, reason: input.reason ?? null, deviceId: input.deviceId ?? null, recordedAt: deps.now().toISOString(),
   });
   await recordChange(tx, context, { action: input.supersedesId ? 'replace' : 'create', subjectType: 'readings', subjectId: input.id, sentence: `Meter ${meter.code} was read: ${input.registerText}${answer === 'held' ? ', held until answered' : ''}.`, reason: input.reason ?? input.note, after: { ...input, siteDay: observed.siteDay } });
-  await repostMeter(tx, context, deps, meter.id, { atMs: observed.observedAtMs, factId: input.id, why: `Reading ${new Decimal(registerValue).toFixed()} of ${observed.siteDay}` });
+  await repostMeter(tx, context, deps, meter.id, { atMs: observed.observedAtMs, factId: input.id, why: `Reading ${new Decimal(registerValue).toFixed()} of ${dayName(observed.siteDay)}` });
   return { id: input.id, state: answer === 'held' ? ('held' as const) : ('stored' as const), siteDay: observed.siteDay, observedAt: observed.observedAt, check };
 }
 
@@ -98,9 +99,23 @@ export async function voidReading(tx: Transaction, context: Context, deps: Depen
   if (!reading || !meter) throw new Problem('not-found', 'There is no such reading at this site.');
   const { sequence: _sequence, recordedAt: _recordedAt, ...copy } = reading;
   await repository.insertReading(tx, { ...copy, id: input.id, recordedById: context.personId, supersedesId: reading.id, isVoid: 'yes', reason: input.reason });
-  await recordChange(tx, context, { action: 'void', subjectType: 'readings', subjectId: reading.id, sentence: `Reading ${reading.typedText} of meter ${meter.code} on ${reading.siteDay} was voided.`, reason: input.reason, before: reading });
-  await repostMeter(tx, context, deps, meter.id, { atMs: Date.parse(reading.observedAt), factId: input.id, why: `Reading of ${reading.siteDay} voided` });
+  await recordChange(tx, context, { action: 'void', subjectType: 'readings', subjectId: reading.id, sentence: `Reading ${reading.typedText} of meter ${meter.code} on ${dayName(reading.siteDay)} was voided.`, reason: input.reason, before: reading });
+  await repostMeter(tx, context, deps, meter.id, { atMs: Date.parse(reading.observedAt), factId: input.id, why: `Reading of ${dayName(reading.siteDay)} voided` });
   return { id: input.id };
+}
+
+const estimateSnapMs = 3 * 3_600_000;
+
+/** The span of an estimate from reading to reading. */
+async function wholeIntervals(tx: Transaction, record: SiteRecord, meter: SiteRecord['meters'][number], asked: { fromMs: number; toMs: number }) {
+  const days = await siteDaysOf(tx, record.site.id);
+  const widened = [new Date(asked.fromMs - 40 * 86_400_000).toISOString(), new Date(asked.toMs + 40 * 86_400_000).toISOString()] as const;
+  const { intervals } = await recomputeDays(tx, record, meter, days, ...widened);
+  const span = alignEstimate(intervals, asked, estimateSnapMs);
+  if (span.kind === 'aligned' && span.toMs > span.fromMs) return span;
+  const local = (ms: number) => days.localTime(ms).replace('T', ' ');
+  if (span.kind === 'aligned') throw fieldProblem('/toAt', 'Both ends of the span stand for the same reading. Choose a span from one reading to another.');
+  throw fieldProblem(span.end === 'from' ? '/fromAt' : '/toAt', `An estimate goes from reading to reading. Meter ${meter.code} was read at ${local(span.beforeMs)} and at ${local(span.afterMs)}: choose one of the two.`);
 }
 
 /** Stores a supervisor's estimate for a span of a meter, with its inputs. */
@@ -108,11 +123,12 @@ export async function createEstimate(tx: Transaction, context: Context, deps: De
   const record = await readSite(tx, siteOf(context));
   const meter = record.meters.find((one) => one.id === input.meterId);
   if (!meter) throw fieldProblem('/meterId', 'Choose a meter of this site.');
-  const [fromMs, toMs] = [Date.parse(input.fromAt), Date.parse(input.toAt)];
-  if (toMs <= fromMs) throw fieldProblem('/toAt', 'The span must end after it starts.');
-  if (toMs > deps.now().getTime()) throw fieldProblem('/toAt', 'The span ends in time to come.');
+  const asked = { fromMs: Date.parse(input.fromAt), toMs: Date.parse(input.toAt) };
+  if (asked.toMs <= asked.fromMs) throw fieldProblem('/toAt', 'The span must end after it starts.');
+  if (asked.toMs > deps.now().getTime()) throw fieldProblem('/toAt', 'The span ends in time to come.');
+  const { fromMs, toMs } = await wholeIntervals(tx, record, meter, asked);
   await repository.insertAdjustment(tx, {
-    organisationId: context.organisationId, id: input.id, recordedById: context.personId, meterId: meter.id, kind: 'estimate', fromAt: input.fromAt, toAt: input.toAt,
+    organisationId: context.organisationId, id: input.id, recordedById: context.personId, meterId: meter.id, kind: 'estimate', fromAt: new Date(fromMs).toISOString(), toAt: new Date(toMs).toISOString(),
     volumeM3: input.volumeM3, method: input.method, inputs: { text: input.inputs }, acceptedById: context.personId, reason: input.reason,
   });
   await recordChange(tx, context, { action: 'estimate', subjectType: 'adjustments', subjectId: input.id, sentence: `${input.volumeM3} m³ were estimated for meter ${meter.code}: ${estimateMethods[input.method]}.`, reason: input.reason, after: input });
