@@ -7,7 +7,7 @@ Chart.register(CategoryScale, Legend, LinearScale, LineElement, PointElement, To
 export function LineChart({ config, summary }: { config: ChartConfiguration<'line', (number | null)[], string>; summary: string }) {
   return (
     <figure className="sheet pad">
-      <div className="h-[320px] relative">
+      <div className="h-[320px] relative overflow-hidden">
         <Line data={config.data} options={config.options ?? {}} role="img" aria-label={summary} />
       </div>
       <figcaption className="hint mt-2">{summary}</figcaption>

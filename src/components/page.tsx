@@ -11,10 +11,12 @@ interface PageHeadProps {
 /** Title, state in one sentence, and focus on the title after a change of page. */
 export function PageHead({ title, sentence, crumb }: PageHeadProps) {
   const heading = useRef<HTMLHeadingElement>(null);
-  const { pathname } = useLocation();
+  const { pathname, key } = useLocation();
   useEffect(() => {
+    // The first page of a visit keeps the browser's own order: the way to the content comes first.
+    if (key === 'default') return;
     if (document.activeElement === document.body || document.activeElement?.closest('nav')) heading.current?.focus();
-  }, [pathname]);
+  }, [pathname, key]);
   return (
     <div className="mb-6">
       <title>{`${title} – Tallyweir`}</title>

@@ -54,7 +54,7 @@ export function Exceedance({ exceedance, now }: { exceedance: ExceedanceView; no
           {running && !exceedance.closedAt && <ClockBar seenAt={exceedance.seenAt} clock={running} now={now} />}
           {exceedance.cause && <p>Cause: {exceedance.cause}</p>}
         </div>
-        <ScrollBox label="Steps and when they are due">
+        <ScrollBox label={`Steps and when they are due: ${exceedance.sentence}`}>
           <table className="tbl tbl-tight">
             <caption className="sr-only">Steps after the exceedance</caption>
             <thead><tr><th scope="col">Step</th><th scope="col">Due</th><th scope="col">State</th></tr></thead>
