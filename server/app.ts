@@ -1,5 +1,6 @@
 import { existsSync } from 'node:fs';
 import { fileURLToPath } from 'node:url';
+import compression from 'compression';
 import express, { type Express } from 'express';
 import helmet from 'helmet';
 import { pinoHttp } from 'pino-http';
@@ -24,6 +25,7 @@ export function createApp(deps: Dependencies): Express {
       strictTransportSecurity: false,
     }),
   );
+  app.use(compression());
   app.use(pinoHttp({ logger: deps.log, genReqId: () => deps.newId(), quietReqLogger: true, autoLogging: { ignore: (r) => !r.url?.startsWith('/api') } }));
   app.get('/api/v1/health', (_request, response) => {
     response.json({ state: 'up' });

@@ -1,11 +1,11 @@
-import { monthName, daysInMonth, monthParts, type Month } from '../calendar/month.ts';
+import { monthName, monthParts, type Month } from '../calendar/month.ts';
 import type { Day } from '../calendar/day.ts';
 import { computeStep, type GroundState, type StepCover, type StepForcing, type StepSettings } from './compute-step.ts';
 import type { BalanceParameters, EngineCell, EngineCover, EngineInput, EnginePlot, MonthClimate } from './engine-input.ts';
 import { recordHeatIndex, referencePetMm } from './potential-evapotranspiration.ts';
 import { computeSnow, type SnowMonth } from './snow.ts';
 import { spinUpSoilStore } from './spin-up.ts';
-import { dayAfterStep, splitMonth, sumOfDays, type PlotStep } from './split-month.ts';
+import { dayAfterStep, monthSpan, splitMonth, sumOfDays, type MonthSpan, type PlotStep } from './split-month.ts';
 import type { StepTerms } from './terms.ts';
 
 export interface StepResult {
@@ -27,7 +27,9 @@ export interface RunResult {
 /** A month's climate with what the site-wide parts of the method make of it. */
 interface MonthForcing {
   row: MonthClimate;
-  dayCount: number;
+  span: MonthSpan;
+  /** Covers as they are in this month, by type. */
+  covers: Map<string, StepCover>;
   snow: SnowMonth;
   petMm: number;
   isFrozen: boolean;
@@ -45,7 +47,8 @@ function prepareMonths(input: EngineInput, warnings: string[]): MonthForcing[] {
     if (packMm > 1 && (row.tMeanC ?? 0) > 10) warnings.push(`${monthName(row.month)}: ${packMm.toFixed(0)} mm of snow remain above 10 °C. Look at the snow settings.`);
     const isFrozen = parameters.isFrostOn && (row.tMeanC ?? 20) <= parameters.tFrostC;
     if (isFrozen) warnings.push(`${monthName(row.month)}: counted as frozen; no percolation, the excess runs off.`);
-    return { row, dayCount: daysInMonth(row.month), snow, petMm: referencePetMm(row, latitudeDeg, parameters, heatIndex), isFrozen };
+    const covers = new Map(Object.entries(input.covers).map(([id, cover]) => [id, stepCover(cover, row.month, parameters)]));
+    return { row, span: monthSpan(row.month), covers, snow, petMm: referencePetMm(row, latitudeDeg, parameters, heatIndex), isFrozen };
   });
 }
 
@@ -59,15 +62,16 @@ export const stepCover = (cover: EngineCover, month: Month, parameters: Pick<Bal
 };
 
 /** Rain, melt and PET of a step: the month's share by days, or the daily sums where they exist. */
-function forcingOf(month: MonthForcing, step: PlotStep): Omit<StepForcing, 'surfaceReturnMm' | 'returnToWasteMm' | 'placedDeficitMm' | 'newSoilStoreMm'> {
-  const { row, snow, dayCount } = month;
-  const share = step.dayCount / dayCount;
+function forcingOf(month: MonthForcing, step: PlotStep, own: Pick<StepForcing, 'surfaceReturnMm' | 'returnToWasteMm' | 'placedDeficitMm' | 'newSoilStoreMm'>): StepForcing {
+  const { row, snow, span } = month;
+  const share = step.dayCount / span.dayCount;
   const daily = row.dailyPrecipitationMm;
   // A whole month keeps its own figure, so that daily and monthly records of one month agree to the last digit.
   const rainShare = daily && share < 1 && row.precipitationMm > 0 ? sumOfDays(daily, step.fromOn, step.dayCount) / row.precipitationMm : share;
   return {
     precipitationMm: snow.rainMm * rainShare + snow.snowfallMm * share, rainMm: snow.rainMm * rainShare, snowfallMm: snow.snowfallMm * share,
     meltMm: snow.meltMm * share, dSnowMm: snow.dSnowMm * share, referencePetMm: month.petMm * share, isFrozen: month.isFrozen, durationMonths: share,
+    surfaceReturnMm: own.surfaceReturnMm, returnToWasteMm: own.returnToWasteMm, placedDeficitMm: own.placedDeficitMm, newSoilStoreMm: own.newSoilStoreMm,
   };
 }
 
@@ -77,7 +81,7 @@ const wasteReceivers = new Set(['working-area', 'daily-cover']);
 function placedDeficitMm(cell: EngineCell, input: EngineInput, month: MonthForcing, step: PlotStep): number {
   const deficitM3 = cell.placedDeficitM3[month.row.month] ?? 0;
   if (deficitM3 === 0) return 0;
-  const all = cell.plots.flatMap((plot) => splitMonth(plot, month.row.month).map((one) => ({ plot, one, kind: input.covers[one.period.coverTypeId]!.kind })));
+  const all = cell.plots.flatMap((plot) => splitMonth(plot, month.span).map((one) => ({ plot, one, kind: input.covers[one.period.coverTypeId]!.kind })));
   const receiving = all.filter(({ kind }) => wasteReceivers.has(kind));
   const chosen = receiving.length ? receiving : all.filter(({ kind }) => kind !== 'lined-floor');
   if (!chosen.some(({ one }) => one.period === step.period && one.fromOn === step.fromOn)) return 0;
@@ -86,6 +90,7 @@ function placedDeficitMm(cell: EngineCell, input: EngineInput, month: MonthForci
 }
 
 function returnsMm(cell: EngineCell, plot: EnginePlot, step: PlotStep, isAtSurface: boolean): number {
+  if (!cell.returns.length) return 0;
   const after = dayAfterStep(step);
   return cell.returns
     .filter((one) => one.isAtSurface === isAtSurface && one.plotIds.includes(plot.id) && one.siteDay >= step.fromOn && one.siteDay < after)
@@ -107,7 +112,7 @@ function startingState(input: EngineInput, cell: EngineCell, plot: EnginePlot, p
     return { soilStoreMm: enteredStore(cover, period.initialSoilStoreMm), ...waste };
   }
   const year = months.slice(0, 12).map((month) => {
-    const { runoffCoefficient, petFactor } = stepCover(cover, month.row.month, input.parameters);
+    const { runoffCoefficient, petFactor } = month.covers.get(period.coverTypeId)!;
     return { infiltrationMm: (month.snow.rainMm + month.snow.meltMm) * (1 - runoffCoefficient), petMm: month.petMm * petFactor, isFrozen: month.isFrozen };
   });
   return { soilStoreMm: spinUpSoilStore(year, cover.availableWaterMm, settings.soilLaw).storeMm, ...waste };
@@ -129,19 +134,18 @@ export function runWaterBalance(input: EngineInput): RunResult {
   for (const month of months) {
     for (const cell of input.cells) {
       for (const plot of cell.plots) {
-        for (const step of splitMonth(plot, month.row.month)) {
+        for (const step of splitMonth(plot, month.span)) {
           const cover = input.covers[step.period.coverTypeId]!;
           const known = states.get(plot.id);
           const before = known ?? startingState(input, cell, plot, plot.parentId ? states.get(plot.parentId) : undefined, months, settings);
           const isNewGround = known === undefined && !(plot.parentId && states.has(plot.parentId));
           const keepsSoil = isNewGround || !step.startsPeriod || isSameSoil(input, cell, plot, step);
-          const { terms, after } = computeStep(before, stepCover(cover, month.row.month, parameters), {
-            ...forcingOf(month, step),
+          const { terms, after } = computeStep(before, month.covers.get(step.period.coverTypeId)!, forcingOf(month, step, {
             surfaceReturnMm: returnsMm(cell, plot, step, true),
             returnToWasteMm: returnsMm(cell, plot, step, false),
             placedDeficitMm: placedDeficitMm(cell, input, month, step),
             newSoilStoreMm: keepsSoil ? null : enteredStore(cover, step.period.initialSoilStoreMm),
-          }, settings);
+          }), settings);
           states.set(plot.id, after);
           steps.push({ cellId: cell.id, plotId: plot.id, coverTypeId: step.period.coverTypeId, month: month.row.month, fromOn: step.fromOn, dayCount: step.dayCount, areaM2: plot.areaM2, terms });
         }
