@@ -2,6 +2,7 @@ import { Router, type Request, type RequestHandler, type Response } from 'expres
 import multer from 'multer';
 import { isAllowed } from '#shared/permissions.ts';
 import { Problem } from '#shared/problems.ts';
+import { rememberReads } from '../db/remembered-reads.ts';
 import { withOrganisation, type Transaction } from '../db/transaction.ts';
 import { findContext } from '../features/access/access-service.ts';
 import { claimKey, keepAnswer, payloadHash } from './idempotency.ts';
@@ -38,6 +39,7 @@ async function answer(route: Route, request: Request, deps: Dependencies): Promi
   if (!claims) throw new Problem('not-signed-in', 'Sign in to go on.');
   const file: UploadedFile | undefined = request.file && { name: request.file.originalname, bytes: request.file.buffer };
   return withOrganisation(deps.database, claims, async (tx) => {
+    if (route.method === 'get') rememberReads(tx);
     const context = await admit(tx, route, request, deps, claims);
     const parts = validate(route, { params: request.params, query: request.query, body: request.body });
     const run = () => route.handle({ tx, context, ...parts, file, deps, request });

@@ -141,6 +141,9 @@ function resolveDate(row: LabRow, catalog: LabCatalog, order: ReturnType<typeof 
   else if (daysBetween(read.day, catalog.receivedOn) > daysBeforeReceiptMax) warn(row, `Sampled on ${read.day}, more than ${daysBeforeReceiptMax} days before the file came.`);
 }
 
+/** Sheet and column letter of a result. */
+const columnKey = (raw: RawLabRow) => `${raw.sheet} ${raw.cell.replace(/\d+/, '')}`;
+
 const qualityKinds = /^(ms|msd|mb|tb|fb|lcs|lcsd|blank|spike|method blank|trip blank|field blank|lab duplicate)$/i;
 
 const wordsOf = (comparator: string, value: string | null, unit: string) => (value === null ? 'no value' : `${comparator === '<' ? 'below ' : comparator === '>' ? 'above ' : ''}${new Decimal(value).toFixed()} ${unit}`);
@@ -181,6 +184,12 @@ function settleDoubles(rows: readonly LabRow[]): void {
  * Nothing is guessed: what is not known holds its row, never the file.
  */
 export function resolveLabRows(raws: readonly RawLabRow[], catalog: LabCatalog): LabRow[] {
+  const columns = new Map<string, string[]>();
+  for (const raw of raws) {
+    const known = columns.get(columnKey(raw));
+    if (known) known.push(raw.resultText);
+    else columns.set(columnKey(raw), [raw.resultText]);
+  }
   const order = catalog.answers.dateOrder ?? decideDateOrder(raws.map((raw) => raw.sampledText));
   const rows = raws.map((raw) => {
     const row = emptyRow(raw);
@@ -202,8 +211,7 @@ export function resolveLabRows(raws: readonly RawLabRow[], catalog: LabCatalog):
         row.unit = unit.standard;
         if (basis !== '1') warn(row, `Reported as ${unit.basis ?? analyte.reportedBasis}, kept as ${analyte.basis}: × ${new Decimal(basis).toSignificantDigits(4).toFixed()}.`);
         const limitUnit = raw.reportingLimitUnitText ? readUnit(raw.reportingLimitUnitText) : unit;
-        const column = raws.filter((one) => one.sheet === raw.sheet && one.cell.replace(/\d+/, '') === raw.cell.replace(/\d+/, '')).map((one) => one.resultText);
-        applyText(row, settleComma(row, parseResultText(raw.resultText), column), [unit.factor, basis], [limitUnit?.factor ?? unit.factor, basis]);
+        applyText(row, settleComma(row, parseResultText(raw.resultText), columns.get(columnKey(raw))!), [unit.factor, basis], [limitUnit?.factor ?? unit.factor, basis]);
       }
     }
     resolveQualifier(row, catalog);

@@ -8,6 +8,7 @@ import type { gapChoiceInput } from '#shared/schemas/climate.ts';
 import type { MonthClimate } from '#shared/water-balance/engine-input.ts';
 import type { ClimateView } from '#shared/views/site-view.ts';
 import { recordChange } from '../../audit/record-change.ts';
+import { remembered } from '../../db/remembered-reads.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context } from '../../http/route.ts';
 import { listImports } from '../imports/import-repository.ts';
@@ -94,7 +95,9 @@ function stationNormal(months: readonly MonthSummary[], month: Month): MonthClim
 }
 
 /** Every month of a site that has any climate, in order. */
-export async function listSiteClimate(tx: Transaction, siteId: string): Promise<SiteMonthClimate[]> {
+export const listSiteClimate = (tx: Transaction, siteId: string): Promise<SiteMonthClimate[]> => remembered(tx, `climate ${siteId}`, () => joinSiteClimate(tx, siteId));
+
+async function joinSiteClimate(tx: Transaction, siteId: string): Promise<SiteMonthClimate[]> {
   const stations = await readStations(tx, siteId);
   const named = stations.flatMap((station) => [...station.months.keys(), ...station.monthsWithDays]).sort();
   if (!named.length) return [];

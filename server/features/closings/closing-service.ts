@@ -57,7 +57,7 @@ export async function reopenMonth(tx: Transaction, context: Context, deps: Depen
   const days = await siteDaysOf(tx, siteId);
   const waiting = (await entryRepository.listPendingChanges(tx, siteId)).filter((one) => one.month === month);
   for (const meterId of new Set(waiting.map((one) => one.meterId).filter((id) => id !== null))) {
-    if (record.meters.some((meter) => meter.id === meterId)) await repostMonth(tx, context, deps, meterId, days, firstDay(month), lastDay(month));
+    if (record.meters.some((meter) => meter.id === meterId)) await repostMonth(tx, context, deps, record, meterId, days, firstDay(month), lastDay(month));
   }
   if (waiting.length) await entryRepository.markPosted(tx, waiting.map((one) => one.id), deps.now().toISOString());
   await recordChange(tx, context, { action: 'reopen', subjectType: 'month-closings', subjectId: input.id, sentence: `${monthName(month)} was reopened; ${waiting.length} waiting changes were posted.`, reason: input.reason });

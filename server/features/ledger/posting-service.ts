@@ -7,8 +7,7 @@ import type { VolumeUnit } from '#shared/units/unit-factors.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
 import * as readingRepository from '../readings/reading-repository.ts';
-import { listDayRules } from '../sites/site-repository.ts';
-import { readSite, siteOf, type SiteRecord } from '../sites/site-service.ts';
+import { siteOf, type SiteRecord } from '../sites/site-service.ts';
 import * as repository from './entry-repository.ts';
 
 type Meter = SiteRecord['meters'][number];
@@ -85,13 +84,12 @@ function entryRows(context: Context, deps: Dependencies, siteId: string, meter: 
  * Computes the days a new fact touches again, and posts reversals and replacements for those that differ.
  * Days in closed months are not touched: the change waits as pending.
  */
-export async function repostMeter(tx: Transaction, context: Context, deps: Dependencies, meterId: string, cause: Cause): Promise<void> {
+export async function repostMeter(tx: Transaction, context: Context, deps: Dependencies, record: SiteRecord, meterId: string, cause: Cause): Promise<void> {
   const siteId = siteOf(context);
   await repository.lockSiteLedger(tx, siteId);
-  const record = await readSite(tx, siteId);
   const meter = record.meters.find((one) => one.id === meterId);
   if (!meter) return;
-  const days = createSiteDays(await listDayRules(tx, siteId));
+  const days = createSiteDays(record.dayRules);
   const span = await affectedSpan(tx, meterId, days, cause.atMs, cause.toMs ?? cause.atMs);
   const facts = await readMeterFacts(tx, record, meter, span.from, span.to);
   const { intervals } = computeIntervals(facts);
@@ -105,8 +103,8 @@ export async function repostMeter(tx: Transaction, context: Context, deps: Depen
 }
 
 /** Posts every day of a meter again over a span: used when a month is reopened. */
-export async function repostMonth(tx: Transaction, context: Context, deps: Dependencies, meterId: string, days: SiteDays, firstDay: Day, lastDay: Day): Promise<void> {
-  await repostMeter(tx, context, deps, meterId, { atMs: days.startMs(firstDay), toMs: days.startMs(addDays(lastDay, 1)), factId: meterId, why: 'Month reopened' });
+export async function repostMonth(tx: Transaction, context: Context, deps: Dependencies, record: SiteRecord, meterId: string, days: SiteDays, firstDay: Day, lastDay: Day): Promise<void> {
+  await repostMeter(tx, context, deps, record, meterId, { atMs: days.startMs(firstDay), toMs: days.startMs(addDays(lastDay, 1)), factId: meterId, why: 'Month reopened' });
 }
 
 /** Recomputes all day volumes of a meter over a span, for the check that entries equal recomputed days. */

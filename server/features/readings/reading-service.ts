@@ -87,7 +87,7 @@ export async function createReading(tx: Transaction, context: Context, deps: Dep
     note: input.note ?? null, supersedesId: input.supersedesId ?? null, reason: input.reason ?? null, deviceId: input.deviceId ?? null, recordedAt: deps.now().toISOString(),
   });
   await recordChange(tx, context, { action: input.supersedesId ? 'replace' : 'create', subjectType: 'readings', subjectId: input.id, sentence: `Meter ${meter.code} was read: ${input.registerText}${answer === 'held' ? ', held until answered' : ''}.`, reason: input.reason ?? input.note, after: { ...input, siteDay: observed.siteDay } });
-  await repostMeter(tx, context, deps, meter.id, { atMs: observed.observedAtMs, factId: input.id, why: `Reading ${new Decimal(registerValue).toFixed()} of ${dayName(observed.siteDay)}` });
+  await repostMeter(tx, context, deps, record, meter.id, { atMs: observed.observedAtMs, factId: input.id, why: `Reading ${new Decimal(registerValue).toFixed()} of ${dayName(observed.siteDay)}` });
   return { id: input.id, state: answer === 'held' ? ('held' as const) : ('stored' as const), siteDay: observed.siteDay, observedAt: observed.observedAt, check };
 }
 
@@ -100,7 +100,7 @@ export async function voidReading(tx: Transaction, context: Context, deps: Depen
   const { sequence: _sequence, recordedAt: _recordedAt, ...copy } = reading;
   await repository.insertReading(tx, { ...copy, id: input.id, recordedById: context.personId, supersedesId: reading.id, isVoid: 'yes', reason: input.reason });
   await recordChange(tx, context, { action: 'void', subjectType: 'readings', subjectId: reading.id, sentence: `Reading ${reading.typedText} of meter ${meter.code} on ${dayName(reading.siteDay)} was voided.`, reason: input.reason, before: reading });
-  await repostMeter(tx, context, deps, meter.id, { atMs: Date.parse(reading.observedAt), factId: input.id, why: `Reading of ${dayName(reading.siteDay)} voided` });
+  await repostMeter(tx, context, deps, record, meter.id, { atMs: Date.parse(reading.observedAt), factId: input.id, why: `Reading of ${dayName(reading.siteDay)} voided` });
   return { id: input.id };
 }
 
@@ -132,7 +132,7 @@ export async function createEstimate(tx: Transaction, context: Context, deps: De
     volumeM3: input.volumeM3, method: input.method, inputs: { text: input.inputs }, acceptedById: context.personId, reason: input.reason,
   });
   await recordChange(tx, context, { action: 'estimate', subjectType: 'adjustments', subjectId: input.id, sentence: `${input.volumeM3} m³ were estimated for meter ${meter.code}: ${estimateMethods[input.method]}.`, reason: input.reason, after: input });
-  await repostMeter(tx, context, deps, meter.id, { atMs: fromMs, toMs, factId: input.id, why: `Estimate: ${estimateMethods[input.method]}` });
+  await repostMeter(tx, context, deps, record, meter.id, { atMs: fromMs, toMs, factId: input.id, why: `Estimate: ${estimateMethods[input.method]}` });
   return { id: input.id };
 }
 
@@ -144,6 +144,6 @@ export async function settleDispute(tx: Transaction, context: Context, deps: Dep
   if (!reading || !meter) throw fieldProblem('/chosenReadingId', 'Choose one of the two readings.');
   await repository.insertDispute(tx, { organisationId: context.organisationId, id: input.id, recordedById: context.personId, meterId: meter.id, observedAt: reading.observedAt, chosenReadingId: reading.id, reason: input.reason });
   await recordChange(tx, context, { action: 'settle', subjectType: 'readings', subjectId: reading.id, sentence: `Reading ${reading.typedText} of meter ${meter.code} counts.`, reason: input.reason, after: input });
-  await repostMeter(tx, context, deps, meter.id, { atMs: Date.parse(reading.observedAt), factId: input.id, why: 'Dispute settled' });
+  await repostMeter(tx, context, deps, record, meter.id, { atMs: Date.parse(reading.observedAt), factId: input.id, why: 'Dispute settled' });
   return { id: input.id };
 }

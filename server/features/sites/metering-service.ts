@@ -96,6 +96,6 @@ export async function addMeterEvent(tx: Transaction, context: Context, deps: Dep
   });
   await recordChange(tx, context, { action: 'create', subjectType: 'meter-events', subjectId: input.id, sentence: `Meter ${meter.code}: ${input.kind.replace('-', ' ')} on ${dayName(observed.siteDay)}.`, reason: input.note, after: input });
   // A register keeps its new unit and multiplier, so every later day is computed again.
-  await repostMeter(tx, context, deps, meter.id, { atMs: Date.parse(observed.observedAt), toMs: deps.now().getTime(), factId: input.id, why: `Meter event: ${input.kind.replace('-', ' ')}` });
+  await repostMeter(tx, context, deps, await readSite(tx, siteId), meter.id, { atMs: Date.parse(observed.observedAt), toMs: deps.now().getTime(), factId: input.id, why: `Meter event: ${input.kind.replace('-', ' ')}` });
   return { id: input.id };
 }

@@ -6,6 +6,7 @@ import type { Role } from '#shared/permissions.ts';
 import type { siteInput, siteSettingsInput } from '#shared/schemas/sites.ts';
 import { coverKindNames, coverTypeTemplates } from '#shared/water-balance/cover-types.ts';
 import { recordChange } from '../../audit/record-change.ts';
+import { remembered } from '../../db/remembered-reads.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import { sha256Of } from '../../files/file-store.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
@@ -19,7 +20,7 @@ export function siteOf(context: Context): string {
 }
 
 export async function siteDaysOf(tx: Transaction, siteId: string): Promise<SiteDays> {
-  return createSiteDays(await repository.listDayRules(tx, siteId));
+  return remembered(tx, `days ${siteId}`, async () => createSiteDays(await repository.listDayRules(tx, siteId)));
 }
 
 const slugOf = (name: string) =>
@@ -70,7 +71,9 @@ function plainNumbers<T>(rows: readonly T[]): T[] {
 }
 
 /** A site with everything it is made of. */
-export async function readSite(tx: Transaction, siteId: string) {
+export const readSite = (tx: Transaction, siteId: string) => remembered(tx, `site ${siteId}`, () => loadSite(tx, siteId));
+
+async function loadSite(tx: Transaction, siteId: string) {
   const site = await repository.findSite(tx, siteId);
   if (!site) throw new Problem('not-found', 'There is no such site.');
   const structure = await repository.readStructure(tx, siteId);
