@@ -28,6 +28,15 @@ async function latencies({ url, clients, request }: Load): Promise<{ p50: number
   return { p50: median(runs.map((one) => one.p50)), p95: median(runs.map((one) => one.p95)) };
 }
 
+const meterCount = 100;
+
+/** Meters beside the demo's own, so that no register collects more readings a day than a site would have. */
+async function addMeters({ owner }: World): Promise<string[]> {
+  const rows = await owner.query<{ id: string }>(`insert into meters (organisation_id, id, site_id, code, name, from_place_id, to_place_id, digits, decimals, unit, multiplier, rate_m3_per_day_max, installed_on)
+    select organisation_id, gen_random_uuid(), site_id, 'B' || n, 'Bench ' || n, from_place_id, to_place_id, 7, 0, 'm3', 1, 400, '2026-03-01' from meters, generate_series(1, ${meterCount}) n where code = 'O1' returning id`);
+  return rows.rows.map((row) => row.id);
+}
+
 /** A bare Express with one indexed SELECT and one INSERT on the same PostgreSQL. */
 async function openBare({ owner, siteId }: World) {
   await owner.query('create table bare_readings (id uuid primary key, meter_id uuid not null, observed_at timestamptz not null, register_value numeric not null)');
@@ -48,19 +57,19 @@ async function openBare({ owner, siteId }: World) {
 
 /** The month page and one reading saved, with 1 and 16 clients, beside the bare routes. */
 export async function benchApi(world: World): Promise<Figure[]> {
-  const { base, owner, siteId } = world;
+  const { base, siteId } = world;
   const cookie = await world.cookieOf('engineer');
   const bare = await openBare(world);
-  const { id: meterId } = (await owner.query<{ id: string }>(`select id from meters where code = 'O1'`)).rows[0]!;
-  const last = Number((await owner.query<{ v: string }>('select max(register_value) as v from readings where meter_id = $1', [meterId])).rows[0]!.v);
-  const from = Date.parse('2026-03-18T08:00:00Z');
+  const meterIds = await addMeters(world);
+  const meterId = meterIds[0]!;
+  const from = Date.parse('2026-03-18T06:00:00Z');
   const headers = { cookie, 'content-type': 'application/json' };
   const month = () => ({ method: 'GET' as const, path: `/api/v1/sites/${siteId}/months/2026-02`, headers });
   const reading = (index: number) => {
     const id = crypto.randomUUID();
-    return { method: 'POST' as const, path: `/api/v1/sites/${siteId}/readings`, headers: { ...headers, 'idempotency-key': id }, body: JSON.stringify({ id, meterId, registerText: String(last), answer: 'confirmed', observedAt: new Date(from + index * 500).toISOString() }) };
+    return { method: 'POST' as const, path: `/api/v1/sites/${siteId}/readings`, headers: { ...headers, 'idempotency-key': id }, body: JSON.stringify({ id, meterId: meterIds[index % meterCount], registerText: '100', answer: 'confirmed', observedAt: new Date(from + Math.floor(index / meterCount) * 60_000).toISOString() }) };
   };
-  const bareReading = () => ({ method: 'POST' as const, path: '/reading', headers: { 'content-type': 'application/json' }, body: JSON.stringify({ id: crypto.randomUUID(), meterId, observedAt: new Date(from).toISOString(), value: String(last) }) });
+  const bareReading = () => ({ method: 'POST' as const, path: '/reading', headers: { 'content-type': 'application/json' }, body: JSON.stringify({ id: crypto.randomUUID(), meterId, observedAt: new Date(from).toISOString(), value: '100' }) });
   const figures: Figure[] = [];
   for (const clients of [1, 16]) {
     const words = clients === 1 ? '1 client' : `${clients} clients`;
