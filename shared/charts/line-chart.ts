@@ -8,6 +8,9 @@ export interface ChartLine {
   values: readonly (number | null)[];
 }
 
+/** Digits in threes by a thin space, as everywhere on screen. */
+const inThrees = (value: number) => String(value).replace(/\B(?=(\d{3})+$)/g, '\u2009');
+
 interface LineChartInput {
   labels: readonly string[];
   lines: readonly ChartLine[];
@@ -36,10 +39,10 @@ export function lineChart({ labels, lines, axisTitle }: LineChartInput): ChartCo
     },
     options: {
       animation: false, responsive: true, maintainAspectRatio: false,
-      plugins: { legend: { position: 'top', align: 'start', labels: { usePointStyle: true, color: chartInk.text, font } }, tooltip: { enabled: true } },
+      plugins: { legend: { position: 'top', align: 'start', labels: { usePointStyle: true, boxWidth: 10, boxHeight: 10, padding: 16, color: chartInk.text, font } }, tooltip: { enabled: true } },
       scales: {
         x: { grid: { display: false }, ticks: { color: chartInk.muted, font, maxRotation: 0, autoSkipPadding: 12 } },
-        y: { beginAtZero: true, grid: { color: chartInk.line }, ticks: { color: chartInk.muted, font }, title: { display: true, text: axisTitle, color: chartInk.muted, font } },
+        y: { beginAtZero: true, grid: { color: chartInk.line }, ticks: { color: chartInk.muted, font, callback: (value) => inThrees(Number(value)) }, title: { display: true, text: axisTitle, color: chartInk.muted, font } },
       },
     },
   };

@@ -1,4 +1,5 @@
 import ExcelJS from 'exceljs';
+import JSZip from 'jszip';
 import { HyperFormula, type RawCellContent } from 'hyperformula';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { BalanceView } from '#shared/views/balance-view.ts';
@@ -29,6 +30,7 @@ describe('the quarterly workbook, recomputed by an independent spreadsheet engin
   let record: TestRecord;
   let engineer: Agent;
   let siteId: string;
+  let zip: JSZip;
   let workbook: ExcelJS.Workbook;
   let engine: HyperFormula;
   let view: ReportView;
@@ -41,6 +43,7 @@ describe('the quarterly workbook, recomputed by an independent spreadsheet engin
       response.on('data', (chunk: Buffer) => chunks.push(chunk));
       response.on('end', () => done(null, Buffer.concat(chunks)));
     }).expect(200);
+    zip = await JSZip.loadAsync(answer.body as Buffer);
     workbook = new ExcelJS.Workbook();
     await workbook.xlsx.load(answer.body as never);
     const sheets = Object.fromEntries(workbook.worksheets.map((sheet) => {
@@ -115,6 +118,32 @@ describe('the quarterly workbook, recomputed by an independent spreadsheet engin
     for (const sheet of workbook.worksheets) {
       expect(sheet.state).toBe('visible');
       sheet.eachRow((row) => row.eachCell((cell) => expect(JSON.stringify(cell.value)).not.toMatch(/#(REF|DIV|VALUE|NAME|N\/A)/)));
+    }
+  });
+
+  it('has a picture and two native charts, each with alternative text, and every part they name exists', async () => {
+    const parts = Object.keys(zip.files);
+    expect(parts.filter((part) => part.startsWith('xl/charts/'))).toHaveLength(2);
+    expect(parts.filter((part) => /^xl\/media\/.*\.png$/.test(part))).toHaveLength(1);
+    const types = await zip.file('[Content_Types].xml')!.async('string');
+    for (const [, part] of types.matchAll(/PartName="\/([^"]+)"/g)) expect(parts, part).toContain(part);
+    for (const part of parts.filter((one) => one.endsWith('.rels'))) {
+      const folder = part.replace(/_rels\/[^/]+$/, '');
+      for (const [, target, mode] of (await zip.file(part)!.async('string')).matchAll(/Target="([^"]+)"(?: TargetMode="(\w+)")?/g)) {
+        if (mode === 'External' || target!.startsWith('#')) continue;
+        const path = new URL(target!, `file:///${folder}`).pathname.slice(1);
+        expect(parts, `${part} names ${target}`).toContain(path);
+      }
+    }
+    for (const part of parts.filter((one) => /^xl\/drawings\/[^_].*\.xml$/.test(one))) expect(await zip.file(part)!.async('string'), part).toMatch(/descr="[^"]{40,}"/);
+  });
+
+  it('its charts draw the cells they name', async () => {
+    const chart = await zip.file('xl/charts/chart1.xml')!.async('string');
+    const cached = [...chart.matchAll(/<c:f>Compare!\$([BC])\$(\d+):\$[BC]\$(\d+)<\/c:f><c:numCache>(.*?)<\/c:numCache>/g)];
+    expect(cached).toHaveLength(2);
+    for (const [, column, first, , numbers] of cached) {
+      for (const [, index, value] of numbers!.matchAll(/idx="(\d+)"><c:v>([^<]+)</g)) expect(workbook.getWorksheet('Compare')!.getCell(`${column}${Number(first) + Number(index)}`).value).toBe(Number(value));
     }
   });
 });

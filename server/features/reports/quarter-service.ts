@@ -1,5 +1,5 @@
 import { addDays, dayName, daysBetween, firstDay, lastDay } from '#shared/calendar/day.ts';
-import { addMonths, daysInMonth, monthName, quarterMonths, quarterName, type Month } from '#shared/calendar/month.ts';
+import { monthRange, addMonths, daysInMonth, monthName, quarterMonths, quarterName, type Month } from '#shared/calendar/month.ts';
 import type { Interval } from '#shared/ledger/intervals.ts';
 import { leakDetectionRate } from '#shared/ledger/leak-detection.ts';
 import { Problem } from '#shared/problems.ts';
@@ -74,6 +74,8 @@ export interface Quarter {
   cells: { code: string; name: string }[];
   steps: QuarterStep[];
   cellMonths: QuarterCellMonth[];
+  /** The whole site over the twelve months to the end of the quarter; null where nothing was read. */
+  history: { month: Month; predictedM3: number; measuredM3: number | null }[];
   intervals: (Interval & { meterCode: string; from: string; to: string; hours: number })[];
   days: QuarterDay[];
   stores: { month: Month; name: string; balance: Awaited<ReturnType<typeof readLedger>>['stores'][number]['balance'] }[];
@@ -99,6 +101,22 @@ async function stepsOf(tx: Transaction, record: SiteRecord, runId: string, month
       };
     })
     .sort((a, b) => a.cellCode.localeCompare(b.cellCode) || a.plotId.localeCompare(b.plotId) || (a.fromOn < b.fromOn ? -1 : 1));
+}
+
+/** Predicted and pumped of the whole site, month by month, for the charts. */
+async function historyOf(tx: Transaction, record: SiteRecord, runId: string, last: Month): Promise<Quarter['history']> {
+  const months = monthRange(addMonths(last, -11), last);
+  const predicted = new Map<string, number>();
+  for (const step of await balanceRepository.listSteps(tx, runId, months[0], last)) {
+    const key = `${step.cellId} ${step.month}`;
+    predicted.set(key, (predicted.get(key) ?? 0) + ((step.terms as StepTerms).leachateMm * step.areaM2) / 1000);
+  }
+  const measured = await measuredByCell(tx, record, months[0]!, last, predicted);
+  return months.flatMap((month) => {
+    const cells = record.cells.filter((cell) => predicted.has(`${cell.id} ${month}`));
+    const read = cells.flatMap((cell) => measured.get(`${cell.id} ${month}`) ?? []);
+    return cells.length ? [{ month, predictedM3: cells.reduce((sum, cell) => sum + predicted.get(`${cell.id} ${month}`)!, 0), measuredM3: read.length ? read.reduce((sum, one) => sum + one.volumeM3, 0) : null }] : [];
+  });
 }
 
 async function daysOf(tx: Transaction, record: SiteRecord, months: Month[]): Promise<QuarterDay[]> {
@@ -199,7 +217,7 @@ export async function collectQuarter(tx: Transaction, context: Context, deps: De
       const own = measured.get(key);
       return { cellCode: cell.code, month, areaM2: predicted.get(key)?.areaM2 ?? 0, predictedM3: predicted.get(key)?.volumeM3 ?? 0, measuredM3: own?.volumeM3 ?? null, estimatedM3: own?.estimatedM3 ?? 0, allocatedM3: own?.allocatedM3 ?? 0 };
     })),
-    intervals, days: await daysOf(tx, record, months), stores: ledgers.flatMap((ledger) => ledger.stores.map((store) => ({ month: ledger.month, name: store.name, balance: store.balance }))),
+    history: await historyOf(tx, record, run.id, months[2]!), intervals, days: await daysOf(tx, record, months), stores: ledgers.flatMap((ledger) => ledger.stores.map((store) => ({ month: ledger.month, name: store.name, balance: store.balance }))),
     loads: ledgers.map((ledger) => ({ month: ledger.month, count: ledger.loads.count, nominalM3: ledger.loads.nominalM3, receivedM3: ledger.loads.receivedM3 })),
     leakDetection: await leakDetectionOf(tx, record, months), verdicts: await judgeMonths(tx, siteId, months),
     results: results.map((row) => ({

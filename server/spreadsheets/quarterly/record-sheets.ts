@@ -13,7 +13,7 @@ export function addLabSheet(workbook: ExcelJS.Workbook, quarter: Quarter, title:
 }
 
 /** Every limit of every month with its value, ratio and verdict; loads are computed from flow and concentration. */
-export function addLoadsSheet(workbook: ExcelJS.Workbook, quarter: Quarter, title: string): { loadRows: { row: number; value: number }[] } {
+export function addLoadsSheet(workbook: ExcelJS.Workbook, quarter: Quarter, title: string): { loadRows: { row: number; value: number }[]; verdictRows: { firstRow: number; lastRow: number } } {
   const sheet = addSheet(workbook, 'Loads', `${title}: limits and loads`, quarter.site.paperSize, true);
   sheet.getCell('A2').value = 'Load, kg/d = flow, m³/d × concentration, mg/L × 0.001. Verdict words: pass, exceed, incomplete, cannot be judged, no discharge, not required.';
   const headerRow = 3;
@@ -46,7 +46,7 @@ export function addLoadsSheet(workbook: ExcelJS.Workbook, quarter: Quarter, titl
     return [one.pointCode, one.analyteName, dayDate(day.siteDay), flow, concentration, { formula: `D${row}*E${row}*0.001`, result: (flow * concentration) / 1000 }, day.exceeds ? 'exceed' : 'pass'];
   });
   addTable(sheet, loadHeader, [{ header: 'Sample point' }, { header: 'Parameter' }, { header: 'Day', format: formats.day }, { header: 'Flow, m³/d', format: '#,##0.0' }, { header: 'Counted concentration, mg/L', format: formats.concentration }, { header: 'Load, kg/d', format: formats.load }, { header: 'Against the limit' }], table, { freeze: false });
-  return { loadRows };
+  return { loadRows, verdictRows: { firstRow: headerRow + 1, lastRow: headerRow + Math.max(1, rows.length) } };
 }
 
 /** Concentration a load was computed with: the day's mean, values below detection by the limit's rule. */

@@ -44,6 +44,8 @@ export function addPumpedSheet(workbook: ExcelJS.Workbook, quarter: Quarter, tit
 export interface CompareRows {
   firstRow: number;
   lastRow: number;
+  /** Rows of the table of the whole site over twelve months. */
+  history: { firstRow: number; lastRow: number };
 }
 
 /** Predicted against measured by cell and month, summed from Balance and Pumped. */
@@ -74,5 +76,8 @@ export function addCompareSheet(workbook: ExcelJS.Workbook, quarter: Quarter, ti
     { header: 'Cell', width: 8 }, { header: 'Month', format: formats.month }, { header: 'Area, m²', format: formats.m3 }, { header: 'Predicted, m³', format: formats.m3 }, { header: 'Pumped from own sumps, m³', format: formats.m3 }, { header: 'Allocated from shared header, m³', format: formats.m3 },
     { header: 'Pumped, m³', format: formats.m3 }, { header: 'Difference, m³', format: formats.difference }, { header: 'Difference, % of predicted', format: formats.percent }, { header: 'Running difference, m³', format: formats.difference }, { header: 'Of it estimated, m³', format: formats.m3 }, { header: 'Estimated', format: formats.percent },
   ], rows);
-  return { firstRow: headerRow + 1, lastRow: headerRow + rows.length };
+  const historyHeader = headerRow + rows.length + 3;
+  sheet.getCell(historyHeader - 1, 1).value = 'The whole site, twelve months to the end of the quarter; the chart beside it draws these rows.';
+  addTable(sheet, historyHeader, [{ header: 'Month', format: formats.month }, { header: 'Predicted, m³', format: formats.m3 }, { header: 'Pumped, m³', format: formats.m3 }], quarter.history.map((one): CellInput[] => [monthDate(one.month), one.predictedM3, one.measuredM3 ?? 'not read']), { freeze: false });
+  return { firstRow: headerRow + 1, lastRow: headerRow + rows.length, history: { firstRow: historyHeader + 1, lastRow: historyHeader + quarter.history.length } };
 }
