@@ -15,23 +15,52 @@ export default defineConfig(
   {
     rules: {
       '@typescript-eslint/no-non-null-assertion': 'off',
-      '@typescript-eslint/no-unused-vars': ['error', { argsIgnorePattern: '^_', varsIgnorePattern: '^_', ignoreRestSiblings: true }],
-      '@typescript-eslint/consistent-type-imports': ['error', { fixStyle: 'separate-type-imports', disallowTypeAnnotations: false }],
+      '@typescript-eslint/no-unused-vars': [
+        'error',
+        { argsIgnorePattern: '^_', varsIgnorePattern: '^_', ignoreRestSiblings: true },
+      ],
+      '@typescript-eslint/consistent-type-imports': [
+        'error',
+        { fixStyle: 'separate-type-imports', disallowTypeAnnotations: false },
+      ],
       eqeqeq: 'error',
       'no-console': 'error',
       'max-lines-per-function': ['error', { max: 90, skipComments: true }],
     },
   },
-  { files: ['server/main.ts', 'server/start/*.mjs', 'tests/bench/**'], languageOptions: { globals: { console: 'readonly', process: 'readonly', URL: 'readonly' } }, rules: { 'no-console': 'off' } },
+  {
+    files: ['server/main.ts', 'server/start/*.mjs', 'tests/bench/**'],
+    languageOptions: { globals: { console: 'readonly', process: 'readonly', URL: 'readonly' } },
+    rules: { 'no-console': 'off' },
+  },
   {
     files: ['shared/**'],
     rules: {
-      ...forbid([['#server/*', '#src/*', 'node:*', 'react*', 'express', 'drizzle-orm*', 'pg'], 'shared is pure: values in, values out.']),
+      ...forbid([
+        ['#server/*', '#src/*', 'node:*', 'react*', 'express', 'drizzle-orm*', 'pg'],
+        'shared is pure: values in, values out.',
+      ]),
       'no-restricted-globals': ['error', 'process', 'fetch', 'window', 'document', 'localStorage'],
     },
   },
   { files: ['server/**'], rules: forbid([['#src/*', 'react*'], 'The server does not know the client.']) },
-  { files: ['server/features/**/*-routes.ts'], rules: forbid([['**/*-repository.ts', 'drizzle-orm*', 'pg'], 'Routes call services.'], [['#src/*'], 'The server does not know the client.']) },
-  { files: ['src/**/*.{ts,tsx}'], plugins: { 'react-hooks': hooks }, rules: { ...hooks.configs.recommended.rules, ...forbid([['#server/*', '**/server/**', 'node:*'], 'The client never imports the server, not even types.']) } },
+  {
+    files: ['server/features/**/*-routes.ts'],
+    rules: forbid(
+      [['**/*-repository.ts', 'drizzle-orm*', 'pg'], 'Routes call services.'],
+      [['#src/*'], 'The server does not know the client.'],
+    ),
+  },
+  {
+    files: ['src/**/*.{ts,tsx}'],
+    plugins: { 'react-hooks': hooks },
+    rules: {
+      ...hooks.configs.recommended.rules,
+      ...forbid([
+        ['#server/*', '**/server/**', 'node:*'],
+        'The client never imports the server, not even types.',
+      ]),
+    },
+  },
   { files: ['tests/**', '.eslint.config.js'], rules: { 'max-lines-per-function': 'off' } },
 );

@@ -21,12 +21,21 @@ export function createApp(deps: Dependencies): Express {
   app.set('trust proxy', 'loopback');
   app.use(
     helmet({
-      contentSecurityPolicy: { directives: { 'upgrade-insecure-requests': null, 'style-src': ["'self'", "'unsafe-inline'"] } },
+      contentSecurityPolicy: {
+        directives: { 'upgrade-insecure-requests': null, 'style-src': ["'self'", "'unsafe-inline'"] },
+      },
       strictTransportSecurity: false,
     }),
   );
   app.use(compression());
-  app.use(pinoHttp({ logger: deps.log, genReqId: () => deps.newId(), quietReqLogger: true, autoLogging: { ignore: (r) => !r.url?.startsWith('/api') } }));
+  app.use(
+    pinoHttp({
+      logger: deps.log,
+      genReqId: () => deps.newId(),
+      quietReqLogger: true,
+      autoLogging: { ignore: (r) => !r.url?.startsWith('/api') },
+    }),
+  );
   app.get('/api/v1/health', (_request, response) => {
     response.json({ state: 'up' });
   });

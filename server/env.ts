@@ -24,7 +24,9 @@ export type Env = z.infer<typeof schema>;
 export function readEnv(source: NodeJS.ProcessEnv): Env {
   const parsed = schema.safeParse(source);
   if (!parsed.success) {
-    throw new Error(parsed.error.issues.map((issue) => `${issue.path.join('.')}: ${issue.message}`).join('\n'));
+    throw new Error(
+      parsed.error.issues.map((issue) => `${issue.path.join('.')}: ${issue.message}`).join('\n'),
+    );
   }
   if (parsed.data.DATABASE_URL && !parsed.data.APP_DATABASE_URL) {
     throw new Error(

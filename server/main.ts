@@ -23,7 +23,8 @@ function secretIn(folder: string): Uint8Array {
 }
 
 async function databaseUrls(env: Env): Promise<DatabaseUrls> {
-  if (env.DATABASE_URL && env.APP_DATABASE_URL) return { ownerUrl: env.DATABASE_URL, appUrl: env.APP_DATABASE_URL };
+  if (env.DATABASE_URL && env.APP_DATABASE_URL)
+    return { ownerUrl: env.DATABASE_URL, appUrl: env.APP_DATABASE_URL };
   if (env.CLUSTER_ADMIN_URL) return prepareDatabase(env.CLUSTER_ADMIN_URL, env.DATA_FOLDER, 'tallyweir');
   throw new Error('No database was named. Start with npm start, or set DATABASE_URL and APP_DATABASE_URL.');
 }
@@ -31,7 +32,9 @@ async function databaseUrls(env: Env): Promise<DatabaseUrls> {
 function listen(app: ReturnType<typeof createApp>, port: number): Promise<Server> {
   return new Promise((resolve, reject) => {
     // Express calls back on failure too, with the error.
-    const server = app.listen(port, '127.0.0.1', (error?: Error) => (error ? reject(error) : resolve(server)));
+    const server = app.listen(port, '127.0.0.1', (error?: Error) =>
+      error ? reject(error) : resolve(server),
+    );
   });
 }
 
@@ -40,13 +43,17 @@ async function announce(deps: Dependencies, port: number): Promise<void> {
   const { hasDemo } = await installationState(deps);
   if (!hasDemo) return;
   console.log('Demo sign-ins, no password, chosen on the first page:');
-  for (const person of await listDemoPeople(deps)) console.log(`  ${person.displayName}, ${person.role} (${person.email})`);
+  for (const person of await listDemoPeople(deps))
+    console.log(`  ${person.displayName}, ${person.role} (${person.email})`);
 }
 
 async function main(): Promise<void> {
   const env = readEnv(process.env);
   mkdirSync(env.DATA_FOLDER, { recursive: true });
-  const log = pino({ level: env.NODE_ENV === 'production' ? 'warn' : 'info', redact: ['req.headers.cookie', 'req.headers.authorization'] });
+  const log = pino({
+    level: env.NODE_ENV === 'production' ? 'warn' : 'info',
+    redact: ['req.headers.cookie', 'req.headers.authorization'],
+  });
   const urls = await databaseUrls(env);
   await migrateDatabase(urls);
   const pool = createPool(urls.appUrl, (error) => log.warn({ err: error }, 'database connection'));

@@ -6,4 +6,10 @@ import { siteRoutes } from './features/sites/site-routes.ts';
 import type { Route } from './http/route.ts';
 
 /** Every route that works with the record; the permission test walks this list. */
-export const allRoutes: Route[] = [...siteRoutes, ...readingRoutes, ...balanceRoutes, ...labRoutes, ...reportRoutes];
+export const allRoutes: Route[] = [
+  ...siteRoutes,
+  ...readingRoutes,
+  ...balanceRoutes,
+  ...labRoutes,
+  ...reportRoutes,
+];

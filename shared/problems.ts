@@ -59,7 +59,14 @@ export class Problem extends Error {
 
   toDocument(instance?: string): ProblemDocument {
     const { status, title } = problemKinds[this.kind];
-    return { type: `/problems/${this.kind}`, title, status, detail: this.message, instance, errors: this.errors };
+    return {
+      type: `/problems/${this.kind}`,
+      title,
+      status,
+      detail: this.message,
+      instance,
+      errors: this.errors,
+    };
   }
 }
 

@@ -18,7 +18,11 @@ export interface Change {
 export const trailLock = (organisationId: string) => sql`hashtextextended(${`trail:${organisationId}`}, 0)`;
 
 /** Writes the trail row of a change inside the caller's transaction. */
-export async function recordChange(tx: Transaction, context: Pick<Context, 'organisationId' | 'personId' | 'siteId'>, change: Change): Promise<void> {
+export async function recordChange(
+  tx: Transaction,
+  context: Pick<Context, 'organisationId' | 'personId' | 'siteId'>,
+  change: Change,
+): Promise<void> {
   await tx.execute(sql`select pg_advisory_xact_lock_shared(${trailLock(context.organisationId)})`);
   await tx.insert(trailEntries).values({
     organisationId: context.organisationId,

@@ -11,7 +11,9 @@ export function startSealing(deps: Dependencies) {
       tx.execute<{ organisation_id: string }>(sql`select organisation_id from organisations_to_seal()`),
     );
     for (const { organisation_id: organisationId } of found.rows) {
-      await withOrganisation(deps.database, { organisationId, personId: null }, (tx) => sealTrail(tx, organisationId));
+      await withOrganisation(deps.database, { organisationId, personId: null }, (tx) =>
+        sealTrail(tx, organisationId),
+      );
     }
   };
   let busy = false;

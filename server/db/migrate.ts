@@ -42,13 +42,22 @@ function rolePasswords(folder: string): { owner: string; app: string } {
  * Makes the two roles and the database on a cluster of our own.
  * @param folder where the role passwords are kept, mode 0600
  */
-export async function prepareDatabase(adminUrl: string, folder: string, database: string): Promise<DatabaseUrls> {
+export async function prepareDatabase(
+  adminUrl: string,
+  folder: string,
+  database: string,
+): Promise<DatabaseUrls> {
   const passwords = rolePasswords(folder);
   await asClient(adminUrl, async (admin) => {
-    for (const [role, password] of [[ownerRole, passwords.owner], [appRole, passwords.app]] as const) {
+    for (const [role, password] of [
+      [ownerRole, passwords.owner],
+      [appRole, passwords.app],
+    ] as const) {
       const known = await admin.query('select 1 from pg_roles where rolname = $1', [role]);
       const verb = known.rowCount ? 'alter' : 'create';
-      await admin.query(`${verb} role ${role} login nosuperuser nobypassrls nocreatedb nocreaterole password '${password}'`);
+      await admin.query(
+        `${verb} role ${role} login nosuperuser nobypassrls nocreatedb nocreaterole password '${password}'`,
+      );
     }
     const exists = await admin.query('select 1 from pg_database where datname = $1', [database]);
     if (!exists.rowCount) await admin.query(`create database ${database} owner ${ownerRole}`);
@@ -62,7 +71,9 @@ export async function prepareDatabase(adminUrl: string, folder: string, database
   };
   const adminOfDatabase = new URL(adminUrl);
   adminOfDatabase.pathname = `/${database}`;
-  await asClient(adminOfDatabase.toString(), (admin) => admin.query('create extension if not exists btree_gist'));
+  await asClient(adminOfDatabase.toString(), (admin) =>
+    admin.query('create extension if not exists btree_gist'),
+  );
   return { ownerUrl: url(ownerRole, passwords.owner), appUrl: url(appRole, passwords.app) };
 }
 

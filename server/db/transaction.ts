@@ -15,7 +15,11 @@ export interface Wall {
  * The only way to the database: begin, set the organisation for this transaction, work, commit.
  * The settings end with the transaction, so a pooled connection carries nothing to the next person.
  */
-export function withOrganisation<T>(database: Database, wall: Wall, work: (tx: Transaction) => Promise<T>): Promise<T> {
+export function withOrganisation<T>(
+  database: Database,
+  wall: Wall,
+  work: (tx: Transaction) => Promise<T>,
+): Promise<T> {
   return database.transaction(async (tx) => {
     await tx.execute(
       sql`select set_config('app.organisation_id', ${wall.organisationId ?? ''}, true), set_config('app.person_id', ${wall.personId ?? ''}, true)`,

@@ -2,9 +2,30 @@ import type pg from 'pg';
 
 /** Tables that only grow: the application's role may read and add, never change or remove. */
 export const appendOnlyTables = [
-  'readings', 'levels', 'not_read', 'round_notes', 'adjustments', 'disputes', 'entries', 'loads_out', 'returns', 'condensate',
-  'climate_days', 'climate_months', 'climate_gap_choices', 'meter_events', 'pump_tests', 'results', 'month_closings', 'reports',
-  'trail_entries', 'trail_seals', 'verdicts', 'exceedance_notes', 'compare_notes', 'idempotency_keys',
+  'readings',
+  'levels',
+  'not_read',
+  'round_notes',
+  'adjustments',
+  'disputes',
+  'entries',
+  'loads_out',
+  'returns',
+  'condensate',
+  'climate_days',
+  'climate_months',
+  'climate_gap_choices',
+  'meter_events',
+  'pump_tests',
+  'results',
+  'month_closings',
+  'reports',
+  'trail_entries',
+  'trail_seals',
+  'verdicts',
+  'exceedance_notes',
+  'compare_notes',
+  'idempotency_keys',
 ];
 
 /** Tables that sign-in reads before an organisation is known, through functions that run as the owner. */
@@ -42,10 +63,14 @@ export async function buildWall(owner: pg.Client, appRole: string): Promise<void
     await owner.query(`alter table ${table} enable row level security`);
     await owner.query(`alter table ${table} force row level security`);
     await owner.query(`drop policy if exists organisation_wall on ${table}`);
-    await owner.query(`create policy organisation_wall on ${table} to ${app} using (${rule}) with check (${rule})`);
+    await owner.query(
+      `create policy organisation_wall on ${table} to ${app} using (${rule}) with check (${rule})`,
+    );
     await owner.query(`drop policy if exists owner_lookup on ${table}`);
     if (signInTables.includes(name)) {
-      await owner.query(`create policy owner_lookup on ${table} to current_user using (true) with check (true)`);
+      await owner.query(
+        `create policy owner_lookup on ${table} to current_user using (true) with check (true)`,
+      );
     }
     await owner.query(`revoke all on ${table} from ${app}, public`);
     await owner.query(`grant ${rights} on ${table} to ${app}`);
@@ -56,5 +81,6 @@ export async function buildWall(owner: pg.Client, appRole: string): Promise<void
     `select p.oid::regprocedure::text as signature from pg_proc p join pg_namespace n on n.oid = p.pronamespace
      where n.nspname = 'public' and p.prosecdef`,
   );
-  for (const { signature } of functions.rows) await owner.query(`grant execute on function ${signature} to ${app}`);
+  for (const { signature } of functions.rows)
+    await owner.query(`grant execute on function ${signature} to ${app}`);
 }

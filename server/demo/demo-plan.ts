@@ -37,7 +37,18 @@ export function planDemo(today: Day): DemoPlan {
   const previous = addMonths(anchor, -1);
   const saturday = lastWeekday(dayOf(previous, 20), 'Saturday');
   return {
-    today, anchor, firstMonth, start: firstDay(firstMonth), issuedQuarter, wetMonth: addMonths(anchor, -2), swapDay: dayOf(addMonths(anchor, -7), 3), stuckFrom: dayOf(addMonths(anchor, -4), 18),
-    weekend: { saturday, sunday: addDays(saturday, 1) }, leakFrom: dayOf(previous, 9), exceedanceDay: lastWeekday(today, 'Tuesday'), flipMonth: previous, doubledTicketDay: dayOf(addMonths(anchor, -2), 19),
+    today,
+    anchor,
+    firstMonth,
+    start: firstDay(firstMonth),
+    issuedQuarter,
+    wetMonth: addMonths(anchor, -2),
+    swapDay: dayOf(addMonths(anchor, -7), 3),
+    stuckFrom: dayOf(addMonths(anchor, -4), 18),
+    weekend: { saturday, sunday: addDays(saturday, 1) },
+    leakFrom: dayOf(previous, 9),
+    exceedanceDay: lastWeekday(today, 'Tuesday'),
+    flipMonth: previous,
+    doubledTicketDay: dayOf(addMonths(anchor, -2), 19),
   };
 }

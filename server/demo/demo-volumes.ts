@@ -24,7 +24,9 @@ export const loadM3 = 20.8;
 
 /** Spreads a month's leachate over its days with a little unrest; the month keeps its sum. */
 function spreadMonth(random: Random, monthM3: number, days: Day[], rainByDay: Map<Day, number>): number[] {
-  const weights = days.map((day) => Math.exp(random.normal(0, 0.09)) * (1 + 0.012 * (rainByDay.get(addDays(day, -1)) ?? 0)));
+  const weights = days.map(
+    (day) => Math.exp(random.normal(0, 0.09)) * (1 + 0.012 * (rainByDay.get(addDays(day, -1)) ?? 0)),
+  );
   const total = weights.reduce((sum, weight) => sum + weight, 0);
   return weights.map((weight) => (monthM3 * weight) / total);
 }
@@ -43,12 +45,23 @@ function levelOf(volumeM3: number, table: ReturnType<typeof rectangularPondTable
  * Simulates the pumps, the pond and the plant day by day.
  * @param trueM3 leachate that really came, by `cell code month`
  */
-export function simulateVolumes(random: Random, plan: DemoPlan, weather: DemoWeatherDay[], trueM3: ReadonlyMap<string, number>, petMmPerDay: (day: Day) => number): DemoDay[] {
+export function simulateVolumes(
+  random: Random,
+  plan: DemoPlan,
+  weather: DemoWeatherDay[],
+  trueM3: ReadonlyMap<string, number>,
+  petMmPerDay: (day: Day) => number,
+): DemoDay[] {
   const rainByDay = new Map(weather.map((one) => [one.day, one.rainMm]));
   const flows = new Map<Day, { header: number; east: number }>();
   for (const month of new Set(weather.map((one) => monthOfDay(one.day)))) {
     const days = monthDays(month);
-    const header = spreadMonth(random, (trueM3.get(`C1 ${month}`) ?? 0) + (trueM3.get(`C2 ${month}`) ?? 0), days, rainByDay);
+    const header = spreadMonth(
+      random,
+      (trueM3.get(`C1 ${month}`) ?? 0) + (trueM3.get(`C2 ${month}`) ?? 0),
+      days,
+      rainByDay,
+    );
     const east = spreadMonth(random, trueM3.get(`C3 ${month}`) ?? 0, days, rainByDay);
     days.forEach((day, index) => flows.set(day, { header: header[index]!, east: east[index]! }));
   }
@@ -61,9 +74,25 @@ export function simulateVolumes(random: Random, plan: DemoPlan, weather: DemoWea
     const leakL = day >= plan.leakFrom ? 6 + (dayNumber(day) % 5) : 0;
     const plant = Math.max(18, Math.min(185, 70 + (levelM - 1.4) * 110 + random.normal(0, 5)));
     const hauledLoads = levelM > 2.2 && !['Saturday', 'Sunday'].includes(weekday(day)) ? 2 : 0;
-    volume += header + east + leakL / 1000 + (rainMm * 3400) / 1000 - (petMmPerDay(day) * surfaceM2) / 1000 - plant - hauledLoads * loadM3;
+    volume +=
+      header +
+      east +
+      leakL / 1000 +
+      (rainMm * 3400) / 1000 -
+      (petMmPerDay(day) * surfaceM2) / 1000 -
+      plant -
+      hauledLoads * loadM3;
     volume = Math.max(400, Math.min(7200, volume));
-    return { day, header, east, leakL, plant, outfall: plant * random.between(0.975, 0.99), hauledLoads, levelM };
+    return {
+      day,
+      header,
+      east,
+      leakL,
+      plant,
+      outfall: plant * random.between(0.975, 0.99),
+      hauledLoads,
+      levelM,
+    };
   });
 }
 
@@ -84,7 +113,18 @@ export function morningMs(days: SiteDays, day: Day, minute: number): number {
  * Readings of a register each morning: the flow of a day runs evenly, the register shows whole units and wraps at its digits.
  * @param skip days on which nobody read it
  */
-export function readRegister(random: Random, days: SiteDays, rows: { day: Day; volumeM3: number }[], register: { start: string; digits: number; unitM3: string; skip: (day: Day) => boolean; stuckOn?: (day: Day) => boolean }): DemoReading[] {
+export function readRegister(
+  random: Random,
+  days: SiteDays,
+  rows: { day: Day; volumeM3: number }[],
+  register: {
+    start: string;
+    digits: number;
+    unitM3: string;
+    skip: (day: Day) => boolean;
+    stuckOn?: (day: Day) => boolean;
+  },
+): DemoReading[] {
   const modulus = new Decimal(10).pow(register.digits);
   let total = new Decimal(register.start).times(register.unitM3);
   let last = new Decimal(-1);
@@ -99,10 +139,14 @@ export function readRegister(random: Random, days: SiteDays, rows: { day: Day; v
     if (register.skip(day)) return;
     const shown = atReading.div(register.unitM3).floor().mod(modulus);
     const value = shown.toFixed(0);
-    readings.push({ day, observedAtMs: morningMs(days, day, minute), text: value.padStart(register.digits, '0'), value, answer: shown.lt(last) ? 'rollover' : 'none' });
+    readings.push({
+      day,
+      observedAtMs: morningMs(days, day, minute),
+      text: value.padStart(register.digits, '0'),
+      value,
+      answer: shown.lt(last) ? 'rollover' : 'none',
+    });
     last = shown;
   });
   return readings;
 }
-
-

@@ -25,7 +25,12 @@ export function generateWeather(random: Random, first: Day, last: Day, wetMonth:
     const meanC = 9.6 - 6.4 * season + random.normal(0, 2.2);
     const range = random.between(4, 10);
     const round = (value: number) => Math.round(value * 10) / 10;
-    days.push({ day, rainMm: wasWet ? round(Math.max(0.2, size) * factor) : 0, tMinC: round(meanC - range / 2), tMaxC: round(meanC + range / 2) });
+    days.push({
+      day,
+      rainMm: wasWet ? round(Math.max(0.2, size) * factor) : 0,
+      tMinC: round(meanC - range / 2),
+      tMaxC: round(meanC + range / 2),
+    });
   }
   return days;
 }

@@ -24,13 +24,25 @@ export interface DemoActors {
   at: (instant: string) => Dependencies;
 }
 
-async function makePeople(tx: Transaction, organisationId: string, newId: () => string, laboratoryId: string): Promise<Map<string, string>> {
+async function makePeople(
+  tx: Transaction,
+  organisationId: string,
+  newId: () => string,
+  laboratoryId: string,
+): Promise<Map<string, string>> {
   const ids = new Map<string, string>();
   for (const person of demoPeople) {
     const personId = await personForInvitation(tx, newId(), person.email, person.displayName);
     ids.set(person.key, personId);
     const [held] = await tx.select().from(memberships).where(eq(memberships.personId, personId));
-    if (!held) await insertMembership(tx, { organisationId, id: newId(), personId, role: person.key, laboratoryId: person.key === 'lab' ? laboratoryId : null });
+    if (!held)
+      await insertMembership(tx, {
+        organisationId,
+        id: newId(),
+        personId,
+        role: person.key,
+        laboratoryId: person.key === 'lab' ? laboratoryId : null,
+      });
   }
   return ids;
 }
@@ -49,22 +61,45 @@ export async function loadDemo(deps: Dependencies): Promise<void> {
   const admin = demoPeople.find((person) => person.key === 'admin')!;
   const adminId = random.id();
   const passwordHash = await hashPassword(crypto.randomUUID());
-  await withOrganisation(deps.database, nobody, (tx) => foundOrganisation(tx, { organisationId, name: 'Varrow Hill Waste Company', isDemo: true, personId: adminId, email: admin.email, displayName: admin.displayName, passwordHash }));
+  await withOrganisation(deps.database, nobody, (tx) =>
+    foundOrganisation(tx, {
+      organisationId,
+      name: 'Varrow Hill Waste Company',
+      isDemo: true,
+      personId: adminId,
+      email: admin.email,
+      displayName: admin.displayName,
+      passwordHash,
+    }),
+  );
   const wall = { organisationId, personId: adminId };
   const laboratoryId = random.id();
   const people = await withOrganisation(deps.database, wall, async (tx) => {
     await tx.select().from(organisations);
     await insertLaboratory(tx, { organisationId, id: laboratoryId, name: 'Pellam Laboratory' });
-    for (const [letter, meaning, wording] of [['U', 'non-detect', 'not detected at RL'], ['J', 'estimated-below-reporting', 'estimated below RL']] as const) {
+    for (const [letter, meaning, wording] of [
+      ['U', 'non-detect', 'not detected at RL'],
+      ['J', 'estimated-below-reporting', 'estimated below RL'],
+    ] as const) {
       await insertQualifier(tx, { organisationId, id: random.id(), laboratoryId, letter, meaning, wording });
     }
     return makePeople(tx, organisationId, random.id, laboratoryId);
   });
   const actors: DemoActors = {
-    as: (role, siteId) => ({ organisationId, personId: people.get(role)!, sessionId: '', siteId, roles: [role], laboratoryId: role === 'lab' ? laboratoryId : null, requestId: 'demo' }),
+    as: (role, siteId) => ({
+      organisationId,
+      personId: people.get(role)!,
+      sessionId: '',
+      siteId,
+      roles: [role],
+      laboratoryId: role === 'lab' ? laboratoryId : null,
+      requestId: 'demo',
+    }),
     at: (instant) => ({ ...deps, now: () => new Date(instant), newId: random.id }),
   };
-  const today = createSiteDays([{ validFromOn: '2011-05-02', timeZone: 'Europe/London', dayBoundary: '00:00' }]).dayOf(deps.now().getTime());
+  const today = createSiteDays([
+    { validFromOn: '2011-05-02', timeZone: 'Europe/London', dayBoundary: '00:00' },
+  ]).dayOf(deps.now().getTime());
   const plan = planDemo(today);
   const weather = generateWeather(random, plan.start, addDays(today, -1), plan.wetMonth);
   await withOrganisation(deps.database, wall, async (tx) => {

@@ -11,7 +11,8 @@ export function createRandom(seed: number) {
     next,
     between: (low: number, high: number) => low + (high - low) * next(),
     /** Normal value by Box–Muller. */
-    normal: (mean: number, deviation: number) => mean + deviation * Math.sqrt(-2 * Math.log(1 - next())) * Math.cos(2 * Math.PI * next()),
+    normal: (mean: number, deviation: number) =>
+      mean + deviation * Math.sqrt(-2 * Math.log(1 - next())) * Math.cos(2 * Math.PI * next()),
     /** Ids in the form of a UUID, from the same stream. */
     id: (): string => {
       const hex = Array.from({ length: 32 }, () => Math.floor(next() * 16).toString(16));

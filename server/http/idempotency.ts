@@ -21,12 +21,20 @@ export const payloadHash = (route: string, body: unknown, file: UploadedFile | u
  * @returns the first answer when the same write was made before, else null
  * @throws Problem `still-being-written` when the same key is in flight, `key-used-for-other-content` for another payload
  */
-export async function claimKey(tx: Transaction, context: Context, key: string, hash: string): Promise<FirstAnswer | null> {
+export async function claimKey(
+  tx: Transaction,
+  context: Context,
+  key: string,
+  hash: string,
+): Promise<FirstAnswer | null> {
   const lock = await tx.execute<{ held: boolean }>(
     sql`select pg_try_advisory_xact_lock(hashtextextended(${`${context.organisationId}:${key}`}, 0)) as held`,
   );
   if (!lock.rows[0]?.held) {
-    throw new Problem('still-being-written', 'The same request is still being written. Ask again in a moment.');
+    throw new Problem(
+      'still-being-written',
+      'The same request is still being written. Ask again in a moment.',
+    );
   }
   const [known] = await tx
     .select()
@@ -34,13 +42,23 @@ export async function claimKey(tx: Transaction, context: Context, key: string, h
     .where(and(eq(idempotencyKeys.organisationId, context.organisationId), eq(idempotencyKeys.key, key)));
   if (!known) return null;
   if (known.payloadSha256 !== hash || known.personId !== context.personId) {
-    throw new Problem('key-used-for-other-content', 'This Idempotency-Key was used for another request. Nothing was written.');
+    throw new Problem(
+      'key-used-for-other-content',
+      'This Idempotency-Key was used for another request. Nothing was written.',
+    );
   }
   return { status: known.status, response: known.response };
 }
 
 /** Stores the first answer with the write itself, so that both exist or neither. */
-export async function keepAnswer(tx: Transaction, context: Context, key: string, route: string, hash: string, answer: FirstAnswer): Promise<void> {
+export async function keepAnswer(
+  tx: Transaction,
+  context: Context,
+  key: string,
+  route: string,
+  hash: string,
+  answer: FirstAnswer,
+): Promise<void> {
   await tx.insert(idempotencyKeys).values({
     organisationId: context.organisationId,
     key,

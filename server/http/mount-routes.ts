@@ -19,11 +19,20 @@ const takeFile = multer({
 }).single('file');
 
 /** The context of the caller, checked against the route's permission. */
-async function admit(tx: Transaction, route: Route, request: Request, deps: Dependencies, claims: NonNullable<Awaited<ReturnType<typeof readSessionCookie>>>): Promise<Context> {
+async function admit(
+  tx: Transaction,
+  route: Route,
+  request: Request,
+  deps: Dependencies,
+  claims: NonNullable<Awaited<ReturnType<typeof readSessionCookie>>>,
+): Promise<Context> {
   const siteId = typeof request.params['siteId'] === 'string' ? request.params['siteId'] : null;
   const context = await findContext(tx, claims, siteId, deps.now(), String(request.id ?? ''));
   if (route.permission !== 'signed-in' && !isAllowed(context.roles, route.permission)) {
-    throw new Problem('not-allowed', 'Your role cannot do this here. Ask the administrator of the site if it should.');
+    throw new Problem(
+      'not-allowed',
+      'Your role cannot do this here. Ask the administrator of the site if it should.',
+    );
   }
   return context;
 }
@@ -37,7 +46,10 @@ interface Answer {
 async function answer(route: Route, request: Request, deps: Dependencies): Promise<Answer> {
   const claims = await readSessionCookie(request, deps.sessionSecret);
   if (!claims) throw new Problem('not-signed-in', 'Sign in to go on.');
-  const file: UploadedFile | undefined = request.file && { name: request.file.originalname, bytes: request.file.buffer };
+  const file: UploadedFile | undefined = request.file && {
+    name: request.file.originalname,
+    bytes: request.file.buffer,
+  };
   return withOrganisation(deps.database, claims, async (tx) => {
     if (route.method === 'get') rememberReads(tx);
     const context = await admit(tx, route, request, deps, claims);
@@ -68,7 +80,8 @@ function send(response: Response, { status, response: value }: Answer): void {
 export function mountRoutes(routes: readonly Route[], deps: Dependencies): Router {
   const router = Router();
   for (const route of routes) {
-    const handler: RequestHandler = async (request, response) => send(response, await answer(route, request, deps));
+    const handler: RequestHandler = async (request, response) =>
+      send(response, await answer(route, request, deps));
     router[route.method](route.path, ...(route.takesFile ? [takeFile] : []), handler);
   }
   return router;

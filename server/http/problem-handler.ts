@@ -14,7 +14,10 @@ function fromDatabase(cause: Cause): Problem | undefined {
     case '55P03':
     case '40P01':
     case '40001':
-      return new Problem('busy', 'Somebody else is writing to the same month. Nothing was saved; send it again.');
+      return new Problem(
+        'busy',
+        'Somebody else is writing to the same month. Nothing was saved; send it again.',
+      );
     case '57014':
       return new Problem('too-slow', 'The answer took too long. Choose a shorter time and try again.');
     case '57P01':
@@ -22,9 +25,15 @@ function fromDatabase(cause: Cause): Problem | undefined {
     case '57P03':
     case 'ECONNREFUSED':
     case 'ECONNRESET':
-      return new Problem('database-away', 'The record cannot be reached just now. Nothing was saved; try again in a moment.');
+      return new Problem(
+        'database-away',
+        'The record cannot be reached just now. Nothing was saved; try again in a moment.',
+      );
     case '23P01':
-      return new Problem('fields-need-another-look', 'These dates overlap with a period that is already there.');
+      return new Problem(
+        'fields-need-another-look',
+        'These dates overlap with a period that is already there.',
+      );
     case '23505':
       return new Problem('already-done', 'A record with the same name or number is already there.');
     case '23503':
@@ -42,11 +51,18 @@ function toProblem(error: unknown): Problem {
       : new Problem('file-not-readable', 'The upload must carry one file in the field "file".');
   }
   const thrown = error as { code?: string; cause?: Cause; type?: string; message?: string } | null;
-  if (thrown?.type === 'entity.parse.failed') return new Problem('fields-need-another-look', 'The request is not readable JSON.');
+  if (thrown?.type === 'entity.parse.failed')
+    return new Problem('fields-need-another-look', 'The request is not readable JSON.');
   if (thrown?.type === 'entity.too.large') return new Problem('file-too-big', 'The request is too large.');
   const away = thrown?.message?.includes('timeout exceeded when trying to connect') ? '57P03' : undefined;
   const cause = thrown?.cause?.code ? thrown.cause : { code: away ?? thrown?.code ?? '' };
-  return fromDatabase(cause) ?? new Problem('unexpected', 'Something went wrong on the server. Nothing was saved; the request can be sent again.');
+  return (
+    fromDatabase(cause) ??
+    new Problem(
+      'unexpected',
+      'Something went wrong on the server. Nothing was saved; the request can be sent again.',
+    )
+  );
 }
 
 /** The one place where a failure becomes an answer. Nothing internal leaves it. */

@@ -72,7 +72,11 @@ export interface Route {
 type Parsed<T> = T extends z.ZodType<infer Output> ? Output : undefined;
 
 /** Declares one route: what it needs, what it checks, and the service call it makes. */
-export function route<P extends z.ZodType | undefined, Q extends z.ZodType | undefined, B extends z.ZodType | undefined>(definition: {
+export function route<
+  P extends z.ZodType | undefined,
+  Q extends z.ZodType | undefined,
+  B extends z.ZodType | undefined,
+>(definition: {
   method: Route['method'];
   path: string;
   permission: Route['permission'];

@@ -9,6 +9,10 @@ export const sameOriginWrites: RequestHandler = (request, _response, next) => {
   const fromElsewhere =
     (fetchSite !== undefined && fetchSite !== 'same-origin' && fetchSite !== 'none') ||
     (origin !== undefined && new URL(origin).host !== request.get('host'));
-  if (fromElsewhere) throw new Problem('request-from-elsewhere', 'This write was sent by a page of another site and was refused.');
+  if (fromElsewhere)
+    throw new Problem(
+      'request-from-elsewhere',
+      'This write was sent by a page of another site and was refused.',
+    );
   next();
 };

@@ -12,7 +12,12 @@ export interface SessionClaims {
 }
 
 /** Sets the session cookie: HttpOnly, same-site, carrying a signed token that names a session on the server. */
-export async function setSessionCookie(response: Response, claims: SessionClaims, secret: Uint8Array, isSecure: boolean): Promise<void> {
+export async function setSessionCookie(
+  response: Response,
+  claims: SessionClaims,
+  secret: Uint8Array,
+  isSecure: boolean,
+): Promise<void> {
   const token = await new SignJWT({ person: claims.personId, organisation: claims.organisationId })
     .setProtectedHeader({ alg: 'HS256' })
     .setSubject(claims.sessionId)
@@ -36,7 +41,10 @@ export const clearSessionCookie = (response: Response): void => {
 /** The claims of the request's cookie, or null: a wrong or forged token is the same as none. */
 export async function readSessionCookie(request: Request, secret: Uint8Array): Promise<SessionClaims | null> {
   const header = request.headers.cookie ?? '';
-  const pair = header.split(';').map((part) => part.trim()).find((part) => part.startsWith(`${cookieName}=`));
+  const pair = header
+    .split(';')
+    .map((part) => part.trim())
+    .find((part) => part.startsWith(`${cookieName}=`));
   if (!pair) return null;
   try {
     const { payload } = await jwtVerify(decodeURIComponent(pair.slice(cookieName.length + 1)), secret, {
@@ -44,7 +52,11 @@ export async function readSessionCookie(request: Request, secret: Uint8Array): P
       algorithms: ['HS256'],
     });
     if (!payload.sub) return null;
-    return { sessionId: payload.sub, personId: String(payload['person']), organisationId: String(payload['organisation']) };
+    return {
+      sessionId: payload.sub,
+      personId: String(payload['person']),
+      organisationId: String(payload['organisation']),
+    };
   } catch {
     return null;
   }

@@ -26,7 +26,10 @@ export async function startMailCatcher(folder: string, now: () => Date) {
         .then(async (mail) => {
           const caughtAt = now().toISOString();
           const id = `${caughtAt.replace(/[:.]/g, '-')}-${String((count += 1)).padStart(4, '0')}`;
-          const to = [mail.to ?? []].flat().map((address) => address.text).join(', ');
+          const to = [mail.to ?? []]
+            .flat()
+            .map((address) => address.text)
+            .join(', ');
           const caught: CaughtMail = { id, caughtAt, to, subject: mail.subject ?? '', text: mail.text ?? '' };
           await writeFile(join(folder, `${id}.json`), JSON.stringify(caught));
           done();
@@ -40,8 +43,14 @@ export async function startMailCatcher(folder: string, now: () => Date) {
   return {
     url: `smtp://127.0.0.1:${port}`,
     async list(): Promise<CaughtMail[]> {
-      const names = (await readdir(folder)).filter((name) => name.endsWith('.json')).sort().reverse().slice(0, 100);
-      return Promise.all(names.map(async (name) => JSON.parse(await readFile(join(folder, name), 'utf8')) as CaughtMail));
+      const names = (await readdir(folder))
+        .filter((name) => name.endsWith('.json'))
+        .sort()
+        .reverse()
+        .slice(0, 100);
+      return Promise.all(
+        names.map(async (name) => JSON.parse(await readFile(join(folder, name), 'utf8')) as CaughtMail),
+      );
     },
     stop: () => new Promise<void>((resolve) => server.close(() => resolve())),
   };

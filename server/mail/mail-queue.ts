@@ -18,7 +18,9 @@ export interface MailQueue {
 /** A statement with $1, $2 … as a Drizzle statement with the same parameters. */
 function withParameters(text: string, values: readonly unknown[]): SQL {
   const parts = text.split(/\$(\d+)/);
-  const chunks = parts.map((part, index) => (index % 2 ? sql`${sql.param(values[Number(part) - 1])}` : sql.raw(part)));
+  const chunks = parts.map((part, index) =>
+    index % 2 ? sql`${sql.param(values[Number(part) - 1])}` : sql.raw(part),
+  );
   return sql.join(chunks);
 }
 
@@ -29,14 +31,22 @@ export function createMailQueue(boss: PgBoss): MailQueue {
       await boss.send('mail', mail, {
         retryLimit: 5,
         retryBackoff: true,
-        db: { executeSql: async (text: string, values: unknown[]) => tx.execute(withParameters(text, values)) as never },
+        db: {
+          executeSql: async (text: string, values: unknown[]) =>
+            tx.execute(withParameters(text, values)) as never,
+        },
       });
     },
   };
 }
 
 /** Starts the queue's worker, which hands each mail to the SMTP server. */
-export async function startMailWorker(boss: PgBoss, smtpUrl: string, from: string, log: Logger): Promise<void> {
+export async function startMailWorker(
+  boss: PgBoss,
+  smtpUrl: string,
+  from: string,
+  log: Logger,
+): Promise<void> {
   const transport = createTransport(smtpUrl);
   await boss.work<Mail>('mail', { pollingIntervalSeconds: 1 }, async (jobs) => {
     for (const { data } of jobs) {

@@ -16,26 +16,43 @@ export interface WorkbookParts {
 
 function checkEntry(entry: yauzl.Entry, seen: Set<string>): void {
   const name = entry.fileName;
-  if (seen.has(name)) throw new FileRefused('The file holds one part twice. Open it in a spreadsheet program and save it again.');
+  if (seen.has(name))
+    throw new FileRefused(
+      'The file holds one part twice. Open it in a spreadsheet program and save it again.',
+    );
   seen.add(name);
-  if (name.includes('..') || name.startsWith('/') || name.includes('\\')) throw new FileRefused('The file holds a part with an unsafe name and was refused.');
-  if (entry.generalPurposeBitFlag & 1) throw new FileRefused('The file is protected with a password. Save it without one.');
-  if (entry.uncompressedSize > ratioFromBytes && entry.uncompressedSize > ratioMax * Math.max(1, entry.compressedSize)) {
-    throw new FileRefused('The file unpacks to far more than it should and was refused. Send the sheet with the results only.');
+  if (name.includes('..') || name.startsWith('/') || name.includes('\\'))
+    throw new FileRefused('The file holds a part with an unsafe name and was refused.');
+  if (entry.generalPurposeBitFlag & 1)
+    throw new FileRefused('The file is protected with a password. Save it without one.');
+  if (
+    entry.uncompressedSize > ratioFromBytes &&
+    entry.uncompressedSize > ratioMax * Math.max(1, entry.compressedSize)
+  ) {
+    throw new FileRefused(
+      'The file unpacks to far more than it should and was refused. Send the sheet with the results only.',
+    );
   }
-  if (/vbaProject/i.test(name)) throw new FileRefused('The file holds macros. Save it as .xlsx without macros.');
-  if (/externalLink/i.test(name)) throw new FileRefused('The file has links to other workbooks. Copy the values only and save it again.');
+  if (/vbaProject/i.test(name))
+    throw new FileRefused('The file holds macros. Save it as .xlsx without macros.');
+  if (/externalLink/i.test(name))
+    throw new FileRefused('The file has links to other workbooks. Copy the values only and save it again.');
 }
 
 /** Inflates a part, counting real bytes because declared sizes can lie. */
-async function readPart(zip: yauzl.ZipFile, entry: yauzl.Entry, onText: (text: string) => void): Promise<number> {
+async function readPart(
+  zip: yauzl.ZipFile,
+  entry: yauzl.Entry,
+  onText: (text: string) => void,
+): Promise<number> {
   return new Promise((resolve, reject) => {
     zip.openReadStream(entry, (error, stream) => {
       if (error || !stream) return reject(error ?? new Error('no stream'));
       let bytes = 0;
       stream.on('data', (chunk: Buffer) => {
         bytes += chunk.length;
-        if (bytes > totalBytesMax) stream.destroy(new FileRefused('The file unpacks to more than 100 MB and was refused.'));
+        if (bytes > totalBytesMax)
+          stream.destroy(new FileRefused('The file unpacks to more than 100 MB and was refused.'));
         onText(chunk.toString('latin1'));
       });
       stream.on('end', () => resolve(bytes));
@@ -51,9 +68,12 @@ async function readPart(zip: yauzl.ZipFile, entry: yauzl.Entry, onText: (text: s
  */
 export async function guardZip(bytes: Buffer): Promise<WorkbookParts> {
   const zip = await new Promise<yauzl.ZipFile>((resolve, reject) => {
-    yauzl.fromBuffer(bytes, { lazyEntries: true, validateEntrySizes: true }, (error, opened) => (error || !opened ? reject(error ?? new Error('no zip')) : resolve(opened)));
+    yauzl.fromBuffer(bytes, { lazyEntries: true, validateEntrySizes: true }, (error, opened) =>
+      error || !opened ? reject(error ?? new Error('no zip')) : resolve(opened),
+    );
   });
-  if (zip.entryCount > entriesMax) throw new FileRefused(`The file holds ${zip.entryCount} parts; a workbook has fewer than ${entriesMax}.`);
+  if (zip.entryCount > entriesMax)
+    throw new FileRefused(`The file holds ${zip.entryCount} parts; a workbook has fewer than ${entriesMax}.`);
   const seen = new Set<string>();
   const offsets: { from: number; to: number }[] = [];
   const merges = new Map<string, string[]>();
@@ -67,14 +87,19 @@ export async function guardZip(bytes: Buffer): Promise<WorkbookParts> {
       let tail = '';
       total += await readPart(zip, entry, (text) => {
         const window = tail + text;
-        if (window.includes('<!DOCTYPE') || window.includes('<!ENTITY')) throw new FileRefused('The file declares document types, which no workbook needs, and was refused.');
+        if (window.includes('<!DOCTYPE') || window.includes('<!ENTITY'))
+          throw new FileRefused(
+            'The file declares document types, which no workbook needs, and was refused.',
+          );
         for (const match of window.matchAll(/<mergeCell ref="([A-Z0-9:]+)"\s*\/?>/g)) {
           if (match.index + match[0].length > tail.length) found.push(match[1]!);
         }
         tail = window.slice(-200);
       });
-      if (total > totalBytesMax) throw new FileRefused('The file unpacks to more than 100 MB and was refused.');
-      if (found.length > mergesMax) throw new FileRefused('The file holds thousands of merged cells. Unmerge them and save it again.');
+      if (total > totalBytesMax)
+        throw new FileRefused('The file unpacks to more than 100 MB and was refused.');
+      if (found.length > mergesMax)
+        throw new FileRefused('The file holds thousands of merged cells. Unmerge them and save it again.');
       if (found.length) merges.set(entry.fileName, found);
       zip.readEntry();
     };
@@ -84,7 +109,9 @@ export async function guardZip(bytes: Buffer): Promise<WorkbookParts> {
     zip.readEntry();
   });
   const sorted = offsets.sort((a, b) => a.from - b.from);
-  if (sorted.some((one, index) => index > 0 && one.from < sorted[index - 1]!.to)) throw new FileRefused('Parts of the file overlap, which no program writes, and it was refused.');
-  if (![...seen].some((name) => /(^|\/)workbook\.xml$/.test(name))) throw new FileRefused('This is a zip file, but no workbook. Save the sheet as .xlsx or .csv.');
+  if (sorted.some((one, index) => index > 0 && one.from < sorted[index - 1]!.to))
+    throw new FileRefused('Parts of the file overlap, which no program writes, and it was refused.');
+  if (![...seen].some((name) => /(^|\/)workbook\.xml$/.test(name)))
+    throw new FileRefused('This is a zip file, but no workbook. Save the sheet as .xlsx or .csv.');
   return { merges };
 }

@@ -15,16 +15,22 @@ const pad = (value: number) => String(value).padStart(2, '0');
 function dateCell(date: Date): SheetCell {
   if (Number.isNaN(date.getTime())) return { kind: 'error', text: 'a date that does not exist' };
   const day = date.toISOString().slice(0, 10);
-  const time = date.getUTCHours() + date.getUTCMinutes() > 0 ? `${pad(date.getUTCHours())}:${pad(date.getUTCMinutes())}` : '';
+  const time =
+    date.getUTCHours() + date.getUTCMinutes() > 0
+      ? `${pad(date.getUTCHours())}:${pad(date.getUTCMinutes())}`
+      : '';
   return { kind: 'date', text: time ? `${day} ${time}` : day, day, time };
 }
 
 function typedCell(value: ExcelJS.CellValue): SheetCell | null {
   if (value === null || value === undefined) return null;
   if (typeof value === 'number') {
-    return Number.isFinite(value) ? { kind: 'number', text: String(value), value } : { kind: 'error', text: 'a number cell without a number' };
+    return Number.isFinite(value)
+      ? { kind: 'number', text: String(value), value }
+      : { kind: 'error', text: 'a number cell without a number' };
   }
-  if (typeof value === 'string') return value.trim() === '' ? null : { kind: 'text', text: value.slice(0, textMax) };
+  if (typeof value === 'string')
+    return value.trim() === '' ? null : { kind: 'text', text: value.slice(0, textMax) };
   if (typeof value === 'boolean') return { kind: 'boolean', text: value ? 'TRUE' : 'FALSE' };
   if (value instanceof Date) return dateCell(value);
   if ('error' in value) return { kind: 'error', text: String(value.error) };
@@ -32,7 +38,9 @@ function typedCell(value: ExcelJS.CellValue): SheetCell | null {
   if ('hyperlink' in value) return typedCell(value.text);
   if ('formula' in value || 'sharedFormula' in value) {
     const { result } = value;
-    return result === undefined || result === null ? { kind: 'error', text: 'a formula without a stored result' } : typedCell(result as ExcelJS.CellValue);
+    return result === undefined || result === null
+      ? { kind: 'error', text: 'a formula without a stored result' }
+      : typedCell(result as ExcelJS.CellValue);
   }
   return { kind: 'error', text: 'a kind of cell that is not known' };
 }
@@ -44,32 +52,57 @@ function columnNumber(letters: string): number {
 function mergeOf(range: string): Sheet['merges'][number] | null {
   const match = /^([A-Z]+)(\d+):([A-Z]+)(\d+)$/.exec(range);
   if (!match) return null;
-  return { left: columnNumber(match[1]!), top: Number(match[2]), right: columnNumber(match[3]!), bottom: Number(match[4]) };
+  return {
+    left: columnNumber(match[1]!),
+    top: Number(match[2]),
+    right: columnNumber(match[3]!),
+    bottom: Number(match[4]),
+  };
 }
 
 async function readWorkbook(bytes: Buffer, parts: WorkbookParts): Promise<SheetFile> {
   const reader = new ExcelJS.stream.xlsx.WorkbookReader(Readable.from(bytes, { objectMode: false }), {
-    worksheets: 'emit', sharedStrings: 'cache', styles: 'cache', hyperlinks: 'ignore', entries: 'ignore',
+    worksheets: 'emit',
+    sharedStrings: 'cache',
+    styles: 'cache',
+    hyperlinks: 'ignore',
+    entries: 'ignore',
   });
   const sheets: Sheet[] = [];
   let rowCount = 0;
   for await (const worksheet of reader) {
     const source = worksheet as unknown as { id: number; name: string; state?: string };
-    const merges = (parts.merges.get(`xl/worksheets/sheet${source.id}.xml`) ?? []).map(mergeOf).filter((one) => one !== null);
-    const sheet: Sheet = { name: source.name, isHidden: source.state === 'hidden' || source.state === 'veryHidden', rows: [], merges };
+    const merges = (parts.merges.get(`xl/worksheets/sheet${source.id}.xml`) ?? [])
+      .map(mergeOf)
+      .filter((one) => one !== null);
+    const sheet: Sheet = {
+      name: source.name,
+      isHidden: source.state === 'hidden' || source.state === 'veryHidden',
+      rows: [],
+      merges,
+    };
     for await (const row of worksheet) {
-      if ((rowCount += 1) > rowsMax) throw new FileRefused(`The file has more than ${rowsMax.toLocaleString('en-GB')} rows. Split it and send the parts.`);
+      if ((rowCount += 1) > rowsMax)
+        throw new FileRefused(
+          `The file has more than ${rowsMax.toLocaleString('en-GB')} rows. Split it and send the parts.`,
+        );
       const cells: (SheetCell | null)[] = [];
       row.eachCell({ includeEmpty: false }, (cell, column) => {
-        if (column > columnsMax) throw new FileRefused(`The sheet "${sheet.name}" uses more than ${columnsMax} columns. Remove what lies far to the right.`);
+        if (column > columnsMax)
+          throw new FileRefused(
+            `The sheet "${sheet.name}" uses more than ${columnsMax} columns. Remove what lies far to the right.`,
+          );
         while (cells.length < column) cells.push(null);
         cells[column - 1] = typedCell(cell.value);
       });
-      if (cells.some((cell) => cell !== null)) sheet.rows.push({ number: row.number, isHidden: row.hidden === true, cells });
+      if (cells.some((cell) => cell !== null))
+        sheet.rows.push({ number: row.number, isHidden: row.hidden === true, cells });
     }
     sheets.push(sheet);
   }
-  const notes = sheets.filter((sheet) => sheet.isHidden).map((sheet) => `Sheet "${sheet.name}" is hidden and was not read.`);
+  const notes = sheets
+    .filter((sheet) => sheet.isHidden)
+    .map((sheet) => `Sheet "${sheet.name}" is hidden and was not read.`);
   return { sheets, notes };
 }
 
@@ -77,7 +110,10 @@ function decode(bytes: Buffer): { text: string; note: string } {
   try {
     return { text: new TextDecoder('utf-8', { fatal: true }).decode(bytes), note: 'Characters: UTF-8.' };
   } catch {
-    return { text: new TextDecoder('windows-1252').decode(bytes), note: 'Characters: Windows-1252, because the file is not UTF-8.' };
+    return {
+      text: new TextDecoder('windows-1252').decode(bytes),
+      note: 'Characters: Windows-1252, because the file is not UTF-8.',
+    };
   }
 }
 
@@ -87,14 +123,38 @@ function readCsv(bytes: Buffer): SheetFile {
   const { text, note } = decode(bytes);
   if (text.includes('\0')) throw new FileRefused('The file is not text. Save the sheet as .csv or .xlsx.');
   const head = text.split(/\r?\n/).slice(0, 20);
-  const delimiter = [...delimiters].sort((a, b) => head.join('\n').split(b).length - head.join('\n').split(a).length)[0]!;
-  const records = parse(text, { delimiter, bom: true, relax_column_count: true, skip_empty_lines: false, relax_quotes: true, max_record_size: 1_000_000, to: rowsMax + 1 });
-  if (records.length > rowsMax) throw new FileRefused(`The file has more than ${rowsMax.toLocaleString('en-GB')} rows. Split it and send the parts.`);
+  const delimiter = [...delimiters].sort(
+    (a, b) => head.join('\n').split(b).length - head.join('\n').split(a).length,
+  )[0]!;
+  const records = parse(text, {
+    delimiter,
+    bom: true,
+    relax_column_count: true,
+    skip_empty_lines: false,
+    relax_quotes: true,
+    max_record_size: 1_000_000,
+    to: rowsMax + 1,
+  });
+  if (records.length > rowsMax)
+    throw new FileRefused(
+      `The file has more than ${rowsMax.toLocaleString('en-GB')} rows. Split it and send the parts.`,
+    );
   const rows = (records as string[][])
-    .map((record, index) => ({ number: index + 1, isHidden: false, cells: record.slice(0, columnsMax).map((cell): SheetCell | null => (cell.trim() === '' ? null : { kind: 'text', text: cell.slice(0, textMax) })) }))
+    .map((record, index) => ({
+      number: index + 1,
+      isHidden: false,
+      cells: record
+        .slice(0, columnsMax)
+        .map((cell): SheetCell | null =>
+          cell.trim() === '' ? null : { kind: 'text', text: cell.slice(0, textMax) },
+        ),
+    }))
     .filter((row) => row.cells.some((cell) => cell !== null));
   const name = { ',': 'comma', ';': 'semicolon', '\t': 'tab' }[delimiter];
-  return { sheets: [{ name: 'Sheet', isHidden: false, rows, merges: [] }], notes: [note, `Columns separated by ${name}.`] };
+  return {
+    sheets: [{ name: 'Sheet', isHidden: false, rows, merges: [] }],
+    notes: [note, `Columns separated by ${name}.`],
+  };
 }
 
 async function main(): Promise<void> {
@@ -108,7 +168,12 @@ async function main(): Promise<void> {
     if (!file.sheets.some((sheet) => sheet.rows.length)) throw new FileRefused('The file holds no rows.');
     answer = { file };
   } catch (error) {
-    answer = { refused: error instanceof FileRefused ? error.message : 'The file is damaged or not a workbook. Open it in a spreadsheet program, save it as .xlsx and send it again.' };
+    answer = {
+      refused:
+        error instanceof FileRefused
+          ? error.message
+          : 'The file is damaged or not a workbook. Open it in a spreadsheet program, save it as .xlsx and send it again.',
+    };
   }
   process.stdout.write(JSON.stringify(answer));
 }

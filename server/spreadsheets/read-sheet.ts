@@ -22,11 +22,17 @@ function refuseByHead({ name, bytes }: UploadedFile): void {
   const extension = /\.([a-z0-9]+)$/i.exec(name)?.[1]?.toLowerCase();
   if (extension === 'xlsm') fail('The file holds macros. Save it as .xlsx without macros.');
   if (extension !== 'xlsx' && extension !== 'csv') fail('Send an .xlsx or .csv file.');
-  if (bytes.subarray(0, 4).equals(oleHeader)) fail('The file is saved in the old format or with a password. Save it as .xlsx without a password.');
-  if (bytes.subarray(0, 5).toString('latin1') === '%PDF-') fail('This is a PDF, whatever its name says. Ask the laboratory for the spreadsheet.');
+  if (bytes.subarray(0, 4).equals(oleHeader))
+    fail('The file is saved in the old format or with a password. Save it as .xlsx without a password.');
+  if (bytes.subarray(0, 5).toString('latin1') === '%PDF-')
+    fail('This is a PDF, whatever its name says. Ask the laboratory for the spreadsheet.');
   const isZip = bytes.subarray(0, 2).equals(zipHeader);
-  if (extension === 'xlsx' && !isZip) fail('The file is named .xlsx but is not a workbook. Open it in a spreadsheet program and save it as .xlsx.');
-  if (extension === 'csv' && isZip) fail('The file is named .csv but is a workbook. Give it the ending .xlsx.');
+  if (extension === 'xlsx' && !isZip)
+    fail(
+      'The file is named .xlsx but is not a workbook. Open it in a spreadsheet program and save it as .xlsx.',
+    );
+  if (extension === 'csv' && isZip)
+    fail('The file is named .csv but is a workbook. Give it the ending .xlsx.');
 }
 
 /**
@@ -36,9 +42,14 @@ function refuseByHead({ name, bytes }: UploadedFile): void {
 export async function readSheet(file: UploadedFile): Promise<SheetFile> {
   refuseByHead(file);
   const run = spawn(process.execPath, [`--max-old-space-size=${heapMb}`, '--import', 'tsx', child], {
-    cwd: root, env: { PATH: process.env['PATH'] ?? '', TZ: 'UTC' }, stdio: ['pipe', 'pipe', 'ignore'],
+    cwd: root,
+    env: { PATH: process.env['PATH'] ?? '', TZ: 'UTC' },
+    stdio: ['pipe', 'pipe', 'ignore'],
   });
-  const tooComplex = new Problem('file-not-readable', `The file is too complex to read within ${secondsMax} seconds and a fixed amount of memory. Send the sheet with the results only.`);
+  const tooComplex = new Problem(
+    'file-not-readable',
+    `The file is too complex to read within ${secondsMax} seconds and a fixed amount of memory. Send the sheet with the results only.`,
+  );
   const output = await new Promise<string>((resolve, reject) => {
     const timer = setTimeout(() => run.kill('SIGKILL'), secondsMax * 1000);
     const chunks: Buffer[] = [];

@@ -21,10 +21,14 @@ function aptInstall(packageName, why) {
   if (!onPath('apt-get') || (!root && !sudo)) throw new Error(why);
   console.log(`Installing Debian's ${packageName} …`);
   const run = (args) =>
-    spawnSync(root ? args[0] : 'sudo', root ? args.slice(1) : ['-n', 'env', 'DEBIAN_FRONTEND=noninteractive', ...args], {
-      stdio: ['ignore', 'ignore', 'inherit'],
-      env: { ...process.env, DEBIAN_FRONTEND: 'noninteractive' },
-    });
+    spawnSync(
+      root ? args[0] : 'sudo',
+      root ? args.slice(1) : ['-n', 'env', 'DEBIAN_FRONTEND=noninteractive', ...args],
+      {
+        stdio: ['ignore', 'ignore', 'inherit'],
+        env: { ...process.env, DEBIAN_FRONTEND: 'noninteractive' },
+      },
+    );
   run(['apt-get', 'update']);
   const done = run(['apt-get', 'install', '-y', '--no-install-recommends', packageName]);
   if (done.status !== 0) throw new Error(why);
@@ -37,7 +41,11 @@ function installedPostgres() {
   const debian = '/usr/lib/postgresql';
   if (existsSync(debian)) {
     const majors = readdirSync(debian)
-      .filter((name) => existsSync(join(debian, name, 'bin', 'initdb')) && existsSync(join(debian, name, 'bin', 'postgres')))
+      .filter(
+        (name) =>
+          existsSync(join(debian, name, 'bin', 'initdb')) &&
+          existsSync(join(debian, name, 'bin', 'postgres')),
+      )
       .sort((a, b) => Number(b) - Number(a));
     if (majors[0]) return join(debian, majors[0], 'bin');
   }
@@ -49,7 +57,8 @@ function installedPostgres() {
 export function ensurePostgresPrograms() {
   const found = installedPostgres();
   if (found) return found;
-  const why = 'Tallyweir needs PostgreSQL 15 or newer: install it (on Debian: apt-get install postgresql) and start again.';
+  const why =
+    'Tallyweir needs PostgreSQL 15 or newer: install it (on Debian: apt-get install postgresql) and start again.';
   if (process.getuid?.() === 0) {
     mkdirSync('/etc/postgresql-common/createcluster.d', { recursive: true });
     writeFileSync('/etc/postgresql-common/createcluster.d/tallyweir.conf', 'create_main_cluster = false\n');
@@ -63,6 +72,10 @@ export function ensurePostgresPrograms() {
 /** Path of Chromium; installs Debian's package when there is none. */
 export function ensureChromium() {
   const find = () => process.env.CHROMIUM ?? onPath('chromium');
-  if (!find()) aptInstall('chromium', 'The browser tests need Chromium: install it (on Debian: apt-get install chromium) and start again.');
+  if (!find())
+    aptInstall(
+      'chromium',
+      'The browser tests need Chromium: install it (on Debian: apt-get install chromium) and start again.',
+    );
   return find();
 }

@@ -11,15 +11,19 @@ async function main() {
   const external = process.env.DATABASE_URL;
   const cluster = external ? undefined : await startCluster({ root });
   const watch = process.argv.includes('--watch');
-  const server = spawn(process.execPath, ['--import', 'tsx', ...(watch ? ['--watch'] : []), 'server/main.ts'], {
-    cwd: root,
-    stdio: 'inherit',
-    env: {
-      ...process.env,
-      NODE_ENV: process.env.NODE_ENV ?? (watch ? 'development' : 'production'),
-      ...(cluster ? { CLUSTER_ADMIN_URL: cluster.adminUrl, DATA_FOLDER: cluster.folder } : {}),
+  const server = spawn(
+    process.execPath,
+    ['--import', 'tsx', ...(watch ? ['--watch'] : []), 'server/main.ts'],
+    {
+      cwd: root,
+      stdio: 'inherit',
+      env: {
+        ...process.env,
+        NODE_ENV: process.env.NODE_ENV ?? (watch ? 'development' : 'production'),
+        ...(cluster ? { CLUSTER_ADMIN_URL: cluster.adminUrl, DATA_FOLDER: cluster.folder } : {}),
+      },
     },
-  });
+  );
   let stopping = false;
   const stop = (signal) => {
     if (stopping) return;

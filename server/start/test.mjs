@@ -13,8 +13,14 @@ const root = fileURLToPath(new URL('../..', import.meta.url));
 function step(name, args, env = {}) {
   console.log(`\n== ${name}`);
   const started = Date.now();
-  const run = spawnSync(process.execPath, args, { cwd: root, stdio: ['ignore', 'inherit', 'inherit'], env: { ...process.env, ...env } });
-  console.log(`== ${name}: ${run.status === 0 ? 'done' : 'failed'} in ${((Date.now() - started) / 1000).toFixed(1)} s`);
+  const run = spawnSync(process.execPath, args, {
+    cwd: root,
+    stdio: ['ignore', 'inherit', 'inherit'],
+    env: { ...process.env, ...env },
+  });
+  console.log(
+    `== ${name}: ${run.status === 0 ? 'done' : 'failed'} in ${((Date.now() - started) / 1000).toFixed(1)} s`,
+  );
   return run.status === 0;
 }
 
@@ -29,13 +35,27 @@ const checks = only.length
   ? []
   : [
       step('type check', ['node_modules/typescript-native/bin/tsc', '-p', '.']),
-      step('lint', ['node_modules/eslint/bin/eslint.js', '--config', '.eslint.config.js', '--max-warnings', '0', '.']),
+      step('lint', [
+        'node_modules/eslint/bin/eslint.js',
+        '--config',
+        '.eslint.config.js',
+        '--max-warnings',
+        '0',
+        '.',
+      ]),
       step('migrations agree with the schema', ['node_modules/drizzle-kit/bin.cjs', 'check']),
       step('client build', ['node_modules/vite/bin/vite.js', 'build', '--logLevel', 'warn']),
     ];
 const tests = step(
   'tests',
-  ['node_modules/vitest/vitest.mjs', 'run', '--reporter=default', '--reporter=json', `--outputFile.json=${report}`, ...only],
+  [
+    'node_modules/vitest/vitest.mjs',
+    'run',
+    '--reporter=default',
+    '--reporter=json',
+    `--outputFile.json=${report}`,
+    ...only,
+  ],
   { CHROMIUM: chromium, TEST_FOLDER: folder },
 );
 
@@ -43,7 +63,9 @@ let passed = checks.filter(Boolean).length;
 let failed = checks.length - passed;
 try {
   const result = JSON.parse(readFileSync(report, 'utf8'));
-  const suitesThatDidNotRun = result.testResults.filter((file) => file.status === 'failed' && file.assertionResults.length === 0);
+  const suitesThatDidNotRun = result.testResults.filter(
+    (file) => file.status === 'failed' && file.assertionResults.length === 0,
+  );
   passed += result.numPassedTests;
   failed += result.numFailedTests + suitesThatDidNotRun.length + (result.numPendingTests ?? 0);
   if (!tests && failed === 0) failed += 1;

@@ -2,7 +2,20 @@
 export type Month = string;
 
 const monthPattern = /^(\d{4})-(0[1-9]|1[0-2])$/;
-const names = ['January', 'February', 'March', 'April', 'May', 'June', 'July', 'August', 'September', 'October', 'November', 'December'];
+const names = [
+  'January',
+  'February',
+  'March',
+  'April',
+  'May',
+  'June',
+  'July',
+  'August',
+  'September',
+  'October',
+  'November',
+  'December',
+];
 
 export const isMonth = (text: string): boolean => monthPattern.test(text);
 
@@ -13,7 +26,8 @@ export function monthParts(month: Month): { year: number; monthOfYear: number } 
   return { year: Number(match[1]), monthOfYear: Number(match[2]) };
 }
 
-export const monthOf = (year: number, monthOfYear: number): Month => `${String(year).padStart(4, '0')}-${String(monthOfYear).padStart(2, '0')}`;
+export const monthOf = (year: number, monthOfYear: number): Month =>
+  `${String(year).padStart(4, '0')}-${String(monthOfYear).padStart(2, '0')}`;
 
 /** @example addMonths('2026-11', 3) // '2027-02' */
 export function addMonths(month: Month, count: number): Month {

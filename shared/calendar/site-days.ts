@@ -46,7 +46,9 @@ export function createSiteDays(rules: readonly SiteDayRule[]): SiteDays {
     if (known !== undefined) return known;
     const rule = ruleOn(day);
     const wanted = zoned(`${day}T${rule.dayBoundary}`, rule.timeZone, 'earlier');
-    const isMissing = zoned(`${day}T${rule.dayBoundary}`, rule.timeZone, 'later').toPlainTime().toString().slice(0, 5) !== rule.dayBoundary;
+    const isMissing =
+      zoned(`${day}T${rule.dayBoundary}`, rule.timeZone, 'later').toPlainTime().toString().slice(0, 5) !==
+      rule.dayBoundary;
     const start = isMissing ? firstInstantAfterGap(day, rule) : wanted.epochMilliseconds;
     starts.set(day, start);
     return start;
@@ -70,23 +72,39 @@ export function createSiteDays(rules: readonly SiteDayRule[]): SiteDays {
       const earlier = zoned(localTime, timeZone, 'earlier');
       const later = zoned(localTime, timeZone, 'later');
       if (earlier.epochMilliseconds === later.epochMilliseconds) {
-        return { kind: 'ok', observedAt: earlier.toInstant().toString(), offsetMinutes: earlier.offsetNanoseconds / 6e10 };
+        return {
+          kind: 'ok',
+          observedAt: earlier.toInstant().toString(),
+          offsetMinutes: earlier.offsetNanoseconds / 6e10,
+        };
       }
       const isMissing = later.toPlainDateTime().toString().slice(0, 16) !== localTime.slice(0, 16);
       return isMissing
-        ? { kind: 'missing-hour', firstInstantAfter: (earlier.getTimeZoneTransition('next') ?? later).toInstant().toString() }
-        : { kind: 'repeated-hour', earlier: earlier.toInstant().toString(), later: later.toInstant().toString() };
+        ? {
+            kind: 'missing-hour',
+            firstInstantAfter: (earlier.getTimeZoneTransition('next') ?? later).toInstant().toString(),
+          }
+        : {
+            kind: 'repeated-hour',
+            earlier: earlier.toInstant().toString(),
+            later: later.toInstant().toString(),
+          };
     },
   };
 }
 
-const inZone = (instantMs: number, timeZone: string) => Temporal.Instant.fromEpochMilliseconds(instantMs).toZonedDateTimeISO(timeZone);
-const localTimeIn = (instantMs: number, timeZone: string) => inZone(instantMs, timeZone).toPlainDateTime().toString().slice(0, 16);
-const offsetIn = (instantMs: number, timeZone: string) => inZone(instantMs, timeZone).offsetNanoseconds / 6e10;
+const inZone = (instantMs: number, timeZone: string) =>
+  Temporal.Instant.fromEpochMilliseconds(instantMs).toZonedDateTimeISO(timeZone);
+const localTimeIn = (instantMs: number, timeZone: string) =>
+  inZone(instantMs, timeZone).toPlainDateTime().toString().slice(0, 16);
+const offsetIn = (instantMs: number, timeZone: string) =>
+  inZone(instantMs, timeZone).offsetNanoseconds / 6e10;
 
 /** First instant after an hour that the clock skips: the moment of the change itself. */
 function firstInstantAfterGap(day: Day, rule: SiteDayRule): number {
-  const before = Temporal.PlainDateTime.from(`${day}T${rule.dayBoundary}`).toZonedDateTime(rule.timeZone, { disambiguation: 'earlier' });
+  const before = Temporal.PlainDateTime.from(`${day}T${rule.dayBoundary}`).toZonedDateTime(rule.timeZone, {
+    disambiguation: 'earlier',
+  });
   return (before.getTimeZoneTransition('next') ?? before).epochMilliseconds;
 }
 

@@ -14,14 +14,20 @@ export const compareLinesChart = (rows: readonly CumulativeRow[]) =>
   lineChart({
     labels: rows.map((row) => label(row.month)),
     lines: [
-      { series: 'predicted', name: 'Predicted, cumulative', values: rows.map((row) => row.cumulativePredictedM3) },
+      {
+        series: 'predicted',
+        name: 'Predicted, cumulative',
+        values: rows.map((row) => row.cumulativePredictedM3),
+      },
       { series: 'pumped', name: 'Pumped, cumulative', values: rows.map((row) => row.cumulativeMeasuredM3) },
     ],
     axisTitle: 'm³',
   });
 
 /** Predicted and pumped month by month, m³; a month that was not read is a gap. */
-export const monthlyVolumesChart = (rows: readonly { month: Month; predictedM3: number; measuredM3: number | null }[]) =>
+export const monthlyVolumesChart = (
+  rows: readonly { month: Month; predictedM3: number; measuredM3: number | null }[],
+) =>
   lineChart({
     labels: rows.map((row) => label(row.month)),
     lines: [

@@ -22,7 +22,11 @@ interface LineChartInput {
  * Chart.js configuration of lines over months: data in, configuration out.
  * The screen and the picture in the workbook draw the same one.
  */
-export function lineChart({ labels, lines, axisTitle }: LineChartInput): ChartConfiguration<'line', (number | null)[], string> {
+export function lineChart({
+  labels,
+  lines,
+  axisTitle,
+}: LineChartInput): ChartConfiguration<'line', (number | null)[], string> {
   const font = { family: 'Work Sans', size: 14 };
   return {
     type: 'line',
@@ -32,17 +36,52 @@ export function lineChart({ labels, lines, axisTitle }: LineChartInput): ChartCo
         const { colour, dash, mark } = seriesLooks[series];
         const isHollow = series === 'predicted';
         return {
-          label: name, data: [...values], borderColor: colour, borderDash: [...dash], borderWidth: 2, pointStyle: mark, pointRadius: mark ? 4 : 0, pointBorderColor: colour, pointBorderWidth: 2,
-          pointBackgroundColor: isHollow ? chartInk.surface : colour, backgroundColor: isHollow ? chartInk.surface : colour, spanGaps: false, tension: 0,
+          label: name,
+          data: [...values],
+          borderColor: colour,
+          borderDash: [...dash],
+          borderWidth: 2,
+          pointStyle: mark,
+          pointRadius: mark ? 4 : 0,
+          pointBorderColor: colour,
+          pointBorderWidth: 2,
+          pointBackgroundColor: isHollow ? chartInk.surface : colour,
+          backgroundColor: isHollow ? chartInk.surface : colour,
+          spanGaps: false,
+          tension: 0,
         };
       }),
     },
     options: {
-      animation: false, responsive: true, maintainAspectRatio: false,
-      plugins: { legend: { position: 'top', align: 'start', labels: { usePointStyle: true, boxWidth: 10, boxHeight: 10, padding: 16, color: chartInk.text, font } }, tooltip: { enabled: true } },
+      animation: false,
+      responsive: true,
+      maintainAspectRatio: false,
+      plugins: {
+        legend: {
+          position: 'top',
+          align: 'start',
+          labels: {
+            usePointStyle: true,
+            boxWidth: 10,
+            boxHeight: 10,
+            padding: 16,
+            color: chartInk.text,
+            font,
+          },
+        },
+        tooltip: { enabled: true },
+      },
       scales: {
-        x: { grid: { display: false }, ticks: { color: chartInk.muted, font, maxRotation: 0, autoSkipPadding: 12 } },
-        y: { beginAtZero: true, grid: { color: chartInk.line }, ticks: { color: chartInk.muted, font, callback: (value) => inThrees(Number(value)) }, title: { display: true, text: axisTitle, color: chartInk.muted, font } },
+        x: {
+          grid: { display: false },
+          ticks: { color: chartInk.muted, font, maxRotation: 0, autoSkipPadding: 12 },
+        },
+        y: {
+          beginAtZero: true,
+          grid: { color: chartInk.line },
+          ticks: { color: chartInk.muted, font, callback: (value) => inThrees(Number(value)) },
+          title: { display: true, text: axisTitle, color: chartInk.muted, font },
+        },
       },
     },
   };

@@ -19,11 +19,14 @@ export interface MonthSummary extends MonthClimate {
   isComplete: boolean;
 }
 
-const mean = (values: readonly number[]) => (values.length ? values.reduce((sum, value) => sum + value, 0) / values.length : null);
-const present = (values: readonly (number | null)[]) => values.filter((value): value is number => value !== null);
+const mean = (values: readonly number[]) =>
+  values.length ? values.reduce((sum, value) => sum + value, 0) / values.length : null;
+const present = (values: readonly (number | null)[]) =>
+  values.filter((value): value is number => value !== null);
 
 /** Mean of a day: recorded, or halfway between minimum and maximum. */
-export const dayMeanC = (day: ClimateValues): number | null => day.tMeanC ?? (day.tMinC !== null && day.tMaxC !== null ? (day.tMinC + day.tMaxC) / 2 : null);
+export const dayMeanC = (day: ClimateValues): number | null =>
+  day.tMeanC ?? (day.tMinC !== null && day.tMaxC !== null ? (day.tMinC + day.tMaxC) / 2 : null);
 
 /**
  * Adds a daily record up to a month. A month with missing days keeps their count and is never scaled.
@@ -57,8 +60,17 @@ export function monthFromRecord(month: Month, values: ClimateValues): MonthSumma
   const dayCount = daysInMonth(month);
   const hasRain = values.precipitationMm !== null;
   return {
-    month, precipitationMm: values.precipitationMm ?? 0, tMeanC, tMinC: values.tMinC, tMaxC: values.tMaxC, petMm: values.petMm, dailyPrecipitationMm: null,
-    rainDayCount: hasRain ? dayCount : 0, temperatureDayCount: tMeanC !== null ? dayCount : 0, dayCount, isComplete: hasRain && (tMeanC !== null || values.petMm !== null),
+    month,
+    precipitationMm: values.precipitationMm ?? 0,
+    tMeanC,
+    tMinC: values.tMinC,
+    tMaxC: values.tMaxC,
+    petMm: values.petMm,
+    dailyPrecipitationMm: null,
+    rainDayCount: hasRain ? dayCount : 0,
+    temperatureDayCount: tMeanC !== null ? dayCount : 0,
+    dayCount,
+    isComplete: hasRain && (tMeanC !== null || values.petMm !== null),
   };
 }
 
@@ -69,12 +81,22 @@ export type GapChoice = 'leave-out' | 'scale-by-days' | 'other-station' | 'stati
  * @param normal long-term mean of the same month of the year at the station, or null
  * @returns null when the choice is to leave the month out, or cannot be followed
  */
-export function settleGap(summary: MonthSummary, choice: GapChoice, normal: MonthClimate | null, other: MonthSummary | null): MonthClimate | null {
+export function settleGap(
+  summary: MonthSummary,
+  choice: GapChoice,
+  normal: MonthClimate | null,
+  other: MonthSummary | null,
+): MonthClimate | null {
   if (choice === 'scale-by-days') {
     if (summary.rainDayCount === 0 || summary.tMeanC === null) return null;
-    return { ...summary, precipitationMm: (summary.precipitationMm * summary.dayCount) / summary.rainDayCount, dailyPrecipitationMm: null };
+    return {
+      ...summary,
+      precipitationMm: (summary.precipitationMm * summary.dayCount) / summary.rainDayCount,
+      dailyPrecipitationMm: null,
+    };
   }
   if (choice === 'other-station') return other?.isComplete ? other : null;
-  if (choice === 'station-normal') return normal && { ...normal, month: summary.month, dailyPrecipitationMm: null };
+  if (choice === 'station-normal')
+    return normal && { ...normal, month: summary.month, dailyPrecipitationMm: null };
   return null;
 }

@@ -8,7 +8,11 @@ import { depthUnitsMm, fahrenheitToCelsius, type DepthUnit } from '../units/unit
 export const climateFields = ['precipitationMm', 'tMinC', 'tMaxC', 'tMeanC', 'petMm'] as const;
 export type ClimateField = (typeof climateFields)[number];
 export const climateFieldNames: Record<ClimateField, string> = {
-  precipitationMm: 'precipitation', tMinC: 'minimum temperature', tMaxC: 'maximum temperature', tMeanC: 'mean temperature', petMm: 'potential evapotranspiration',
+  precipitationMm: 'precipitation',
+  tMinC: 'minimum temperature',
+  tMaxC: 'maximum temperature',
+  tMeanC: 'mean temperature',
+  petMm: 'potential evapotranspiration',
 };
 
 export type ClimateUnit = DepthUnit | 'C' | 'F';
@@ -62,7 +66,15 @@ export function detectClimateMapping(sheet: Sheet): ClimateMapping | null {
     const monthColumn = headers.findIndex((header) => /^(month|mo)$/i.test(header));
     if (!columns.length || (dateColumn < 0 && (yearColumn < 0 || monthColumn < 0))) continue;
     const orNull = (index: number) => (index < 0 ? null : index);
-    return { sheetName: sheet.name, headerRow: row.number, kind: dateColumn >= 0 ? 'daily' : 'monthly', dateColumn: orNull(dateColumn), yearColumn: orNull(yearColumn), monthColumn: orNull(monthColumn), columns };
+    return {
+      sheetName: sheet.name,
+      headerRow: row.number,
+      kind: dateColumn >= 0 ? 'daily' : 'monthly',
+      dateColumn: orNull(dateColumn),
+      yearColumn: orNull(yearColumn),
+      monthColumn: orNull(monthColumn),
+      columns,
+    };
   }
   return null;
 }
@@ -93,7 +105,8 @@ function convert(value: string, unit: ClimateUnit): string {
 const warmestC = 60;
 
 function checkRow(row: ClimateRow, kind: ClimateMapping['kind']): void {
-  const number = (field: ClimateField) => (row.values[field] === undefined ? null : Number(row.values[field]));
+  const number = (field: ClimateField) =>
+    row.values[field] === undefined ? null : Number(row.values[field]);
   const [rain, tMin, tMax] = [number('precipitationMm'), number('tMinC'), number('tMaxC')];
   const hold = (message: string) => {
     row.state = 'held';
@@ -101,11 +114,16 @@ function checkRow(row: ClimateRow, kind: ClimateMapping['kind']): void {
   };
   if (rain !== null && rain < 0) hold('Precipitation is below 0. Correct the cell or leave it empty.');
   const rainMax = kind === 'daily' ? 500 : 3000;
-  if (rain !== null && rain > rainMax) hold(`${rain} mm of precipitation is not plausible for a ${kind === 'daily' ? 'day' : 'month'}. Check the unit: tenths of a millimetre?`);
-  if (tMin !== null && tMax !== null && tMin > tMax) hold(`The minimum temperature (${tMin} °C) is above the maximum (${tMax} °C).`);
+  if (rain !== null && rain > rainMax)
+    hold(
+      `${rain} mm of precipitation is not plausible for a ${kind === 'daily' ? 'day' : 'month'}. Check the unit: tenths of a millimetre?`,
+    );
+  if (tMin !== null && tMax !== null && tMin > tMax)
+    hold(`The minimum temperature (${tMin} °C) is above the maximum (${tMax} °C).`);
   for (const field of ['tMinC', 'tMaxC', 'tMeanC'] as const) {
     const value = number(field);
-    if (value !== null && (value > warmestC || value < -90)) hold(`${value} °C is not a temperature on Earth. Check the unit: °F, or tenths?`);
+    if (value !== null && (value > warmestC || value < -90))
+      hold(`${value} °C is not a temperature on Earth. Check the unit: °F, or tenths?`);
   }
 }
 
@@ -118,10 +136,18 @@ export function readClimateSheet(sheet: Sheet, mapping: ClimateMapping): Climate
   return sheet.rows
     .filter((row) => row.number > mapping.headerRow)
     .map(({ number, cells }) => {
-      const row: ClimateRow = { rowNumber: number, when: whenOf(cells, mapping), values: {}, state: 'ok', messages: [] };
+      const row: ClimateRow = {
+        rowNumber: number,
+        when: whenOf(cells, mapping),
+        values: {},
+        state: 'ok',
+        messages: [],
+      };
       if (!row.when) {
         row.state = 'held';
-        row.messages.push(`No ${mapping.kind === 'daily' ? 'day' : 'year and month'} could be read in this row.`);
+        row.messages.push(
+          `No ${mapping.kind === 'daily' ? 'day' : 'year and month'} could be read in this row.`,
+        );
       }
       for (const { field, column, unit } of mapping.columns) {
         const text = cellText(cells[column]);
@@ -130,7 +156,9 @@ export function readClimateSheet(sheet: Sheet, mapping: ClimateMapping): Climate
         if (parsed.kind === 'number') row.values[field] = convert(parsed.value, unit);
         else {
           row.state = 'held';
-          row.messages.push(`Column ${columnLetter(column)}, "${text}": ${parsed.kind === 'wrong' ? parsed.reason : parsed.question}`);
+          row.messages.push(
+            `Column ${columnLetter(column)}, "${text}": ${parsed.kind === 'wrong' ? parsed.reason : parsed.question}`,
+          );
         }
       }
       if (row.when && Object.keys(row.values).length === 0) {

@@ -8,8 +8,23 @@ export interface AnalyteTemplate {
   aliases: string[];
 }
 
-const one = (code: string, name: string, cas: string | null, standardUnit: string, aliases: string[], extra: Partial<AnalyteTemplate> = {}): AnalyteTemplate =>
-  ({ code, name, cas, basis: null, defaultFraction: null, standardUnit, aliases, ...extra });
+const one = (
+  code: string,
+  name: string,
+  cas: string | null,
+  standardUnit: string,
+  aliases: string[],
+  extra: Partial<AnalyteTemplate> = {},
+): AnalyteTemplate => ({
+  code,
+  name,
+  cas,
+  basis: null,
+  defaultFraction: null,
+  standardUnit,
+  aliases,
+  ...extra,
+});
 
 /**
  * Parameters a new organisation starts with; more are added by hand.
@@ -17,13 +32,27 @@ const one = (code: string, name: string, cas: string | null, standardUnit: strin
  */
 export const analyteTemplates: readonly AnalyteTemplate[] = [
   one('ph', 'pH', null, 'pH', ['pH value']),
-  one('conductivity', 'Conductivity', null, 'µS/cm', ['EC', 'electrical conductivity', 'specific conductance']),
+  one('conductivity', 'Conductivity', null, 'µS/cm', [
+    'EC',
+    'electrical conductivity',
+    'specific conductance',
+  ]),
   one('bod5', 'BOD5', null, 'mg/L', ['BOD', 'BOD-5', 'biochemical oxygen demand']),
   one('cod', 'COD', null, 'mg/L', ['chemical oxygen demand', 'CSB']),
   one('tss', 'TSS', null, 'mg/L', ['total suspended solids', 'suspended solids']),
-  one('ammonia', 'Ammonia', '7664-41-7', 'mg/L', ['ammonia nitrogen', 'ammonia-N', 'NH3-N', 'NH4-N', 'ammonium', 'ammonium-N'], { basis: 'N' }),
+  one(
+    'ammonia',
+    'Ammonia',
+    '7664-41-7',
+    'mg/L',
+    ['ammonia nitrogen', 'ammonia-N', 'NH3-N', 'NH4-N', 'ammonium', 'ammonium-N'],
+    { basis: 'N' },
+  ),
   one('nitrate', 'Nitrate', '14797-55-8', 'mg/L', ['nitrate-N', 'NO3-N'], { basis: 'N' }),
-  one('phosphorus', 'Phosphorus', '7723-14-0', 'mg/L', ['total P', 'phosphorus total'], { basis: 'P', defaultFraction: 'total' }),
+  one('phosphorus', 'Phosphorus', '7723-14-0', 'mg/L', ['total P', 'phosphorus total'], {
+    basis: 'P',
+    defaultFraction: 'total',
+  }),
   one('chloride', 'Chloride', '16887-00-6', 'mg/L', ['chlorid', 'Cl']),
   one('sulfate', 'Sulfate', '14808-79-8', 'mg/L', ['sulphate', 'SO4']),
   one('zinc', 'Zinc', '7440-66-6', 'mg/L', ['Zn', 'zink', 'zink gesamt'], { defaultFraction: 'total' }),

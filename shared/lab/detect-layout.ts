@@ -1,14 +1,33 @@
 import { cellText, type Sheet } from '../sheets/sheet.ts';
 
 export type LabColumn =
-  | 'point' | 'sampled' | 'analyte' | 'result' | 'unit' | 'reportingLimit' | 'reportingLimitUnit' | 'detectionLimit' | 'qualifier' | 'cas' | 'dilution' | 'kind' | 'laboratoryNumber' | 'comment';
+  | 'point'
+  | 'sampled'
+  | 'analyte'
+  | 'result'
+  | 'unit'
+  | 'reportingLimit'
+  | 'reportingLimitUnit'
+  | 'detectionLimit'
+  | 'qualifier'
+  | 'cas'
+  | 'dilution'
+  | 'kind'
+  | 'laboratoryNumber'
+  | 'comment';
 
 const headerWords: [LabColumn, RegExp][] = [
   ['reportingLimitUnit', /^(rl|reporting limit|pql) ?units?$/],
   ['reportingLimit', /^(rl|pql|loq|bg|reporting limit|quantitation limit)$/],
   ['detectionLimit', /^(mdl|lod|dl|detection limit)$/],
-  ['point', /^(client id|client sample id|our no\.?|sample ?point|point|site|station|location|probe|sample id|sample)$/],
-  ['sampled', /^(sampled|sampled on|sample date|collected|collection date|taken on|date|datum|date sampled)$/],
+  [
+    'point',
+    /^(client id|client sample id|our no\.?|sample ?point|point|site|station|location|probe|sample id|sample)$/,
+  ],
+  [
+    'sampled',
+    /^(sampled|sampled on|sample date|collected|collection date|taken on|date|datum|date sampled)$/,
+  ],
   ['analyte', /^(parameter|param|analyte|substance|test|determinand|compound)$/],
   ['result', /^(result|results|found|value|wert|concentration)$/],
   ['unit', /^(units?|einheit|uom)$/],
@@ -35,18 +54,26 @@ export interface CrosstabLayout {
 
 export type LabLayout = LongLayout | CrosstabLayout;
 
-const columnOf = (text: string): LabColumn | null => headerWords.find(([, pattern]) => pattern.test(text.toLowerCase()))?.[0] ?? null;
+const columnOf = (text: string): LabColumn | null =>
+  headerWords.find(([, pattern]) => pattern.test(text.toLowerCase()))?.[0] ?? null;
 
 /** Header text of a cell, taking the value of the merged range it lies in. */
 function fannedOut(sheet: Sheet, rowNumber: number, columnIndex: number): string {
   const row = sheet.rows.find((one) => one.number === rowNumber);
   const own = cellText(row?.cells[columnIndex]);
   if (own) return own;
-  const merge = sheet.merges.find((one) => one.top <= rowNumber && one.bottom >= rowNumber && one.left <= columnIndex + 1 && one.right >= columnIndex + 1);
+  const merge = sheet.merges.find(
+    (one) =>
+      one.top <= rowNumber &&
+      one.bottom >= rowNumber &&
+      one.left <= columnIndex + 1 &&
+      one.right >= columnIndex + 1,
+  );
   return merge ? cellText(sheet.rows.find((one) => one.number === merge.top)?.cells[merge.left - 1]) : '';
 }
 
-const looksLikeDate = (text: string) => /^\d{4}-\d{2}-\d{2}|^\d{1,2}[./-](\d{1,2}|[A-Za-z]{3})[./-]\d{2,4}/.test(text);
+const looksLikeDate = (text: string) =>
+  /^\d{4}-\d{2}-\d{2}|^\d{1,2}[./-](\d{1,2}|[A-Za-z]{3})[./-]\d{2,4}/.test(text);
 
 /** Columns of samples in a crosstab: a date over each value column, the point in the row above, "RL" beside it. */
 function crosstabSamples(sheet: Sheet, headerRow: number, headers: string[]): CrosstabLayout['samples'] {

@@ -27,7 +27,10 @@ export interface LabRow extends RawLabRow {
   state: LabRowState;
   messages: string[];
   /** Question that holds the row, with what an answer would be remembered for. */
-  question: { kind: 'sample-point' | 'analyte' | 'unit' | 'qualifier' | 'limit' | 'value' | 'date'; text: string } | null;
+  question: {
+    kind: 'sample-point' | 'analyte' | 'unit' | 'qualifier' | 'limit' | 'value' | 'date';
+    text: string;
+  } | null;
   samplePointId: string | null;
   analyteId: string | null;
   fraction: string;

@@ -1,5 +1,14 @@
 /** What a laboratory's letter can mean; each laboratory has its own table of letters. */
-export const qualifierMeanings = ['non-detect', 'estimated-below-reporting', 'above-range', 'in-blank', 'diluted', 'holding-time', 'rejected', 'other'] as const;
+export const qualifierMeanings = [
+  'non-detect',
+  'estimated-below-reporting',
+  'above-range',
+  'in-blank',
+  'diluted',
+  'holding-time',
+  'rejected',
+  'other',
+] as const;
 export type QualifierMeaning = (typeof qualifierMeanings)[number];
 
 export const qualifierMeaningNames: Record<QualifierMeaning, string> = {

@@ -1,5 +1,11 @@
 import { cellText, columnLetter, type Sheet, type SheetRow } from '../sheets/sheet.ts';
-import { detectLayout, type CrosstabLayout, type LabColumn, type LabLayout, type LongLayout } from './detect-layout.ts';
+import {
+  detectLayout,
+  type CrosstabLayout,
+  type LabColumn,
+  type LabLayout,
+  type LongLayout,
+} from './detect-layout.ts';
 import type { RawLabRow } from './lab-row.ts';
 
 export interface SkippedRow {
@@ -33,14 +39,31 @@ function findJobNumber(sheet: Sheet, headerRow: number): string | null {
 }
 
 const keyOf = (text: string) =>
-  [...text.matchAll(/(?:^|[;,.]\s*)([A-Z]{1,2})\s*[=:]\s*([^;]+)/g)].map((match) => ({ letter: match[1]!, words: match[2]!.trim() }));
+  [...text.matchAll(/(?:^|[;,.]\s*)([A-Z]{1,2})\s*[=:]\s*([^;]+)/g)].map((match) => ({
+    letter: match[1]!,
+    words: match[2]!.trim(),
+  }));
 
 function rawRow(sheet: Sheet, row: SheetRow, columns: LongLayout['columns'], valueColumn: number): RawLabRow {
   const at = (name: LabColumn) => (columns[name] === undefined ? '' : cellText(row.cells[columns[name]]));
   return {
-    sheet: sheet.name, rowNumber: row.number, cell: `${columnLetter(valueColumn)}${row.number}`, pointText: at('point'), sampledText: at('sampled'), analyteText: at('analyte'), fractionText: '', cas: at('cas'),
-    resultText: cellText(row.cells[valueColumn]), unitText: at('unit'), reportingLimitText: at('reportingLimit'), reportingLimitUnitText: at('reportingLimitUnit'), detectionLimitText: at('detectionLimit'),
-    qualifierText: at('qualifier'), dilutionText: at('dilution'), kindText: at('kind'), laboratoryNumber: at('laboratoryNumber'),
+    sheet: sheet.name,
+    rowNumber: row.number,
+    cell: `${columnLetter(valueColumn)}${row.number}`,
+    pointText: at('point'),
+    sampledText: at('sampled'),
+    analyteText: at('analyte'),
+    fractionText: '',
+    cas: at('cas'),
+    resultText: cellText(row.cells[valueColumn]),
+    unitText: at('unit'),
+    reportingLimitText: at('reportingLimit'),
+    reportingLimitUnitText: at('reportingLimitUnit'),
+    detectionLimitText: at('detectionLimit'),
+    qualifierText: at('qualifier'),
+    dilutionText: at('dilution'),
+    kindText: at('kind'),
+    laboratoryNumber: at('laboratoryNumber'),
   };
 }
 
@@ -56,7 +79,12 @@ function readLongList(sheet: Sheet, layout: LongLayout, reading: LabReading): vo
       continue;
     }
     if (/^(average|avg|mean|total|sum)$/i.test(analyte)) {
-      reading.skipped.push({ sheet: sheet.name, rowNumber: row.number, text: rowText(row), why: 'summary row, not a sample' });
+      reading.skipped.push({
+        sheet: sheet.name,
+        rowNumber: row.number,
+        text: rowText(row),
+        why: 'summary row, not a sample',
+      });
       continue;
     }
     reading.rows.push(rawRow(sheet, row, columns, columns.result!));
@@ -64,7 +92,14 @@ function readLongList(sheet: Sheet, layout: LongLayout, reading: LabReading): vo
 }
 
 /** A section row gives its fraction to the rows under it, until the next section row. */
-const sectionFraction = (text: string) => (/\bdissolved\b/i.test(text) ? 'dissolved' : /\btotal recoverable\b/i.test(text) ? 'total recoverable' : /\btotal\b/i.test(text) ? 'total' : '');
+const sectionFraction = (text: string) =>
+  /\bdissolved\b/i.test(text)
+    ? 'dissolved'
+    : /\btotal recoverable\b/i.test(text)
+      ? 'total recoverable'
+      : /\btotal\b/i.test(text)
+        ? 'total'
+        : '';
 
 function readCrosstab(sheet: Sheet, layout: CrosstabLayout, reading: LabReading): void {
   const { columns, samples } = layout;
@@ -76,16 +111,33 @@ function readCrosstab(sheet: Sheet, layout: CrosstabLayout, reading: LabReading)
       fractionText = sectionFraction(analyte);
       const key = keyOf(analyte);
       reading.qualifierKey.push(...key);
-      reading.skipped.push({ sheet: sheet.name, rowNumber: row.number, text: analyte, why: key.length ? 'note under the table' : 'heading of a section' });
+      reading.skipped.push({
+        sheet: sheet.name,
+        rowNumber: row.number,
+        text: analyte,
+        why: key.length ? 'note under the table' : 'heading of a section',
+      });
       continue;
     }
     if (!analyte) {
-      reading.skipped.push({ sheet: sheet.name, rowNumber: row.number, text: rowText(row), why: 'no parameter in this row' });
+      reading.skipped.push({
+        sheet: sheet.name,
+        rowNumber: row.number,
+        text: rowText(row),
+        why: 'no parameter in this row',
+      });
       continue;
     }
     for (const sample of samples) {
       const base = rawRow(sheet, row, columns, sample.valueColumn);
-      reading.rows.push({ ...base, pointText: sample.point, sampledText: sample.sampledText, fractionText, reportingLimitText: sample.limitColumn === null ? base.reportingLimitText : cellText(row.cells[sample.limitColumn]) });
+      reading.rows.push({
+        ...base,
+        pointText: sample.point,
+        sampledText: sample.sampledText,
+        fractionText,
+        reportingLimitText:
+          sample.limitColumn === null ? base.reportingLimitText : cellText(row.cells[sample.limitColumn]),
+      });
     }
   }
 }

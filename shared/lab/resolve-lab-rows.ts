@@ -7,7 +7,16 @@ import { decideDateOrder, readSampledDate } from './read-sampled-date.ts';
 
 export interface LabCatalog {
   points: { id: string; code: string; aliases: string[] }[];
-  analytes: { id: string; code: string; name: string; cas: string | null; basis: string | null; defaultFraction: string | null; standardUnit: string; aliases: string[] }[];
+  analytes: {
+    id: string;
+    code: string;
+    name: string;
+    cas: string | null;
+    basis: string | null;
+    defaultFraction: string | null;
+    standardUnit: string;
+    aliases: string[];
+  }[];
   /** The laboratory's own letters, in capitals. */
   qualifiers: ReadonlyMap<string, string>;
   /** Remembered answers of the laboratory: kind and tidy text to value. */
@@ -18,24 +27,61 @@ export interface LabCatalog {
   answers: { dateOrder: 'day-first' | 'month-first' | null };
 }
 
-export const tidyName = (text: string): string => text.toLowerCase().normalize('NFKD').replace(/[^a-z0-9]+/g, '');
+export const tidyName = (text: string): string =>
+  text
+    .toLowerCase()
+    .normalize('NFKD')
+    .replace(/[^a-z0-9]+/g, '');
 const mappingKey = (kind: string, text: string) => `${kind} ${tidyName(text)}`;
 const daysBeforeReceiptMax = 180;
 
 /** Name, fraction and basis that a laboratory writes into one text: "Zinc, Total", "Ammonia (as N)". */
-export function splitAnalyteText(text: string): { name: string; fraction: string; basis: string | null; unit: string } {
+export function splitAnalyteText(text: string): {
+  name: string;
+  fraction: string;
+  basis: string | null;
+  unit: string;
+} {
   const unit = /\s((?:m|u|µ|μ|n)?g\/l)$/i.exec(text)?.[1] ?? '';
   const withoutUnit = unit ? text.slice(0, -unit.length) : text;
   const basis = /\(?\bas ([A-Za-z0-9]+)\)?/.exec(withoutUnit)?.[1] ?? null;
-  const fraction = /\bdissolved\b|\bdiss\.?/i.test(withoutUnit) ? 'dissolved' : /\btotal recoverable\b/i.test(withoutUnit) ? 'total recoverable' : /\btotal\b/i.test(withoutUnit) ? 'total' : '';
-  const name = withoutUnit.replace(/\(?\bas [A-Za-z0-9]+\)?/, '').replace(/[,(]?\s*\b(total recoverable|total|dissolved|diss\.?)\b\)?/i, '').replace(/[,\s]+$/, '').trim();
+  const fraction = /\bdissolved\b|\bdiss\.?/i.test(withoutUnit)
+    ? 'dissolved'
+    : /\btotal recoverable\b/i.test(withoutUnit)
+      ? 'total recoverable'
+      : /\btotal\b/i.test(withoutUnit)
+        ? 'total'
+        : '';
+  const name = withoutUnit
+    .replace(/\(?\bas [A-Za-z0-9]+\)?/, '')
+    .replace(/[,(]?\s*\b(total recoverable|total|dissolved|diss\.?)\b\)?/i, '')
+    .replace(/[,\s]+$/, '')
+    .trim();
   return { name, fraction, basis, unit };
 }
 
 function emptyRow(raw: RawLabRow): LabRow {
   return {
-    ...raw, state: 'ok', messages: [], question: null, samplePointId: null, analyteId: null, fraction: '', sampledOn: null, sampledTime: null, comparator: '=', value: null, unit: '', reportingLimit: null,
-    detectionLimit: null, qualifier: null, qualifierMeaning: null, missingReason: null, printedDecimals: null, supersedesId: null, supersedesWords: null,
+    ...raw,
+    state: 'ok',
+    messages: [],
+    question: null,
+    samplePointId: null,
+    analyteId: null,
+    fraction: '',
+    sampledOn: null,
+    sampledTime: null,
+    comparator: '=',
+    value: null,
+    unit: '',
+    reportingLimit: null,
+    detectionLimit: null,
+    qualifier: null,
+    qualifierMeaning: null,
+    missingReason: null,
+    printedDecimals: null,
+    supersedesId: null,
+    supersedesWords: null,
   };
 }
 
@@ -53,19 +99,32 @@ function warn(row: LabRow, text: string): void {
 function resolvePoint(row: LabRow, catalog: LabCatalog): void {
   const tidy = tidyName(row.pointText);
   const mapped = catalog.mappings.get(mappingKey('sample-point', row.pointText));
-  const point = catalog.points.find((one) => one.id === mapped || tidyName(one.code) === tidy || one.aliases.some((alias) => tidyName(alias) === tidy));
+  const point = catalog.points.find(
+    (one) =>
+      one.id === mapped ||
+      tidyName(one.code) === tidy ||
+      one.aliases.some((alias) => tidyName(alias) === tidy),
+  );
   if (!row.pointText) hold(row, 'sample-point', 'No sample point is given in this row.');
   else if (!point) hold(row, 'sample-point', `Sample point "${row.pointText}" is not known here.`);
   else row.samplePointId = point.id;
 }
 
-function resolveAnalyte(row: LabRow, catalog: LabCatalog): { basis: string | null; standardUnit: string; reportedBasis: string | null; unitInName: string } | null {
+function resolveAnalyte(
+  row: LabRow,
+  catalog: LabCatalog,
+): { basis: string | null; standardUnit: string; reportedBasis: string | null; unitInName: string } | null {
   const split = splitAnalyteText(row.analyteText);
   const tidy = tidyName(split.name);
   const mapped = catalog.mappings.get(mappingKey('analyte', row.analyteText));
   const cas = row.cas.replace(/^0+/, '');
   const analyte = catalog.analytes.find(
-    (one) => one.id === mapped || tidyName(one.name) === tidy || tidyName(one.code) === tidy || one.aliases.some((alias) => tidyName(alias) === tidy) || (one.cas !== null && one.cas === cas),
+    (one) =>
+      one.id === mapped ||
+      tidyName(one.name) === tidy ||
+      tidyName(one.code) === tidy ||
+      one.aliases.some((alias) => tidyName(alias) === tidy) ||
+      (one.cas !== null && one.cas === cas),
   );
   if (!analyte) {
     hold(row, 'analyte', `Parameter "${row.analyteText}" is not known here.`);
@@ -73,7 +132,12 @@ function resolveAnalyte(row: LabRow, catalog: LabCatalog): { basis: string | nul
   }
   row.analyteId = analyte.id;
   row.fraction = split.fraction || row.fractionText || analyte.defaultFraction || '';
-  return { basis: analyte.basis, standardUnit: analyte.standardUnit, reportedBasis: split.basis, unitInName: split.unit };
+  return {
+    basis: analyte.basis,
+    standardUnit: analyte.standardUnit,
+    reportedBasis: split.basis,
+    unitInName: split.unit,
+  };
 }
 
 /** Converts a number text into the analyte's unit and basis, exact, without losing printed digits. */
@@ -86,15 +150,23 @@ const isPlainNumber = (text: string) => /^\d*\.?\d+$/.test(text.replace(/,/g, ''
 const limitText = (text: string) => text.replace(/,/g, text.includes('.') || /,\d{3}$/.test(text) ? '' : '.');
 
 function applyText(row: LabRow, text: ResultText, factors: string[], limitFactors: string[]): void {
-  if (isPlainNumber(row.reportingLimitText)) row.reportingLimit = convert(limitText(row.reportingLimitText), limitFactors);
-  if (isPlainNumber(row.detectionLimitText)) row.detectionLimit = convert(limitText(row.detectionLimitText), limitFactors);
+  if (isPlainNumber(row.reportingLimitText))
+    row.reportingLimit = convert(limitText(row.reportingLimitText), limitFactors);
+  if (isPlainNumber(row.detectionLimitText))
+    row.detectionLimit = convert(limitText(row.detectionLimitText), limitFactors);
   if (text.kind === 'missing') {
     row.missingReason = text.reason;
-    warn(row, text.reason === 'pending' ? 'Still pending: a late result to be filled.' : `No result: ${text.reason}.`);
+    warn(
+      row,
+      text.reason === 'pending' ? 'Still pending: a late result to be filled.' : `No result: ${text.reason}.`,
+    );
   } else if (text.kind === 'question') hold(row, 'value', text.sentence);
   else if (text.kind === 'below') {
-    const limit = text.limitText ? convert(text.limitText, factors) : (row.reportingLimit ?? row.detectionLimit);
-    if (limit === null) return hold(row, 'limit', `"${row.resultText}" gives no limit. ND alone is not zero and not a number.`);
+    const limit = text.limitText
+      ? convert(text.limitText, factors)
+      : (row.reportingLimit ?? row.detectionLimit);
+    if (limit === null)
+      return hold(row, 'limit', `"${row.resultText}" gives no limit. ND alone is not zero and not a number.`);
     row.comparator = '<';
     row.value = limit;
     row.qualifier = text.qualifier;
@@ -104,7 +176,8 @@ function applyText(row: LabRow, text: ResultText, factors: string[], limitFactor
     row.value = convert(text.valueText, factors);
     row.qualifier = text.qualifier;
     row.printedDecimals = text.valueText.split('.')[1]?.length ?? 0;
-    if (new Decimal(row.value).isZero() && row.unit === 'mg/L') warn(row, 'A true zero? Most laboratories cannot report zero.');
+    if (new Decimal(row.value).isZero() && row.unit === 'mg/L')
+      warn(row, 'A true zero? Most laboratories cannot report zero.');
   }
 }
 
@@ -114,17 +187,32 @@ function settleComma(row: LabRow, text: ResultText, column: readonly string[]): 
   const limit = Number(row.reportingLimitText.replace(/,/g, ''));
   const hasPoint = column.some((one) => /^\D*\d+\.\d+/.test(one));
   if ((Number.isFinite(limit) && limit > 0 && Number(text.isGroupedOrDecimal) < limit) || hasPoint) {
-    warn(row, `"${row.resultText}" read as ${text.valueText}: ${hasPoint ? 'other values of the column use a point' : `as a decimal it would lie below the limit ${row.reportingLimitText}`}.`);
+    warn(
+      row,
+      `"${row.resultText}" read as ${text.valueText}: ${hasPoint ? 'other values of the column use a point' : `as a decimal it would lie below the limit ${row.reportingLimitText}`}.`,
+    );
     return text;
   }
-  return { kind: 'question', sentence: `Is "${row.resultText}" ${text.valueText} or ${text.isGroupedOrDecimal}?` };
+  return {
+    kind: 'question',
+    sentence: `Is "${row.resultText}" ${text.valueText} or ${text.isGroupedOrDecimal}?`,
+  };
 }
 
 function resolveQualifier(row: LabRow, catalog: LabCatalog): void {
-  const letters = [...new Set([row.qualifier, row.qualifierText.toUpperCase() || null].filter((one): one is string => Boolean(one)))];
+  const letters = [
+    ...new Set(
+      [row.qualifier, row.qualifierText.toUpperCase() || null].filter((one): one is string => Boolean(one)),
+    ),
+  ];
   for (const letter of letters) {
     const meaning = catalog.qualifiers.get(letter);
-    if (!meaning) return hold(row, 'qualifier', `The letter "${letter}" is not in this laboratory's table yet. Say what it means once.`);
+    if (!meaning)
+      return hold(
+        row,
+        'qualifier',
+        `The letter "${letter}" is not in this laboratory's table yet. Say what it means once.`,
+      );
     row.qualifier = letter;
     row.qualifierMeaning = meaning;
     if (meaning === 'non-detect' && row.comparator === '=') row.comparator = '<';
@@ -133,26 +221,49 @@ function resolveQualifier(row: LabRow, catalog: LabCatalog): void {
 
 function resolveDate(row: LabRow, catalog: LabCatalog, order: ReturnType<typeof decideDateOrder>): void {
   const read = readSampledDate(row.sampledText, order);
-  if (read === null) return hold(row, 'date', row.sampledText ? `"${row.sampledText}" is not a date.` : 'No sampling date is given.');
-  if (read === 'ambiguous') return hold(row, 'date', `"${row.sampledText}" can be read two ways, and nothing else in the file decides. Say which part is the day.`);
+  if (read === null)
+    return hold(
+      row,
+      'date',
+      row.sampledText ? `"${row.sampledText}" is not a date.` : 'No sampling date is given.',
+    );
+  if (read === 'ambiguous')
+    return hold(
+      row,
+      'date',
+      `"${row.sampledText}" can be read two ways, and nothing else in the file decides. Say which part is the day.`,
+    );
   row.sampledOn = read.day;
   row.sampledTime = read.time;
-  if (read.day > catalog.receivedOn) hold(row, 'date', `Sampled on ${read.day}, after the file was received on ${catalog.receivedOn}.`);
-  else if (daysBetween(read.day, catalog.receivedOn) > daysBeforeReceiptMax) warn(row, `Sampled on ${read.day}, more than ${daysBeforeReceiptMax} days before the file came.`);
+  if (read.day > catalog.receivedOn)
+    hold(row, 'date', `Sampled on ${read.day}, after the file was received on ${catalog.receivedOn}.`);
+  else if (daysBetween(read.day, catalog.receivedOn) > daysBeforeReceiptMax)
+    warn(row, `Sampled on ${read.day}, more than ${daysBeforeReceiptMax} days before the file came.`);
 }
 
 /** Sheet and column letter of a result. */
 const columnKey = (raw: RawLabRow) => `${raw.sheet} ${raw.cell.replace(/\d+/, '')}`;
 
-const qualityKinds = /^(ms|msd|mb|tb|fb|lcs|lcsd|blank|spike|method blank|trip blank|field blank|lab duplicate)$/i;
+const qualityKinds =
+  /^(ms|msd|mb|tb|fb|lcs|lcsd|blank|spike|method blank|trip blank|field blank|lab duplicate)$/i;
 
-const wordsOf = (comparator: string, value: string | null, unit: string) => (value === null ? 'no value' : `${comparator === '<' ? 'below ' : comparator === '>' ? 'above ' : ''}${new Decimal(value).toFixed()} ${unit}`);
+const wordsOf = (comparator: string, value: string | null, unit: string) =>
+  value === null
+    ? 'no value'
+    : `${comparator === '<' ? 'below ' : comparator === '>' ? 'above ' : ''}${new Decimal(value).toFixed()} ${unit}`;
 
 /** What the record already holds for this sample: the same (nothing to do), another value, or nothing. */
 function compareWithRecord(row: LabRow, catalog: LabCatalog): void {
-  const known = catalog.existing.get(`${row.samplePointId} ${row.analyteId} ${row.fraction} ${row.sampledOn}`);
+  const known = catalog.existing.get(
+    `${row.samplePointId} ${row.analyteId} ${row.fraction} ${row.sampledOn}`,
+  );
   if (!known) return;
-  const isSame = known.comparator === row.comparator && known.unit === row.unit && (known.value === null ? row.value === null : row.value !== null && new Decimal(known.value).eq(row.value));
+  const isSame =
+    known.comparator === row.comparator &&
+    known.unit === row.unit &&
+    (known.value === null
+      ? row.value === null
+      : row.value !== null && new Decimal(known.value).eq(row.value));
   if (isSame) {
     row.state = 'skipped';
     row.messages.push('Already here with the same value.');
@@ -174,7 +285,12 @@ function settleDoubles(rows: readonly LabRow[]): void {
       row.state = 'skipped';
       row.messages.push(`The same as row ${first.rowNumber}.`);
     } else {
-      for (const one of [first, row]) hold(one, 'value', `Rows ${first.rowNumber} and ${row.rowNumber} give two values for one sample and parameter.`);
+      for (const one of [first, row])
+        hold(
+          one,
+          'value',
+          `Rows ${first.rowNumber} and ${row.rowNumber} give two values for one sample and parameter.`,
+        );
     }
   }
 }
@@ -201,17 +317,42 @@ export function resolveLabRows(raws: readonly RawLabRow[], catalog: LabCatalog):
     resolvePoint(row, catalog);
     resolveDate(row, catalog, order);
     const analyte = resolveAnalyte(row, catalog);
-    const unitText = raw.unitText || analyte?.unitInName || catalog.mappings.get(mappingKey('unit', raw.analyteText)) || (analyte?.standardUnit === 'pH' ? 'pH' : '');
+    const unitText =
+      raw.unitText ||
+      analyte?.unitInName ||
+      catalog.mappings.get(mappingKey('unit', raw.analyteText)) ||
+      (analyte?.standardUnit === 'pH' ? 'pH' : '');
     const unit = unitText ? readUnit(catalog.mappings.get(mappingKey('unit', unitText)) ?? unitText) : null;
-    if (!unit) hold(row, 'unit', unitText ? `The unit "${unitText}" is not known.` : `${raw.analyteText}: ${raw.resultText}, and no unit. Which one?`);
+    if (!unit)
+      hold(
+        row,
+        'unit',
+        unitText
+          ? `The unit "${unitText}" is not known.`
+          : `${raw.analyteText}: ${raw.resultText}, and no unit. Which one?`,
+      );
     if (analyte && unit) {
       const basis = basisFactor(unit.basis ?? analyte.reportedBasis, analyte.basis);
-      if (basis === null || unit.standard !== analyte.standardUnit) hold(row, 'unit', `"${unitText}" cannot be turned into ${analyte.standardUnit}${analyte.basis ? ` as ${analyte.basis}` : ''}.`);
+      if (basis === null || unit.standard !== analyte.standardUnit)
+        hold(
+          row,
+          'unit',
+          `"${unitText}" cannot be turned into ${analyte.standardUnit}${analyte.basis ? ` as ${analyte.basis}` : ''}.`,
+        );
       else {
         row.unit = unit.standard;
-        if (basis !== '1') warn(row, `Reported as ${unit.basis ?? analyte.reportedBasis}, kept as ${analyte.basis}: × ${new Decimal(basis).toSignificantDigits(4).toFixed()}.`);
+        if (basis !== '1')
+          warn(
+            row,
+            `Reported as ${unit.basis ?? analyte.reportedBasis}, kept as ${analyte.basis}: × ${new Decimal(basis).toSignificantDigits(4).toFixed()}.`,
+          );
         const limitUnit = raw.reportingLimitUnitText ? readUnit(raw.reportingLimitUnitText) : unit;
-        applyText(row, settleComma(row, parseResultText(raw.resultText), columns.get(columnKey(raw))!), [unit.factor, basis], [limitUnit?.factor ?? unit.factor, basis]);
+        applyText(
+          row,
+          settleComma(row, parseResultText(raw.resultText), columns.get(columnKey(raw))!),
+          [unit.factor, basis],
+          [limitUnit?.factor ?? unit.factor, basis],
+        );
       }
     }
     resolveQualifier(row, catalog);

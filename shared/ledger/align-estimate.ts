@@ -10,13 +10,18 @@ export type AlignedSpan =
  * An end outside every interval stays.
  * @param snapMs how far an end may be moved
  */
-export function alignEstimate(intervals: readonly Pick<Interval, 'fromMs' | 'toMs'>[], span: { fromMs: number; toMs: number }, snapMs: number): AlignedSpan {
+export function alignEstimate(
+  intervals: readonly Pick<Interval, 'fromMs' | 'toMs'>[],
+  span: { fromMs: number; toMs: number },
+  snapMs: number,
+): AlignedSpan {
   const ends = { from: span.fromMs, to: span.toMs };
   for (const end of ['from', 'to'] as const) {
     const cut = intervals.find((one) => one.fromMs < ends[end] && one.toMs > ends[end]);
     if (!cut) continue;
     const nearest = ends[end] - cut.fromMs <= cut.toMs - ends[end] ? cut.fromMs : cut.toMs;
-    if (Math.abs(nearest - ends[end]) > snapMs) return { kind: 'cuts', end, beforeMs: cut.fromMs, afterMs: cut.toMs };
+    if (Math.abs(nearest - ends[end]) > snapMs)
+      return { kind: 'cuts', end, beforeMs: cut.fromMs, afterMs: cut.toMs };
     ends[end] = nearest;
   }
   return { kind: 'aligned', fromMs: ends.from, toMs: ends.to };

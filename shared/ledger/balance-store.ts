@@ -58,7 +58,15 @@ export function balanceStore(period: StorePeriod): StoreBalance {
   ].map((term) => term * term);
   const toleranceM3 = Math.sqrt(squares.reduce((total, square) => total + square, 0));
   return {
-    openingM3: period.openingM3, inM3, outM3, rainM3, evaporationM3, expectedClosingM3,
-    measuredClosingM3: period.closingMeasuredM3, unaccountedM3, toleranceM3, isInside: Math.abs(unaccountedM3) <= toleranceM3,
+    openingM3: period.openingM3,
+    inM3,
+    outM3,
+    rainM3,
+    evaporationM3,
+    expectedClosingM3,
+    measuredClosingM3: period.closingMeasuredM3,
+    unaccountedM3,
+    toleranceM3,
+    isInside: Math.abs(unaccountedM3) <= toleranceM3,
   };
 }

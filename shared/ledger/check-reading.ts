@@ -34,7 +34,13 @@ function transposedFit(value: string, fits: (candidate: string) => boolean): str
  * Unlikely is asked about, never blocked.
  * @source common practice, no source; order of rules as in the data dictionary's section on readings
  */
-export function checkReading({ spec, rateM3PerDayMax, last, next, usualM3PerDay }: ReadingCheckInput): ReadingCheck {
+export function checkReading({
+  spec,
+  rateM3PerDayMax,
+  last,
+  next,
+  usualM3PerDay,
+}: ReadingCheckInput): ReadingCheck {
   if (!last) return { kind: 'first' };
   const hours = (next.observedAtMs - last.observedAtMs) / 3_600_000;
   if (hours <= 0) return { kind: 'not-after', hours };
@@ -48,14 +54,23 @@ export function checkReading({ spec, rateM3PerDayMax, last, next, usualM3PerDay 
   if (volume.gte(0)) {
     const m3PerDay = perDay(volume);
     const plain = { volumeM3: volume.toDecimalPlaces(6).toFixed(), hours, m3PerDay };
-    return m3PerDay <= rateM3PerDayMax ? { kind: 'plain', ...plain } : { kind: 'too-fast', ...plain, transposed: transposedFit(next.registerValue, fits) };
+    return m3PerDay <= rateM3PerDayMax
+      ? { kind: 'plain', ...plain }
+      : { kind: 'too-fast', ...plain, transposed: transposedFit(next.registerValue, fits) };
   }
   const rolled = registerVolumeM3(last.registerValue, next.registerValue, registerModulus(spec), spec);
   if (perDay(rolled) <= rateM3PerDayMax) {
-    return { kind: 'rollover', volumeM3: rolled.toDecimalPlaces(6).toFixed(), hours, m3PerDay: perDay(rolled) };
+    return {
+      kind: 'rollover',
+      volumeM3: rolled.toDecimalPlaces(6).toFixed(),
+      hours,
+      m3PerDay: perDay(rolled),
+    };
   }
   return {
-    kind: 'went-down', impliedM3PerDay: perDay(rolled), shortfall: volume.neg().toDecimalPlaces(6).toFixed(),
+    kind: 'went-down',
+    impliedM3PerDay: perDay(rolled),
+    shortfall: volume.neg().toDecimalPlaces(6).toFixed(),
     transposed: transposedFit(next.registerValue, fits),
   };
 }

@@ -27,7 +27,10 @@ const smallestM3 = 6;
  * @returns parts that add exactly to the interval's volume; none while the volume is held
  * @source method section 12
  */
-export function splitInterval(interval: Pick<Interval, 'fromMs' | 'toMs' | 'volumeM3'>, siteDays: SiteDays): DayPart[] {
+export function splitInterval(
+  interval: Pick<Interval, 'fromMs' | 'toMs' | 'volumeM3'>,
+  siteDays: SiteDays,
+): DayPart[] {
   const { fromMs, toMs, volumeM3 } = interval;
   if (volumeM3 === null || toMs <= fromMs) return [];
   const total = volumeM3.toDecimalPlaces(smallestM3, Decimal.ROUND_HALF_UP);
@@ -38,7 +41,12 @@ export function splitInterval(interval: Pick<Interval, 'fromMs' | 'toMs' | 'volu
   while (startMs < toMs) {
     const endMs = Math.min(siteDays.startMs(addDays(day, 1)), toMs);
     const isLast = endMs >= toMs;
-    const share = isLast ? total.minus(given) : total.times(endMs - startMs).div(toMs - fromMs).toDecimalPlaces(smallestM3, Decimal.ROUND_HALF_UP);
+    const share = isLast
+      ? total.minus(given)
+      : total
+          .times(endMs - startMs)
+          .div(toMs - fromMs)
+          .toDecimalPlaces(smallestM3, Decimal.ROUND_HALF_UP);
     parts.push({ siteDay: day, volumeM3: share, fromMs: startMs, toMs: endMs });
     given = given.plus(share);
     startMs = endMs;
@@ -52,15 +60,27 @@ export function splitInterval(interval: Pick<Interval, 'fromMs' | 'toMs' | 'volu
  * else apportioned; estimated parts stay apart.
  * @returns one row per site day and basis, in order
  */
-export function computeDayVolumes(intervals: readonly Interval[], siteDays: SiteDays, measuredHoursMax: number): DayVolume[] {
+export function computeDayVolumes(
+  intervals: readonly Interval[],
+  siteDays: SiteDays,
+  measuredHoursMax: number,
+): DayVolume[] {
   const rows = new Map<string, DayVolume>();
   const apportionedDays = new Set<Day>();
-  const parts = intervals.flatMap((interval) => splitInterval(interval, siteDays).map((part) => ({ part, interval })));
+  const parts = intervals.flatMap((interval) =>
+    splitInterval(interval, siteDays).map((part) => ({ part, interval })),
+  );
   for (const { part, interval } of parts) {
-    if (interval.basis === 'measured' && interval.toMs - interval.fromMs > measuredHoursMax * 3_600_000) apportionedDays.add(part.siteDay);
+    if (interval.basis === 'measured' && interval.toMs - interval.fromMs > measuredHoursMax * 3_600_000)
+      apportionedDays.add(part.siteDay);
   }
   for (const { part, interval } of parts) {
-    const basis = interval.basis === 'estimated' ? 'estimated' : apportionedDays.has(part.siteDay) ? 'apportioned' : 'measured';
+    const basis =
+      interval.basis === 'estimated'
+        ? 'estimated'
+        : apportionedDays.has(part.siteDay)
+          ? 'apportioned'
+          : 'measured';
     const key = `${part.siteDay} ${basis}`;
     const row = rows.get(key);
     rows.set(key, {

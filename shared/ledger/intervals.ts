@@ -72,7 +72,9 @@ function livePoints(facts: MeterFacts): Point[] {
     .sort(([a], [b]) => a - b)
     .map(([atMs, readings]) => {
       const chosen = readings.find((reading) => facts.chosenReadingIds.has(reading.id));
-      const isSame = readings.every((reading) => new Decimal(reading.registerValue).eq(readings[0]!.registerValue));
+      const isSame = readings.every((reading) =>
+        new Decimal(reading.registerValue).eq(readings[0]!.registerValue),
+      );
       return { atMs, reading: chosen ?? readings[0]!, isDisputed: !chosen && !isSame };
     });
 }
@@ -86,20 +88,39 @@ const specAfter = (spec: RegisterSpec, event: MeterEventFact): RegisterSpec => (
 });
 
 /** One stretch of one register between two values. */
-function stretch(spec: RegisterSpec, from: { atMs: number; value: string }, to: { atMs: number; value: string }, isRolled: boolean, factIds: string[], isDisputed: boolean): Interval {
+function stretch(
+  spec: RegisterSpec,
+  from: { atMs: number; value: string },
+  to: { atMs: number; value: string },
+  isRolled: boolean,
+  factIds: string[],
+  isDisputed: boolean,
+): Interval {
   const isDown = new Decimal(to.value).lt(from.value);
   const wrap = isDown && isRolled ? registerModulus(spec) : new Decimal(0);
   const isHeld = isDisputed || (isDown && !isRolled);
   return {
-    fromMs: from.atMs, toMs: to.atMs, opening: from.value, closing: to.value, wrap: wrap.toFixed(),
-    multiplier: spec.multiplier, unit: spec.unit, basis: 'measured', factIds,
+    fromMs: from.atMs,
+    toMs: to.atMs,
+    opening: from.value,
+    closing: to.value,
+    wrap: wrap.toFixed(),
+    multiplier: spec.multiplier,
+    unit: spec.unit,
+    basis: 'measured',
+    factIds,
     volumeM3: isHeld ? null : registerVolumeM3(from.value, to.value, wrap, spec),
     heldBecause: isDisputed ? 'dispute' : isDown && !isRolled ? 'register-went-down' : null,
   };
 }
 
 /** Intervals between two points, split at every event that changed what the register shows. */
-function intervalsBetween(before: Point, after: Point, specBefore: RegisterSpec, events: readonly MeterEventFact[]): { intervals: Interval[]; spec: RegisterSpec } {
+function intervalsBetween(
+  before: Point,
+  after: Point,
+  specBefore: RegisterSpec,
+  events: readonly MeterEventFact[],
+): { intervals: Interval[]; spec: RegisterSpec } {
   const factIds = [before.reading.id, after.reading.id];
   const isDisputed = before.isDisputed || after.isDisputed;
   const intervals: Interval[] = [];
@@ -109,21 +130,46 @@ function intervalsBetween(before: Point, after: Point, specBefore: RegisterSpec,
   for (const event of events) {
     if (event.kind === 'rollover') isRolled = true;
     if (event.registerBefore !== null) {
-      intervals.push(stretch(spec, from, { atMs: event.observedAtMs, value: event.registerBefore }, false, [...factIds, event.id], isDisputed));
+      intervals.push(
+        stretch(
+          spec,
+          from,
+          { atMs: event.observedAtMs, value: event.registerBefore },
+          false,
+          [...factIds, event.id],
+          isDisputed,
+        ),
+      );
     }
     spec = specAfter(spec, event);
     if (event.registerAfter !== null) from = { atMs: event.observedAtMs, value: event.registerAfter };
   }
-  intervals.push(stretch(spec, from, { atMs: after.atMs, value: after.reading.registerValue }, isRolled, [...factIds, ...events.map((event) => event.id)], isDisputed));
+  intervals.push(
+    stretch(
+      spec,
+      from,
+      { atMs: after.atMs, value: after.reading.registerValue },
+      isRolled,
+      [...factIds, ...events.map((event) => event.id)],
+      isDisputed,
+    ),
+  );
   return { intervals, spec };
 }
 
 /** The parts of an interval outside a span, each with its share by time. */
 function outside(interval: Interval, span: { fromMs: number; toMs: number }): Interval[] {
   if (interval.fromMs >= span.toMs || interval.toMs <= span.fromMs) return [interval];
-  const parts = [{ fromMs: interval.fromMs, toMs: span.fromMs }, { fromMs: span.toMs, toMs: interval.toMs }].filter((part) => part.toMs > part.fromMs);
+  const parts = [
+    { fromMs: interval.fromMs, toMs: span.fromMs },
+    { fromMs: span.toMs, toMs: interval.toMs },
+  ].filter((part) => part.toMs > part.fromMs);
   const lengthMs = interval.toMs - interval.fromMs;
-  return parts.map((part) => ({ ...interval, ...part, volumeM3: interval.volumeM3?.times(part.toMs - part.fromMs).div(lengthMs) ?? null }));
+  return parts.map((part) => ({
+    ...interval,
+    ...part,
+    volumeM3: interval.volumeM3?.times(part.toMs - part.fromMs).div(lengthMs) ?? null,
+  }));
 }
 
 /** An estimate takes the place of what lies inside its span; nothing is counted twice. */
@@ -133,11 +179,21 @@ function withEstimates(intervals: Interval[], adjustments: readonly AdjustmentFa
     const inside = result.filter((one) => one.fromMs >= estimate.fromMs && one.toMs <= estimate.toMs);
     const first = inside[0];
     const replaced: Interval = {
-      fromMs: estimate.fromMs, toMs: estimate.toMs, opening: first?.opening ?? '', closing: inside.at(-1)?.closing ?? '', wrap: '0',
-      multiplier: first?.multiplier ?? '1', unit: first?.unit ?? 'm3', volumeM3: new Decimal(estimate.volumeM3!), basis: 'estimated',
-      heldBecause: null, factIds: [estimate.id, ...new Set(inside.flatMap((one) => one.factIds))],
+      fromMs: estimate.fromMs,
+      toMs: estimate.toMs,
+      opening: first?.opening ?? '',
+      closing: inside.at(-1)?.closing ?? '',
+      wrap: '0',
+      multiplier: first?.multiplier ?? '1',
+      unit: first?.unit ?? 'm3',
+      volumeM3: new Decimal(estimate.volumeM3!),
+      basis: 'estimated',
+      heldBecause: null,
+      factIds: [estimate.id, ...new Set(inside.flatMap((one) => one.factIds))],
     };
-    result = [...result.flatMap((one) => outside(one, estimate)), replaced].sort((a, b) => a.fromMs - b.fromMs);
+    result = [...result.flatMap((one) => outside(one, estimate)), replaced].sort(
+      (a, b) => a.fromMs - b.fromMs,
+    );
   }
   return result;
 }
@@ -150,13 +206,26 @@ function withCalibration(intervals: Interval[], adjustments: readonly Adjustment
     if (!layer || interval.volumeM3 === null || interval.basis === 'estimated') return [interval];
     const total = interval.volumeM3;
     const lengthMs = interval.toMs - interval.fromMs;
-    const cuts = [interval.fromMs, Math.max(layer.fromMs, interval.fromMs), Math.min(layer.toMs, interval.toMs), interval.toMs];
+    const cuts = [
+      interval.fromMs,
+      Math.max(layer.fromMs, interval.fromMs),
+      Math.min(layer.toMs, interval.toMs),
+      interval.toMs,
+    ];
     return cuts.slice(1).flatMap((toMs, index) => {
       const fromMs = cuts[index]!;
       if (toMs <= fromMs) return [];
       const share = total.times(toMs - fromMs).div(lengthMs);
       const isInside = fromMs >= layer.fromMs && toMs <= layer.toMs;
-      return [{ ...interval, fromMs, toMs, volumeM3: isInside ? share.div(layer.divisor!) : share, factIds: [...interval.factIds, ...(isInside ? [layer.id] : [])] }];
+      return [
+        {
+          ...interval,
+          fromMs,
+          toMs,
+          volumeM3: isInside ? share.div(layer.divisor!) : share,
+          factIds: [...interval.factIds, ...(isInside ? [layer.id] : [])],
+        },
+      ];
     });
   });
 }
@@ -177,7 +246,9 @@ export function computeIntervals(facts: MeterFacts): { intervals: Interval[]; fi
   for (let index = 1; index < points.length; index += 1) {
     const before = points[index - 1]!;
     const after = points[index]!;
-    const between = events.filter((event) => event.observedAtMs > before.atMs && event.observedAtMs <= after.atMs);
+    const between = events.filter(
+      (event) => event.observedAtMs > before.atMs && event.observedAtMs <= after.atMs,
+    );
     const made = intervalsBetween(before, after, spec, between);
     spec = made.spec;
     raw.push(...made.intervals);

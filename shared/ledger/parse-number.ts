@@ -13,7 +13,10 @@ const spaces = /[\s\u00a0\u2009\u202f]/g;
  * @param options.decimals decimals the instrument shows; 0 for a register of whole units
  * @returns value as plain decimal text, or a question, or the reason why not
  */
-export function parseNumber(text: string, { decimals, unit }: { decimals: number; unit?: string }): ParsedNumber {
+export function parseNumber(
+  text: string,
+  { decimals, unit }: { decimals: number; unit?: string },
+): ParsedNumber {
   let tidy = text.trim().replace(/[\u2212\u2013]/g, '-');
   if (unit && tidy.toLowerCase().endsWith(unit.toLowerCase())) tidy = tidy.slice(0, -unit.length).trim();
   tidy = tidy.replace(spaces, '');
@@ -23,12 +26,17 @@ export function parseNumber(text: string, { decimals, unit }: { decimals: number
     const hint = /[oO]/.test(odd) ? ' It looks like the letter O where a zero belongs.' : '';
     return { kind: 'wrong', reason: `"${odd}" is not part of a number.${hint}` };
   }
-  if (!/^[+-]?[0-9.,]*[0-9][0-9.,]*$/.test(tidy)) return { kind: 'wrong', reason: 'This is not a number. Enter it like 48216.4.' };
+  if (!/^[+-]?[0-9.,]*[0-9][0-9.,]*$/.test(tidy))
+    return { kind: 'wrong', reason: 'This is not a number. Enter it like 48216.4.' };
   const sign = tidy.startsWith('-') ? '-' : '';
   const body = tidy.replace(/^[+-]/, '');
   const marks = body.replace(/[0-9]/g, '');
   const isChanged = body !== text.trim();
-  const done = (value: string): ParsedNumber => ({ kind: 'number', value: sign + (value.replace(/^0+(?=\d)/, '') || '0'), isChanged });
+  const done = (value: string): ParsedNumber => ({
+    kind: 'number',
+    value: sign + (value.replace(/^0+(?=\d)/, '') || '0'),
+    isChanged,
+  });
 
   if (marks === '') return done(body);
   const kinds = new Set(marks);
@@ -42,15 +50,22 @@ export function parseNumber(text: string, { decimals, unit }: { decimals: number
   }
   const mark = marks[0]!;
   const groups = body.split(mark);
-  const isGrouped = groups[0]!.length >= 1 && groups[0]!.length <= 3 && groups.slice(1).every((group) => group.length === 3);
+  const isGrouped =
+    groups[0]!.length >= 1 && groups[0]!.length <= 3 && groups.slice(1).every((group) => group.length === 3);
   if (marks.length > 1) {
-    return isGrouped ? done(groups.join('')) : { kind: 'wrong', reason: 'This is not a number. Enter it like 48216.4.' };
+    return isGrouped
+      ? done(groups.join(''))
+      : { kind: 'wrong', reason: 'This is not a number. Enter it like 48216.4.' };
   }
   const asGrouped = groups.join('');
   const asDecimal = `${groups[0] || '0'}.${groups[1] ?? ''}`.replace(/\.$/, '');
   if (mark === ',' && isGrouped && decimals === 0) return done(asGrouped);
   if (isGrouped && groups[0] !== '0') {
-    return { kind: 'ask', readings: [asGrouped, asDecimal].map((value) => sign + value), question: `Is this ${asGrouped} or ${asDecimal}?` };
+    return {
+      kind: 'ask',
+      readings: [asGrouped, asDecimal].map((value) => sign + value),
+      question: `Is this ${asGrouped} or ${asDecimal}?`,
+    };
   }
   if (mark === ',') return { kind: 'ask', readings: [sign + asDecimal], question: `Is this ${asDecimal}?` };
   return done(asDecimal);

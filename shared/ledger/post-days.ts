@@ -23,7 +23,11 @@ export interface Posting {
  * @param days recomputed volumes of the affected days only
  * @param live live entries of the same meter on the same days
  */
-export function planPosting(days: readonly DayVolume[], live: readonly LiveEntry[], closedMonths: ReadonlySet<Month>): Posting {
+export function planPosting(
+  days: readonly DayVolume[],
+  live: readonly LiveEntry[],
+  closedMonths: ReadonlySet<Month>,
+): Posting {
   const key = (row: { siteDay: Day; basis: string }) => `${row.siteDay} ${row.basis}`;
   const liveByKey = new Map(live.map((entry) => [key(entry), entry]));
   const wantedKeys = new Set(days.map(key));
@@ -37,6 +41,12 @@ export function planPosting(days: readonly DayVolume[], live: readonly LiveEntry
   }
   reversals.push(...live.filter((entry) => !wantedKeys.has(key(entry))));
   const isClosed = (row: { siteDay: Day }) => closedMonths.has(monthOfDay(row.siteDay));
-  const pendingMonths = [...new Set([...reversals, ...postings].filter(isClosed).map((row) => monthOfDay(row.siteDay)))].sort();
-  return { reversals: reversals.filter((row) => !isClosed(row)), postings: postings.filter((row) => !isClosed(row)), pendingMonths };
+  const pendingMonths = [
+    ...new Set([...reversals, ...postings].filter(isClosed).map((row) => monthOfDay(row.siteDay))),
+  ].sort();
+  return {
+    reversals: reversals.filter((row) => !isClosed(row)),
+    postings: postings.filter((row) => !isClosed(row)),
+    pendingMonths,
+  };
 }

@@ -10,7 +10,10 @@ export interface StrappingPoint {
  * @param points at least two rows with rising levels
  * @returns null when the level lies outside the table
  */
-export function storeAtLevel(points: readonly StrappingPoint[], levelM: number): { volumeM3: number; surfaceM2: number } | null {
+export function storeAtLevel(
+  points: readonly StrappingPoint[],
+  levelM: number,
+): { volumeM3: number; surfaceM2: number } | null {
   const above = points.findIndex((point) => point.levelM >= levelM);
   if (above < 0) return null;
   const high = points[above]!;
@@ -19,11 +22,20 @@ export function storeAtLevel(points: readonly StrappingPoint[], levelM: number):
   if (!low) return null;
   const share = (levelM - low.levelM) / (high.levelM - low.levelM);
   const between = (from: number, to: number) => from + (to - from) * share;
-  return { volumeM3: between(low.volumeM3, high.volumeM3), surfaceM2: between(low.surfaceM2, high.surfaceM2) };
+  return {
+    volumeM3: between(low.volumeM3, high.volumeM3),
+    surfaceM2: between(low.surfaceM2, high.surfaceM2),
+  };
 }
 
 /** Strapping rows of a rectangular pond with equal side slopes: V = h(WL + sh(W+L) + 4/3 s²h²) over its bottom. */
-export function rectangularPondTable(pond: { bottomWidthM: number; bottomLengthM: number; sideSlope: number; depthM: number; rowCount: number }): StrappingPoint[] {
+export function rectangularPondTable(pond: {
+  bottomWidthM: number;
+  bottomLengthM: number;
+  sideSlope: number;
+  depthM: number;
+  rowCount: number;
+}): StrappingPoint[] {
   const { bottomWidthM: w, bottomLengthM: l, sideSlope: s, depthM, rowCount } = pond;
   return Array.from({ length: rowCount }, (_, index) => {
     const h = (depthM * index) / (rowCount - 1);

@@ -12,7 +12,10 @@ export interface LimitResult {
 }
 
 /** Number that stands for a result below detection under a rule. */
-export function substitute(result: Pick<LimitResult, 'comparator' | 'value'>, rule: BelowDetectionRule): Decimal {
+export function substitute(
+  result: Pick<LimitResult, 'comparator' | 'value'>,
+  rule: BelowDetectionRule,
+): Decimal {
   const value = new Decimal(result.value);
   if (result.comparator !== '<') return value;
   return rule === 'zero' ? new Decimal(0) : rule === 'half' ? value.div(2) : value;
@@ -40,8 +43,11 @@ export function dailyValues(results: readonly LimitResult[], rule: BelowDetectio
     .map(([siteDay, ofDay]) => {
       const below = ofDay.filter((one) => one.comparator === '<').map((one) => new Decimal(one.value));
       return {
-        siteDay, value: ofDay.reduce((sum, one) => sum.plus(substitute(one, rule)), new Decimal(0)).div(ofDay.length),
-        isBelow: below.length > 0, detectionLimit: below.length ? Decimal.max(...below) : null, resultIds: ofDay.map((one) => one.id),
+        siteDay,
+        value: ofDay.reduce((sum, one) => sum.plus(substitute(one, rule)), new Decimal(0)).div(ofDay.length),
+        isBelow: below.length > 0,
+        detectionLimit: below.length ? Decimal.max(...below) : null,
+        resultIds: ofDay.map((one) => one.id),
       };
     });
 }

@@ -1,4 +1,9 @@
-import { annualHeatIndex, monthlyHeatIndex, thornthwaiteMm, thornthwaiteUnadjustedMm } from '../water-balance/thornthwaite.ts';
+import {
+  annualHeatIndex,
+  monthlyHeatIndex,
+  thornthwaiteMm,
+  thornthwaiteUnadjustedMm,
+} from '../water-balance/thornthwaite.ts';
 import { hargreavesMmPerDay } from '../water-balance/hargreaves.ts';
 import type { SoilLaw } from '../water-balance/soil-store.ts';
 import { declinationRad, daylightHours, extraterrestrialRadiation } from '../water-balance/solar-geometry.ts';
@@ -40,7 +45,8 @@ export interface ComputedCase {
 }
 
 const numbers = (value: unknown): number[] => {
-  if (!Array.isArray(value) || value.some((one) => typeof one !== 'number')) throw new RangeError('A published column is not a list of numbers.');
+  if (!Array.isArray(value) || value.some((one) => typeof one !== 'number'))
+    throw new RangeError('A published column is not a list of numbers.');
   return value as number[];
 };
 
@@ -49,51 +55,151 @@ interface BalancePlan {
   law: SoilLaw;
   lawWords: string;
   start: number | 'spin-up';
-  columns: { name: string; expected: string; pick: (month: TryBalanceMonth) => number; decimals: number; tolerance: number }[];
+  columns: {
+    name: string;
+    expected: string;
+    pick: (month: TryBalanceMonth) => number;
+    decimals: number;
+    tolerance: number;
+  }[];
 }
 
 const plans: BalancePlan[] = [
   {
-    id: 'fenn1975-cincinnati', law: 'exponential', lawWords: 'Soil drying: exponential law, Thornthwaite and Mather 1957.', start: 'spin-up',
+    id: 'fenn1975-cincinnati',
+    law: 'exponential',
+    lawWords: 'Soil drying: exponential law, Thornthwaite and Mather 1957.',
+    start: 'spin-up',
     columns: [
       { name: 'Runoff', expected: 'runoff_mm', pick: (month) => month.runoffMm, decimals: 1, tolerance: 0.5 },
-      { name: 'Evapotranspiration', expected: 'aet_mm', pick: (month) => month.aetMm, decimals: 1, tolerance: 1.2 },
-      { name: 'Soil water, month end', expected: 'st_mm', pick: (month) => month.storeMm, decimals: 1, tolerance: 1.5 },
-      { name: 'Percolation', expected: 'perc_mm', pick: (month) => month.percolationMm, decimals: 1, tolerance: 0.5 },
+      {
+        name: 'Evapotranspiration',
+        expected: 'aet_mm',
+        pick: (month) => month.aetMm,
+        decimals: 1,
+        tolerance: 1.2,
+      },
+      {
+        name: 'Soil water, month end',
+        expected: 'st_mm',
+        pick: (month) => month.storeMm,
+        decimals: 1,
+        tolerance: 1.5,
+      },
+      {
+        name: 'Percolation',
+        expected: 'perc_mm',
+        pick: (month) => month.percolationMm,
+        decimals: 1,
+        tolerance: 0.5,
+      },
     ],
   },
   {
-    id: 'dourado2010-petrolina', law: 'exponential', lawWords: 'Exponential law, the year repeated until December agrees with itself.', start: 'spin-up',
+    id: 'dourado2010-petrolina',
+    law: 'exponential',
+    lawWords: 'Exponential law, the year repeated until December agrees with itself.',
+    start: 'spin-up',
     columns: [
-      { name: 'Soil water, month end', expected: 'st_mm', pick: (month) => month.storeMm, decimals: 4, tolerance: 0.01 },
-      { name: 'Deficit', expected: 'deficit_mm', pick: (month) => month.deficitMm, decimals: 1, tolerance: 0.1 },
+      {
+        name: 'Soil water, month end',
+        expected: 'st_mm',
+        pick: (month) => month.storeMm,
+        decimals: 4,
+        tolerance: 0.01,
+      },
+      {
+        name: 'Deficit',
+        expected: 'deficit_mm',
+        pick: (month) => month.deficitMm,
+        decimals: 1,
+        tolerance: 0.1,
+      },
     ],
   },
   {
-    id: 'ritter-rockford', law: 'equal-availability', lawWords: 'Equal availability: the soil gives all that is asked until it is empty.', start: 90,
+    id: 'ritter-rockford',
+    law: 'equal-availability',
+    lawWords: 'Equal availability: the soil gives all that is asked until it is empty.',
+    start: 90,
     columns: [
-      { name: 'Change of soil water', expected: 'dst_mm', pick: (month) => month.dStoreMm, decimals: 1, tolerance: 1e-9 },
-      { name: 'Soil water, month end', expected: 'st_mm', pick: (month) => month.storeMm, decimals: 1, tolerance: 1e-9 },
-      { name: 'Evapotranspiration', expected: 'aet_mm', pick: (month) => month.aetMm, decimals: 1, tolerance: 1e-9 },
-      { name: 'Deficit', expected: 'deficit_mm', pick: (month) => month.deficitMm, decimals: 1, tolerance: 1e-9 },
-      { name: 'Percolation', expected: 'surplus_mm', pick: (month) => month.percolationMm, decimals: 1, tolerance: 1e-9 },
+      {
+        name: 'Change of soil water',
+        expected: 'dst_mm',
+        pick: (month) => month.dStoreMm,
+        decimals: 1,
+        tolerance: 1e-9,
+      },
+      {
+        name: 'Soil water, month end',
+        expected: 'st_mm',
+        pick: (month) => month.storeMm,
+        decimals: 1,
+        tolerance: 1e-9,
+      },
+      {
+        name: 'Evapotranspiration',
+        expected: 'aet_mm',
+        pick: (month) => month.aetMm,
+        decimals: 1,
+        tolerance: 1e-9,
+      },
+      {
+        name: 'Deficit',
+        expected: 'deficit_mm',
+        pick: (month) => month.deficitMm,
+        decimals: 1,
+        tolerance: 1e-9,
+      },
+      {
+        name: 'Percolation',
+        expected: 'surplus_mm',
+        pick: (month) => month.percolationMm,
+        decimals: 1,
+        tolerance: 1e-9,
+      },
     ],
   },
 ];
 
 const about = (published: PublishedCase) => ({
-  id: published.id, title: published.title, source: published.source, locator: published.source_locator, isFromMemory: published.read_or_memory.startsWith('memory'), note: published.tolerance_note,
+  id: published.id,
+  title: published.title,
+  source: published.source,
+  locator: published.source_locator,
+  isFromMemory: published.read_or_memory.startsWith('memory'),
+  note: published.tolerance_note,
 });
 
 function computeBalanceCase(published: PublishedCase, plan: BalancePlan): ComputedCase {
   const precipitationMm = numbers(published.inputs['p_mm']);
   const petMm = numbers(published.inputs['pet_mm']);
-  const runoffCoefficient = published.inputs['runoff_coefficient'] ? numbers(published.inputs['runoff_coefficient']) : precipitationMm.map(() => 0);
-  const { months } = tryBalance({ precipitationMm, petMm, runoffCoefficient, capacityMm: Number(published.inputs['capacity_mm']), soilLaw: plan.law, start: plan.start });
+  const runoffCoefficient = published.inputs['runoff_coefficient']
+    ? numbers(published.inputs['runoff_coefficient'])
+    : precipitationMm.map(() => 0);
+  const { months } = tryBalance({
+    precipitationMm,
+    petMm,
+    runoffCoefficient,
+    capacityMm: Number(published.inputs['capacity_mm']),
+    soilLaw: plan.law,
+    start: plan.start,
+  });
   return {
-    ...about(published), law: plan.lawWords,
-    given: [{ name: 'Rain', unit: 'mm', values: precipitationMm }, { name: 'PET', unit: 'mm', values: petMm }],
-    columns: plan.columns.map((column) => ({ name: column.name, unit: 'mm', decimals: column.decimals, tolerance: column.tolerance, printed: numbers(published.expected[column.expected]), computed: months.map(column.pick) })),
+    ...about(published),
+    law: plan.lawWords,
+    given: [
+      { name: 'Rain', unit: 'mm', values: precipitationMm },
+      { name: 'PET', unit: 'mm', values: petMm },
+    ],
+    columns: plan.columns.map((column) => ({
+      name: column.name,
+      unit: 'mm',
+      decimals: column.decimals,
+      tolerance: column.tolerance,
+      printed: numbers(published.expected[column.expected]),
+      computed: months.map(column.pick),
+    })),
   };
 }
 
@@ -105,14 +211,51 @@ function computeRichmondHill(published: PublishedCase): ComputedCase {
   const heatIndex = annualHeatIndex(tMeanC);
   const hotMonths = 'table' as const;
   const latitudeDeg = Number(published.inputs['latitude_deg']);
-  const column = (name: string, expected: string, unit: string, decimals: number, tolerance: number, computed: number[]): ComparedColumn => ({ name, unit, decimals, tolerance, printed: numbers(published.expected[expected]), computed });
+  const column = (
+    name: string,
+    expected: string,
+    unit: string,
+    decimals: number,
+    tolerance: number,
+    computed: number[],
+  ): ComparedColumn => ({
+    name,
+    unit,
+    decimals,
+    tolerance,
+    printed: numbers(published.expected[expected]),
+    computed,
+  });
   return {
-    ...about(published), law: 'Thornthwaite 1948, constants at full length, daylight from the declinations of the page.',
+    ...about(published),
+    law: 'Thornthwaite 1948, constants at full length, daylight from the declinations of the page.',
     given: [{ name: 'Mean temperature', unit: '°C', values: tMeanC }],
     columns: [
       column('Heat index', 'heat_index_i', '', 2, 0.01, tMeanC.map(monthlyHeatIndex)),
-      column('PET, 30 days of 12 h', 'pet_unadjusted_mm', 'mm', 2, 0.02, tMeanC.map((mean) => thornthwaiteUnadjustedMm(mean, heatIndex, hotMonths))),
-      column('PET', 'pet_adjusted_mm', 'mm', 1, 0.1, tMeanC.map((mean, index) => thornthwaiteMm({ tMeanC: mean, heatIndex, daylightHours: daylightHours(latitudeDeg, declination[index]!), dayCount: dayCount[index]!, hotMonths }))),
+      column(
+        'PET, 30 days of 12 h',
+        'pet_unadjusted_mm',
+        'mm',
+        2,
+        0.02,
+        tMeanC.map((mean) => thornthwaiteUnadjustedMm(mean, heatIndex, hotMonths)),
+      ),
+      column(
+        'PET',
+        'pet_adjusted_mm',
+        'mm',
+        1,
+        0.1,
+        tMeanC.map((mean, index) =>
+          thornthwaiteMm({
+            tMeanC: mean,
+            heatIndex,
+            daylightHours: daylightHours(latitudeDeg, declination[index]!),
+            dayCount: dayCount[index]!,
+            hotMonths,
+          }),
+        ),
+      ),
     ],
   };
 }
@@ -124,7 +267,10 @@ export function computePublishedCases(cases: readonly PublishedCase[]): Computed
     if (!found) throw new RangeError(`The published case ${id} is missing.`);
     return found;
   };
-  return [...plans.map((plan) => computeBalanceCase(find(plan.id), plan)), computeRichmondHill(find('step-richmond-hill-pet'))];
+  return [
+    ...plans.map((plan) => computeBalanceCase(find(plan.id), plan)),
+    computeRichmondHill(find('step-richmond-hill-pet')),
+  ];
 }
 
 interface SingleCase {
@@ -152,16 +298,38 @@ export interface ComputedValue {
 /** Single published values of sun and evapotranspiration, each beside what is computed here. */
 export function computePublishedValues(cases: readonly SingleCase[]): ComputedValue[] {
   const rows: [string, string, string, (input: (name: string) => number) => number][] = [
-    ['fao56-ex08', 'Ra', 'Extraterrestrial radiation', (input) => extraterrestrialRadiation(input('latitude'), input('J'))],
+    [
+      'fao56-ex08',
+      'Ra',
+      'Extraterrestrial radiation',
+      (input) => extraterrestrialRadiation(input('latitude'), input('J')),
+    ],
     ['fao56-ex09', 'N', 'Daylight', (input) => daylightHours(input('latitude'), declinationRad(input('J')))],
-    ['fao56-ex20-hargreaves', 'ETo', 'Reference evapotranspiration by Hargreaves', (input) => hargreavesMmPerDay({ tMinC: input('Tmin'), tMaxC: input('Tmax'), radiationMjPerM2Day: extraterrestrialRadiation(input('latitude'), input('J')) })],
+    [
+      'fao56-ex20-hargreaves',
+      'ETo',
+      'Reference evapotranspiration by Hargreaves',
+      (input) =>
+        hargreavesMmPerDay({
+          tMinC: input('Tmin'),
+          tMaxC: input('Tmax'),
+          radiationMjPerM2Day: extraterrestrialRadiation(input('latitude'), input('J')),
+        }),
+    ],
   ];
   return rows.map(([id, key, what, compute]) => {
     const found = cases.find((one) => one.id === id);
     const expected = found?.expected[key];
     if (!found || !expected) throw new RangeError(`The published value ${id} ${key} is missing.`);
     return {
-      id, title: found.title, what, unit: expected.unit, source: `${found.source}, ${found.locator}`, isFromMemory: found.read_or_memory.startsWith('memory'), printed: expected.value, tolerance: expected.tol,
+      id,
+      title: found.title,
+      what,
+      unit: expected.unit,
+      source: `${found.source}, ${found.locator}`,
+      isFromMemory: found.read_or_memory.startsWith('memory'),
+      printed: expected.value,
+      tolerance: expected.tol,
       computed: compute((name) => Number(found.inputs[name]?.value)),
     };
   });

@@ -24,7 +24,8 @@ export interface ComparedMonth extends ComparedInput {
   cumulativeMeasuredM3: number;
 }
 
-const percentOf = (difference: number, predicted: number) => (predicted === 0 ? null : (100 * difference) / predicted);
+const percentOf = (difference: number, predicted: number) =>
+  predicted === 0 ? null : (100 * difference) / predicted;
 
 /**
  * Compares months in order. Months without a measurement are left out of sums and said so by their count.
@@ -43,13 +44,25 @@ export function compareMonths(rows: readonly ComparedInput[], percentFloorMm: nu
       cumulativeMeasuredM3 += row.measuredM3;
     }
     const differenceM3 = row.measuredM3 === null ? null : row.measuredM3 - row.predictedM3;
-    const tolerance = row.measuredM3 === null ? null : compareTolerance({ predictedM3: row.predictedM3, measuredM3: row.measuredM3, areaM2: row.areaM2 });
+    const tolerance =
+      row.measuredM3 === null
+        ? null
+        : compareTolerance({ predictedM3: row.predictedM3, measuredM3: row.measuredM3, areaM2: row.areaM2 });
     return {
-      ...row, differenceM3, percent: differenceM3 === null ? null : percentOf(differenceM3, row.predictedM3),
-      isPercentMuted: row.areaM2 > 0 && (row.predictedM3 / row.areaM2) * 1000 < percentFloorMm, tolerance,
+      ...row,
+      differenceM3,
+      percent: differenceM3 === null ? null : percentOf(differenceM3, row.predictedM3),
+      isPercentMuted: row.areaM2 > 0 && (row.predictedM3 / row.areaM2) * 1000 < percentFloorMm,
+      tolerance,
       isInside: differenceM3 === null || !tolerance ? null : Math.abs(differenceM3) <= tolerance.valueM3,
-      rolling: { predictedM3: predicted, measuredM3: measured, percent: percentOf(measured - predicted, predicted), monthCount: window.length },
-      cumulativePredictedM3, cumulativeMeasuredM3,
+      rolling: {
+        predictedM3: predicted,
+        measuredM3: measured,
+        percent: percentOf(measured - predicted, predicted),
+        monthCount: window.length,
+      },
+      cumulativePredictedM3,
+      cumulativeMeasuredM3,
     };
   });
 }

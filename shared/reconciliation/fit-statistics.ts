@@ -24,7 +24,8 @@ export function fitStatistics(pairs: readonly Pair[]): FitStatistics {
   const spread = sum((pair) => (pair.measured - mean) ** 2);
   return {
     pairCount,
-    pbiasPercent: measuredSum === 0 ? null : (100 * sum((pair) => pair.predicted - pair.measured)) / measuredSum,
+    pbiasPercent:
+      measuredSum === 0 ? null : (100 * sum((pair) => pair.predicted - pair.measured)) / measuredSum,
     rmse: Math.sqrt(squaredError / pairCount),
     nashSutcliffe: spread === 0 ? null : 1 - squaredError / spread,
   };
@@ -34,7 +35,10 @@ export function fitStatistics(pairs: readonly Pair[]): FitStatistics {
  * Correlation of prediction with what was measured some months later.
  * @param pairs months in order, without holes @returns r and the number of pairs; null with fewer than three pairs
  */
-export function correlationAtLag(pairs: readonly Pair[], lagMonths: number): { r: number; pairCount: number } | null {
+export function correlationAtLag(
+  pairs: readonly Pair[],
+  lagMonths: number,
+): { r: number; pairCount: number } | null {
   const predicted = pairs.slice(0, pairs.length - lagMonths).map((pair) => pair.predicted);
   const measured = pairs.slice(lagMonths).map((pair) => pair.measured);
   if (predicted.length < 3) return null;

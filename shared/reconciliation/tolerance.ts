@@ -12,7 +12,19 @@ export interface Tolerance {
  * How far predicted and measured may differ before a month is worth asking about, m³.
  * √((2 % of measured)² + (10 % of predicted)² + (2 mm over the area)²)
  */
-export function compareTolerance({ predictedM3, measuredM3, areaM2 }: { predictedM3: number; measuredM3: number; areaM2: number }): Tolerance {
-  const valueM3 = Math.hypot(meterAccuracyFraction * measuredM3, modelSpreadFraction * predictedM3, (floorMm * areaM2) / 1000);
+export function compareTolerance({
+  predictedM3,
+  measuredM3,
+  areaM2,
+}: {
+  predictedM3: number;
+  measuredM3: number;
+  areaM2: number;
+}): Tolerance {
+  const valueM3 = Math.hypot(
+    meterAccuracyFraction * measuredM3,
+    modelSpreadFraction * predictedM3,
+    (floorMm * areaM2) / 1000,
+  );
   return { valueM3, reason: 'meter ±2 %, model ±10 %, and 2 mm over the cell, in quadrature (template)' };
 }

@@ -17,7 +17,10 @@ export type SignInInput = z.input<typeof signInInput>;
 
 export const demoSignInInput = z.object({ email: emailAddress });
 export const passwordResetInput = z.object({ email: emailAddress });
-export const accessLinkInput = z.object({ secret: z.string().min(20, 'The link is not complete.'), password: newPassword });
+export const accessLinkInput = z.object({
+  secret: z.string().min(20, 'The link is not complete.'),
+  password: newPassword,
+});
 
 export const firstRunInput = z.object({
   organisationName: requiredText('the name of the organisation'),
@@ -34,10 +37,17 @@ export const invitationInput = z
     role: z.enum(roles, { error: 'Choose a role.' }),
     laboratoryId: optionalId,
   })
-  .refine((input) => input.role !== 'lab' || input.laboratoryId, { path: ['laboratoryId'], message: 'Choose the laboratory the person works for.' });
+  .refine((input) => input.role !== 'lab' || input.laboratoryId, {
+    path: ['laboratoryId'],
+    message: 'Choose the laboratory the person works for.',
+  });
 export type InvitationInput = z.input<typeof invitationInput>;
 
-export const membershipView = z.object({ siteId: recordId.nullable(), role: z.enum(roles), laboratoryId: recordId.nullable() });
+export const membershipView = z.object({
+  siteId: recordId.nullable(),
+  role: z.enum(roles),
+  laboratoryId: recordId.nullable(),
+});
 
 export const siteView = z.object({
   id: recordId,

@@ -2,7 +2,11 @@ import * as z from 'zod';
 import { petMethods } from '../water-balance/engine-input.ts';
 import { optionalText, recordId, requiredText } from './text.ts';
 
-const share = (what: string, max = 1) => z.coerce.number(`Enter ${what}.`).min(0, `${what} must be 0 or more.`).max(max, `${what} must be ${max} or less.`);
+const share = (what: string, max = 1) =>
+  z.coerce
+    .number(`Enter ${what}.`)
+    .min(0, `${what} must be 0 or more.`)
+    .max(max, `${what} must be ${max} or less.`);
 
 /** Parameters of the model as they are stored, form and wire. */
 export const balanceParameters = z.object({
@@ -12,8 +16,17 @@ export const balanceParameters = z.object({
   wetMonths: z.array(z.number().int().min(1).max(12)),
   runoffFactor: share('The runoff factor', 3),
   petFactor: share('The evapotranspiration factor', 2),
-  snow: z.object({ isOn: z.boolean(), tSnowC: z.coerce.number().min(-30).max(5), tRainC: z.coerce.number().min(-5).max(10), meltMaxFraction: share('The largest melt share') })
-    .refine((snow) => snow.tRainC > snow.tSnowC, { path: ['tRainC'], message: 'The rain temperature must lie above the snow temperature.' }),
+  snow: z
+    .object({
+      isOn: z.boolean(),
+      tSnowC: z.coerce.number().min(-30).max(5),
+      tRainC: z.coerce.number().min(-5).max(10),
+      meltMaxFraction: share('The largest melt share'),
+    })
+    .refine((snow) => snow.tRainC > snow.tSnowC, {
+      path: ['tRainC'],
+      message: 'The rain temperature must lie above the snow temperature.',
+    }),
   isFrostOn: z.boolean(),
   tFrostC: z.coerce.number().min(-20).max(5),
   recessionPerMonth: share('The recession constant', 5),
@@ -23,7 +36,11 @@ export const balanceParameters = z.object({
   percentFloorMm: share('The floor for percent', 100),
 });
 
-export const parameterSetInput = z.object({ id: recordId, name: requiredText('a name for the set', 60), values: balanceParameters });
+export const parameterSetInput = z.object({
+  id: recordId,
+  name: requiredText('a name for the set', 60),
+  values: balanceParameters,
+});
 export type ParameterSetInput = z.input<typeof parameterSetInput>;
 export const freezeInput = z.object({ id: recordId, note: optionalText(500) });
 
@@ -43,8 +60,14 @@ const twelve = z.array(z.coerce.number('Enter a number.')).length(12, 'Enter twe
 export const tryBalanceInput = z.object({
   precipitationMm: twelve.refine((values) => values.every((value) => value >= 0), 'Rain must be 0 or more.'),
   petMm: twelve.refine((values) => values.every((value) => value >= 0), 'Potential ET must be 0 or more.'),
-  runoffCoefficient: twelve.refine((values) => values.every((value) => value >= 0 && value <= 1), 'A runoff share lies between 0 and 1.'),
-  capacityMm: z.coerce.number('Enter the soil store in mm.').min(0, 'The soil store must be 0 or more.').max(2000),
+  runoffCoefficient: twelve.refine(
+    (values) => values.every((value) => value >= 0 && value <= 1),
+    'A runoff share lies between 0 and 1.',
+  ),
+  capacityMm: z.coerce
+    .number('Enter the soil store in mm.')
+    .min(0, 'The soil store must be 0 or more.')
+    .max(2000),
   soilLaw: z.enum(['exponential', 'equal-availability', 'linear']),
   start: z.union([z.literal('spin-up'), z.coerce.number().min(0)]),
 });

@@ -13,15 +13,26 @@ export const climateMappingInput = z.object({
   yearColumn: columnIndex,
   monthColumn: columnIndex,
   columns: z
-    .array(z.object({ field: z.enum(climateFields), column: z.number().int().min(0).max(199), unit: z.enum(['mm', 'cm', 'in', 'mm-tenths', 'in-hundredths', 'C', 'F']) }))
+    .array(
+      z.object({
+        field: z.enum(climateFields),
+        column: z.number().int().min(0).max(199),
+        unit: z.enum(['mm', 'cm', 'in', 'mm-tenths', 'in-hundredths', 'C', 'F']),
+      }),
+    )
     .min(1, 'Choose at least one column to read.'),
 });
 
-export const climateUploadInput = z.object({ id: recordId, stationName: requiredText('the name of the station', 80) });
+export const climateUploadInput = z.object({
+  id: recordId,
+  stationName: requiredText('the name of the station', 80),
+});
 export const gapChoiceInput = z.object({
   id: recordId,
   month: monthText,
-  choice: z.enum(['leave-out', 'scale-by-days', 'other-station', 'station-normal'], { error: 'Choose what to do about the missing days.' }),
+  choice: z.enum(['leave-out', 'scale-by-days', 'other-station', 'station-normal'], {
+    error: 'Choose what to do about the missing days.',
+  }),
   otherStationId: optionalId,
   reason: requiredText('the reason', 500),
 });

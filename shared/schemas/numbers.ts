@@ -18,24 +18,28 @@ interface NumberRule {
  * All messages repeat the label and say what to do.
  */
 export const typedNumber = ({ what, unit, min, minExclusive, max, aboveMax, decimals = 3 }: NumberRule) =>
-  z.union([z.string(), z.number()], { error: `Enter ${what}${unit ? ` in ${unit}` : ''}.` }).transform((typed, context) => {
-    const text = String(typed);
-    const label = what[0]!.toUpperCase() + what.slice(1);
-    const fail = (message: string) => {
-      context.addIssue({ code: 'custom', message });
-      return z.NEVER;
-    };
-    if (text.trim() === '') return fail(`Enter ${what}${unit ? ` in ${unit}` : ''}.`);
-    const parsed = parseNumber(text, { decimals, unit });
-    if (parsed.kind === 'wrong') return fail(`${label}: ${parsed.reason}`);
-    if (parsed.kind === 'ask') return fail(`${label}: ${parsed.question} Enter it without a comma.`);
-    const value = Number(parsed.value);
-    const withUnit = (bound: number) => `${bound}${unit ? ` ${unit}` : ''}`;
-    if (minExclusive !== undefined && value <= minExclusive) return fail(`${label} must be more than ${withUnit(minExclusive)}.`);
-    if (min !== undefined && value < min) return fail(`${label} must be ${withUnit(min)} or more.`);
-    if (max !== undefined && value > max) return fail(`${label} must be ${withUnit(max)} or less.${aboveMax ? ` ${aboveMax}` : ''}`);
-    return parsed.value;
-  });
+  z
+    .union([z.string(), z.number()], { error: `Enter ${what}${unit ? ` in ${unit}` : ''}.` })
+    .transform((typed, context) => {
+      const text = String(typed);
+      const label = what[0]!.toUpperCase() + what.slice(1);
+      const fail = (message: string) => {
+        context.addIssue({ code: 'custom', message });
+        return z.NEVER;
+      };
+      if (text.trim() === '') return fail(`Enter ${what}${unit ? ` in ${unit}` : ''}.`);
+      const parsed = parseNumber(text, { decimals, unit });
+      if (parsed.kind === 'wrong') return fail(`${label}: ${parsed.reason}`);
+      if (parsed.kind === 'ask') return fail(`${label}: ${parsed.question} Enter it without a comma.`);
+      const value = Number(parsed.value);
+      const withUnit = (bound: number) => `${bound}${unit ? ` ${unit}` : ''}`;
+      if (minExclusive !== undefined && value <= minExclusive)
+        return fail(`${label} must be more than ${withUnit(minExclusive)}.`);
+      if (min !== undefined && value < min) return fail(`${label} must be ${withUnit(min)} or more.`);
+      if (max !== undefined && value > max)
+        return fail(`${label} must be ${withUnit(max)} or less.${aboveMax ? ` ${aboveMax}` : ''}`);
+      return parsed.value;
+    });
 
 /** The same, but may be left empty. */
 export const optionalNumber = (rule: NumberRule) =>

@@ -10,7 +10,14 @@ const wallTimeHint = 'Enter the day and time of the reading, like 2026-03-04 07:
 /** When something was seen: an instant from the device, or a wall-clock time at the site. */
 export const observedFields = {
   observedAt: z.iso.datetime({ offset: true, error: 'Enter the time of the reading.' }).optional(),
-  observedLocal: z.preprocess((typed) => (typeof typed === 'string' ? typed.trim().replace(' ', 'T') : typed), z.string().regex(/^\d{4}-\d{2}-\d{2}T([01]\d|2[0-3]):[0-5]\d$/, wallTimeHint).refine((text) => isDay(text.slice(0, 10)), wallTimeHint).optional()),
+  observedLocal: z.preprocess(
+    (typed) => (typeof typed === 'string' ? typed.trim().replace(' ', 'T') : typed),
+    z
+      .string()
+      .regex(/^\d{4}-\d{2}-\d{2}T([01]\d|2[0-3]):[0-5]\d$/, wallTimeHint)
+      .refine((text) => isDay(text.slice(0, 10)), wallTimeHint)
+      .optional(),
+  ),
   /** Which of the two, when the clock shows an hour twice. */
   repeatedHour: z.enum(['earlier', 'later']).optional(),
   deviceId: z.string().max(80).optional(),
@@ -19,7 +26,11 @@ export const observedFields = {
 export const readingInput = z.object({
   id: recordId,
   meterId: recordId,
-  registerText: z.string({ error: 'Enter what the register shows.' }).trim().min(1, 'Enter what the register shows.').max(40),
+  registerText: z
+    .string({ error: 'Enter what the register shows.' })
+    .trim()
+    .min(1, 'Enter what the register shows.')
+    .max(40),
   answer: z.enum(['none', 'rollover', 'confirmed', 'held']).default('none'),
   note: optionalText(),
   supersedesId: optionalId,
@@ -47,13 +58,25 @@ export const rainInput = z.object({
   kind: z.enum(['measured', 'trace', 'accumulated', 'snow-water']).default('measured'),
   depthText: z.string().trim().max(40).default(''),
   unit: z.enum(['mm', 'in']).default('mm'),
-  accumulatedDays: z.coerce.number().int().min(2, 'An accumulated reading covers at least 2 days.').max(31).optional(),
+  accumulatedDays: z.coerce
+    .number()
+    .int()
+    .min(2, 'An accumulated reading covers at least 2 days.')
+    .max(31)
+    .optional(),
   isConfirmed: z.boolean().default(false),
   ...observedFields,
 });
 export type RainInput = z.input<typeof rainInput>;
 
-export const notReadReasons = ['no-access', 'locked-out', 'frozen', 'power-failure', 'meter-away', 'other'] as const;
+export const notReadReasons = [
+  'no-access',
+  'locked-out',
+  'frozen',
+  'power-failure',
+  'meter-away',
+  'other',
+] as const;
 export const notReadReasonNames: Record<(typeof notReadReasons)[number], string> = {
   'no-access': 'No access',
   'locked-out': 'Locked out',
@@ -64,11 +87,24 @@ export const notReadReasonNames: Record<(typeof notReadReasons)[number], string>
 };
 
 export const notReadInput = z
-  .object({ id: recordId, roundPointId: recordId, siteDay: dayText('the day'), reasonCode: z.enum(notReadReasons, { error: 'Choose why it was not read.' }), note: optionalText() })
-  .refine((input) => input.reasonCode !== 'other' || input.note, { path: ['note'], message: 'Write down the reason.' });
+  .object({
+    id: recordId,
+    roundPointId: recordId,
+    siteDay: dayText('the day'),
+    reasonCode: z.enum(notReadReasons, { error: 'Choose why it was not read.' }),
+    note: optionalText(),
+  })
+  .refine((input) => input.reasonCode !== 'other' || input.note, {
+    path: ['note'],
+    message: 'Write down the reason.',
+  });
 export type NotReadInput = z.input<typeof notReadInput>;
 
-export const roundNoteInput = z.object({ id: recordId, siteDay: dayText('the day'), note: requiredText('the note', 2000) });
+export const roundNoteInput = z.object({
+  id: recordId,
+  siteDay: dayText('the day'),
+  note: requiredText('the note', 2000),
+});
 
 export const loadOutInput = z
   .object({
@@ -78,7 +114,13 @@ export const loadOutInput = z
     truck: optionalText(40),
     fromPlaceId: recordId,
     toPlaceId: recordId,
-    nominalVolumeM3: optionalNumber({ what: 'the nominal volume', unit: 'm³', min: 0, max: 60, aboveMax: 'A tanker holds 15 to 30 m³.' }),
+    nominalVolumeM3: optionalNumber({
+      what: 'the nominal volume',
+      unit: 'm³',
+      min: 0,
+      max: 60,
+      aboveMax: 'A tanker holds 15 to 30 m³.',
+    }),
     grossMassKg: optionalNumber({ what: 'the gross mass', unit: 'kg', min: 0, max: 80_000 }),
     tareMassKg: optionalNumber({ what: 'the tare mass', unit: 'kg', min: 0, max: 80_000 }),
     densityKgPerM3: optionalNumber({ what: 'the density', unit: 'kg/m³', min: 900, max: 1300 }),
@@ -88,28 +130,46 @@ export const loadOutInput = z
     ...observedFields,
   })
   .superRefine((input, context) => {
-    const issue = (path: string, message: string) => context.addIssue({ code: 'custom', path: [path], message });
+    const issue = (path: string, message: string) =>
+      context.addIssue({ code: 'custom', path: [path], message });
     const gross = input.grossMassKg === undefined ? undefined : Number(input.grossMassKg);
     const tare = input.tareMassKg === undefined ? undefined : Number(input.tareMassKg);
-    if (gross !== undefined && tare !== undefined && tare >= gross) issue('tareMassKg', `The tare (${tare} kg) must be less than the gross mass (${gross} kg).`);
-    if (input.officialVolume === 'nominal' && input.nominalVolumeM3 === undefined) issue('nominalVolumeM3', 'Enter the nominal volume in m³.');
-    if (input.officialVolume === 'received' && input.receivedVolumeM3 === undefined) issue('receivedVolumeM3', 'Enter the received volume in m³.');
-    if (input.officialVolume === 'weighed' && (gross === undefined || tare === undefined)) issue('grossMassKg', 'Enter gross and tare in kg to use the weighed volume.');
+    if (gross !== undefined && tare !== undefined && tare >= gross)
+      issue('tareMassKg', `The tare (${tare} kg) must be less than the gross mass (${gross} kg).`);
+    if (input.officialVolume === 'nominal' && input.nominalVolumeM3 === undefined)
+      issue('nominalVolumeM3', 'Enter the nominal volume in m³.');
+    if (input.officialVolume === 'received' && input.receivedVolumeM3 === undefined)
+      issue('receivedVolumeM3', 'Enter the received volume in m³.');
+    if (input.officialVolume === 'weighed' && (gross === undefined || tare === undefined))
+      issue('grossMassKg', 'Enter gross and tare in kg to use the weighed volume.');
   });
 export type LoadOutInput = z.input<typeof loadOutInput>;
 
 export const voidInput = z.object({ id: recordId, reason: requiredText('the reason', 2000) });
 
-const registerText = z.preprocess((typed) => (typed === '' ? undefined : typed), z.string().trim().regex(/^\d+(\.\d+)?$/, 'Enter what the register shows, digits only.').optional());
+const registerText = z.preprocess(
+  (typed) => (typed === '' ? undefined : typed),
+  z
+    .string()
+    .trim()
+    .regex(/^\d+(\.\d+)?$/, 'Enter what the register shows, digits only.')
+    .optional(),
+);
 
 export const meterEventInput = z
   .object({
     id: recordId,
     meterId: recordId,
-    kind: z.enum(['replace', 'rollover', 'reset', 'power-loss', 'multiplier-changed', 'bypassed', 'suspect'], { error: 'Choose what happened.' }),
+    kind: z.enum(
+      ['replace', 'rollover', 'reset', 'power-loss', 'multiplier-changed', 'bypassed', 'suspect'],
+      { error: 'Choose what happened.' },
+    ),
     registerBefore: registerText,
     registerAfter: registerText,
-    digitsAfter: z.preprocess((typed) => (typed === '' ? undefined : typed), z.coerce.number().int().min(3).max(12).optional()),
+    digitsAfter: z.preprocess(
+      (typed) => (typed === '' ? undefined : typed),
+      z.coerce.number().int().min(3).max(12).optional(),
+    ),
     unitAfter: z.preprocess((typed) => (typed === '' ? undefined : typed), z.enum(volumeUnits).optional()),
     multiplierAfter: optionalNumber({ what: 'the new multiplier', unit: '', minExclusive: 0, decimals: 6 }),
     note: optionalText(),
@@ -118,9 +178,20 @@ export const meterEventInput = z
   .superRefine((input, context) => {
     const needsBoth = ['replace', 'reset', 'power-loss', 'multiplier-changed'].includes(input.kind);
     if (!needsBoth) return;
-    if (input.registerBefore === undefined) context.addIssue({ code: 'custom', path: ['registerBefore'], message: 'Enter what the register showed last.' });
-    if (input.registerAfter === undefined) context.addIssue({ code: 'custom', path: ['registerAfter'], message: 'Enter what the register shows now.' });
-    if (input.kind === 'multiplier-changed' && input.multiplierAfter === undefined) context.addIssue({ code: 'custom', path: ['multiplierAfter'], message: 'Enter the new multiplier.' });
+    if (input.registerBefore === undefined)
+      context.addIssue({
+        code: 'custom',
+        path: ['registerBefore'],
+        message: 'Enter what the register showed last.',
+      });
+    if (input.registerAfter === undefined)
+      context.addIssue({
+        code: 'custom',
+        path: ['registerAfter'],
+        message: 'Enter what the register shows now.',
+      });
+    if (input.kind === 'multiplier-changed' && input.multiplierAfter === undefined)
+      context.addIssue({ code: 'custom', path: ['multiplierAfter'], message: 'Enter the new multiplier.' });
   });
 export type MeterEventInput = z.input<typeof meterEventInput>;
 
@@ -138,10 +209,16 @@ export const estimateInput = z.object({
   fromAt: z.iso.datetime({ offset: true, error: 'Enter the start of the span.' }),
   toAt: z.iso.datetime({ offset: true, error: 'Enter the end of the span.' }),
   volumeM3: typedNumber({ what: 'the estimated volume', unit: 'm³', min: 0 }),
-  method: z.enum(Object.keys(estimateMethods) as [keyof typeof estimateMethods], { error: 'Choose the method.' }),
+  method: z.enum(Object.keys(estimateMethods) as [keyof typeof estimateMethods], {
+    error: 'Choose the method.',
+  }),
   inputs: requiredText('what the estimate rests on', 1000),
   reason: requiredText('the reason', 1000),
 });
 export type EstimateInput = z.input<typeof estimateInput>;
 
-export const settleInput = z.object({ id: recordId, chosenReadingId: recordId, reason: requiredText('the reason', 1000) });
+export const settleInput = z.object({
+  id: recordId,
+  chosenReadingId: recordId,
+  reason: requiredText('the reason', 1000),
+});

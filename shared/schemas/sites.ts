@@ -6,16 +6,33 @@ import { dayText, monthText, optionalDay } from './days.ts';
 import { optionalNumber, typedNumber } from './numbers.ts';
 import { optionalId, optionalText, recordId, requiredText } from './text.ts';
 
-const code = (what: string) => requiredText(what, 20).regex(/^[\p{L}\p{N}][\p{L}\p{N} ._-]*$/u, 'Use letters, digits, spaces, points and dashes.');
-const fractionOf = (what: string) => typedNumber({ what, unit: '', min: 0, max: 1, decimals: 6, aboveMax: 'Enter a share of one: 0.18, not 18.' });
+const code = (what: string) =>
+  requiredText(what, 20).regex(
+    /^[\p{L}\p{N}][\p{L}\p{N} ._-]*$/u,
+    'Use letters, digits, spaces, points and dashes.',
+  );
+const fractionOf = (what: string) =>
+  typedNumber({
+    what,
+    unit: '',
+    min: 0,
+    max: 1,
+    decimals: 6,
+    aboveMax: 'Enter a share of one: 0.18, not 18.',
+  });
 
 export const siteInput = z.object({
   id: recordId,
   name: requiredText('the name of the site', 80),
   latitudeDeg: typedNumber({ what: 'the latitude', unit: '°', min: -66, max: 66, decimals: 6 }),
   elevationM: typedNumber({ what: 'the height above the sea', unit: 'm', min: -430, max: 6000 }),
-  timeZone: requiredText('the time zone').refine(isTimeZone, 'Enter a time zone by its IANA name, like Europe/London or America/Chicago.'),
-  dayBoundary: z.string().regex(/^([01]\d|2[0-3]):[0-5]\d$/, 'Enter the time the site day begins, like 00:00 or 08:00.'),
+  timeZone: requiredText('the time zone').refine(
+    isTimeZone,
+    'Enter a time zone by its IANA name, like Europe/London or America/Chicago.',
+  ),
+  dayBoundary: z
+    .string()
+    .regex(/^([01]\d|2[0-3]):[0-5]\d$/, 'Enter the time the site day begins, like 00:00 or 08:00.'),
   openedOn: dayText('the day the site opened'),
   displayUnits: z.enum(['metric', 'us']).default('metric'),
 });
@@ -24,7 +41,11 @@ export type SiteInput = z.input<typeof siteInput>;
 export const siteSettingsInput = z.object({
   name: requiredText('the name of the site', 80),
   displayUnits: z.enum(['metric', 'us']),
-  reportDueDays: z.coerce.number('Enter the days as a whole number.').int().min(1, 'Enter at least 1 day.').max(366, 'Enter at most 366 days.'),
+  reportDueDays: z.coerce
+    .number('Enter the days as a whole number.')
+    .int()
+    .min(1, 'Enter at least 1 day.')
+    .max(366, 'Enter at most 366 days.'),
   certificationText: optionalText(4000),
 });
 export type SiteSettingsInput = z.input<typeof siteSettingsInput>;
@@ -66,7 +87,10 @@ export const coverTypeInput = z.object({
   kind: z.enum(coverKinds),
   name: requiredText('the name of the cover', 60),
   availableWaterMm: typedNumber({ what: 'the available water of the soil', unit: 'mm', min: 0, max: 1500 }),
-  membranePassFraction: z.preprocess((typed) => (typed === '' || typed === null ? undefined : typed), fractionOf('the share that passes the membrane').optional()),
+  membranePassFraction: z.preprocess(
+    (typed) => (typed === '' || typed === null ? undefined : typed),
+    fractionOf('the share that passes the membrane').optional(),
+  ),
   runoffCoefficientWet: fractionOf('the runoff share in the wet season'),
   runoffCoefficientDry: fractionOf('the runoff share in the dry season'),
   runoffDestination: z.enum(['storm-water', 'leachate']),
@@ -80,7 +104,13 @@ export const wasteInput = z.object({
   cellId: recordId,
   month: monthText,
   massT: typedNumber({ what: 'the waste placed', unit: 't', min: 0 }),
-  bulkDensityTPerM3: typedNumber({ what: 'the bulk density', unit: 't/m³', minExclusive: 0, max: 2.5, aboveMax: 'Waste in place is rarely above 1.5 t/m³.' }),
+  bulkDensityTPerM3: typedNumber({
+    what: 'the bulk density',
+    unit: 't/m³',
+    minExclusive: 0,
+    max: 2.5,
+    aboveMax: 'Waste in place is rarely above 1.5 t/m³.',
+  }),
   moistureFraction: fractionOf('the moisture by wet weight'),
   fieldCapacityFraction: fractionOf('the field capacity by volume'),
   source: requiredText('where the tonnes come from'),
@@ -94,8 +124,18 @@ export const sumpInput = z.object({
   code: code('the code of the sump'),
   kind: z.enum(['primary', 'leak-detection']),
   areaServedM2: typedNumber({ what: 'the area the sump drains', unit: 'm²', minExclusive: 0 }),
-  linerLowPointAboveFloorM: typedNumber({ what: 'the height of the liner’s low point above the sump floor', unit: 'm', min: 0, max: 10 }),
-  sensorAboveFloorM: typedNumber({ what: 'the height of the sensor above the sump floor', unit: 'm', min: 0, max: 10 }),
+  linerLowPointAboveFloorM: typedNumber({
+    what: 'the height of the liner’s low point above the sump floor',
+    unit: 'm',
+    min: 0,
+    max: 10,
+  }),
+  sensorAboveFloorM: typedNumber({
+    what: 'the height of the sensor above the sump floor',
+    unit: 'm',
+    min: 0,
+    max: 10,
+  }),
   headLimitM: optionalNumber({ what: 'the head limit', unit: 'm', minExclusive: 0, max: 5 }),
   actionRateLPerHaDay: optionalNumber({ what: 'the action rate', unit: 'L/ha·d', minExclusive: 0 }),
 });
@@ -114,7 +154,11 @@ export const meterInput = z.object({
   fromPlaceId: recordId,
   toPlaceId: recordId,
   sumpId: optionalId,
-  digits: z.coerce.number('Enter how many digits the register shows.').int().min(3, 'A register shows at least 3 digits.').max(12, 'A register shows at most 12 digits.'),
+  digits: z.coerce
+    .number('Enter how many digits the register shows.')
+    .int()
+    .min(3, 'A register shows at least 3 digits.')
+    .max(12, 'A register shows at most 12 digits.'),
   decimals: z.coerce.number().int().min(0).max(4).default(0),
   unit: z.enum(volumeUnits, { error: 'Choose the unit printed on the register.' }),
   multiplier: typedNumber({ what: 'the multiplier', unit: '', minExclusive: 0, max: 100_000, decimals: 6 }),
@@ -133,7 +177,13 @@ export const storeInput = z.object({
   crestLevelM: typedNumber({ what: 'the crest level', unit: 'm', minExclusive: 0, max: 50 }),
   operatingLevelM: typedNumber({ what: 'the highest operating level', unit: 'm', minExclusive: 0, max: 50 }),
   strapping: z
-    .array(z.object({ levelM: typedNumber({ what: 'a level', unit: 'm', min: 0 }), volumeM3: typedNumber({ what: 'a volume', unit: 'm³', min: 0 }), surfaceM2: typedNumber({ what: 'a surface', unit: 'm²', min: 0 }) }))
+    .array(
+      z.object({
+        levelM: typedNumber({ what: 'a level', unit: 'm', min: 0 }),
+        volumeM3: typedNumber({ what: 'a volume', unit: 'm³', min: 0 }),
+        surfaceM2: typedNumber({ what: 'a surface', unit: 'm²', min: 0 }),
+      }),
+    )
     .min(2, 'Enter at least two rows of level, volume and surface.'),
 });
 export type StoreInput = z.input<typeof storeInput>;

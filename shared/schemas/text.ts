@@ -18,7 +18,10 @@ export const optionalText = (lengthMax = 2000) =>
 
 export const recordId = z.uuid('This is not the id of a record.');
 /** A choice that may be left empty. */
-export const optionalId = z.preprocess((chosen) => (chosen === '' || chosen === null ? undefined : chosen), recordId.optional());
+export const optionalId = z.preprocess(
+  (chosen) => (chosen === '' || chosen === null ? undefined : chosen),
+  recordId.optional(),
+);
 
 export const emailAddress = z
   .string({ error: 'Enter an e-mail address.' })

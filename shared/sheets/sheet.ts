@@ -36,4 +36,10 @@ export function columnLetter(index: number): string {
 }
 
 /** Text of a cell with odd spaces and a leading apostrophe removed; '' for an empty cell. */
-export const cellText = (cell: SheetCell | null | undefined): string => (cell ? cell.text.replace(/[\u00a0\u2009\u202f\s]+/g, ' ').trim().replace(/^'/, '') : '');
+export const cellText = (cell: SheetCell | null | undefined): string =>
+  cell
+    ? cell.text
+        .replace(/[\u00a0\u2009\u202f\s]+/g, ' ')
+        .trim()
+        .replace(/^'/, '')
+    : '';

@@ -19,5 +19,9 @@ export function checkPlotAreas(plotAreasM2: readonly string[], linedAreaM2: stri
   const sentence = `The plots add to ${sum.toFixed()} m², the lined area is ${new Decimal(linedAreaM2).toFixed()} m² (${signed}).`;
   return Math.abs(differencePercent) <= 1
     ? { kind: 'ask', differencePercent, sentence: `${sentence} Say why, or correct an area.` }
-    : { kind: 'refuse', differencePercent, sentence: `${sentence} Correct the areas: more than 1 % cannot be kept.` };
+    : {
+        kind: 'refuse',
+        differencePercent,
+        sentence: `${sentence} Correct the areas: more than 1 % cannot be kept.`,
+      };
 }

@@ -26,7 +26,13 @@ export const lengthUnitsM = { m: '1', cm: '0.01', mm: '0.001', in: '0.0254', ft:
 export type LengthUnit = keyof typeof lengthUnitsM;
 
 /** Depth units of rain and evaporation, in millimetres. */
-export const depthUnitsMm = { mm: '1', cm: '10', in: '25.4', 'mm-tenths': '0.1', 'in-hundredths': '0.254' } as const;
+export const depthUnitsMm = {
+  mm: '1',
+  cm: '10',
+  in: '25.4',
+  'mm-tenths': '0.1',
+  'in-hundredths': '0.254',
+} as const;
 export type DepthUnit = keyof typeof depthUnitsMm;
 
 export const areaUnitsM2 = { m2: '1', ha: '10000', ac: '4046.8564224' } as const;
@@ -44,7 +50,9 @@ export const exactLoadFactor = new Decimal('3785411.784').div('453592.37');
  * @param value number as text or decimal, in the unit
  * @throws Error when the text is not a number
  */
-export const volumeToM3 = (value: Decimal.Value, unit: VolumeUnit): Decimal => new Decimal(value).times(volumeUnitsM3[unit].factor);
+export const volumeToM3 = (value: Decimal.Value, unit: VolumeUnit): Decimal =>
+  new Decimal(value).times(volumeUnitsM3[unit].factor);
 
 /** Temperature in °C from °F. */
-export const fahrenheitToCelsius = (value: Decimal.Value): Decimal => new Decimal(value).minus(32).times(5).div(9);
+export const fahrenheitToCelsius = (value: Decimal.Value): Decimal =>
+  new Decimal(value).minus(32).times(5).div(9);

@@ -28,11 +28,37 @@ export interface BalanceView {
   stopped: string | null;
   firstMonth: string;
   lastMonth: string;
-  climate: { rainDayCount: number; temperatureDayCount: number; dayCount: number; rainStation: string | null; temperatureStation: string | null; choice: string | null } | null;
+  climate: {
+    rainDayCount: number;
+    temperatureDayCount: number;
+    dayCount: number;
+    rainStation: string | null;
+    temperatureStation: string | null;
+    choice: string | null;
+  } | null;
   site: BalanceGroup;
-  cells: (BalanceGroup & { id: string; code: string; name: string; plots: { stepId: string; plotName: string; coverName: string; fromOn: string; dayCount: number; areaM2: number; terms: StepTerms }[] })[];
+  cells: (BalanceGroup & {
+    id: string;
+    code: string;
+    name: string;
+    plots: {
+      stepId: string;
+      plotName: string;
+      coverName: string;
+      fromOn: string;
+      dayCount: number;
+      areaM2: number;
+      terms: StepTerms;
+    }[];
+  })[];
   closure: { line: string; residualMm: number; toleranceMm: number }[];
-  frozenRuns: { id: string; number: number | null; computedAt: string; acceptedAt: string | null; note: string | null }[];
+  frozenRuns: {
+    id: string;
+    number: number | null;
+    computedAt: string;
+    acceptedAt: string | null;
+    note: string | null;
+  }[];
 }
 
 export interface WorkingView {
@@ -94,6 +120,18 @@ export interface CompareView {
   run: BalanceRunView & { isAccepted: boolean };
   percentFloorMm: number;
   rows: ComparedRow[];
-  statistics: { pairCount: number; pbiasPercent: number | null; rmse: number | null; nashSutcliffe: number | null; leftOutCount: number };
-  findings: { code: string; severity: 'stops' | 'ask' | 'note'; difference?: number; tolerance?: number; sentence: string }[];
+  statistics: {
+    pairCount: number;
+    pbiasPercent: number | null;
+    rmse: number | null;
+    nashSutcliffe: number | null;
+    leftOutCount: number;
+  };
+  findings: {
+    code: string;
+    severity: 'stops' | 'ask' | 'note';
+    difference?: number;
+    tolerance?: number;
+    sentence: string;
+  }[];
 }

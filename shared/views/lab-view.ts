@@ -36,9 +36,26 @@ export interface LabView {
   laboratories: { id: string; name: string }[];
   points: { id: string; code: string; name: string }[];
   analytes: { id: string; name: string; standardUnit: string; defaultFraction: string | null }[];
-  uploads: { id: string; fileName: string; uploadedAt: string; by: string; counts: ImportCounts; confirmedAt: string | null; undoneAt: string | null; jobNumber: string | null }[];
+  uploads: {
+    id: string;
+    fileName: string;
+    uploadedAt: string;
+    by: string;
+    counts: ImportCounts;
+    confirmedAt: string | null;
+    undoneAt: string | null;
+    jobNumber: string | null;
+  }[];
   results: LabResultView[];
-  plan: { id: string; pointCode: string; analyteName: string; fraction: string; expectedCount: number; receivedCount: number; turnaroundDays: number }[];
+  plan: {
+    id: string;
+    pointCode: string;
+    analyteName: string;
+    fraction: string;
+    expectedCount: number;
+    receivedCount: number;
+    turnaroundDays: number;
+  }[];
 }
 
 export interface LabImportView {
@@ -51,8 +68,15 @@ export interface LabImportView {
   counts: ImportCounts;
   laboratoryId: string | null;
   reading: {
-    shape: string; jobNumber: string | null; notes: string[]; skipped: { sheet: string; rowNumber: number; text: string; why: string }[]; qualifierKey: { letter: string; words: string }[];
-    preview: { number: number; cells: string[] }[]; sheetName: string; headerRow: number; dateOrder: 'day-first' | 'month-first' | null;
+    shape: string;
+    jobNumber: string | null;
+    notes: string[];
+    skipped: { sheet: string; rowNumber: number; text: string; why: string }[];
+    qualifierKey: { letter: string; words: string }[];
+    preview: { number: number; cells: string[] }[];
+    sheetName: string;
+    headerRow: number;
+    dateOrder: 'day-first' | 'month-first' | null;
   };
   rows: (LabRow & { pointCode: string | null; analyteName: string | null })[];
   points: { id: string; code: string; name: string }[];
@@ -95,11 +119,39 @@ export interface LimitsView {
   quarter: string;
   months: string[];
   now: string;
-  permits: { id: string; number: string; authority: string; regime: string; fromOn: string; toOn: string | null }[];
-  verdicts: { month: string; pointCode: string; analyteName: string; verdict: Verdict; limit: LimitRowView }[];
+  permits: {
+    id: string;
+    number: string;
+    authority: string;
+    regime: string;
+    fromOn: string;
+    toOn: string | null;
+  }[];
+  verdicts: {
+    month: string;
+    pointCode: string;
+    analyteName: string;
+    verdict: Verdict;
+    limit: LimitRowView;
+  }[];
   exceedances: {
-    id: string; sentence: string; month: string; periodKey: string; seenAt: string; seenBy: string; closedAt: string | null; cause: string | null;
-    clocks: { id: string; step: string; dueAt: string; citation: string; doneAt: string | null; doneBy: string | null; doneNote: string | null }[];
+    id: string;
+    sentence: string;
+    month: string;
+    periodKey: string;
+    seenAt: string;
+    seenBy: string;
+    closedAt: string | null;
+    cause: string | null;
+    clocks: {
+      id: string;
+      step: string;
+      dueAt: string;
+      citation: string;
+      doneAt: string | null;
+      doneBy: string | null;
+      doneNote: string | null;
+    }[];
     notes: { id: string; note: string; writtenAt: string; by: string }[];
   }[];
 }
@@ -120,10 +172,45 @@ export interface ReportView {
   readiness: { state: 'ready' | 'stops' | 'ask'; sentence: string; link: string | null }[];
   cells: { code: string; name: string }[];
   months: string[];
-  cellMonths: { cellCode: string; month: string; areaM2: number; predictedM3: number; measuredM3: number | null; estimatedM3: number; allocatedM3: number }[];
-  verdicts: { analyteName: string; pointCode: string; month: string; statistic: string; quantity: string; limit: string; unit: string; valueText: string | null; word: string }[];
-  leakDetection: { sumpCode: string; month: string; volumeM3: number | null; dayCount: number; lPerHaDay: number | null; actionRateLPerHaDay: number | null }[];
+  cellMonths: {
+    cellCode: string;
+    month: string;
+    areaM2: number;
+    predictedM3: number;
+    measuredM3: number | null;
+    estimatedM3: number;
+    allocatedM3: number;
+  }[];
+  verdicts: {
+    analyteName: string;
+    pointCode: string;
+    month: string;
+    statistic: string;
+    quantity: string;
+    limit: string;
+    unit: string;
+    valueText: string | null;
+    word: string;
+  }[];
+  leakDetection: {
+    sumpCode: string;
+    month: string;
+    volumeM3: number | null;
+    dayCount: number;
+    lPerHaDay: number | null;
+    actionRateLPerHaDay: number | null;
+  }[];
   run: { kind: string; number: number | null; isAccepted: boolean };
   changes: { name: string; issued: number; now: number }[];
-  issues: { id: string; quarter: string; issue: number; signedAt: string; signedBy: string; fileName: string; fileSha256: string; isStale: boolean; isLast: boolean }[];
+  issues: {
+    id: string;
+    quarter: string;
+    issue: number;
+    signedAt: string;
+    signedBy: string;
+    fileName: string;
+    fileSha256: string;
+    isStale: boolean;
+    isLast: boolean;
+  }[];
 }

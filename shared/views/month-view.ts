@@ -43,7 +43,16 @@ export interface MonthView {
   missing: MonthLine[];
   odd: MonthLine[];
   cells: {
-    code: string; name: string; cover: string; areaM2: number | null; predictedM3: number | null; measuredM3: number | null; differenceM3: number | null; percent: number | null; isAllocated: boolean; estimatedPercent: number;
+    code: string;
+    name: string;
+    cover: string;
+    areaM2: number | null;
+    predictedM3: number | null;
+    measuredM3: number | null;
+    differenceM3: number | null;
+    percent: number | null;
+    isAllocated: boolean;
+    estimatedPercent: number;
   }[];
   obstacles: string[];
   act: { act: 'close' | 'reopen'; at: string; reason: string | null } | null;
@@ -65,10 +74,53 @@ export interface StoreBalanceView {
 
 export interface LedgerView {
   month: string;
-  flows: { fromPlaceId: string; toPlaceId: string; from: string; to: string; volumeM3: number; bases: Record<string, number> }[];
-  stores: { id: string; placeId: string; code: string; name: string; openingLevelM: number | null; closingLevelM: number | null; balance: StoreBalanceView | null; missing: string | null; weather: string }[];
-  entries: { id: string; siteDay: string; from: string; to: string; volumeM3: string; basis: string; reason: string | null; meterCode: string | null; by: string; recordedAt: string; reversesId: string | null }[];
-  loads: { count: number; nominalM3: number; receivedM3: number; receivedCount: number; rows: { id: string; siteDay: string; ticket: string; hauler: string; nominalVolumeM3: string | null; receivedVolumeM3: string | null; officialVolume: string }[] };
+  flows: {
+    fromPlaceId: string;
+    toPlaceId: string;
+    from: string;
+    to: string;
+    volumeM3: number;
+    bases: Record<string, number>;
+  }[];
+  stores: {
+    id: string;
+    placeId: string;
+    code: string;
+    name: string;
+    openingLevelM: number | null;
+    closingLevelM: number | null;
+    balance: StoreBalanceView | null;
+    missing: string | null;
+    weather: string;
+  }[];
+  entries: {
+    id: string;
+    siteDay: string;
+    from: string;
+    to: string;
+    volumeM3: string;
+    basis: string;
+    reason: string | null;
+    meterCode: string | null;
+    by: string;
+    recordedAt: string;
+    reversesId: string | null;
+  }[];
+  loads: {
+    count: number;
+    nominalM3: number;
+    receivedM3: number;
+    receivedCount: number;
+    rows: {
+      id: string;
+      siteDay: string;
+      ticket: string;
+      hauler: string;
+      nominalVolumeM3: string | null;
+      receivedVolumeM3: string | null;
+      officialVolume: string;
+    }[];
+  };
   pending: { id: string; sentence: string }[];
   act: 'close' | 'reopen' | null;
 }
@@ -83,5 +135,17 @@ export interface EntrySourceView {
   by: string;
   facts: { id: string; kind: string; when: string; words: string; by: string; note: string | null }[];
   meter: { code: string; name: string } | undefined;
-  intervals: { from: string; to: string; hours: number; opening: string; closing: string; wrap: string; multiplier: string; unit: string; volumeM3: string | null; basis: string; heldBecause: string | null }[];
+  intervals: {
+    from: string;
+    to: string;
+    hours: number;
+    opening: string;
+    closing: string;
+    wrap: string;
+    multiplier: string;
+    unit: string;
+    volumeM3: string | null;
+    basis: string;
+    heldBecause: string | null;
+  }[];
 }

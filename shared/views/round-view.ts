@@ -32,7 +32,15 @@ export interface RoundView {
   today: string;
   nowLocal: string;
   points: RoundPointView[];
-  loads: { id: string; ticket: string; hauler: string; at: string; nominalVolumeM3: string | null; receivedVolumeM3: string | null; officialVolume: string }[];
+  loads: {
+    id: string;
+    ticket: string;
+    hauler: string;
+    at: string;
+    nominalVolumeM3: string | null;
+    receivedVolumeM3: string | null;
+    officialVolume: string;
+  }[];
   loadPlaces: { from: { id: string; name: string }[]; to: { id: string; name: string }[] };
   notes: { id: string; siteDay: string; note: string; by: string }[];
 }

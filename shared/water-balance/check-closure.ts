@@ -31,7 +31,11 @@ function line(name: BalanceLine, comesIn: readonly number[], goesOut: readonly n
 export function checkClosure(t: StepTerms): LineResidual[] {
   return [
     line('snow', [t.snowfallMm], [t.meltMm, t.dSnowMm]),
-    line('soil', [t.rainMm, t.meltMm, t.surfaceReturnMm, t.soilWaterBroughtMm], [t.runoffToStormMm, t.runoffToLeachateMm, t.aetMm, t.dSoilMm, t.percolationMm]),
+    line(
+      'soil',
+      [t.rainMm, t.meltMm, t.surfaceReturnMm, t.soilWaterBroughtMm],
+      [t.runoffToStormMm, t.runoffToLeachateMm, t.aetMm, t.dSoilMm, t.percolationMm],
+    ),
     line('cover', [t.percolationMm], [t.passedMm, t.coverDrainMm]),
     line('waste', [t.passedMm, t.returnToWasteMm, t.freeMoistureMm], [t.absorbedMm, t.dWasteMm, t.drainedMm]),
     line('drain', [t.drainedMm], [t.collectedMm, t.leakedMm]),

@@ -47,7 +47,10 @@ export interface StepSettings {
 
 /** A line that does not close: no result is given. */
 export class BalanceDoesNotClose extends Error {
-  constructor(readonly lines: string[], readonly residualMm: number) {
+  constructor(
+    readonly lines: string[],
+    readonly residualMm: number,
+  ) {
     super(`The ${lines.join(' and ')} line does not close: ${residualMm.toExponential(2)} mm are left over.`);
     this.name = 'BalanceDoesNotClose';
   }
@@ -58,7 +61,12 @@ export class BalanceDoesNotClose extends Error {
  * @returns every term in mm, and the ground as the step leaves it
  * @throws BalanceDoesNotClose when a line is left with a residual
  */
-export function computeStep(before: Readonly<GroundState>, cover: Readonly<StepCover>, forcing: Readonly<StepForcing>, settings: Readonly<StepSettings>): { terms: StepTerms; after: GroundState } {
+export function computeStep(
+  before: Readonly<GroundState>,
+  cover: Readonly<StepCover>,
+  forcing: Readonly<StepForcing>,
+  settings: Readonly<StepSettings>,
+): { terms: StepTerms; after: GroundState } {
   // Section 4: runoff and what enters the soil.
   const petMm = forcing.referencePetMm * cover.petFactor;
   const surfaceWaterMm = forcing.rainMm + forcing.meltMm;
@@ -67,7 +75,14 @@ export function computeStep(before: Readonly<GroundState>, cover: Readonly<StepC
 
   // Section 5: the soil, with the water that placed soil brings.
   const soilStartMm = forcing.newSoilStoreMm ?? before.soilStoreMm;
-  const soil = soilStep({ storeBeforeMm: soilStartMm, infiltrationMm, petMm, capacityMm: cover.availableWaterMm, law: settings.soilLaw, isFrozen: forcing.isFrozen });
+  const soil = soilStep({
+    storeBeforeMm: soilStartMm,
+    infiltrationMm,
+    petMm,
+    capacityMm: cover.availableWaterMm,
+    law: settings.soilLaw,
+    isFrozen: forcing.isFrozen,
+  });
 
   // A floor kept apart from the sump sends its water away as clean rain.
   const isSeparatedFloor = cover.kind === 'lined-floor' && cover.runoffDestination === 'storm-water';
@@ -87,7 +102,12 @@ export function computeStep(before: Readonly<GroundState>, cover: Readonly<StepC
   const absorbedMm = Math.min(deficitBeforeMm, arrivingMm * (1 - settings.channelledFraction));
   const inflowMm = arrivingMm + freeMoistureMm - absorbedMm;
   const waste = hasWaste
-    ? reservoirStep({ storeBeforeMm: before.wasteStoreMm, inflowMm, recessionPerMonth: settings.recessionPerMonth, durationMonths: forcing.durationMonths })
+    ? reservoirStep({
+        storeBeforeMm: before.wasteStoreMm,
+        inflowMm,
+        recessionPerMonth: settings.recessionPerMonth,
+        durationMonths: forcing.durationMonths,
+      })
     : { storeMm: before.wasteStoreMm, drainedMm: inflowMm };
 
   // Section 8: the liner.
@@ -96,14 +116,42 @@ export function computeStep(before: Readonly<GroundState>, cover: Readonly<StepC
   const runoffToLeachateMm = isToLeachate ? runoffMm : 0;
 
   const terms: StepTerms = {
-    precipitationMm: forcing.precipitationMm, rainMm: forcing.rainMm, snowfallMm: forcing.snowfallMm, meltMm: forcing.meltMm, dSnowMm: forcing.dSnowMm,
-    petMm, surfaceReturnMm: forcing.surfaceReturnMm, soilWaterBroughtMm: soilStartMm - before.soilStoreMm,
-    runoffToStormMm: isToLeachate ? 0 : runoffMm, runoffToLeachateMm, infiltrationMm, aetMm: soil.aetMm,
-    dSoilMm: soil.storeMm - before.soilStoreMm, soilStoreMm: soil.storeMm, percolationMm, passedMm, coverDrainMm: percolationMm * (1 - passFraction),
-    returnToWasteMm: forcing.returnToWasteMm, freeMoistureMm, absorbedMm, dWasteMm: waste.storeMm - before.wasteStoreMm, wasteStoreMm: waste.storeMm,
-    wasteDeficitMm: deficitBeforeMm - absorbedMm, drainedMm: waste.drainedMm, collectedMm, leakedMm, leachateMm: collectedMm + runoffToLeachateMm,
+    precipitationMm: forcing.precipitationMm,
+    rainMm: forcing.rainMm,
+    snowfallMm: forcing.snowfallMm,
+    meltMm: forcing.meltMm,
+    dSnowMm: forcing.dSnowMm,
+    petMm,
+    surfaceReturnMm: forcing.surfaceReturnMm,
+    soilWaterBroughtMm: soilStartMm - before.soilStoreMm,
+    runoffToStormMm: isToLeachate ? 0 : runoffMm,
+    runoffToLeachateMm,
+    infiltrationMm,
+    aetMm: soil.aetMm,
+    dSoilMm: soil.storeMm - before.soilStoreMm,
+    soilStoreMm: soil.storeMm,
+    percolationMm,
+    passedMm,
+    coverDrainMm: percolationMm * (1 - passFraction),
+    returnToWasteMm: forcing.returnToWasteMm,
+    freeMoistureMm,
+    absorbedMm,
+    dWasteMm: waste.storeMm - before.wasteStoreMm,
+    wasteStoreMm: waste.storeMm,
+    wasteDeficitMm: deficitBeforeMm - absorbedMm,
+    drainedMm: waste.drainedMm,
+    collectedMm,
+    leakedMm,
+    leachateMm: collectedMm + runoffToLeachateMm,
   };
   const open = checkClosure(terms).filter((one) => !one.isClosed);
-  if (open.length) throw new BalanceDoesNotClose(open.map((one) => one.line), open[0]!.residualMm);
-  return { terms, after: { soilStoreMm: soil.storeMm, wasteStoreMm: waste.storeMm, wasteDeficitMm: terms.wasteDeficitMm } };
+  if (open.length)
+    throw new BalanceDoesNotClose(
+      open.map((one) => one.line),
+      open[0]!.residualMm,
+    );
+  return {
+    terms,
+    after: { soilStoreMm: soil.storeMm, wasteStoreMm: waste.storeMm, wasteDeficitMm: terms.wasteDeficitMm },
+  };
 }

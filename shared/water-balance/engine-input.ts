@@ -33,9 +33,20 @@ export interface BalanceParameters {
  * @assumed recession 0.5 per month (our choice, no published constant), channelled share 0.1, wet months by the northern winter
  */
 export const parameterTemplate: BalanceParameters = {
-  petMethod: 'thornthwaite', hotMonths: 'table', soilLaw: 'exponential', wetMonths: [11, 12, 1, 2, 3, 4], runoffFactor: 1, petFactor: 1,
-  snow: { isOn: true, tSnowC: -10, tRainC: 3.3, meltMaxFraction: 0.5 }, isFrostOn: false, tFrostC: 0,
-  recessionPerMonth: 0.5, channelledFraction: 0.1, leakFraction: 0, isSpunUp: true, percentFloorMm: 5,
+  petMethod: 'thornthwaite',
+  hotMonths: 'table',
+  soilLaw: 'exponential',
+  wetMonths: [11, 12, 1, 2, 3, 4],
+  runoffFactor: 1,
+  petFactor: 1,
+  snow: { isOn: true, tSnowC: -10, tRainC: 3.3, meltMaxFraction: 0.5 },
+  isFrostOn: false,
+  tFrostC: 0,
+  recessionPerMonth: 0.5,
+  channelledFraction: 0.1,
+  leakFraction: 0,
+  isSpunUp: true,
+  percentFloorMm: 5,
 };
 
 export interface MonthClimate {

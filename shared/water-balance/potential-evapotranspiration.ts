@@ -9,7 +9,9 @@ import { annualHeatIndex, thornthwaiteMm } from './thornthwaite.ts';
 export function longTermMeansC(climate: readonly MonthClimate[]): number[] | null {
   const means: number[] = [];
   for (let monthOfYear = 1; monthOfYear <= 12; monthOfYear += 1) {
-    const values = climate.filter((row) => monthParts(row.month).monthOfYear === monthOfYear && row.tMeanC !== null).map((row) => row.tMeanC!);
+    const values = climate
+      .filter((row) => monthParts(row.month).monthOfYear === monthOfYear && row.tMeanC !== null)
+      .map((row) => row.tMeanC!);
     if (!values.length) return null;
     means.push(values.reduce((sum, value) => sum + value, 0) / values.length);
   }
@@ -19,7 +21,9 @@ export function longTermMeansC(climate: readonly MonthClimate[]): number[] | nul
 /** Mean extraterrestrial radiation over the days of a month, MJ/m²·d. */
 export function monthlyRadiation(latitudeDeg: number, month: Month): number {
   const days = monthDays(month);
-  return days.reduce((sum, day) => sum + extraterrestrialRadiation(latitudeDeg, dayOfYear(day)), 0) / days.length;
+  return (
+    days.reduce((sum, day) => sum + extraterrestrialRadiation(latitudeDeg, dayOfYear(day)), 0) / days.length
+  );
 }
 
 /** Why a month has no PET, as a sentence. */
@@ -30,21 +34,46 @@ export class PetMissing extends Error {}
  * @param heatIndex annual heat index over the record, needed by Thornthwaite only
  * @throws PetMissing naming the month and what to bring
  */
-export function referencePetMm(row: MonthClimate, latitudeDeg: number, parameters: Pick<BalanceParameters, 'petMethod' | 'hotMonths' | 'petFactor'>, heatIndex: number | null): number {
+export function referencePetMm(
+  row: MonthClimate,
+  latitudeDeg: number,
+  parameters: Pick<BalanceParameters, 'petMethod' | 'hotMonths' | 'petFactor'>,
+  heatIndex: number | null,
+): number {
   const dayCount = daysInMonth(row.month);
   if (parameters.petMethod === 'given') {
-    if (row.petMm === null) throw new PetMissing(`${monthName(row.month)} has no given PET. Upload it, or choose another method.`);
+    if (row.petMm === null)
+      throw new PetMissing(`${monthName(row.month)} has no given PET. Upload it, or choose another method.`);
     return row.petMm * parameters.petFactor;
   }
   if (parameters.petMethod === 'hargreaves') {
-    if (row.tMinC === null || row.tMaxC === null) throw new PetMissing(`${monthName(row.month)} has no minimum and maximum temperature, which Hargreaves–Samani needs.`);
+    if (row.tMinC === null || row.tMaxC === null)
+      throw new PetMissing(
+        `${monthName(row.month)} has no minimum and maximum temperature, which Hargreaves–Samani needs.`,
+      );
     const radiationMjPerM2Day = monthlyRadiation(latitudeDeg, row.month);
-    return hargreavesMmPerDay({ tMinC: row.tMinC, tMaxC: row.tMaxC, radiationMjPerM2Day }) * dayCount * parameters.petFactor;
+    return (
+      hargreavesMmPerDay({ tMinC: row.tMinC, tMaxC: row.tMaxC, radiationMjPerM2Day }) *
+      dayCount *
+      parameters.petFactor
+    );
   }
-  if (row.tMeanC === null) throw new PetMissing(`${monthName(row.month)} has no mean temperature, which Thornthwaite needs.`);
-  if (heatIndex === null) throw new PetMissing('Thornthwaite needs every month of the year at least once in the record for its heat index.');
+  if (row.tMeanC === null)
+    throw new PetMissing(`${monthName(row.month)} has no mean temperature, which Thornthwaite needs.`);
+  if (heatIndex === null)
+    throw new PetMissing(
+      'Thornthwaite needs every month of the year at least once in the record for its heat index.',
+    );
   const middle = declinationRad(dayOfYear(`${row.month}-15`));
-  return thornthwaiteMm({ tMeanC: row.tMeanC, heatIndex, daylightHours: daylightHours(latitudeDeg, middle), dayCount, hotMonths: parameters.hotMonths }) * parameters.petFactor;
+  return (
+    thornthwaiteMm({
+      tMeanC: row.tMeanC,
+      heatIndex,
+      daylightHours: daylightHours(latitudeDeg, middle),
+      dayCount,
+      hotMonths: parameters.hotMonths,
+    }) * parameters.petFactor
+  );
 }
 
 /** Annual heat index of a record, or null when it does not cover the year. */

@@ -21,8 +21,20 @@ const lastPackMm = 1;
  * @param packBeforeMm water in the pack at the start of the month, mm
  * @source McCabe & Markstrom 2007, USGS OFR 2007-1088 (equations from memory); tRain 3.3 °C and melt 0.5 read there
  */
-export function computeSnow(packBeforeMm: number, precipitationMm: number, tMeanC: number, settings: SnowSettings): SnowMonth {
-  if (!settings.isOn) return { rainMm: precipitationMm, snowfallMm: 0, meltMm: packBeforeMm, packMm: 0, dSnowMm: -packBeforeMm };
+export function computeSnow(
+  packBeforeMm: number,
+  precipitationMm: number,
+  tMeanC: number,
+  settings: SnowSettings,
+): SnowMonth {
+  if (!settings.isOn)
+    return {
+      rainMm: precipitationMm,
+      snowfallMm: 0,
+      meltMm: packBeforeMm,
+      packMm: 0,
+      dSnowMm: -packBeforeMm,
+    };
   const warmth = Math.min(1, Math.max(0, (tMeanC - settings.tSnowC) / (settings.tRainC - settings.tSnowC)));
   const rainMm = precipitationMm * warmth;
   const snowfallMm = precipitationMm * (1 - warmth);

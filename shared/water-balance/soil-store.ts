@@ -19,12 +19,24 @@ export interface SoilStep {
  * @param input.isFrozen percolation 0, the excess runs off
  * @source method section 5
  */
-export function soilStep(input: { storeBeforeMm: number; infiltrationMm: number; petMm: number; capacityMm: number; law: SoilLaw; isFrozen: boolean }): SoilStep {
+export function soilStep(input: {
+  storeBeforeMm: number;
+  infiltrationMm: number;
+  petMm: number;
+  capacityMm: number;
+  law: SoilLaw;
+  isFrozen: boolean;
+}): SoilStep {
   const { storeBeforeMm, infiltrationMm, petMm, capacityMm, law, isFrozen } = input;
   const surplus = infiltrationMm - petMm;
   if (capacityMm === 0) {
     const drained = Math.max(0, surplus);
-    return { aetMm: Math.min(infiltrationMm, petMm), storeMm: 0, percolationMm: isFrozen ? 0 : drained, frozenExcessMm: isFrozen ? drained : 0 };
+    return {
+      aetMm: Math.min(infiltrationMm, petMm),
+      storeMm: 0,
+      percolationMm: isFrozen ? 0 : drained,
+      frozenExcessMm: isFrozen ? drained : 0,
+    };
   }
   if (surplus >= 0) {
     const excess = Math.max(0, storeBeforeMm + surplus - capacityMm);
@@ -37,8 +49,15 @@ export function soilStep(input: { storeBeforeMm: number; infiltrationMm: number;
   }
   const none = { percolationMm: 0, frozenExcessMm: 0 };
   if (law === 'exponential') {
-    return { aetMm: infiltrationMm + storeBeforeMm * -Math.expm1(surplus / capacityMm), storeMm: storeBeforeMm * Math.exp(surplus / capacityMm), ...none };
+    return {
+      aetMm: infiltrationMm + storeBeforeMm * -Math.expm1(surplus / capacityMm),
+      storeMm: storeBeforeMm * Math.exp(surplus / capacityMm),
+      ...none,
+    };
   }
-  const withdrawn = law === 'equal-availability' ? Math.min(storeBeforeMm, -surplus) : Math.min(storeBeforeMm, (-surplus * storeBeforeMm) / capacityMm);
+  const withdrawn =
+    law === 'equal-availability'
+      ? Math.min(storeBeforeMm, -surplus)
+      : Math.min(storeBeforeMm, (-surplus * storeBeforeMm) / capacityMm);
   return { aetMm: infiltrationMm + withdrawn, storeMm: storeBeforeMm - withdrawn, ...none };
 }

@@ -4,7 +4,8 @@ const radians = (degrees: number) => (degrees * Math.PI) / 180;
 const solarConstant = 0.082;
 
 /** Solar declination, rad, for a day of the year. Source: FAO-56 eq. 24. */
-export const declinationRad = (dayOfYear: number): number => 0.409 * Math.sin((2 * Math.PI * dayOfYear) / 365 - 1.39);
+export const declinationRad = (dayOfYear: number): number =>
+  0.409 * Math.sin((2 * Math.PI * dayOfYear) / 365 - 1.39);
 
 /**
  * Sunset hour angle, rad; 0 in polar night, π in polar day.
@@ -16,7 +17,8 @@ export function sunsetHourAngleRad(latitudeDeg: number, declination: number): nu
 }
 
 /** Daylight hours. Source: FAO-56 eq. 34. @example daylightHours(-20, declinationRad(246)) // 11.7 */
-export const daylightHours = (latitudeDeg: number, declination: number): number => (24 / Math.PI) * sunsetHourAngleRad(latitudeDeg, declination);
+export const daylightHours = (latitudeDeg: number, declination: number): number =>
+  (24 / Math.PI) * sunsetHourAngleRad(latitudeDeg, declination);
 
 /**
  * Extraterrestrial radiation, MJ/m²·d.
@@ -30,8 +32,11 @@ export function extraterrestrialRadiation(latitudeDeg: number, dayOfYear: number
   const sunset = sunsetHourAngleRad(latitudeDeg, declination);
   const latitude = radians(latitudeDeg);
   return (
-    ((24 * 60) / Math.PI) * solarConstant * inverseDistance *
-    (sunset * Math.sin(latitude) * Math.sin(declination) + Math.cos(latitude) * Math.cos(declination) * Math.sin(sunset))
+    ((24 * 60) / Math.PI) *
+    solarConstant *
+    inverseDistance *
+    (sunset * Math.sin(latitude) * Math.sin(declination) +
+      Math.cos(latitude) * Math.cos(declination) * Math.sin(sunset))
   );
 }
 

@@ -17,12 +17,19 @@ const cyclesMax = 1000;
  * @throws RangeError after 1000 cycles
  * @source Dourado-Neto et al. 2010, Scientia Agricola 67(1):87-95; method section 5
  */
-export function spinUpSoilStore(year: readonly SpinUpMonth[], capacityMm: number, law: SoilLaw): { storeMm: number; cycleCount: number } {
+export function spinUpSoilStore(
+  year: readonly SpinUpMonth[],
+  capacityMm: number,
+  law: SoilLaw,
+): { storeMm: number; cycleCount: number } {
   let storeMm = capacityMm;
   for (let cycleCount = 1; cycleCount <= cyclesMax; cycleCount += 1) {
     const before = storeMm;
-    for (const month of year) storeMm = soilStep({ storeBeforeMm: storeMm, ...month, capacityMm, law }).storeMm;
+    for (const month of year)
+      storeMm = soilStep({ storeBeforeMm: storeMm, ...month, capacityMm, law }).storeMm;
     if (Math.abs(storeMm - before) < repeatsWithinMm) return { storeMm, cycleCount };
   }
-  throw new RangeError(`The soil store did not repeat after ${cyclesMax} years of the first year's climate. Enter a starting store.`);
+  throw new RangeError(
+    `The soil store did not repeat after ${cyclesMax} years of the first year's climate. Enter a starting store.`,
+  );
 }

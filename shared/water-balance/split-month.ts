@@ -17,7 +17,11 @@ export interface MonthSpan {
   dayCount: number;
 }
 
-export const monthSpan = (month: Month): MonthSpan => ({ startOn: firstDay(month), endOn: firstDay(addMonths(month, 1)), dayCount: daysInMonth(month) });
+export const monthSpan = (month: Month): MonthSpan => ({
+  startOn: firstDay(month),
+  endOn: firstDay(addMonths(month, 1)),
+  dayCount: daysInMonth(month),
+});
 
 const later = (a: Day, b: Day) => (a > b ? a : b);
 const earlier = (a: Day, b: Day) => (a < b ? a : b);
@@ -31,7 +35,12 @@ export function splitMonth(plot: EnginePlot, { startOn, endOn, dayCount }: Month
     const toOn = earlier(earlier(period.toOn ?? farAway, plot.toOn ?? farAway), endOn);
     if (fromOn >= toOn) continue;
     const isWhole = fromOn === startOn && toOn === endOn;
-    steps.push({ period, fromOn, dayCount: isWhole ? dayCount : daysBetween(fromOn, toOn), startsPeriod: fromOn === period.fromOn });
+    steps.push({
+      period,
+      fromOn,
+      dayCount: isWhole ? dayCount : daysBetween(fromOn, toOn),
+      startsPeriod: fromOn === period.fromOn,
+    });
   }
   return steps;
 }

@@ -16,21 +16,29 @@ export interface SummedTerms {
  * Adds steps to volumes, m³. Flows add over plots and time; stores add over the plots at their last step.
  * The area is that of the ground at the end.
  */
-export function sumSteps(steps: readonly Pick<StepResult, 'plotId' | 'areaM2' | 'fromOn' | 'dayCount' | 'terms'>[]): SummedTerms {
+export function sumSteps(
+  steps: readonly Pick<StepResult, 'plotId' | 'areaM2' | 'fromOn' | 'dayCount' | 'terms'>[],
+): SummedTerms {
   const volumesM3 = Object.fromEntries(termNames.map((name) => [name, 0])) as Record<TermName, number>;
   const lastOfPlot = new Map<string, (typeof steps)[number]>();
   for (const step of steps) {
-    for (const name of termNames) if (!stateTerms.has(name)) volumesM3[name] += (step.terms[name] * step.areaM2) / 1000;
+    for (const name of termNames)
+      if (!stateTerms.has(name)) volumesM3[name] += (step.terms[name] * step.areaM2) / 1000;
     const known = lastOfPlot.get(step.plotId);
     if (!known || known.fromOn < step.fromOn) lastOfPlot.set(step.plotId, step);
   }
   const lastDay = Math.max(0, ...[...lastOfPlot.values()].map(endNumber));
   const standing = [...lastOfPlot.values()].filter((step) => endNumber(step) === lastDay);
-  for (const step of standing) for (const name of stateTerms) volumesM3[name] += (step.terms[name] * step.areaM2) / 1000;
+  for (const step of standing)
+    for (const name of stateTerms) volumesM3[name] += (step.terms[name] * step.areaM2) / 1000;
   return { areaM2: standing.reduce((sum, step) => sum + step.areaM2, 0), volumesM3 };
 }
 
-const endNumber = (step: { fromOn: string; dayCount: number }) => Number(step.fromOn.slice(0, 4)) * 372 + Number(step.fromOn.slice(5, 7)) * 31 + Number(step.fromOn.slice(8, 10)) + step.dayCount;
+const endNumber = (step: { fromOn: string; dayCount: number }) =>
+  Number(step.fromOn.slice(0, 4)) * 372 +
+  Number(step.fromOn.slice(5, 7)) * 31 +
+  Number(step.fromOn.slice(8, 10)) +
+  step.dayCount;
 
 /** Steps grouped by cell and month, summed. Key: `cellId month`. */
 export function sumByCellAndMonth(steps: readonly StepResult[]): Map<string, SummedTerms> {

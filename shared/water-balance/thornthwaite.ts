@@ -11,7 +11,8 @@ export const monthlyHeatIndex = (tMeanC: number): number => (tMeanC > 0 ? (tMean
  * @param monthlyMeansC twelve means, °C
  * @source Thornthwaite 1948
  */
-export const annualHeatIndex = (monthlyMeansC: readonly number[]): number => monthlyMeansC.reduce((sum, mean) => sum + monthlyHeatIndex(mean), 0);
+export const annualHeatIndex = (monthlyMeansC: readonly number[]): number =>
+  monthlyMeansC.reduce((sum, mean) => sum + monthlyHeatIndex(mean), 0);
 
 /** Exponent a of Thornthwaite's law, constants at full length. Source: Thornthwaite 1948. */
 export const thornthwaiteExponent = (heatIndex: number): number =>
@@ -34,6 +35,16 @@ export function thornthwaiteUnadjustedMm(tMeanC: number, heatIndex: number, hotM
 }
 
 /** PET of a month, mm: the unadjusted value × daylight/12 × days/30. Source: Thornthwaite 1948. */
-export function thornthwaiteMm(input: { tMeanC: number; heatIndex: number; daylightHours: number; dayCount: number; hotMonths: HotMonths }): number {
-  return thornthwaiteUnadjustedMm(input.tMeanC, input.heatIndex, input.hotMonths) * (input.daylightHours / 12) * (input.dayCount / 30);
+export function thornthwaiteMm(input: {
+  tMeanC: number;
+  heatIndex: number;
+  daylightHours: number;
+  dayCount: number;
+  hotMonths: HotMonths;
+}): number {
+  return (
+    thornthwaiteUnadjustedMm(input.tMeanC, input.heatIndex, input.hotMonths) *
+    (input.daylightHours / 12) *
+    (input.dayCount / 30)
+  );
 }

@@ -26,10 +26,21 @@ export interface TryBalanceInputs {
 }
 
 /** Twelve months of one soil cover with every term; the same laws as a run, nothing stored. */
-export function tryBalance(input: TryBalanceInputs): { months: TryBalanceMonth[]; startMm: number; cycleCount: number } {
+export function tryBalance(input: TryBalanceInputs): {
+  months: TryBalanceMonth[];
+  startMm: number;
+  cycleCount: number;
+} {
   const { precipitationMm, petMm, runoffCoefficient, capacityMm, soilLaw } = input;
-  const year = precipitationMm.map((rain, index) => ({ infiltrationMm: rain * (1 - runoffCoefficient[index]!), petMm: petMm[index]!, isFrozen: false }));
-  const spun = input.start === 'spin-up' ? spinUpSoilStore(year, capacityMm, soilLaw) : { storeMm: Math.min(capacityMm, input.start), cycleCount: 0 };
+  const year = precipitationMm.map((rain, index) => ({
+    infiltrationMm: rain * (1 - runoffCoefficient[index]!),
+    petMm: petMm[index]!,
+    isFrozen: false,
+  }));
+  const spun =
+    input.start === 'spin-up'
+      ? spinUpSoilStore(year, capacityMm, soilLaw)
+      : { storeMm: Math.min(capacityMm, input.start), cycleCount: 0 };
   let before = spun.storeMm;
   const months = year.map((month, index): TryBalanceMonth => {
     const step = soilStep({ storeBeforeMm: before, ...month, capacityMm, law: soilLaw });
@@ -37,11 +48,17 @@ export function tryBalance(input: TryBalanceInputs): { months: TryBalanceMonth[]
     const dStoreMm = step.storeMm - before;
     before = step.storeMm;
     return {
-      runoffMm, infiltrationMm: month.infiltrationMm, surplusMm: month.infiltrationMm - month.petMm, apwlMm: step.storeMm > 0 && capacityMm > 0 ? capacityMm * Math.log(step.storeMm / capacityMm) : null,
-      storeMm: step.storeMm, dStoreMm, aetMm: step.aetMm, deficitMm: month.petMm - step.aetMm, percolationMm: step.percolationMm,
+      runoffMm,
+      infiltrationMm: month.infiltrationMm,
+      surplusMm: month.infiltrationMm - month.petMm,
+      apwlMm: step.storeMm > 0 && capacityMm > 0 ? capacityMm * Math.log(step.storeMm / capacityMm) : null,
+      storeMm: step.storeMm,
+      dStoreMm,
+      aetMm: step.aetMm,
+      deficitMm: month.petMm - step.aetMm,
+      percolationMm: step.percolationMm,
       residualMm: precipitationMm[index]! - runoffMm - step.aetMm - dStoreMm - step.percolationMm,
     };
   });
   return { months, startMm: spun.storeMm, cycleCount: spun.cycleCount };
 }
-

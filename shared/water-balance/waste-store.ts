@@ -3,7 +3,17 @@
  * Moisture by volume = wet-weight fraction × bulk density / (1 t/m³). Negative means free moisture.
  * @source method section 7; field capacity 20–35 % by volume, Fenn et al. 1975 Table 2 (from memory)
  */
-export function placedWasteDeficitM3({ massT, bulkDensityTPerM3, moistureFraction, fieldCapacityFraction }: { massT: number; bulkDensityTPerM3: number; moistureFraction: number; fieldCapacityFraction: number }): number {
+export function placedWasteDeficitM3({
+  massT,
+  bulkDensityTPerM3,
+  moistureFraction,
+  fieldCapacityFraction,
+}: {
+  massT: number;
+  bulkDensityTPerM3: number;
+  moistureFraction: number;
+  fieldCapacityFraction: number;
+}): number {
   return (massT / bulkDensityTPerM3) * (fieldCapacityFraction - moistureFraction * bulkDensityTPerM3);
 }
 
@@ -19,7 +29,17 @@ export interface ReservoirStep {
  * @source method section 7; Chow, Maidment & Mays 1988 (definition, from memory)
  * @example reservoirStep({ storeBeforeMm: 100, inflowMm: 0, recessionPerMonth: 0.5, durationMonths: 1 }).storeMm // 60.65
  */
-export function reservoirStep({ storeBeforeMm, inflowMm, recessionPerMonth, durationMonths }: { storeBeforeMm: number; inflowMm: number; recessionPerMonth: number; durationMonths: number }): ReservoirStep {
+export function reservoirStep({
+  storeBeforeMm,
+  inflowMm,
+  recessionPerMonth,
+  durationMonths,
+}: {
+  storeBeforeMm: number;
+  inflowMm: number;
+  recessionPerMonth: number;
+  durationMonths: number;
+}): ReservoirStep {
   const exponent = recessionPerMonth * durationMonths;
   const lost = -Math.expm1(-exponent);
   const kept = exponent === 0 ? 1 : lost / exponent;

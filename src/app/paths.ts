@@ -2,7 +2,18 @@ import { addMonths, quarterOf } from '#shared/calendar/month.ts';
 import { lastDay } from '#shared/calendar/day.ts';
 import type { Permission } from '#shared/permissions.ts';
 
-export type Area = 'month' | 'round' | 'balance' | 'compare' | 'ledger' | 'lab' | 'limits' | 'report' | 'site' | 'trail' | 'method';
+export type Area =
+  | 'month'
+  | 'round'
+  | 'balance'
+  | 'compare'
+  | 'ledger'
+  | 'lab'
+  | 'limits'
+  | 'report'
+  | 'site'
+  | 'trail'
+  | 'method';
 
 /** The areas in the order of the work; a role sees those it can read. */
 export const areas: { area: Area; name: string; permission: Permission }[] = [

@@ -18,9 +18,15 @@ export function Panel({ title, isOpen, onClose, children }: PanelProps) {
         <Radix.Overlay className="fixed inset-0 bg-ink/40 z-40 no-print" />
         <Radix.Content
           aria-describedby={undefined}
-          onOpenAutoFocus={() => { opener.current = document.activeElement as HTMLElement | null; }}
-          onCloseAutoFocus={(event) => { event.preventDefault(); opener.current?.focus(); }}
-          className="fixed z-50 inset-y-0 right-0 w-full max-w-[600px] bg-surface border-l border-edge overflow-y-auto p-5 sm:p-6">
+          onOpenAutoFocus={() => {
+            opener.current = document.activeElement as HTMLElement | null;
+          }}
+          onCloseAutoFocus={(event) => {
+            event.preventDefault();
+            opener.current?.focus();
+          }}
+          className="fixed z-50 inset-y-0 right-0 w-full max-w-[600px] bg-surface border-l border-edge overflow-y-auto p-5 sm:p-6"
+        >
           <div className="flex items-start gap-4 mb-4">
             <Radix.Title className="text-lg font-semibold">{title}</Radix.Title>
             <Radix.Close className="btn btn-second ml-auto gap-2">

@@ -27,11 +27,16 @@ export function FileUpload({ siteId, path, label, hint, fields, onDone }: FileUp
     if ('missing' in ready) return setProblem(ready.missing);
     if (!file) return setProblem('Choose a file first.');
     if (file.size === 0) return setProblem(`${file.name} is empty.`);
-    if (file.size > bytesMax) return setProblem(`${file.name} is larger than 10 MB. Split it, or save it without pictures.`);
+    if (file.size > bytesMax)
+      return setProblem(`${file.name} is larger than 10 MB. Split it, or save it without pictures.`);
     setProblem(null);
     setIsSending(true);
     try {
-      const answer = await api.upload<{ id: string }>(`/sites/${siteId}${path}`, { id: newId(), ...ready.values }, file);
+      const answer = await api.upload<{ id: string }>(
+        `/sites/${siteId}${path}`,
+        { id: newId(), ...ready.values },
+        file,
+      );
       await client.invalidateQueries({ queryKey: ['site', siteId] });
       onDone(answer);
     } catch (error) {
@@ -44,12 +49,31 @@ export function FileUpload({ siteId, path, label, hint, fields, onDone }: FileUp
   return (
     <div className="grid gap-3">
       <div>
-        <label className="label" htmlFor={id}>{label}</label>
-        <p className="hint mb-1" id={`${id}-hint`}>{hint}</p>
-        <input id={id} type="file" accept=".xlsx,.csv,.txt" className="input" aria-describedby={`${id}-hint`} onChange={(event) => setFile(event.target.files?.[0] ?? null)} />
+        <label className="label" htmlFor={id}>
+          {label}
+        </label>
+        <p className="hint mb-1" id={`${id}-hint`}>
+          {hint}
+        </p>
+        <input
+          id={id}
+          type="file"
+          accept=".xlsx,.csv,.txt"
+          className="input"
+          aria-describedby={`${id}-hint`}
+          onChange={(event) => setFile(event.target.files?.[0] ?? null)}
+        />
       </div>
-      {problem && <p role="alert" className="error-text">⚠ {problem}</p>}
-      <p><button type="button" className="btn" disabled={isSending} onClick={() => void handleSend()}>{isSending ? 'Reading the file …' : 'Read the file'}</button></p>
+      {problem && (
+        <p role="alert" className="error-text">
+          ⚠ {problem}
+        </p>
+      )}
+      <p>
+        <button type="button" className="btn" disabled={isSending} onClick={() => void handleSend()}>
+          {isSending ? 'Reading the file …' : 'Read the file'}
+        </button>
+      </p>
     </div>
   );
 }

@@ -25,8 +25,21 @@ const flatten = (errors: Record<string, unknown>, prefix = ''): { name: string; 
   });
 
 /** A form whose errors stand at the top and at their fields, all at once; what was typed stays. */
-export function RecordForm<T extends FieldValues>({ schema, defaults, submitLabel, onSubmit, onDone, children }: RecordFormProps<T>) {
-  const form = useForm<T>({ resolver: zodResolver(schema as never) as never, defaultValues: defaults, mode: 'onSubmit', reValidateMode: 'onSubmit', shouldFocusError: false });
+export function RecordForm<T extends FieldValues>({
+  schema,
+  defaults,
+  submitLabel,
+  onSubmit,
+  onDone,
+  children,
+}: RecordFormProps<T>) {
+  const form = useForm<T>({
+    resolver: zodResolver(schema as never) as never,
+    defaultValues: defaults,
+    mode: 'onSubmit',
+    reValidateMode: 'onSubmit',
+    shouldFocusError: false,
+  });
   const summary = useRef<HTMLDivElement>(null);
   const { errors, isSubmitting, submitCount } = form.formState;
   const found = flatten(errors as Record<string, unknown>);
@@ -41,7 +54,8 @@ export function RecordForm<T extends FieldValues>({ schema, defaults, submitLabe
     } catch (error) {
       if (!(error instanceof ApiProblem)) throw error;
       const fields = error.document.errors ?? [];
-      for (const field of fields) form.setError(field.pointer.slice(1).replaceAll('/', '.') as never, { message: field.detail });
+      for (const field of fields)
+        form.setError(field.pointer.slice(1).replaceAll('/', '.') as never, { message: field.detail });
       if (!fields.length) form.setError('root.server' as never, { message: error.document.detail });
     }
   });
@@ -50,17 +64,29 @@ export function RecordForm<T extends FieldValues>({ schema, defaults, submitLabe
       <form noValidate onSubmit={(event) => void submit(event)} className="grid gap-5 max-w-[66ch]">
         {found.length > 0 && (
           <div ref={summary} tabIndex={-1} role="alert" className="box box-error">
-            <p className="font-semibold">{found.length === 1 ? '1 answer needs another look' : `${found.length} answers need another look`}</p>
+            <p className="font-semibold">
+              {found.length === 1
+                ? '1 answer needs another look'
+                : `${found.length} answers need another look`}
+            </p>
             <ul className="list-disc pl-5 mt-1">
               {found.map((one) => (
-                <li key={one.name}>{one.name.startsWith('root') ? one.message : <a href={`#field-${one.name}`}>{one.message}</a>}</li>
+                <li key={one.name}>
+                  {one.name.startsWith('root') ? (
+                    one.message
+                  ) : (
+                    <a href={`#field-${one.name}`}>{one.message}</a>
+                  )}
+                </li>
               ))}
             </ul>
           </div>
         )}
         {children}
         <div>
-          <button type="submit" className="btn" disabled={isSubmitting}>{submitLabel}</button>
+          <button type="submit" className="btn" disabled={isSubmitting}>
+            {submitLabel}
+          </button>
         </div>
       </form>
     </FormProvider>
@@ -84,16 +110,38 @@ function useField(name: string) {
   return { register, error, hintId, errorId };
 }
 
-function FieldFrame({ name, label, hint, isOptional, error, hintId, errorId, children }: FieldProps & { error: { message?: string | undefined } | undefined; hintId: string; errorId: string; children: ReactNode }) {
+function FieldFrame({
+  name,
+  label,
+  hint,
+  isOptional,
+  error,
+  hintId,
+  errorId,
+  children,
+}: FieldProps & {
+  error: { message?: string | undefined } | undefined;
+  hintId: string;
+  errorId: string;
+  children: ReactNode;
+}) {
   return (
     <div>
       <label className="label" htmlFor={`field-${name}`}>
         {label}
         {isOptional && <span className="text-muted font-normal"> (optional)</span>}
       </label>
-      {hint && <p className="hint mb-1" id={hintId}>{hint}</p>}
+      {hint && (
+        <p className="hint mb-1" id={hintId}>
+          {hint}
+        </p>
+      )}
       {children}
-      {error?.message && <p className="error-text mt-1" id={errorId}>⚠ {error.message}</p>}
+      {error?.message && (
+        <p className="error-text mt-1" id={errorId}>
+          ⚠ {error.message}
+        </p>
+      )}
     </div>
   );
 }
@@ -105,10 +153,19 @@ interface TextFieldProps extends FieldProps {
   isLong?: boolean;
 }
 
-export function TextField({ inputMode = 'text', type = 'text', autoComplete = 'off', isLong, ...props }: TextFieldProps) {
+export function TextField({
+  inputMode = 'text',
+  type = 'text',
+  autoComplete = 'off',
+  isLong,
+  ...props
+}: TextFieldProps) {
   const { register, error, hintId, errorId } = useField(props.name);
   const common = {
-    id: `field-${props.name}`, className: 'input', 'aria-invalid': Boolean(error), 'aria-describedby': [props.hint ? hintId : '', error ? errorId : ''].join(' ').trim() || undefined,
+    id: `field-${props.name}`,
+    className: 'input',
+    'aria-invalid': Boolean(error),
+    'aria-describedby': [props.hint ? hintId : '', error ? errorId : ''].join(' ').trim() || undefined,
   };
   return (
     <FieldFrame {...props} error={error} hintId={hintId} errorId={errorId}>
@@ -116,22 +173,43 @@ export function TextField({ inputMode = 'text', type = 'text', autoComplete = 'o
         <textarea {...common} rows={3} {...register(props.name)} />
       ) : (
         <span className="flex items-center gap-2">
-          <input {...common} type={type} inputMode={inputMode} autoComplete={autoComplete} {...register(props.name)} />
-          {props.unit && <span aria-hidden className="text-muted whitespace-nowrap">{props.unit}</span>}
+          <input
+            {...common}
+            type={type}
+            inputMode={inputMode}
+            autoComplete={autoComplete}
+            {...register(props.name)}
+          />
+          {props.unit && (
+            <span aria-hidden className="text-muted whitespace-nowrap">
+              {props.unit}
+            </span>
+          )}
         </span>
       )}
     </FieldFrame>
   );
 }
 
-export function ChoiceField({ options, ...props }: FieldProps & { options: { value: string; label: string }[] }) {
+export function ChoiceField({
+  options,
+  ...props
+}: FieldProps & { options: { value: string; label: string }[] }) {
   const { register, error, hintId, errorId } = useField(props.name);
   return (
     <FieldFrame {...props} error={error} hintId={hintId} errorId={errorId}>
-      <select id={`field-${props.name}`} className="input" aria-invalid={Boolean(error)} aria-describedby={[props.hint ? hintId : '', error ? errorId : ''].join(' ').trim() || undefined} {...register(props.name)}>
+      <select
+        id={`field-${props.name}`}
+        className="input"
+        aria-invalid={Boolean(error)}
+        aria-describedby={[props.hint ? hintId : '', error ? errorId : ''].join(' ').trim() || undefined}
+        {...register(props.name)}
+      >
         <option value="">Choose …</option>
         {options.map((option) => (
-          <option key={option.value} value={option.value}>{option.label}</option>
+          <option key={option.value} value={option.value}>
+            {option.label}
+          </option>
         ))}
       </select>
     </FieldFrame>
@@ -143,13 +221,24 @@ export function CheckField({ name, label, hint }: FieldProps) {
   return (
     <div>
       <label className="flex gap-3 items-start min-h-12 py-2" htmlFor={`field-${name}`}>
-        <input id={`field-${name}`} type="checkbox" className="size-6 mt-0.5" aria-invalid={Boolean(error)} aria-describedby={error ? errorId : undefined} {...register(name)} />
+        <input
+          id={`field-${name}`}
+          type="checkbox"
+          className="size-6 mt-0.5"
+          aria-invalid={Boolean(error)}
+          aria-describedby={error ? errorId : undefined}
+          {...register(name)}
+        />
         <span>
           {label}
           {hint && <span className="hint block">{hint}</span>}
         </span>
       </label>
-      {error?.message && <p className="error-text" id={errorId}>⚠ {String(error.message)}</p>}
+      {error?.message && (
+        <p className="error-text" id={errorId}>
+          ⚠ {String(error.message)}
+        </p>
+      )}
     </div>
   );
 }

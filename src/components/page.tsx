@@ -15,13 +15,16 @@ export function PageHead({ title, sentence, crumb }: PageHeadProps) {
   useEffect(() => {
     // The first page of a visit keeps the browser's own order: the way to the content comes first.
     if (key === 'default') return;
-    if (document.activeElement === document.body || document.activeElement?.closest('nav')) heading.current?.focus();
+    if (document.activeElement === document.body || document.activeElement?.closest('nav'))
+      heading.current?.focus();
   }, [pathname, key]);
   return (
     <div className="mb-6">
       <title>{`${title} – Tallyweir`}</title>
       {crumb && <p className="text-sm text-muted">{crumb}</p>}
-      <h1 ref={heading} tabIndex={-1}>{title}</h1>
+      <h1 ref={heading} tabIndex={-1}>
+        {title}
+      </h1>
       {sentence && <p className="mt-1 max-w-[96ch]">{sentence}</p>}
     </div>
   );

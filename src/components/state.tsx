@@ -21,7 +21,9 @@ export function Failed({ error, onRetry }: { error: unknown; onRetry?: () => voi
       <p>{problem?.detail ?? 'Nothing was lost. Load the page again.'}</p>
       {onRetry && (
         <p>
-          <button type="button" className="btn btn-second" onClick={onRetry}>Try again</button>
+          <button type="button" className="btn btn-second" onClick={onRetry}>
+            Try again
+          </button>
         </p>
       )}
     </div>
@@ -29,7 +31,13 @@ export function Failed({ error, onRetry }: { error: unknown; onRetry?: () => voi
 }
 
 /** The four states of a view: loading, failed with a retry, data; empty is the page's own. */
-export function Viewed<T>({ query, children }: { query: UseQueryResult<T>; children: (view: T) => ReactNode }) {
+export function Viewed<T>({
+  query,
+  children,
+}: {
+  query: UseQueryResult<T>;
+  children: (view: T) => ReactNode;
+}) {
   if (query.isPending) return <Loading />;
   if (query.isError) return <Failed error={query.error} onRetry={() => void query.refetch()} />;
   return <>{children(query.data)}</>;

@@ -8,5 +8,9 @@ interface UploadStateProps {
 export function UploadState({ upload }: UploadStateProps) {
   if (upload.undoneAt) return <Word look="open">Undone</Word>;
   if (!upload.confirmedAt) return <Word look="ask">Not written yet</Word>;
-  return upload.counts.held ? <Word look="ask">{`Written, ${upload.counts.held} held`}</Word> : <Word look="good">Written</Word>;
+  return upload.counts.held ? (
+    <Word look="ask">{`Written, ${upload.counts.held} held`}</Word>
+  ) : (
+    <Word look="good">Written</Word>
+  );
 }

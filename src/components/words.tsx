@@ -21,19 +21,34 @@ export function Word({ look, children }: { look: Look; children: string }) {
   );
 }
 
-const verdictLooks: Record<string, Look> = { pass: 'good', exceed: 'bad', incomplete: 'ask', 'cannot be judged': 'note', 'no discharge': 'open', 'not required': 'open' };
+const verdictLooks: Record<string, Look> = {
+  pass: 'good',
+  exceed: 'bad',
+  incomplete: 'ask',
+  'cannot be judged': 'note',
+  'no discharge': 'open',
+  'not required': 'open',
+};
 
 export function VerdictWord({ word }: { word: string }) {
   return <Word look={verdictLooks[word] ?? 'open'}>{word[0]!.toUpperCase() + word.slice(1)}</Word>;
 }
 
-const basisShapes: Record<string, string> = { measured: '●', apportioned: '◐', estimated: '◌', allocated: '⊕', calculated: '□' };
+const basisShapes: Record<string, string> = {
+  measured: '●',
+  apportioned: '◐',
+  estimated: '◌',
+  allocated: '⊕',
+  calculated: '□',
+};
 
 /** Basis of a number: filled measured, half apportioned, dashed estimated, split allocated, square calculated. */
 export function Basis({ basis }: { basis: string }) {
   return (
     <span className="whitespace-nowrap">
-      <span aria-hidden className="mr-1.5">{basisShapes[basis] ?? '○'}</span>
+      <span aria-hidden className="mr-1.5">
+        {basisShapes[basis] ?? '○'}
+      </span>
       {basis}
     </span>
   );

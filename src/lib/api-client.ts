@@ -16,7 +16,10 @@ export class ApiProblem extends Error {
 }
 
 const unreachable: ProblemDocument = {
-  type: '/problems/unreachable', title: 'The server cannot be reached', status: 0, detail: 'The server cannot be reached. What you entered is still here; try again when there is a signal.',
+  type: '/problems/unreachable',
+  title: 'The server cannot be reached',
+  status: 0,
+  detail: 'The server cannot be reached. What you entered is still here; try again when there is a signal.',
 };
 
 async function request<T>(method: string, path: string, init: RequestInit): Promise<T> {
@@ -38,8 +41,20 @@ async function request<T>(method: string, path: string, init: RequestInit): Prom
 export const api = {
   get: <T>(path: string, signal?: AbortSignal) => request<T>('GET', path, signal ? { signal } : {}),
   /** A write; the key makes a repeat harmless. */
-  send: <T>(method: 'POST' | 'PUT', path: string, body: unknown, options: { key?: string; headers?: Record<string, string> } = {}) =>
-    request<T>(method, path, { body: JSON.stringify(body), headers: { 'content-type': 'application/json', 'idempotency-key': options.key ?? newId(), ...options.headers } }),
+  send: <T>(
+    method: 'POST' | 'PUT',
+    path: string,
+    body: unknown,
+    options: { key?: string; headers?: Record<string, string> } = {},
+  ) =>
+    request<T>(method, path, {
+      body: JSON.stringify(body),
+      headers: {
+        'content-type': 'application/json',
+        'idempotency-key': options.key ?? newId(),
+        ...options.headers,
+      },
+    }),
   upload: <T>(path: string, fields: Record<string, string>, file: File) => {
     const form = new FormData();
     for (const [name, value] of Object.entries(fields)) form.set(name, value);

@@ -33,16 +33,41 @@ export const volumeUnit = (units: 'metric' | 'us'): string => (units === 'us' ? 
 
 /** An instant on the reader's clock, with its zone. */
 export const formatInstant = (iso: string): string =>
-  new Intl.DateTimeFormat('en-GB', { day: 'numeric', month: 'short', year: 'numeric', hour: '2-digit', minute: '2-digit', timeZoneName: 'short' }).format(new Date(iso));
+  new Intl.DateTimeFormat('en-GB', {
+    day: 'numeric',
+    month: 'short',
+    year: 'numeric',
+    hour: '2-digit',
+    minute: '2-digit',
+    timeZoneName: 'short',
+  }).format(new Date(iso));
 
 /** A wall-clock text 'YYYY-MM-DDTHH:MM' as a reader says it. */
-export const formatLocal = (local: string): string => (local.length > 10 ? `${Number(local.slice(8, 10))} ${monthName(local.slice(0, 7)).slice(0, 3)} ${local.slice(11, 16)}` : `${Number(local.slice(8, 10))} ${monthName(local.slice(0, 7)).slice(0, 3)}`);
+export const formatLocal = (local: string): string =>
+  local.length > 10
+    ? `${Number(local.slice(8, 10))} ${monthName(local.slice(0, 7)).slice(0, 3)} ${local.slice(11, 16)}`
+    : `${Number(local.slice(8, 10))} ${monthName(local.slice(0, 7)).slice(0, 3)}`;
 
 /** Result of a laboratory: below detection stays below; digits as printed. */
-export function formatResult(result: { comparator: string; value: string | null; missingReason?: string | null; printedDecimals?: number | null }): string {
+export function formatResult(result: {
+  comparator: string;
+  value: string | null;
+  missingReason?: string | null;
+  printedDecimals?: number | null;
+}): string {
   if (result.value === null) return result.missingReason ?? 'no value';
   const number = Number(result.value);
-  const text = result.printedDecimals === null || result.printedDecimals === undefined ? String(number) : number.toFixed(Math.max(result.printedDecimals, (String(number).split('.')[1] ?? '').length));
-  const prefix = result.comparator === '<' ? 'below ' : result.comparator === '>' ? 'above ' : result.comparator === '~' ? 'about ' : '';
+  const text =
+    result.printedDecimals === null || result.printedDecimals === undefined
+      ? String(number)
+      : number.toFixed(Math.max(result.printedDecimals, (String(number).split('.')[1] ?? '').length));
+  const prefix =
+    result.comparator === '<'
+      ? 'below '
+      : result.comparator === '>'
+        ? 'above '
+        : result.comparator === '~'
+          ? 'about '
+          : '';
   return prefix + text;
 }

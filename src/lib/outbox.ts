@@ -21,7 +21,10 @@ interface OutboxSchema extends DBSchema {
   items: { key: string; value: OutboxItem };
 }
 
-const open = () => openDB<OutboxSchema>('tallyweir-outbox', 1, { upgrade: (database) => void database.createObjectStore('items', { keyPath: 'id' }) });
+const open = () =>
+  openDB<OutboxSchema>('tallyweir-outbox', 1, {
+    upgrade: (database) => void database.createObjectStore('items', { keyPath: 'id' }),
+  });
 
 const listeners = new Set<() => void>();
 const tell = () => listeners.forEach((listener) => listener());
@@ -51,7 +54,8 @@ export async function dropFromOutbox(id: string): Promise<void> {
   tell();
 }
 
-export type SendResult = { kind: 'sent'; answer: unknown } | { kind: 'waiting' } | { kind: 'needs-answer'; problem: ApiProblem };
+export type SendResult =
+  { kind: 'sent'; answer: unknown } | { kind: 'waiting' } | { kind: 'needs-answer'; problem: ApiProblem };
 
 /** Sends one entry. Only an answer from the server ends its wait: an unreachable or busy server leaves it here. */
 export async function sendFromOutbox(item: OutboxItem): Promise<SendResult> {
@@ -62,7 +66,13 @@ export async function sendFromOutbox(item: OutboxItem): Promise<SendResult> {
   } catch (error) {
     if (!(error instanceof ApiProblem)) throw error;
     const { status } = error.document;
-    if (status === 0 || status >= 500 || status === 401 || error.kind === 'still-being-written' || error.kind === 'busy') {
+    if (
+      status === 0 ||
+      status >= 500 ||
+      status === 401 ||
+      error.kind === 'still-being-written' ||
+      error.kind === 'busy'
+    ) {
       tell();
       return { kind: 'waiting' };
     }

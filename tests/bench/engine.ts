@@ -28,15 +28,38 @@ function bareLoop(rain: Float64Array, pet: Float64Array, out: Float64Array): voi
 
 /** Nanoseconds of one plot and month, with its 27 terms, closure checks and working kept, beside the bare loop. */
 export async function benchEngine(): Promise<Figure[]> {
-  const climate = months.map((month, index) => climateMonth(month, { precipitationMm: 60 + 40 * Math.sin(index), petMm: 50 + 45 * Math.sin(index / 2) }));
-  const plots = Array.from({ length: plotCount }, (_, index) => plot({ id: `plot ${index}`, fromOn: '1980-01-01', periods: [{ coverTypeId: 'open', fromOn: '1980-01-01', toOn: null, initialSoilStoreMm: 55 }] }));
-  const input = engineInput({ climate, covers: { open: cover({ availableWaterMm: 110, runoffCoefficientWet: 0.2, runoffCoefficientDry: 0.2 }) }, cells: [cell({ plots })], parameters: { recessionPerMonth: 0.5 } });
+  const climate = months.map((month, index) =>
+    climateMonth(month, { precipitationMm: 60 + 40 * Math.sin(index), petMm: 50 + 45 * Math.sin(index / 2) }),
+  );
+  const plots = Array.from({ length: plotCount }, (_, index) =>
+    plot({
+      id: `plot ${index}`,
+      fromOn: '1980-01-01',
+      periods: [{ coverTypeId: 'open', fromOn: '1980-01-01', toOn: null, initialSoilStoreMm: 55 }],
+    }),
+  );
+  const input = engineInput({
+    climate,
+    covers: { open: cover({ availableWaterMm: 110, runoffCoefficientWet: 0.2, runoffCoefficientDry: 0.2 }) },
+    cells: [cell({ plots })],
+    parameters: { recessionPerMonth: 0.5 },
+  });
   const rain = Float64Array.from(climate.map((row) => row.precipitationMm));
   const pet = Float64Array.from(climate.map((row) => row.petMm!));
   const out = new Float64Array(plotCount * months.length);
   const steps = plotCount * months.length;
   const repeats = 200;
   const engine = await timesMs(7, () => runWaterBalance(input));
-  const bare = await timesMs(7, () => { for (let index = 0; index < repeats; index += 1) bareLoop(rain, pet, out); });
-  return [{ what: `engine, one plot and month (${plotCount} plots × ${months.length} months)`, value: (median(engine) * 1e6) / steps, unit: 'ns', bare: 'typed-array loop of the same arithmetic', bareValue: (median(bare) * 1e6) / steps / repeats }];
+  const bare = await timesMs(7, () => {
+    for (let index = 0; index < repeats; index += 1) bareLoop(rain, pet, out);
+  });
+  return [
+    {
+      what: `engine, one plot and month (${plotCount} plots × ${months.length} months)`,
+      value: (median(engine) * 1e6) / steps,
+      unit: 'ns',
+      bare: 'typed-array loop of the same arithmetic',
+      bareValue: (median(bare) * 1e6) / steps / repeats,
+    },
+  ];
 }

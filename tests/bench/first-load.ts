@@ -8,7 +8,10 @@ const slowedTimes = 4;
 export async function benchFirstLoad(world: World): Promise<string[]> {
   const cookie = await world.cookieOf('operator');
   const [name, value] = cookie.split('=') as [string, string];
-  const browser = await chromium.launch({ executablePath: process.env['CHROMIUM']!, args: ['--no-sandbox', '--disable-gpu', '--disable-background-networking'] });
+  const browser = await chromium.launch({
+    executablePath: process.env['CHROMIUM']!,
+    args: ['--no-sandbox', '--disable-gpu', '--disable-background-networking'],
+  });
   const runs: { bytes: number; ms: number }[] = [];
   for (let run = 0; run < 6; run += 1) {
     const context = await browser.newContext({ viewport: { width: 390, height: 844 } });
@@ -18,7 +21,9 @@ export async function benchFirstLoad(world: World): Promise<string[]> {
     await session.send('Network.enable');
     await session.send('Emulation.setCPUThrottlingRate', { rate: slowedTimes });
     let bytes = 0;
-    session.on('Network.loadingFinished', (event) => { bytes += event.encodedDataLength; });
+    session.on('Network.loadingFinished', (event) => {
+      bytes += event.encodedDataLength;
+    });
     const start = performance.now();
     await page.goto(`${world.base}/sites/varrow-hill/round/2026-03-18`);
     await page.locator('ol > li button').first().waitFor();
@@ -28,5 +33,7 @@ export async function benchFirstLoad(world: World): Promise<string[]> {
     await context.close();
   }
   await browser.close();
-  return [`First load of Round, cold cache, processor slowed ${slowedTimes} times: ${(median(runs.map((one) => one.bytes)) / 1000).toFixed(0)} kB over the wire, usable after ${median(runs.map((one) => one.ms)).toFixed(0)} ms (median of ${runs.length}).`];
+  return [
+    `First load of Round, cold cache, processor slowed ${slowedTimes} times: ${(median(runs.map((one) => one.bytes)) / 1000).toFixed(0)} kB over the wire, usable after ${median(runs.map((one) => one.ms)).toFixed(0)} ms (median of ${runs.length}).`,
+  ];
 }

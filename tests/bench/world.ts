@@ -34,7 +34,17 @@ export async function openWorld(): Promise<World> {
   const log = pino({ level: 'silent' });
   const pool = createPool(urls.appUrl, () => undefined);
   const boss = await startQueue(urls.appUrl, log);
-  const deps: Dependencies = { database: createDatabase(pool), files: createLocalFileStore(files), mail: createMailQueue(boss), log, sessionSecret: new Uint8Array(32).fill(3), now: () => demoInstant, newId: () => crypto.randomUUID(), publicUrl: 'http://127.0.0.1', isDemo: true };
+  const deps: Dependencies = {
+    database: createDatabase(pool),
+    files: createLocalFileStore(files),
+    mail: createMailQueue(boss),
+    log,
+    sessionSecret: new Uint8Array(32).fill(3),
+    now: () => demoInstant,
+    newId: () => crypto.randomUUID(),
+    publicUrl: 'http://127.0.0.1',
+    isDemo: true,
+  };
   await loadDemo(deps);
   const server: Server = createApp(deps).listen(0, '127.0.0.1');
   await new Promise((resolve) => server.once('listening', resolve));
@@ -43,12 +53,20 @@ export async function openWorld(): Promise<World> {
   adminOfDatabase.pathname = '/bench';
   const owner = new pg.Pool({ connectionString: adminOfDatabase.toString(), max: 10 });
   const cookieOf = async (role: Role) => {
-    const answer = await fetch(`${base}/api/v1/demo-sign-in`, { method: 'POST', headers: { 'content-type': 'application/json' }, body: JSON.stringify({ email: demoPeople.find((one) => one.key === role)!.email }) });
+    const answer = await fetch(`${base}/api/v1/demo-sign-in`, {
+      method: 'POST',
+      headers: { 'content-type': 'application/json' },
+      body: JSON.stringify({ email: demoPeople.find((one) => one.key === role)!.email }),
+    });
     return answer.headers.get('set-cookie')!.split(';')[0]!;
   };
   const siteId = (await owner.query<{ id: string }>('select id from sites')).rows[0]!.id;
   return {
-    base, deps, owner, siteId, cookieOf,
+    base,
+    deps,
+    owner,
+    siteId,
+    cookieOf,
     close: async () => {
       server.closeAllConnections();
       await new Promise((resolve) => server.close(resolve));

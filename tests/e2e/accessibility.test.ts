@@ -1,11 +1,30 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Role } from '#shared/permissions.ts';
-import { axeFindings, desktop, openBrowserRecord, phone, sidewaysPx, type BrowserRecord, type Visit } from '../setup/browser.ts';
+import {
+  axeFindings,
+  desktop,
+  openBrowserRecord,
+  phone,
+  sidewaysPx,
+  type BrowserRecord,
+  type Visit,
+} from '../setup/browser.ts';
 
 const site = '/sites/varrow-hill';
 const pages: Record<string, [Role, string]> = {
-  month: ['engineer', `${site}/month/2026-02`], round: ['operator', `${site}/round/2026-03-18`], balance: ['engineer', `${site}/balance/2026-02`], compare: ['engineer', `${site}/compare/2026-02?cell=C3`], 'compare, rolling': ['engineer', `${site}/compare/2026-02?view=rolling`],
-  ledger: ['supervisor', `${site}/ledger/2026-02`], lab: ['lab', `${site}/lab/2026-03`], limits: ['manager', `${site}/limits/2026-03`], report: ['manager', `${site}/report/2025-Q4`], site: ['engineer', `${site}/site`], people: ['admin', `${site}/site`], trail: ['auditor', `${site}/trail`], method: ['engineer', `${site}/method`],
+  month: ['engineer', `${site}/month/2026-02`],
+  round: ['operator', `${site}/round/2026-03-18`],
+  balance: ['engineer', `${site}/balance/2026-02`],
+  compare: ['engineer', `${site}/compare/2026-02?cell=C3`],
+  'compare, rolling': ['engineer', `${site}/compare/2026-02?view=rolling`],
+  ledger: ['supervisor', `${site}/ledger/2026-02`],
+  lab: ['lab', `${site}/lab/2026-03`],
+  limits: ['manager', `${site}/limits/2026-03`],
+  report: ['manager', `${site}/report/2025-Q4`],
+  site: ['engineer', `${site}/site`],
+  people: ['admin', `${site}/site`],
+  trail: ['auditor', `${site}/trail`],
+  method: ['engineer', `${site}/method`],
 };
 
 describe.each(Object.entries(pages))('%s', (_name, [role, path]) => {
@@ -52,7 +71,9 @@ describe('without a mouse', () => {
     await number.focus();
     await visit.page.keyboard.press('Enter');
     await visit.page.getByRole('dialog').waitFor();
-    expect(await visit.page.evaluate(() => Boolean(document.activeElement?.closest('[role=dialog]')))).toBe(true);
+    expect(await visit.page.evaluate(() => Boolean(document.activeElement?.closest('[role=dialog]')))).toBe(
+      true,
+    );
     await visit.page.keyboard.press('Escape');
     await expect.poll(() => visit.page.getByRole('dialog').count()).toBe(0);
     expect(await number.evaluate((element) => element === document.activeElement)).toBe(true);

@@ -15,12 +15,21 @@ describe('the operator, on a phone', () => {
   });
 
   const point = (name: string) => visit.page.locator('ol > li').filter({ hasText: name }).first();
-  const readingCount = async () => Number((await world.record.admin.query<{ n: string }>('select count(*) as n from readings')).rows[0]!.n);
-  const lastOf = async (code: string) => (await world.record.admin.query<{ register_value: string }>('select r.register_value from readings r join meters m on m.id = r.meter_id where m.code = $1 order by r.observed_at desc limit 1', [code])).rows[0]!.register_value;
+  const readingCount = async () =>
+    Number((await world.record.admin.query<{ n: string }>('select count(*) as n from readings')).rows[0]!.n);
+  const lastOf = async (code: string) =>
+    (
+      await world.record.admin.query<{ register_value: string }>(
+        'select r.register_value from readings r join meters m on m.id = r.meter_id where m.code = $1 order by r.observed_at desc limit 1',
+        [code],
+      )
+    ).rows[0]!.register_value;
 
   it('comes in to today’s round, in walking order, with the last shift’s words first', async () => {
     expect(visit.page.url()).toContain('/round/2026-03-18');
-    await expect.poll(() => visit.page.getByRole('heading', { level: 1 }).textContent()).toContain('Wednesday 18 March 2026');
+    await expect
+      .poll(() => visit.page.getByRole('heading', { level: 1 }).textContent())
+      .toContain('Wednesday 18 March 2026');
     await visit.page.getByText('From the last shift').waitFor();
   });
 
@@ -42,7 +51,16 @@ describe('the operator, on a phone', () => {
     await page.getByLabel(/^Register/).fill('12');
     await page.getByRole('button', { name: 'Save P1' }).click();
     await page.getByText(/12/).first().waitFor();
-    await expect.poll(async () => (await world.record.admin.query(`select 1 from readings where typed_text = '12' and answer = 'held'`)).rowCount).toBe(1);
+    await expect
+      .poll(
+        async () =>
+          (
+            await world.record.admin.query(
+              `select 1 from readings where typed_text = '12' and answer = 'held'`,
+            )
+          ).rowCount,
+      )
+      .toBe(1);
   });
 
   it('says why a point was not read, without a number', async () => {
@@ -81,7 +99,16 @@ describe('the operator, on a phone', () => {
     await page.getByText('Saved on this phone').first().waitFor();
     await visit.context.setOffline(false);
     await visit.go('/sites/varrow-hill/round/2026-03-18');
-    await expect.poll(async () => (await world.record.admin.query(`select 1 from levels where typed_text = '1.20' and site_day = '2026-03-18'`)).rowCount).toBe(1);
+    await expect
+      .poll(
+        async () =>
+          (
+            await world.record.admin.query(
+              `select 1 from levels where typed_text = '1.20' and site_day = '2026-03-18'`,
+            )
+          ).rowCount,
+      )
+      .toBe(1);
   });
 
   it('enters a load and hands the round over', async () => {
@@ -100,13 +127,23 @@ describe('the operator, on a phone', () => {
 
   it('every target of the round is at least 48 px tall or stands clear', async () => {
     await point('S3 East sump').getByRole('button').first().click();
-    const small = await visit.page.locator('main button, main input, main select').evaluateAll((elements) => elements.filter((element) => { const { height } = element.getBoundingClientRect(); return height > 0 && height < 48; }).map((element) => element.textContent));
+    const small = await visit.page.locator('main button, main input, main select').evaluateAll((elements) =>
+      elements
+        .filter((element) => {
+          const { height } = element.getBoundingClientRect();
+          return height > 0 && height < 48;
+        })
+        .map((element) => element.textContent),
+    );
     expect(small).toEqual([]);
   });
 
   it('sees no page that is not the operator’s', async () => {
     await visit.page.getByRole('button', { name: 'Pages' }).click();
-    const names = await visit.page.getByRole('navigation', { name: 'Pages' }).getByRole('link').allTextContents();
+    const names = await visit.page
+      .getByRole('navigation', { name: 'Pages' })
+      .getByRole('link')
+      .allTextContents();
     expect(names).not.toContain('Trail');
     expect(names).toContain('Round');
   });

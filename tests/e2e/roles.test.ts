@@ -33,7 +33,10 @@ describe('the plant supervisor', () => {
     const { page } = held.visit;
     await held.visit.go(`${site}/ledger/2026-02`);
     await page.getByText(/Pond P closes/).waitFor();
-    await page.getByRole('button', { name: /Sump S3, .*where it comes from/ }).first().click();
+    await page
+      .getByRole('button', { name: /Sump S3, .*where it comes from/ })
+      .first()
+      .click();
     const panel = page.getByRole('dialog');
     await panel.getByText('Intervals of the day').waitFor();
     await panel.getByText('What was recorded').waitFor();
@@ -45,7 +48,10 @@ describe('the plant supervisor', () => {
     await held.visit.go(`${site}/ledger/2026-03`);
     await page.getByRole('button', { name: 'Estimate a span' }).click();
     const panel = page.getByRole('dialog');
-    await panel.getByLabel('Meter').selectOption({ label: 'S3 S3 East sump' }).catch(() => panel.getByLabel('Meter').selectOption({ index: 4 }));
+    await panel
+      .getByLabel('Meter')
+      .selectOption({ label: 'S3 S3 East sump' })
+      .catch(() => panel.getByLabel('Meter').selectOption({ index: 4 }));
     await panel.getByLabel(/^From, day and time/).fill('2026-03-07 20:00');
     await panel.getByLabel(/^To, day and time/).fill('2026-03-09 08:00');
     await panel.getByLabel(/^Volume over the span/).fill('150');
@@ -53,11 +59,18 @@ describe('the plant supervisor', () => {
     await panel.getByLabel('What it rests on').fill('Four days either side');
     await panel.getByLabel('Reason').fill('Cable off');
     await panel.getByRole('button', { name: 'Save the estimate' }).click();
-    await panel.getByRole('alert').getByText(/An estimate goes from reading to reading/).waitFor();
+    await panel
+      .getByRole('alert')
+      .getByText(/An estimate goes from reading to reading/)
+      .waitFor();
     await panel.getByLabel(/^From, day and time/).fill('2026-03-07 08:00');
     await panel.getByRole('button', { name: 'Save the estimate' }).click();
     await expect.poll(() => page.getByRole('dialog').count()).toBe(0);
-    expect(await rowsOf(`select 1 from entries where basis = 'estimated' and site_day between '2026-03-07' and '2026-03-09'`)).toBeGreaterThan(0);
+    expect(
+      await rowsOf(
+        `select 1 from entries where basis = 'estimated' and site_day between '2026-03-07' and '2026-03-09'`,
+      ),
+    ).toBeGreaterThan(0);
   });
 });
 
@@ -68,7 +81,10 @@ describe('the environmental engineer', () => {
     const { page } = held.visit;
     await held.visit.go(`${site}/balance/2026-02`);
     await page.locator('span').getByText('Leachate at the sump, m³').waitFor();
-    await page.getByRole('button', { name: /working of Evapotranspiration/ }).first().click();
+    await page
+      .getByRole('button', { name: /working of Evapotranspiration/ })
+      .first()
+      .click();
     await page.getByRole('dialog').getByText('Thornthwaite 1948').first().waitFor();
     await page.keyboard.press('Escape');
   });
@@ -80,7 +96,9 @@ describe('the environmental engineer', () => {
     await page.getByRole('button', { name: 'Freeze the working run' }).click();
     await expect.poll(() => rowsOf(`select 1 from balance_runs where kind = 'frozen'`)).toBe(before + 1);
     await page.getByRole('button', { name: 'Accept for Compare and Report' }).first().click();
-    await expect.poll(() => rowsOf(`select 1 from balance_runs where kind = 'frozen' and accepted_at is not null`)).toBe(before + 1);
+    await expect
+      .poll(() => rowsOf(`select 1 from balance_runs where kind = 'frozen' and accepted_at is not null`))
+      .toBe(before + 1);
   });
 
   it('explains a month of the young cell, and the note stands beside it', async () => {
@@ -92,13 +110,20 @@ describe('the environmental engineer', () => {
     await panel.getByLabel('Evidence').fill('Fresh lift still takes up water');
     await panel.getByRole('button', { name: 'Save the note' }).click();
     await expect.poll(() => page.getByRole('dialog').count()).toBe(0);
-    await page.getByRole('row', { name: /Jan 2026/ }).getByText('storage of the waste').waitFor();
+    await page
+      .getByRole('row', { name: /Jan 2026/ })
+      .getByText('storage of the waste')
+      .waitFor();
   });
 
   it('covers part of a plot in mid-month, with the reason when it cannot be', async () => {
     const { page } = held.visit;
     await held.visit.go(`${site}/site`);
-    const row = page.getByRole('row').filter({ hasText: 'working area (open)' }).filter({ has: page.getByRole('button', { name: 'Change cover' }) }).first();
+    const row = page
+      .getByRole('row')
+      .filter({ hasText: 'working area (open)' })
+      .filter({ has: page.getByRole('button', { name: 'Change cover' }) })
+      .first();
     await row.getByRole('button', { name: 'Change cover' }).click();
     const panel = page.getByRole('dialog');
     await panel.getByLabel('Day the ground was covered').fill('2026-03-11');
@@ -106,7 +131,10 @@ describe('the environmental engineer', () => {
     await panel.getByLabel(/^Area that was covered/).fill('9000000');
     await panel.getByLabel('Evidence').fill('Survey of 11 March');
     await panel.getByRole('button', { name: 'Record the cover' }).click();
-    await panel.getByRole('alert').getByText(/cannot be covered on it/).waitFor();
+    await panel
+      .getByRole('alert')
+      .getByText(/cannot be covered on it/)
+      .waitFor();
     await panel.getByLabel(/^Area that was covered/).fill('1500');
     await panel.getByRole('button', { name: 'Record the cover' }).click();
     await expect.poll(() => page.getByRole('dialog').count()).toBe(0);
@@ -116,17 +144,37 @@ describe('the environmental engineer', () => {
   it('uploads the real Wichita series to a new site, runs it, and sees the balance of a month of 1993', async () => {
     const { page } = held.visit;
     await held.visit.go('/new-site');
-    for (const [label, value] of [['Name of the site', 'Prairie Bluff'], ['Latitude in degrees, south negative', '37.6475'], ['Height above the sea, in metres', '402'], ['Time zone', 'America/Chicago'], ['Day the record begins', '1980-01-01']] as const) await page.getByLabel(label).fill(value);
+    for (const [label, value] of [
+      ['Name of the site', 'Prairie Bluff'],
+      ['Latitude in degrees, south negative', '37.6475'],
+      ['Height above the sea, in metres', '402'],
+      ['Time zone', 'America/Chicago'],
+      ['Day the record begins', '1980-01-01'],
+    ] as const)
+      await page.getByLabel(label).fill(value);
     await page.getByRole('button', { name: 'Make the site' }).click();
     await page.waitForURL(/prairie-bluff\/site/);
     await page.getByRole('button', { name: 'Add a cell' }).click();
     const panel = page.getByRole('dialog');
-    for (const [label, value] of [['Code', 'C1'], ['Name', 'North'], ['Lined area, in square metres', '42000'], ['Day the cell opened', '1980-01-01'], ['Where the area comes from', 'As-built drawing'], ['Plot 1, name', 'Whole'], ['Plot 1, area in square metres', '42000']] as const) await panel.getByLabel(label, { exact: true }).fill(value);
+    for (const [label, value] of [
+      ['Code', 'C1'],
+      ['Name', 'North'],
+      ['Lined area, in square metres', '42000'],
+      ['Day the cell opened', '1980-01-01'],
+      ['Where the area comes from', 'As-built drawing'],
+      ['Plot 1, name', 'Whole'],
+      ['Plot 1, area in square metres', '42000'],
+    ] as const)
+      await panel.getByLabel(label, { exact: true }).fill(value);
     await panel.getByLabel('Plot 1, cover on the opening day').selectOption({ label: 'intermediate soil' });
     await panel.getByRole('button', { name: 'Add the cell' }).click();
     await expect.poll(() => page.getByRole('dialog').count()).toBe(0);
     await page.getByLabel('Name of the station').fill('Wichita');
-    await page.getByLabel('Climate file').setInputFiles(new URL('../../data/climate/wichita_ks_monthly_1980_2011.csv', import.meta.url).pathname);
+    await page
+      .getByLabel('Climate file')
+      .setInputFiles(
+        new URL('../../data/climate/wichita_ks_monthly_1980_2011.csv', import.meta.url).pathname,
+      );
     await page.getByRole('button', { name: 'Read the file' }).click();
     await page.getByRole('heading', { name: 'Check the climate before it is written' }).waitFor();
     await page.getByRole('button', { name: /^Write \d+ months/ }).click();
@@ -145,7 +193,10 @@ describe('the environmental engineer', () => {
     await page.getByLabel('Rain, mm, Jan').fill('12a');
     await page.getByText('Rain, mm, Jan: "a" is not part of a number.').waitFor();
     await page.getByLabel('Rain, mm, Jan').fill('90');
-    await page.getByRole('row', { name: /^Percolation/ }).last().waitFor();
+    await page
+      .getByRole('row', { name: /^Percolation/ })
+      .last()
+      .waitFor();
     expect(await rowsOf('select 1 from trail_entries')).toBe(before);
   });
 });
@@ -156,10 +207,15 @@ describe('the laboratory', () => {
   it('sees only Lab, uploads a sheet, answers its question, writes and undoes', async () => {
     const { page } = held.visit;
     await held.visit.go(`${site}/lab/2026-03`);
-    expect(await page.getByRole('navigation', { name: 'Pages' }).getByRole('link').allTextContents()).toEqual(['Lab']);
+    expect(await page.getByRole('navigation', { name: 'Pages' }).getByRole('link').allTextContents()).toEqual(
+      ['Lab'],
+    );
     const folder = await mkdtemp(join(tmpdir(), 'sheet-'));
     const file = join(folder, 'pellam-extra.csv');
-    await writeFile(file, 'Client ID,Sampled,Parameter,Result,Units,RL\nOF-7,2026-03-12,TSS,14,mg/L,2\nEFF-1,2026-03-12,BOD5,<2,mg/L,2\nEFF-1,2026-03-12,Phenol,ND,mg/L,\n');
+    await writeFile(
+      file,
+      'Client ID,Sampled,Parameter,Result,Units,RL\nOF-7,2026-03-12,TSS,14,mg/L,2\nEFF-1,2026-03-12,BOD5,<2,mg/L,2\nEFF-1,2026-03-12,Phenol,ND,mg/L,\n',
+    );
     await page.getByLabel('Sheet of results').setInputFiles(file);
     await page.getByRole('button', { name: 'Read the file' }).click();
     await page.getByRole('heading', { name: 'Check before it is written' }).waitFor();
@@ -180,7 +236,10 @@ describe('the site manager', () => {
     const { page } = held.visit;
     await held.visit.go(`${site}/limits/2026-03`);
     await page.getByText(/exceedances? ha(s|ve) (its|their) clocks? running/).waitFor();
-    await page.getByRole('button', { name: /^Record it: Tell the authority/ }).first().click();
+    await page
+      .getByRole('button', { name: /^Record it: Tell the authority/ })
+      .first()
+      .click();
     await page.getByRole('dialog').getByLabel('What was done').fill('Spoke to the duty officer');
     await page.getByRole('dialog').getByRole('button', { name: 'Record it' }).click();
     await page.getByText(/Spoke to the duty officer/).waitFor();
@@ -196,8 +255,14 @@ describe('the site manager', () => {
     await panel.getByLabel('I have read the certification and sign it under my own name.').check();
     await panel.getByLabel(/^Why it is signed/).fill('Open lines are explained');
     await panel.getByRole('button', { name: 'Sign and issue' }).click();
-    await page.getByText(/Issue 0 was signed on 18 March 2026/).first().waitFor();
-    const [download] = await Promise.all([page.waitForEvent('download'), page.getByRole('link', { name: /^Download varrow-hill-2025-q3/ }).click()]);
+    await page
+      .getByText(/Issue 0 was signed on 18 March 2026/)
+      .first()
+      .waitFor();
+    const [download] = await Promise.all([
+      page.waitForEvent('download'),
+      page.getByRole('link', { name: /^Download varrow-hill-2025-q3/ }).click(),
+    ]);
     const workbook = new ExcelJS.Workbook();
     await workbook.xlsx.load((await readFile(await download.path())) as never);
     expect(workbook.worksheets[0]!.name).toBe('About');
@@ -211,10 +276,25 @@ describe('the auditor', () => {
     const { page } = held.visit;
     await held.visit.go(`${site}/trail`);
     await page.getByText('The chain holds').waitFor();
-    for (const path of ['month/2026-02', 'ledger/2026-02', 'limits/2026-03', 'report/2025-Q4', 'site', 'lab/2026-03', 'balance/2026-02']) {
+    for (const path of [
+      'month/2026-02',
+      'ledger/2026-02',
+      'limits/2026-03',
+      'report/2025-Q4',
+      'site',
+      'lab/2026-03',
+      'balance/2026-02',
+    ]) {
       await held.visit.go(`${site}/${path}`);
       const names = await page.locator('main').getByRole('button').allTextContents();
-      expect(names.filter((name) => /^(Save|Add|Close|Reopen|Sign|Write|Record|Confirm|Make|Freeze|Estimate|Invite|End|Read the file|Change)/.test(name)), path).toEqual([]);
+      expect(
+        names.filter((name) =>
+          /^(Save|Add|Close|Reopen|Sign|Write|Record|Confirm|Make|Freeze|Estimate|Invite|End|Read the file|Change)/.test(
+            name,
+          ),
+        ),
+        path,
+      ).toEqual([]);
     }
   });
 });

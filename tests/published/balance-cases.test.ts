@@ -1,7 +1,11 @@
 import { describe, expect, it } from 'vitest';
 import balanceCases from '#data/published/balance-cases.json' with { type: 'json' };
 import hydrologyCases from '#data/published/hydrology-cases.json' with { type: 'json' };
-import { computePublishedCases, computePublishedValues, type PublishedCase } from '#shared/method/published-cases.ts';
+import {
+  computePublishedCases,
+  computePublishedValues,
+  type PublishedCase,
+} from '#shared/method/published-cases.ts';
 import { soilStep } from '#shared/water-balance/soil-store.ts';
 import { thornthwaiteUnadjustedMm } from '#shared/water-balance/thornthwaite.ts';
 import { extraterrestrialRadiation, mmPerMegajoule } from '#shared/water-balance/solar-geometry.ts';
@@ -12,54 +16,98 @@ import { rectangularPondTable } from '#shared/ledger/store-volume.ts';
 const cases = computePublishedCases(balanceCases as unknown as PublishedCase[]);
 const hydrology = (id: string) => {
   const found = hydrologyCases.find((one) => one.id === id)!;
-  return { inputs: found.inputs as unknown as Record<string, { value: never }>, expected: found.expected as unknown as Record<string, { value: number; tol: number }> };
+  return {
+    inputs: found.inputs as unknown as Record<string, { value: never }>,
+    expected: found.expected as unknown as Record<string, { value: number; tol: number }>,
+  };
 };
 
-describe.each(cases.map((one) => [`${one.source.slice(0, 60)} (${one.isFromMemory ? 'printed values from memory' : 'read'})`, one] as const))('%s', (_name, one) => {
-  it.each(one.columns.map((column) => [column.name, column] as const))('%s agrees month by month', (_column, column) => {
-    expect(column.computed).toHaveLength(12);
-    column.computed.forEach((value, index) => expect(Math.abs(value - column.printed[index]!), `month ${index + 1}`).toBeLessThanOrEqual(column.tolerance + 1e-9));
-  });
+describe.each(
+  cases.map(
+    (one) =>
+      [
+        `${one.source.slice(0, 60)} (${one.isFromMemory ? 'printed values from memory' : 'read'})`,
+        one,
+      ] as const,
+  ),
+)('%s', (_name, one) => {
+  it.each(one.columns.map((column) => [column.name, column] as const))(
+    '%s agrees month by month',
+    (_column, column) => {
+      expect(column.computed).toHaveLength(12);
+      column.computed.forEach((value, index) =>
+        expect(Math.abs(value - column.printed[index]!), `month ${index + 1}`).toBeLessThanOrEqual(
+          column.tolerance + 1e-9,
+        ),
+      );
+    },
+  );
 });
 
 describe('annual totals of Cincinnati, Fenn, Hanley & DeGeare 1975 (from memory)', () => {
-  const annual = (balanceCases as unknown as PublishedCase[]).find((one) => one.id === 'fenn1975-cincinnati')!.expected['annual_printed'] as Record<string, number>;
-  const computed = (name: string) => cases.find((one) => one.id === 'fenn1975-cincinnati')!.columns.find((column) => column.name === name)!.computed.reduce((sum, value) => sum + value, 0);
-  it.each([['Runoff', 'runoff_mm'], ['Evapotranspiration', 'aet_mm'], ['Percolation', 'perc_mm']])('%s within 0.5 mm', (name, key) => {
+  const annual = (balanceCases as unknown as PublishedCase[]).find((one) => one.id === 'fenn1975-cincinnati')!
+    .expected['annual_printed'] as Record<string, number>;
+  const computed = (name: string) =>
+    cases
+      .find((one) => one.id === 'fenn1975-cincinnati')!
+      .columns.find((column) => column.name === name)!
+      .computed.reduce((sum, value) => sum + value, 0);
+  it.each([
+    ['Runoff', 'runoff_mm'],
+    ['Evapotranspiration', 'aet_mm'],
+    ['Percolation', 'perc_mm'],
+  ])('%s within 0.5 mm', (name, key) => {
     expect(Math.abs(computed(name) - annual[key]!)).toBeLessThanOrEqual(0.5);
   });
 });
 
 describe('FAO Irrigation and Drainage Paper 56, Allen et al. 1998 (read)', () => {
-  it.each(computePublishedValues(hydrologyCases as never).map((value) => [value.title, value] as const))('%s', (_title, value) => {
-    expect(Math.abs(value.computed - value.printed)).toBeLessThanOrEqual(value.tolerance);
-  });
+  it.each(computePublishedValues(hydrologyCases as never).map((value) => [value.title, value] as const))(
+    '%s',
+    (_title, value) => {
+      expect(Math.abs(value.computed - value.printed)).toBeLessThanOrEqual(value.tolerance);
+    },
+  );
 
   it('Annex 2, Table 2.6: extraterrestrial radiation of the 15th at 0 and 40° N (table from memory)', () => {
     const { expected } = hydrology('fao56-table-2-6');
     const middles = [15, 46, 74, 105, 135, 166, 196, 227, 258, 288, 319, 349];
     for (const [key, { value, tol }] of Object.entries(expected)) {
       const [latitude, month] = key.split('_').map(Number);
-      expect(Math.abs(extraterrestrialRadiation(latitude!, middles[month! - 1]!) - value), key).toBeLessThanOrEqual(tol + 0.051);
+      expect(
+        Math.abs(extraterrestrialRadiation(latitude!, middles[month! - 1]!) - value),
+        key,
+      ).toBeLessThanOrEqual(tol + 0.051);
     }
   });
 
   it('Annex 1: 1 mm on 1 ha is 10 m³; 1 MJ/m² evaporates 0.408 mm', () => {
     const { expected } = hydrology('unit-depth-volume');
-    expect(depthToVolumeM3({ depthMm: 1, areaM2: 10_000 })).toBeCloseTo(expected['m3_per_mm_per_ha']!.value, 9);
+    expect(depthToVolumeM3({ depthMm: 1, areaM2: 10_000 })).toBeCloseTo(
+      expected['m3_per_mm_per_ha']!.value,
+      9,
+    );
     expect(mmPerMegajoule).toBeCloseTo(expected['mm_day_per_MJ']!.value, 4);
   });
 });
 
 describe('Thornthwaite & Mather 1957 (read in a US Geological Survey repository)', () => {
-  const published = (id: string) => (balanceCases as unknown as PublishedCase[]).find((one) => one.id === id)!;
+  const published = (id: string) =>
+    (balanceCases as unknown as PublishedCase[]).find((one) => one.id === id)!;
 
   it('retention table of 100 mm: the exponential law lies at most 1.6 mm above the table', () => {
     const { inputs, expected } = published('tm1957-retention-100mm');
     const losses = inputs['apwl_mm'] as number[];
     const retained = expected['retained_mm'] as number[];
     losses.forEach((loss, index) => {
-      const { storeMm } = soilStep({ storeBeforeMm: 100, infiltrationMm: 0, petMm: loss, capacityMm: 100, law: 'exponential', isFrozen: false });
+      const { storeMm } = soilStep({
+        storeBeforeMm: 100,
+        infiltrationMm: 0,
+        petMm: loss,
+        capacityMm: 100,
+        law: 'exponential',
+        isFrozen: false,
+      });
       expect(Math.abs(storeMm - retained[index]!), `loss ${loss}`).toBeLessThanOrEqual(1.6);
     });
   });
@@ -68,7 +116,12 @@ describe('Thornthwaite & Mather 1957 (read in a US Geological Survey repository)
     const { inputs, expected } = published('tm1957-table4-points');
     const heat = inputs['heat_index'] as number[];
     const printed = expected['mm_per_day'] as number[];
-    (inputs['t_c'] as number[]).forEach((mean, index) => expect(Math.abs(thornthwaiteUnadjustedMm(mean, heat[index]!, 'power') / 30 - printed[index]!), `T ${mean}, I ${heat[index]}`).toBeLessThanOrEqual(0.1));
+    (inputs['t_c'] as number[]).forEach((mean, index) =>
+      expect(
+        Math.abs(thornthwaiteUnadjustedMm(mean, heat[index]!, 'power') / 30 - printed[index]!),
+        `T ${mean}, I ${heat[index]}`,
+      ).toBeLessThanOrEqual(0.1),
+    );
   });
 });
 
@@ -76,7 +129,12 @@ describe('linear reservoir, exact mathematics (Chow, Maidment & Mays 1988, defin
   it('recession of 100 mm with a residence time of 2 months', () => {
     const { expected } = hydrology('linear-reservoir-recession');
     for (const months of [1, 2, 4]) {
-      const step = reservoirStep({ storeBeforeMm: 100, inflowMm: 0, recessionPerMonth: 0.5, durationMonths: months });
+      const step = reservoirStep({
+        storeBeforeMm: 100,
+        inflowMm: 0,
+        recessionPerMonth: 0.5,
+        durationMonths: months,
+      });
       expect(step.storeMm).toBeCloseTo(expected[`S_${months}`]!.value, 6);
     }
   });
@@ -85,7 +143,12 @@ describe('linear reservoir, exact mathematics (Chow, Maidment & Mays 1988, defin
     const { expected } = hydrology('linear-reservoir-step');
     let storeMm = 0;
     for (let month = 1; month <= 6; month += 1) {
-      const step = reservoirStep({ storeBeforeMm: storeMm, inflowMm: 40, recessionPerMonth: 1 / 1.5, durationMonths: 1 });
+      const step = reservoirStep({
+        storeBeforeMm: storeMm,
+        inflowMm: 40,
+        recessionPerMonth: 1 / 1.5,
+        durationMonths: 1,
+      });
       storeMm = step.storeMm;
       const wanted = expected[`Qvol_${month}`];
       if (wanted) expect(step.drainedMm, `month ${month}`).toBeCloseTo(wanted.value, 6);
@@ -96,7 +159,13 @@ describe('linear reservoir, exact mathematics (Chow, Maidment & Mays 1988, defin
 
 it('a rectangular pond 20 × 35 m with slopes 1:3 holds 2 968.75 m³ at 2.5 m (the volume is a cubic in depth)', () => {
   const { expected } = hydrology('pond-prismoid-identity');
-  const last = rectangularPondTable({ bottomWidthM: 20, bottomLengthM: 35, sideSlope: 3, depthM: 2.5, rowCount: 6 }).at(-1)!;
+  const last = rectangularPondTable({
+    bottomWidthM: 20,
+    bottomLengthM: 35,
+    sideSlope: 3,
+    depthM: 2.5,
+    rowCount: 6,
+  }).at(-1)!;
   expect(last.volumeM3).toBeCloseTo(expected['V_polynomial']!.value, 6);
   expect(last.surfaceM2).toBeCloseTo(expected['A_at_D']!.value, 9);
 });

@@ -5,19 +5,40 @@ import { resolveLabRows, type LabCatalog } from '#shared/lab/resolve-lab-rows.ts
 import { sheetOf } from '../factories/sheets.ts';
 
 const catalog = (change: Partial<LabCatalog> = {}): LabCatalog => ({
-  points: [{ id: 'eff', code: 'EFF-01', aliases: ['EFF'] }, { id: 'c1', code: 'LCH-C1', aliases: [] }, { id: 'c3', code: 'LCH-C3', aliases: [] }],
-  analytes: analyteTemplates.map((one) => ({ ...one, id: one.code })), qualifiers: new Map([['U', 'non-detect'], ['J', 'estimated-below-reporting']]), mappings: new Map(), existing: new Map(), receivedOn: '2026-03-19', answers: { dateOrder: null }, ...change,
+  points: [
+    { id: 'eff', code: 'EFF-01', aliases: ['EFF'] },
+    { id: 'c1', code: 'LCH-C1', aliases: [] },
+    { id: 'c3', code: 'LCH-C3', aliases: [] },
+  ],
+  analytes: analyteTemplates.map((one) => ({ ...one, id: one.code })),
+  qualifiers: new Map([
+    ['U', 'non-detect'],
+    ['J', 'estimated-below-reporting'],
+  ]),
+  mappings: new Map(),
+  existing: new Map(),
+  receivedOn: '2026-03-19',
+  answers: { dateOrder: null },
+  ...change,
 });
 
 /** Shape 1 of the project's lab sheets: a long list under a letterhead; all rows invented. */
 const shape1 = sheetOf([
-  ['Northmoor Analytical (invented)'], [], [], [], ['Project: Leachate Q1', null, 'Job: 26-0147', null, 'Report date: 19-Mar-26'], [], [], [],
+  ['Northmoor Analytical (invented)'],
+  [],
+  [],
+  [],
+  ['Project: Leachate Q1', null, 'Job: 26-0147', null, 'Report date: 19-Mar-26'],
+  [],
+  [],
+  [],
   ['Client ID', 'Sampled', 'Parameter', 'Result', 'Units', 'RL', 'RL Units'],
   ['EFF-01', '04-Mar-26 09:10', 'Ammonia (as N)', '3.2', 'mg/L', '100', 'ug/L'],
   ['EFF-01', '04-Mar-26 09:10', 'Zinc, Total', '0.05 U', 'mg/L', '50', 'ug/L'],
   ['EFF-01', '04-Mar-26 09:10', 'Phenol', '4.1 J', 'ug/L', '5', 'ug/L'],
   ['EFF-01', '04-Mar-26 09:10', 'BOD5', 'Pending', 'mg/L', '2', 'mg/L'],
-  [], ['U = not detected at RL; J = estimated below RL'],
+  [],
+  ['U = not detected at RL; J = estimated below RL'],
 ]);
 
 describe('shape 1: long list under a letterhead', () => {
@@ -29,18 +50,36 @@ describe('shape 1: long list under a letterhead', () => {
     expect(reading.layout).toMatchObject({ shape: 'long-list', headerRow: 9 });
     expect(reading.rows).toHaveLength(4);
     expect(reading.jobNumber).toBe('26-0147');
-    expect(reading.qualifierKey).toEqual([{ letter: 'U', words: 'not detected at RL' }, { letter: 'J', words: 'estimated below RL' }]);
+    expect(reading.qualifierKey).toEqual([
+      { letter: 'U', words: 'not detected at RL' },
+      { letter: 'J', words: 'estimated below RL' },
+    ]);
     expect(reading.skipped.map((one) => one.rowNumber)).toContain(15);
   });
 
   it('reads ammonia 3.2 mg/L as N with RL 0.100', () => {
-    expect(row('ammonia')).toMatchObject({ comparator: '=', value: '3.2', unit: 'mg/L', sampledOn: '2026-03-04', samplePointId: 'eff' });
+    expect(row('ammonia')).toMatchObject({
+      comparator: '=',
+      value: '3.2',
+      unit: 'mg/L',
+      sampledOn: '2026-03-04',
+      samplePointId: 'eff',
+    });
     expect(Number(row('ammonia').reportingLimit)).toBe(0.1);
   });
 
   it('reads zinc total below 0.05, phenol 0.0041 as estimated below reporting, BOD5 as pending', () => {
-    expect(row('zinc')).toMatchObject({ comparator: '<', value: '0.05', fraction: 'total', qualifierMeaning: 'non-detect' });
-    expect(row('phenol')).toMatchObject({ comparator: '=', value: '0.0041', qualifierMeaning: 'estimated-below-reporting' });
+    expect(row('zinc')).toMatchObject({
+      comparator: '<',
+      value: '0.05',
+      fraction: 'total',
+      qualifierMeaning: 'non-detect',
+    });
+    expect(row('phenol')).toMatchObject({
+      comparator: '=',
+      value: '0.0041',
+      qualifierMeaning: 'estimated-below-reporting',
+    });
     expect(row('bod5')).toMatchObject({ value: null, missingReason: 'pending' });
   });
 
@@ -52,21 +91,30 @@ describe('shape 1: long list under a letterhead', () => {
 });
 
 /** Shape 2: parameters down, samples across, two merged header rows, sections that carry the fraction. */
-const shape2 = sheetOf([
-  [null, null, null, 'LCH-C1', null, 'LCH-C3', null],
-  ['Analyte', 'CAS', 'Unit', '2026-03-03', 'RL', '2026-03-03', 'RL'],
-  ['Metals (dissolved)'],
-  ['Iron', '7439-89-6', 'mg/L', 8.6, 0.1, 131, 0.1],
-  ['Arsenic', '7440-38-2', 'µg/L', 'ND', 2, 14, 2],
-  ['Inorganics'],
-  ['Chloride', '16887-00-6', 'mg/L', '1,050', 10, '1,850', 50],
-  ['Ammonia', '7664-41-7', 'mg/L as NH4', 785, 5, '1,005', 5],
-], { merges: [{ top: 1, left: 4, bottom: 1, right: 5 }, { top: 1, left: 6, bottom: 1, right: 7 }] });
+const shape2 = sheetOf(
+  [
+    [null, null, null, 'LCH-C1', null, 'LCH-C3', null],
+    ['Analyte', 'CAS', 'Unit', '2026-03-03', 'RL', '2026-03-03', 'RL'],
+    ['Metals (dissolved)'],
+    ['Iron', '7439-89-6', 'mg/L', 8.6, 0.1, 131, 0.1],
+    ['Arsenic', '7440-38-2', 'µg/L', 'ND', 2, 14, 2],
+    ['Inorganics'],
+    ['Chloride', '16887-00-6', 'mg/L', '1,050', 10, '1,850', 50],
+    ['Ammonia', '7664-41-7', 'mg/L as NH4', 785, 5, '1,005', 5],
+  ],
+  {
+    merges: [
+      { top: 1, left: 4, bottom: 1, right: 5 },
+      { top: 1, left: 6, bottom: 1, right: 7 },
+    ],
+  },
+);
 
 describe('shape 2: crosstab', () => {
   const reading = readLabSheets([shape2]);
   const rows = resolveLabRows(reading.rows, catalog());
-  const row = (point: string, code: string) => rows.find((one) => one.samplePointId === point && one.analyteId === code)!;
+  const row = (point: string, code: string) =>
+    rows.find((one) => one.samplePointId === point && one.analyteId === code)!;
 
   it('fans merged headers out into eight results', () => {
     expect(reading.layout).toMatchObject({ shape: 'crosstab' });
@@ -93,11 +141,19 @@ describe('shape 2: crosstab', () => {
 });
 
 describe('23: what is held, and what is left as text', () => {
-  const list = (rows: (string | number | null)[][]) => resolveLabRows(readLabSheets([sheetOf([['Client ID', 'Sampled', 'Parameter', 'Result', 'Units', 'RL'], ...rows])]).rows, catalog());
+  const list = (rows: (string | number | null)[][]) =>
+    resolveLabRows(
+      readLabSheets([sheetOf([['Client ID', 'Sampled', 'Parameter', 'Result', 'Units', 'RL'], ...rows])])
+        .rows,
+      catalog(),
+    );
 
   it('a row without a unit, an ND without a limit and =2+5 are held; nothing is guessed', () => {
     const rows = list([
-      ['EFF-01', '2026-03-04', 'Zinc', '0.18', '', ''], ['EFF-01', '2026-03-04', 'Phenol', 'ND', 'mg/L', ''], ['EFF-01', '2026-03-04', 'BOD5', '=2+5', 'mg/L', ''], ['EFF-01', '2026-03-04', 'TSS', '14', 'mg/L', ''],
+      ['EFF-01', '2026-03-04', 'Zinc', '0.18', '', ''],
+      ['EFF-01', '2026-03-04', 'Phenol', 'ND', 'mg/L', ''],
+      ['EFF-01', '2026-03-04', 'BOD5', '=2+5', 'mg/L', ''],
+      ['EFF-01', '2026-03-04', 'TSS', '14', 'mg/L', ''],
     ]);
     expect(rows.map((row) => row.state)).toEqual(['held', 'held', 'held', 'ok']);
     expect(rows[0]!.question!.kind).toBe('unit');
@@ -107,21 +163,56 @@ describe('23: what is held, and what is left as text', () => {
 
   it('a date that reads two ways is asked about once; one day above 12 in the file decides', () => {
     expect(list([['EFF-01', '03/04/2026', 'TSS', '14', 'mg/L', '']])[0]!.question!.kind).toBe('date');
-    expect(list([['EFF-01', '03/03/2026', 'TSS', '14', 'mg/L', ''], ['EFF-01', '18/03/2026', 'TSS', '15', 'mg/L', '']]).map((row) => row.sampledOn)).toEqual(['2026-03-03', '2026-03-18']);
+    expect(
+      list([
+        ['EFF-01', '03/03/2026', 'TSS', '14', 'mg/L', ''],
+        ['EFF-01', '18/03/2026', 'TSS', '15', 'mg/L', ''],
+      ]).map((row) => row.sampledOn),
+    ).toEqual(['2026-03-03', '2026-03-18']);
   });
 
   it('blank, dash, n/a and NS are missing with a reason, never zero', () => {
-    const rows = list(['-', 'n/a', 'NS'].map((text, index) => ['EFF-01', `2026-03-0${index + 1}`, 'TSS', text, 'mg/L', '']));
-    expect(rows.map((row) => [row.value, row.missingReason === null])).toEqual([[null, false], [null, false], [null, false]]);
+    const rows = list(
+      ['-', 'n/a', 'NS'].map((text, index) => ['EFF-01', `2026-03-0${index + 1}`, 'TSS', text, 'mg/L', '']),
+    );
+    expect(rows.map((row) => [row.value, row.missingReason === null])).toEqual([
+      [null, false],
+      [null, false],
+      [null, false],
+    ]);
   });
 
   it('the same sample twice with two values holds both; the same value is one', () => {
-    expect(list([['EFF-01', '2026-03-04', 'TSS', '14', 'mg/L', ''], ['EFF-01', '2026-03-04', 'TSS', '15', 'mg/L', '']]).map((row) => row.state)).toEqual(['held', 'held']);
-    expect(list([['EFF-01', '2026-03-04', 'TSS', '14', 'mg/L', ''], ['EFF-01', '2026-03-04', 'TSS', '14', 'mg/L', '']]).map((row) => row.state)).toEqual(['ok', 'skipped']);
+    expect(
+      list([
+        ['EFF-01', '2026-03-04', 'TSS', '14', 'mg/L', ''],
+        ['EFF-01', '2026-03-04', 'TSS', '15', 'mg/L', ''],
+      ]).map((row) => row.state),
+    ).toEqual(['held', 'held']);
+    expect(
+      list([
+        ['EFF-01', '2026-03-04', 'TSS', '14', 'mg/L', ''],
+        ['EFF-01', '2026-03-04', 'TSS', '14', 'mg/L', ''],
+      ]).map((row) => row.state),
+    ).toEqual(['ok', 'skipped']);
   });
 
   it('a remembered answer settles an unknown point and a missing unit', () => {
-    const answered = (rows: (string | null)[][]) => resolveLabRows(readLabSheets([sheetOf([['Client ID', 'Sampled', 'Parameter', 'Result', 'Units', 'RL'], ...rows])]).rows, catalog({ mappings: new Map([['sample-point of1b', 'eff'], ['unit tss', 'mg/L']]) }));
-    expect(answered([['OF-1b', '2026-03-04', 'TSS', '14', '', '']])[0]).toMatchObject({ state: 'ok', samplePointId: 'eff', unit: 'mg/L' });
+    const answered = (rows: (string | null)[][]) =>
+      resolveLabRows(
+        readLabSheets([sheetOf([['Client ID', 'Sampled', 'Parameter', 'Result', 'Units', 'RL'], ...rows])])
+          .rows,
+        catalog({
+          mappings: new Map([
+            ['sample-point of1b', 'eff'],
+            ['unit tss', 'mg/L'],
+          ]),
+        }),
+      );
+    expect(answered([['OF-1b', '2026-03-04', 'TSS', '14', '', '']])[0]).toMatchObject({
+      state: 'ok',
+      samplePointId: 'eff',
+      unit: 'mg/L',
+    });
   });
 });

@@ -16,12 +16,25 @@ describe('hostile spreadsheets cannot take the server down', () => {
     record = await openTestRecord('demo_record');
     engineer = await record.as('engineer');
     siteId = await siteIdOf(engineer);
-    laboratoryId = ((await engineer.get(`/api/v1/sites/${siteId}/lab/2026-03`)).body as LabView).laboratories[0]!.id;
+    laboratoryId = ((await engineer.get(`/api/v1/sites/${siteId}/lab/2026-03`)).body as LabView)
+      .laboratories[0]!.id;
   });
   afterAll(() => record.close());
 
-  const upload = (path: string, bytes: Buffer, name: string) => engineer.post(`/api/v1/sites/${siteId}${path}`).set('Idempotency-Key', crypto.randomUUID()).field('id', crypto.randomUUID()).field('laboratoryId', laboratoryId).field('stationName', 'Any').attach('file', bytes, name);
-  const rowCounts = async () => (await record.admin.query('select (select count(*) from results) as results, (select count(*) from climate_days) as days, (select count(*) from import_rows) as staged')).rows[0];
+  const upload = (path: string, bytes: Buffer, name: string) =>
+    engineer
+      .post(`/api/v1/sites/${siteId}${path}`)
+      .set('Idempotency-Key', crypto.randomUUID())
+      .field('id', crypto.randomUUID())
+      .field('laboratoryId', laboratoryId)
+      .field('stationName', 'Any')
+      .attach('file', bytes, name);
+  const rowCounts = async () =>
+    (
+      await record.admin.query(
+        'select (select count(*) from results) as results, (select count(*) from climate_days) as days, (select count(*) from import_rows) as staged',
+      )
+    ).rows[0];
 
   it.each(Object.entries(hostileFiles))('%s', async (_name, file) => {
     const bytes = await file.bytes();
@@ -36,7 +49,9 @@ describe('hostile spreadsheets cannot take the server down', () => {
       expect(await rowCounts()).toEqual(before);
     }
     expect(JSON.stringify(answer.body)).not.toMatch(/node_modules|\.ts:|Error:|\bat \w+ \(/);
-    expect(JSON.stringify(answer.body)).not.toContain(hostname() === '' ? 'nothing' : readFileSync('/etc/hostname', 'utf8').trim() || 'nothing');
+    expect(JSON.stringify(answer.body)).not.toContain(
+      hostname() === '' ? 'nothing' : readFileSync('/etc/hostname', 'utf8').trim() || 'nothing',
+    );
     await engineer.get('/api/v1/health').expect(200);
   });
 
@@ -49,7 +64,13 @@ describe('hostile spreadsheets cannot take the server down', () => {
 
   it('H7: a byte flipped anywhere gives an error or the same results, never other ones', async () => {
     const whole = await goodWorkbook();
-    const resultsOf = async (bytes: Buffer) => readLabSheets((await readSheet({ name: 'h7.xlsx', bytes })).sheets).rows.map((row) => [row.pointText, row.analyteText, row.resultText, row.unitText]);
+    const resultsOf = async (bytes: Buffer) =>
+      readLabSheets((await readSheet({ name: 'h7.xlsx', bytes })).sheets).rows.map((row) => [
+        row.pointText,
+        row.analyteText,
+        row.resultText,
+        row.unitText,
+      ]);
     const wanted = await resultsOf(whole);
     expect(wanted).toHaveLength(2);
     let seed = 20_260_301;
@@ -64,10 +85,16 @@ describe('hostile spreadsheets cannot take the server down', () => {
   }, 120_000);
 
   it('60 000 rows, a PDF by another name and a macro workbook each get a plain sentence', async () => {
-    const long = Buffer.from(`Client ID,Sampled,Parameter,Result,Units\n${'EFF-1,2026-03-16,TSS,14,mg/L\n'.repeat(60_000)}`);
+    const long = Buffer.from(
+      `Client ID,Sampled,Parameter,Result,Units\n${'EFF-1,2026-03-16,TSS,14,mg/L\n'.repeat(60_000)}`,
+    );
     expect((await upload('/lab-imports', long, 'long.csv').expect(422)).body.detail).toMatch(/rows/);
-    expect((await upload('/lab-imports', Buffer.from('%PDF-1.7 …'), 'report.csv').expect(422)).body.detail).toContain('PDF');
-    expect((await upload('/lab-imports', Buffer.from('PK'), 'book.xlsm').expect(422)).body.detail).toContain('macros');
+    expect(
+      (await upload('/lab-imports', Buffer.from('%PDF-1.7 …'), 'report.csv').expect(422)).body.detail,
+    ).toContain('PDF');
+    expect((await upload('/lab-imports', Buffer.from('PK'), 'book.xlsm').expect(422)).body.detail).toContain(
+      'macros',
+    );
     const tooBig = await upload('/lab-imports', Buffer.alloc(11 * 1024 * 1024, 65), 'big.csv');
     expect([tooBig.status, tooBig.type]).toEqual([413, 'application/problem+json']);
   });

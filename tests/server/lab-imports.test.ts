@@ -18,82 +18,162 @@ describe('sheets of a laboratory, in the demo', () => {
     lab = await record.as('lab');
     engineer = await record.as('engineer');
     siteId = await siteIdOf(engineer);
-    laboratoryId = ((await lab.get(`/api/v1/sites/${siteId}/lab/2026-03`)).body as LabView).laboratories[0]!.id;
+    laboratoryId = ((await lab.get(`/api/v1/sites/${siteId}/lab/2026-03`)).body as LabView).laboratories[0]!
+      .id;
   });
   afterAll(() => record.close());
 
-  const upload = (bytes: Buffer, name: string, agent = lab) => agent.post(`/api/v1/sites/${siteId}/lab-imports`).set('Idempotency-Key', id()).field('id', id()).field('laboratoryId', laboratoryId).attach('file', bytes, name);
-  const check = async (importId: string, agent = lab) => (await agent.get(`/api/v1/sites/${siteId}/lab-imports/${importId}`).expect(200)).body as LabImportView;
-  const act = (importId: string, what: string, body: object = {}) => write(lab, `/sites/${siteId}/lab-imports/${importId}/${what}`, body);
-  const results = async () => ((await engineer.get(`/api/v1/sites/${siteId}/lab/2026-03`)).body as LabView).results;
-  const resultCount = async () => Number((await record.admin.query<{ n: string }>('select count(*) as n from results')).rows[0]!.n);
+  const upload = (bytes: Buffer, name: string, agent = lab) =>
+    agent
+      .post(`/api/v1/sites/${siteId}/lab-imports`)
+      .set('Idempotency-Key', id())
+      .field('id', id())
+      .field('laboratoryId', laboratoryId)
+      .attach('file', bytes, name);
+  const check = async (importId: string, agent = lab) =>
+    (await agent.get(`/api/v1/sites/${siteId}/lab-imports/${importId}`).expect(200)).body as LabImportView;
+  const act = (importId: string, what: string, body: object = {}) =>
+    write(lab, `/sites/${siteId}/lab-imports/${importId}/${what}`, body);
+  const results = async () =>
+    ((await engineer.get(`/api/v1/sites/${siteId}/lab/2026-03`)).body as LabView).results;
+  const resultCount = async () =>
+    Number((await record.admin.query<{ n: string }>('select count(*) as n from results')).rows[0]!.n);
 
   it('shape 1 as a real .xlsx: nothing is stored before it is confirmed, and the counts add up', async () => {
     const before = await resultCount();
-    const bytes = await workbookOf({ Results: [
-      ['Pellam Laboratory'], [], ['Job: 26-0147'], [], head,
-      ['EFF-1', new Date('2026-03-16T00:00:00Z'), 'Ammonia (as N)', 3.2, 'mg/L', 0.1], ['EFF-1', new Date('2026-03-16T00:00:00Z'), 'Zinc, Total', '0.05 U', 'mg/L', 0.05],
-      ['EFF-1', new Date('2026-03-16T00:00:00Z'), 'BOD5', 'Pending', 'mg/L', 2], ['OF-9', new Date('2026-03-16T00:00:00Z'), 'TSS', 14, 'mg/L', 2], ['EFF-1', new Date('2026-03-16T00:00:00Z'), 'Phenol', 'ND', 'mg/L', null], ['EFF-1', new Date('2026-03-16T00:00:00Z'), 'Chloride', '=2+5', 'mg/L', null],
-      [], ['U = not detected at RL'],
-    ] });
+    const bytes = await workbookOf({
+      Results: [
+        ['Pellam Laboratory'],
+        [],
+        ['Job: 26-0147'],
+        [],
+        head,
+        ['EFF-1', new Date('2026-03-16T00:00:00Z'), 'Ammonia (as N)', 3.2, 'mg/L', 0.1],
+        ['EFF-1', new Date('2026-03-16T00:00:00Z'), 'Zinc, Total', '0.05 U', 'mg/L', 0.05],
+        ['EFF-1', new Date('2026-03-16T00:00:00Z'), 'BOD5', 'Pending', 'mg/L', 2],
+        ['OF-9', new Date('2026-03-16T00:00:00Z'), 'TSS', 14, 'mg/L', 2],
+        ['EFF-1', new Date('2026-03-16T00:00:00Z'), 'Phenol', 'ND', 'mg/L', null],
+        ['EFF-1', new Date('2026-03-16T00:00:00Z'), 'Chloride', '=2+5', 'mg/L', null],
+        [],
+        ['U = not detected at RL'],
+      ],
+    });
     const importId = (await upload(bytes, 'march.xlsx').expect(201)).body.id as string;
     const view = await check(importId);
     expect(view.counts).toMatchObject({ held: 3 });
-    expect(view.counts.read).toBe(view.counts.ok + view.counts.warned + view.counts.held + view.counts.skipped);
+    expect(view.counts.read).toBe(
+      view.counts.ok + view.counts.warned + view.counts.held + view.counts.skipped,
+    );
     expect(view.reading).toMatchObject({ jobNumber: '26-0147', headerRow: 5 });
     expect(await resultCount()).toBe(before);
-    const done = (await act(importId, 'confirmation').expect(201)).body as { writtenCount: number; heldCount: number };
+    const done = (await act(importId, 'confirmation').expect(201)).body as {
+      writtenCount: number;
+      heldCount: number;
+    };
     expect(done).toMatchObject({ writtenCount: 3, heldCount: 3 });
     expect(await resultCount()).toBe(before + 3);
-    const ammonia = (await results()).find((row) => row.importId === importId && row.analyteName === 'Ammonia')!;
-    expect(ammonia).toMatchObject({ value: expect.stringMatching(/^3\.2/) as string, unit: 'mg/L', rawText: '3.2', sheet: 'Results', cell: 'D6' });
+    const ammonia = (await results()).find(
+      (row) => row.importId === importId && row.analyteName === 'Ammonia',
+    )!;
+    expect(ammonia).toMatchObject({
+      value: expect.stringMatching(/^3\.2/) as string,
+      unit: 'mg/L',
+      rawText: '3.2',
+      sheet: 'Results',
+      cell: 'D6',
+    });
     const again = (await upload(bytes, 'march again.xlsx').expect(409)).body as ProblemDocument;
     expect(again.detail).toContain('There is nothing to do');
   });
 
   it('an answer is remembered: the unknown point is asked once, and never again for this laboratory', async () => {
-    const sheet = (day: string) => workbookOf({ S: [head, ['OF-9', new Date(`${day}T00:00:00Z`), 'TSS', 15, 'mg/L', 2]] });
+    const sheet = (day: string) =>
+      workbookOf({ S: [head, ['OF-9', new Date(`${day}T00:00:00Z`), 'TSS', 15, 'mg/L', 2]] });
     const first = (await upload(await sheet('2026-03-09'), 'a.xlsx').expect(201)).body.id as string;
     const view = await check(first);
     expect(view.rows[0]!.question).toMatchObject({ kind: 'sample-point' });
-    const answered = await act(first, 'answers', { kind: 'sample-point', fromText: 'OF-9', toValue: view.points.find((point) => point.code === 'EFF-1')!.id }).expect(201);
+    const answered = await act(first, 'answers', {
+      kind: 'sample-point',
+      fromText: 'OF-9',
+      toValue: view.points.find((point) => point.code === 'EFF-1')!.id,
+    }).expect(201);
     expect(answered.body.counts.held).toBe(0);
     const second = (await upload(await sheet('2026-03-10'), 'b.xlsx').expect(201)).body.id as string;
     expect((await check(second)).counts.held).toBe(0);
   });
 
   it('a later sheet with another value supersedes and keeps the old one; undo voids', async () => {
-    const list = (zinc: string) => Buffer.from(`Client ID,Sampled,Parameter,Result,Units,RL\nEFF-1,2026-03-12,"Zinc, Total",${zinc},mg/L,0.05\n`);
+    const list = (zinc: string) =>
+      Buffer.from(
+        `Client ID,Sampled,Parameter,Result,Units,RL\nEFF-1,2026-03-12,"Zinc, Total",${zinc},mg/L,0.05\n`,
+      );
     const first = (await upload(list('<0.05'), 'rev0.csv').expect(201)).body.id as string;
     await act(first, 'confirmation').expect(201);
     const second = (await upload(list('0.18'), 'rev1.csv').expect(201)).body.id as string;
     const view = await check(second);
     expect(view.rows[0]).toMatchObject({ supersedesWords: 'below 0.05 mg/L', state: 'warned' });
     await act(second, 'confirmation').expect(201);
-    const live = (await results()).filter((row) => row.analyteName === 'Zinc' && row.siteDay === '2026-03-12');
+    const live = (await results()).filter(
+      (row) => row.analyteName === 'Zinc' && row.siteDay === '2026-03-12',
+    );
     expect(live.map((row) => [Number(row.value), row.isRevision])).toEqual([[0.18, true]]);
-    expect((await record.admin.query(`select 1 from results where site_day = '2026-03-12' and raw_text in ('<0.05', '0.18')`)).rowCount).toBe(2);
+    expect(
+      (
+        await record.admin.query(
+          `select 1 from results where site_day = '2026-03-12' and raw_text in ('<0.05', '0.18')`,
+        )
+      ).rowCount,
+    ).toBe(2);
     await act(second, 'undo').expect(201);
-    expect((await results()).filter((row) => row.analyteName === 'Zinc' && row.siteDay === '2026-03-12' && Number(row.value) === 0.18)).toEqual([]);
+    expect(
+      (await results()).filter(
+        (row) => row.analyteName === 'Zinc' && row.siteDay === '2026-03-12' && Number(row.value) === 0.18,
+      ),
+    ).toEqual([]);
   });
 
   it('10.4 mg/L of ammonia opens an exceedance with its clock and an e-mail waiting', async () => {
-    const mails = async () => Number((await record.admin.query<{ n: string }>(`select count(*) as n from queue.job where name = 'mail'`)).rows[0]!.n);
-    const [before, limitsBefore] = [await mails(), (await engineer.get(`/api/v1/sites/${siteId}/limits/2026-03`)).body as LimitsView];
-    const bytes = Buffer.from('Client ID,Sampled,Parameter,Result,Units,RL\nEFF-1,2026-03-13,Ammonia (as N),12.6,mg/L,0.1\n');
+    const mails = async () =>
+      Number(
+        (await record.admin.query<{ n: string }>(`select count(*) as n from queue.job where name = 'mail'`))
+          .rows[0]!.n,
+      );
+    const [before, limitsBefore] = [
+      await mails(),
+      (await engineer.get(`/api/v1/sites/${siteId}/limits/2026-03`)).body as LimitsView,
+    ];
+    const bytes = Buffer.from(
+      'Client ID,Sampled,Parameter,Result,Units,RL\nEFF-1,2026-03-13,Ammonia (as N),12.6,mg/L,0.1\n',
+    );
     const importId = (await upload(bytes, 'high.csv').expect(201)).body.id as string;
     expect((await act(importId, 'confirmation').expect(201)).body.exceedanceCount).toBe(1);
     const limits = (await engineer.get(`/api/v1/sites/${siteId}/limits/2026-03`)).body as LimitsView;
-    const opened = limits.exceedances.find((one) => !limitsBefore.exceedances.some((known) => known.id === one.id))!;
+    const opened = limits.exceedances.find(
+      (one) => !limitsBefore.exceedances.some((known) => known.id === one.id),
+    )!;
     expect(opened.sentence).toContain('12.6 mg/L');
     expect(opened.clocks[0]).toMatchObject({ doneAt: null });
     expect(Date.parse(opened.clocks[0]!.dueAt) - Date.parse(opened.seenAt)).toBe(24 * 3_600_000);
     expect(await mails()).toBeGreaterThan(before);
-    await write(engineer, `/sites/${siteId}/exceedances/${opened.id}/closing`, { cause: 'Too early' }).expect(409);
-    for (const clock of opened.clocks) await write(engineer, `/sites/${siteId}/exceedances/${opened.id}/clocks/${clock.id}`, { note: 'Called the duty desk, spoke to R. Lane' }).expect(201);
-    await write(engineer, `/sites/${siteId}/exceedances/${opened.id}/closing`, { cause: 'Blower off; restarted' }).expect(201);
-    const after = ((await engineer.get(`/api/v1/sites/${siteId}/limits/2026-03`)).body as LimitsView).exceedances.find((one) => one.id === opened.id)!;
-    expect(after).toMatchObject({ cause: 'Blower off; restarted', clocks: expect.arrayContaining([expect.objectContaining({ doneNote: 'Called the duty desk, spoke to R. Lane' })]) as unknown });
+    await write(engineer, `/sites/${siteId}/exceedances/${opened.id}/closing`, { cause: 'Too early' }).expect(
+      409,
+    );
+    for (const clock of opened.clocks)
+      await write(engineer, `/sites/${siteId}/exceedances/${opened.id}/clocks/${clock.id}`, {
+        note: 'Called the duty desk, spoke to R. Lane',
+      }).expect(201);
+    await write(engineer, `/sites/${siteId}/exceedances/${opened.id}/closing`, {
+      cause: 'Blower off; restarted',
+    }).expect(201);
+    const after = (
+      (await engineer.get(`/api/v1/sites/${siteId}/limits/2026-03`)).body as LimitsView
+    ).exceedances.find((one) => one.id === opened.id)!;
+    expect(after).toMatchObject({
+      cause: 'Blower off; restarted',
+      clocks: expect.arrayContaining([
+        expect.objectContaining({ doneNote: 'Called the duty desk, spoke to R. Lane' }),
+      ]) as unknown,
+    });
   });
 
   it('a limit is a template until the manager confirms it', async () => {
@@ -108,10 +188,27 @@ describe('sheets of a laboratory, in the demo', () => {
   it('the laboratory sees its own uploads and results and none of the record', async () => {
     await lab.get(`/api/v1/sites/${siteId}/ledger/2026-03`).expect(403);
     const other = crypto.randomUUID();
-    await record.admin.query('insert into laboratories (organisation_id, id, name) select organisation_id, $1, $2 from laboratories limit 1', [other, 'Another laboratory']);
-    const foreign = await engineer.post(`/api/v1/sites/${siteId}/lab-imports`).set('Idempotency-Key', id()).field('id', id()).field('laboratoryId', other).attach('file', Buffer.from('Client ID,Sampled,Parameter,Result,Units\nEFF-1,2026-03-11,TSS,9,mg/L\n'), 'other.csv').expect(201);
+    await record.admin.query(
+      'insert into laboratories (organisation_id, id, name) select organisation_id, $1, $2 from laboratories limit 1',
+      [other, 'Another laboratory'],
+    );
+    const foreign = await engineer
+      .post(`/api/v1/sites/${siteId}/lab-imports`)
+      .set('Idempotency-Key', id())
+      .field('id', id())
+      .field('laboratoryId', other)
+      .attach(
+        'file',
+        Buffer.from('Client ID,Sampled,Parameter,Result,Units\nEFF-1,2026-03-11,TSS,9,mg/L\n'),
+        'other.csv',
+      )
+      .expect(201);
     await lab.get(`/api/v1/sites/${siteId}/lab-imports/${foreign.body.id}`).expect(404);
-    expect(((await lab.get(`/api/v1/sites/${siteId}/lab/2026-03`)).body as LabView).uploads.some((one) => one.id === foreign.body.id)).toBe(false);
+    expect(
+      ((await lab.get(`/api/v1/sites/${siteId}/lab/2026-03`)).body as LabView).uploads.some(
+        (one) => one.id === foreign.body.id,
+      ),
+    ).toBe(false);
     await upload(Buffer.from('a,b\n1,2\n'), 'x.csv').field('laboratoryId', other).expect(422);
   });
 });

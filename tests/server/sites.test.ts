@@ -14,7 +14,8 @@ describe('a site and what it is made of', () => {
   });
   afterAll(() => record.close());
 
-  const refused = async (path: string, body: object) => (await write(site.engineer, `/sites/${site.siteId}${path}`, body).expect(422)).body as ProblemDocument;
+  const refused = async (path: string, body: object) =>
+    (await write(site.engineer, `/sites/${site.siteId}${path}`, body).expect(422)).body as ProblemDocument;
   const fields = (problem: ProblemDocument) => (problem.errors ?? []).map((error) => error.pointer);
 
   it('starts with cover types as templates, its places and its own rain gauge on the round', async () => {
@@ -25,40 +26,103 @@ describe('a site and what it is made of', () => {
   });
 
   it('says everything that is wrong at once, as problem+json, and writes nothing', async () => {
-    const answer = await write(site.engineer, '/sites', { id: id(), name: '', latitudeDeg: '95', elevationM: 'high', timeZone: 'Mars/Olympus', dayBoundary: '25:00', openedOn: '2026-02-30', displayUnits: 'metric' }).expect(422);
+    const answer = await write(site.engineer, '/sites', {
+      id: id(),
+      name: '',
+      latitudeDeg: '95',
+      elevationM: 'high',
+      timeZone: 'Mars/Olympus',
+      dayBoundary: '25:00',
+      openedOn: '2026-02-30',
+      displayUnits: 'metric',
+    }).expect(422);
     expect(answer.type).toBe('application/problem+json');
-    expect(fields(answer.body as ProblemDocument).sort()).toEqual(['/dayBoundary', '/elevationM', '/latitudeDeg', '/name', '/openedOn', '/timeZone']);
+    expect(fields(answer.body as ProblemDocument).sort()).toEqual([
+      '/dayBoundary',
+      '/elevationM',
+      '/latitudeDeg',
+      '/name',
+      '/openedOn',
+      '/timeZone',
+    ]);
     expect((await record.admin.query('select 1 from sites')).rowCount).toBe(1);
   });
 
   it('plots of 4.6 ha on a lined area of 4.2 are refused with the percentage', async () => {
     const coverTypeId = await site.coverTypeId('working-area');
-    const problem = await refused('/cells', { id: id(), code: 'C2', name: 'Far', linedAreaM2: '42000', openedOn: '2025-01-01', evidence: 'survey', plots: [{ id: id(), name: 'A', areaM2: '40000', coverTypeId }, { id: id(), name: 'B', areaM2: '6000', coverTypeId }] });
+    const problem = await refused('/cells', {
+      id: id(),
+      code: 'C2',
+      name: 'Far',
+      linedAreaM2: '42000',
+      openedOn: '2025-01-01',
+      evidence: 'survey',
+      plots: [
+        { id: id(), name: 'A', areaM2: '40000', coverTypeId },
+        { id: id(), name: 'B', areaM2: '6000', coverTypeId },
+      ],
+    });
     expect(problem.detail).toContain('+9.5 %');
   });
 
   it('covering part of a plot in mid-month ends it; children add exactly to it', async () => {
-    const body = { plotId, onDay: '2026-01-12', coverTypeId: await site.coverTypeId('intermediate-soil'), areaM2: '8000.5', newPlotId: id(), restPlotId: id(), newPlotName: 'Bench', evidence: 'survey of 12 January' };
+    const body = {
+      plotId,
+      onDay: '2026-01-12',
+      coverTypeId: await site.coverTypeId('intermediate-soil'),
+      areaM2: '8000.5',
+      newPlotId: id(),
+      restPlotId: id(),
+      newPlotName: 'Bench',
+      evidence: 'survey of 12 January',
+    };
     await write(site.engineer, `/sites/${site.siteId}/cover-periods`, body).expect(201);
     const plots = (await site.view()).plots;
     expect(plots.find((plot) => plot.id === plotId)!.toOn).toBe('2026-01-12');
-    expect(plots.filter((plot) => plot.parentId === plotId).map((plot) => plot.areaM2).sort()).toEqual(['33999.5', '8000.5']);
+    expect(
+      plots
+        .filter((plot) => plot.parentId === plotId)
+        .map((plot) => plot.areaM2)
+        .sort(),
+    ).toEqual(['33999.5', '8000.5']);
     const again = await refused('/cover-periods', { ...body, newPlotId: id(), restPlotId: id() });
     expect(again.detail).toContain('ended on 12 January 2026');
   });
 
   it('a second cover from the same day, a day to come and too large an area are refused with the reason', async () => {
-    const rest = (await site.view()).plots.find((plot) => plot.parentId === plotId && plot.areaM2 === '33999.5')!;
-    const body = { plotId: rest.id, onDay: '2026-02-01', coverTypeId: await site.coverTypeId('daily-cover'), areaM2: '33999.5', newPlotId: id(), restPlotId: id(), newPlotName: 'All', evidence: 'photo' };
+    const rest = (await site.view()).plots.find(
+      (plot) => plot.parentId === plotId && plot.areaM2 === '33999.5',
+    )!;
+    const body = {
+      plotId: rest.id,
+      onDay: '2026-02-01',
+      coverTypeId: await site.coverTypeId('daily-cover'),
+      areaM2: '33999.5',
+      newPlotId: id(),
+      restPlotId: id(),
+      newPlotName: 'All',
+      evidence: 'photo',
+    };
     await write(site.engineer, `/sites/${site.siteId}/cover-periods`, body).expect(201);
-    expect((await refused('/cover-periods', { ...body, onDay: '2026-01-20' })).detail).toContain('Two covers cannot lie on one plot at once');
-    expect((await refused('/cover-periods', { ...body, onDay: '2026-12-01' })).detail).toContain('still to come');
-    expect((await refused('/cover-periods', { ...body, onDay: '2026-03-01', areaM2: '40000' })).detail).toContain('cannot be covered on it');
+    expect((await refused('/cover-periods', { ...body, onDay: '2026-01-20' })).detail).toContain(
+      'Two covers cannot lie on one plot at once',
+    );
+    expect((await refused('/cover-periods', { ...body, onDay: '2026-12-01' })).detail).toContain(
+      'still to come',
+    );
+    expect(
+      (await refused('/cover-periods', { ...body, onDay: '2026-03-01', areaM2: '40000' })).detail,
+    ).toContain('cannot be covered on it');
   });
 
   it('settings changed meanwhile are noticed', async () => {
     const { settingsTag } = await site.view();
-    const put = (name: string, tag: string) => site.engineer.put(`/api/v1/sites/${site.siteId}`).set('Idempotency-Key', id()).set('If-Match', tag).send({ name, displayUnits: 'metric', reportDueDays: '60', certificationText: '' });
+    const put = (name: string, tag: string) =>
+      site.engineer
+        .put(`/api/v1/sites/${site.siteId}`)
+        .set('Idempotency-Key', id())
+        .set('If-Match', tag)
+        .send({ name, displayUnits: 'metric', reportDueDays: '60', certificationText: '' });
     await put('Northcote East', settingsTag).expect(200);
     const late = await put('Northcote West', settingsTag).expect(412);
     expect((late.body as ProblemDocument).type).toBe('/problems/changed-meanwhile');
@@ -67,9 +131,34 @@ describe('a site and what it is made of', () => {
 
   it('codes that stand already, a meter to itself and a store that shrinks are refused', async () => {
     const treatment = await site.placeId('treatment');
-    const meter = { id: id(), code: 'M1', name: 'M1', fromPlaceId: treatment, toPlaceId: treatment, digits: '3', decimals: '4', unit: 'm3', multiplier: '1', rateM3PerDayMax: '400', installedOn: '2026-01-01' };
+    const meter = {
+      id: id(),
+      code: 'M1',
+      name: 'M1',
+      fromPlaceId: treatment,
+      toPlaceId: treatment,
+      digits: '3',
+      decimals: '4',
+      unit: 'm3',
+      multiplier: '1',
+      rateM3PerDayMax: '400',
+      installedOn: '2026-01-01',
+    };
     expect(fields(await refused('/meters', meter)).sort()).toEqual(['/decimals', '/toPlaceId'].sort());
-    const store = { id: id(), placeId: id(), code: 'P', name: 'Pond', isCovered: false, linedAreaM2: '3500', crestLevelM: '3', operatingLevelM: '2.5', strapping: [{ levelM: '0', volumeM3: '100', surfaceM2: '1000' }, { levelM: '3', volumeM3: '50', surfaceM2: '1000' }] };
+    const store = {
+      id: id(),
+      placeId: id(),
+      code: 'P',
+      name: 'Pond',
+      isCovered: false,
+      linedAreaM2: '3500',
+      crestLevelM: '3',
+      operatingLevelM: '2.5',
+      strapping: [
+        { levelM: '0', volumeM3: '100', surfaceM2: '1000' },
+        { levelM: '3', volumeM3: '50', surfaceM2: '1000' },
+      ],
+    };
     expect((await refused('/stores', store)).errors!.length).toBeGreaterThan(0);
   });
 });

@@ -17,17 +17,34 @@ describe('the trail', () => {
   });
   afterAll(() => record.close());
 
-  const seal = () => withOrganisation(record.deps.database, { organisationId, personId: null }, (tx) => sealTrail(tx, organisationId));
-  const check = async () => (await auditor.get(`/api/v1/sites/${siteId}/trail-check`).expect(200)).body as TrailCheckView;
-  const rows = async (query = '') => ((await auditor.get(`/api/v1/sites/${siteId}/trail${query}`).expect(200)).body as TrailView).rows;
+  const seal = () =>
+    withOrganisation(record.deps.database, { organisationId, personId: null }, (tx) =>
+      sealTrail(tx, organisationId),
+    );
+  const check = async () =>
+    (await auditor.get(`/api/v1/sites/${siteId}/trail-check`).expect(200)).body as TrailCheckView;
+  const rows = async (query = '') =>
+    ((await auditor.get(`/api/v1/sites/${siteId}/trail${query}`).expect(200)).body as TrailView).rows;
 
   it('a change says who, what, when and why, and can be followed by its subject', async () => {
     const engineer = await record.as('engineer');
     const noteId = crypto.randomUUID();
-    const compare = (await engineer.get(`/api/v1/sites/${siteId}/compare/2026-02?cell=C3`).expect(200)).body as { cell: { id: string } };
-    await write(engineer, `/sites/${siteId}/compare-notes`, { id: noteId, cellId: compare.cell.id, month: '2026-02', cause: 'storage of the waste', state: 'explained', note: 'Second lift still takes up water' }).expect(201);
+    const compare = (await engineer.get(`/api/v1/sites/${siteId}/compare/2026-02?cell=C3`).expect(200))
+      .body as { cell: { id: string } };
+    await write(engineer, `/sites/${siteId}/compare-notes`, {
+      id: noteId,
+      cellId: compare.cell.id,
+      month: '2026-02',
+      cause: 'storage of the waste',
+      state: 'explained',
+      note: 'Second lift still takes up water',
+    }).expect(201);
     const [row] = await rows(`?subject=${noteId}`);
-    expect(row).toMatchObject({ by: 'Ines Quarrel', action: 'note', reason: 'Second lift still takes up water' });
+    expect(row).toMatchObject({
+      by: 'Ines Quarrel',
+      action: 'note',
+      reason: 'Second lift still takes up water',
+    });
   });
 
   it('unsealed changes are named as such and sealed in order', async () => {
@@ -40,11 +57,17 @@ describe('the trail', () => {
   it('an edit made around the application is found and named', async () => {
     await seal();
     const target = (await rows())[3]!;
-    await record.admin.query('update trail_entries set sentence = $1 where id = $2', ['Something else was done.', target.id]);
+    await record.admin.query('update trail_entries set sentence = $1 where id = $2', [
+      'Something else was done.',
+      target.id,
+    ]);
     const [, from, to] = /rows (\d+) to (\d+)/.exec((await check()).firstFault!)!.map(Number);
     expect(target.sequence).toBeGreaterThanOrEqual(from!);
     expect(target.sequence).toBeLessThanOrEqual(to!);
-    await record.admin.query('update trail_entries set sentence = $1 where id = $2', [target.sentence, target.id]);
+    await record.admin.query('update trail_entries set sentence = $1 where id = $2', [
+      target.sentence,
+      target.id,
+    ]);
     expect((await check()).firstFault).toBeNull();
   });
 

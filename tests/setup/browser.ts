@@ -9,7 +9,15 @@ import { demoInstant } from './demo-instant.ts';
 import { openTestRecord, type TestRecord } from './test-record.ts';
 
 const axeSource = readFileSync(createRequire(import.meta.url).resolve('axe-core/axe.min.js'), 'utf8');
-const flags = ['--no-sandbox', '--disable-gpu', '--disable-quic', '--no-first-run', '--disable-background-networking', '--disable-component-update', '--disable-sync'];
+const flags = [
+  '--no-sandbox',
+  '--disable-gpu',
+  '--disable-quic',
+  '--no-first-run',
+  '--disable-background-networking',
+  '--disable-component-update',
+  '--disable-sync',
+];
 
 export interface BrowserRecord {
   record: TestRecord;
@@ -32,23 +40,34 @@ export const phone = { width: 390, height: 844 };
 export const desktop = { width: 1280, height: 900 };
 
 /** The built application on a port of its own, with a browser whose clock stands at the demo's instant. */
-export async function openBrowserRecord(template: 'empty_record' | 'demo_record', options: { withMail?: boolean } = {}): Promise<BrowserRecord> {
+export async function openBrowserRecord(
+  template: 'empty_record' | 'demo_record',
+  options: { withMail?: boolean } = {},
+): Promise<BrowserRecord> {
   const record = await openTestRecord(template, options);
   const server = record.app.listen(0, '127.0.0.1');
   await new Promise((resolve) => server.once('listening', resolve));
   const base = `http://127.0.0.1:${(server.address() as AddressInfo).port}`;
-  const browser: Browser = await chromium.launch({ executablePath: process.env['CHROMIUM'] ?? '/usr/bin/chromium', args: flags });
+  const browser: Browser = await chromium.launch({
+    executablePath: process.env['CHROMIUM'] ?? '/usr/bin/chromium',
+    args: flags,
+  });
   return {
-    record, base,
+    record,
+    base,
     visit: async (size = desktop) => {
       const context = await browser.newContext({ viewport: size, acceptDownloads: true });
       const page = await context.newPage();
       await page.clock.setFixedTime(demoInstant);
       const problems: string[] = [];
       page.on('pageerror', (error) => problems.push(error.message));
-      page.on('console', (line) => { if (line.type() === 'error' && !/Failed to load resource/.test(line.text())) problems.push(line.text()); });
+      page.on('console', (line) => {
+        if (line.type() === 'error' && !/Failed to load resource/.test(line.text()))
+          problems.push(line.text());
+      });
       return {
-        page, context,
+        page,
+        context,
         comeInAs: async (role) => {
           const person = demoPeople.find((one) => one.key === role)!;
           await page.goto(`${base}/sign-in`);
@@ -79,11 +98,27 @@ export async function openBrowserRecord(template: 'empty_record' | 'demo_record'
 export async function axeFindings(page: Page): Promise<string[]> {
   await page.evaluate(axeSource);
   return page.evaluate(async () => {
-    const { axe } = window as unknown as { axe: { run: (root: Document, options: object) => Promise<{ violations: { id: string; nodes: { html: string }[] }[] }> } };
-    const { violations } = await axe.run(document, { runOnly: ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice'] });
-    return violations.map((one) => `${one.id}: ${one.nodes.slice(0, 2).map((node) => node.html.slice(0, 120)).join(' | ')}`);
+    const { axe } = window as unknown as {
+      axe: {
+        run: (
+          root: Document,
+          options: object,
+        ) => Promise<{ violations: { id: string; nodes: { html: string }[] }[] }>;
+      };
+    };
+    const { violations } = await axe.run(document, {
+      runOnly: ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice'],
+    });
+    return violations.map(
+      (one) =>
+        `${one.id}: ${one.nodes
+          .slice(0, 2)
+          .map((node) => node.html.slice(0, 120))
+          .join(' | ')}`,
+    );
   });
 }
 
 /** How far the page scrolls sideways, px. */
-export const sidewaysPx = (page: Page) => page.evaluate(() => document.documentElement.scrollWidth - document.documentElement.clientWidth);
+export const sidewaysPx = (page: Page) =>
+  page.evaluate(() => document.documentElement.scrollWidth - document.documentElement.clientWidth);

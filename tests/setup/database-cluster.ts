@@ -23,8 +23,14 @@ declare module 'vitest' {
 
 /** A throw-away cluster with two templates: an empty record, and the demo at a fixed instant. */
 export default async function setup(project: TestProject): Promise<() => Promise<void>> {
-  const { startCluster } = (await import(new URL('../../server/start/postgres.mjs', import.meta.url).href)) as {
-    startCluster: (options: { root: string; test: boolean; folder: string }) => Promise<{ adminUrl: string; stop: () => Promise<void> }>;
+  const { startCluster } = (await import(
+    new URL('../../server/start/postgres.mjs', import.meta.url).href
+  )) as {
+    startCluster: (options: {
+      root: string;
+      test: boolean;
+      folder: string;
+    }) => Promise<{ adminUrl: string; stop: () => Promise<void> }>;
   };
   const folder = mkdtempSync(join(process.env['TEST_FOLDER'] ?? tmpdir(), `cluster-${project.name}-`));
   const clusterFolder = join('/var/tmp', `tallyweir-test-${process.pid}-${project.name}`);
@@ -39,7 +45,15 @@ export default async function setup(project: TestProject): Promise<() => Promise
   const pool = createPool(demoUrls.appUrl, () => undefined);
   const boss = await startQueue(demoUrls.appUrl, log);
   await loadDemo({
-    database: createDatabase(pool), files: createLocalFileStore(filesFolder), mail: createMailQueue(boss), log, sessionSecret: new Uint8Array(32), now: () => demoInstant, newId: () => crypto.randomUUID(), publicUrl: 'http://127.0.0.1', isDemo: true,
+    database: createDatabase(pool),
+    files: createLocalFileStore(filesFolder),
+    mail: createMailQueue(boss),
+    log,
+    sessionSecret: new Uint8Array(32),
+    now: () => demoInstant,
+    newId: () => crypto.randomUUID(),
+    publicUrl: 'http://127.0.0.1',
+    isDemo: true,
   });
   await boss.stop({ graceful: false, close: true });
   await pool.end();

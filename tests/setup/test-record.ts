@@ -34,7 +34,10 @@ export interface TestRecord {
 }
 
 /** A database of its own, copied from a template, behind the real application. */
-export async function openTestRecord(template: 'empty_record' | 'demo_record', options: { withMail?: boolean } = {}): Promise<TestRecord> {
+export async function openTestRecord(
+  template: 'empty_record' | 'demo_record',
+  options: { withMail?: boolean } = {},
+): Promise<TestRecord> {
   const adminUrl = inject('adminUrl');
   const name = `record_${randomBytes(6).toString('hex')}`;
   const maker = new pg.Client({ connectionString: adminUrl });
@@ -50,22 +53,38 @@ export async function openTestRecord(template: 'empty_record' | 'demo_record', o
   const log = pino({ level: 'silent' });
   const pool = createPool(appUrl, () => undefined);
   const boss = await startQueue(appUrl, log);
-  const catcher = options.withMail ? await startMailCatcher(join(inject('filesFolder'), name), () => now) : undefined;
+  const catcher = options.withMail
+    ? await startMailCatcher(join(inject('filesFolder'), name), () => now)
+    : undefined;
   if (catcher) await startMailWorker(boss, catcher.url, 'Tallyweir <record@tallyweir.invalid>', log);
   const deps: Dependencies = {
-    database: createDatabase(pool), files: createLocalFileStore(inject('filesFolder')), mail: createMailQueue(boss), log, sessionSecret: new Uint8Array(32).fill(7), now: () => now, newId: () => crypto.randomUUID(), publicUrl: 'http://127.0.0.1:5180', isDemo: template === 'demo_record',
+    database: createDatabase(pool),
+    files: createLocalFileStore(inject('filesFolder')),
+    mail: createMailQueue(boss),
+    log,
+    sessionSecret: new Uint8Array(32).fill(7),
+    now: () => now,
+    newId: () => crypto.randomUUID(),
+    publicUrl: 'http://127.0.0.1:5180',
+    isDemo: template === 'demo_record',
     caughtMail: catcher?.list,
   };
   const app = createApp(deps);
   return {
-    app, deps, appUrl, admin, visitor: () => request.agent(app),
+    app,
+    deps,
+    appUrl,
+    admin,
+    visitor: () => request.agent(app),
     as: async (role) => {
       const agent = request.agent(app);
       const person = demoPeople.find((one) => one.key === role)!;
       await agent.post('/api/v1/demo-sign-in').send({ email: person.email }).expect(201);
       return agent;
     },
-    setNow: (instant) => { now = new Date(instant); },
+    setNow: (instant) => {
+      now = new Date(instant);
+    },
     close: async () => {
       await boss.stop({ graceful: false, close: true }).catch(() => undefined);
       await catcher?.stop();
@@ -82,4 +101,5 @@ export async function siteIdOf(agent: Agent): Promise<string> {
 }
 
 /** A write with a key of its own, as the browser sends it. */
-export const write = (agent: Agent, path: string, body: object, key: string = crypto.randomUUID()) => agent.post(`/api/v1${path}`).set('Idempotency-Key', key).send(body);
+export const write = (agent: Agent, path: string, body: object, key: string = crypto.randomUUID()) =>
+  agent.post(`/api/v1${path}`).set('Idempotency-Key', key).send(body);

@@ -1,4 +1,14 @@
-import { boolean, doublePrecision, index, integer, jsonb, pgTable, text, unique, uuid } from 'drizzle-orm/pg-core';
+import {
+  boolean,
+  doublePrecision,
+  index,
+  integer,
+  jsonb,
+  pgTable,
+  text,
+  unique,
+  uuid,
+} from 'drizzle-orm/pg-core';
 import { belongsTo, day, instant, monthCheck, owned, ownedKey } from './columns.ts';
 import { cells, sites } from './sites.ts';
 
@@ -17,7 +27,11 @@ export const parameterSets = pgTable(
     confirmedAt: instant('confirmed_at'),
     isCurrent: boolean('is_current').notNull().default(false),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.siteId, () => sites), unique('parameter_sets_version').on(t.organisationId, t.siteId, t.name, t.version)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.siteId, () => sites),
+    unique('parameter_sets_version').on(t.organisationId, t.siteId, t.name, t.version),
+  ],
 );
 
 /** The working run follows its inputs; a frozen run keeps its own for ever. */
@@ -40,7 +54,11 @@ export const balanceRuns = pgTable(
     acceptedAt: instant('accepted_at'),
     note: text('note'),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.siteId, () => sites), belongsTo(t.organisationId, t.parameterSetId, () => parameterSets)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.siteId, () => sites),
+    belongsTo(t.organisationId, t.parameterSetId, () => parameterSets),
+  ],
 );
 
 /** Result of one plot and step: every term in mm, with the area that turns it into m³. */

@@ -12,7 +12,11 @@ export const stations = pgTable(
     priority: integer('priority').notNull().default(1),
     source: text('source').notNull(),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.siteId, () => sites), unique('stations_name').on(t.organisationId, t.siteId, t.name)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.siteId, () => sites),
+    unique('stations_name').on(t.organisationId, t.siteId, t.name),
+  ],
 );
 
 const values = {
@@ -31,7 +35,9 @@ export const climateDays = pgTable(
     ...fact,
     stationId: uuid('station_id').notNull(),
     siteDay: day('site_day').notNull(),
-    kind: text('kind', { enum: ['measured', 'trace', 'accumulated', 'snow-water', 'estimated', 'missing'] }).notNull().default('measured'),
+    kind: text('kind', { enum: ['measured', 'trace', 'accumulated', 'snow-water', 'estimated', 'missing'] })
+      .notNull()
+      .default('measured'),
     accumulatedDays: integer('accumulated_days'),
     typedText: text('typed_text'),
     importId: uuid('import_id'),
@@ -70,8 +76,14 @@ export const climateGapChoices = pgTable(
     siteId: uuid('site_id').notNull(),
     month: text('month').notNull(),
     variable: text('variable', { enum: ['precipitation', 'temperature', 'pet'] }).notNull(),
-    choice: text('choice', { enum: ['leave-out', 'scale-by-days', 'other-station', 'station-normal'] }).notNull(),
+    choice: text('choice', {
+      enum: ['leave-out', 'scale-by-days', 'other-station', 'station-normal'],
+    }).notNull(),
     otherStationId: uuid('other_station_id'),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.siteId, () => sites), monthCheck('climate_gap_choices_month', t.month)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.siteId, () => sites),
+    monthCheck('climate_gap_choices_month', t.month),
+  ],
 );

@@ -25,7 +25,9 @@ export const fact = {
   recordedById: uuid('recorded_by_id').notNull(),
   sequence: bigserial('sequence', { mode: 'number' }).notNull(),
   supersedesId: uuid('supersedes_id'),
-  isVoid: text('is_void', { enum: ['yes', 'no'] }).notNull().default('no'),
+  isVoid: text('is_void', { enum: ['yes', 'no'] })
+    .notNull()
+    .default('no'),
   reason: text('reason'),
 };
 

@@ -12,7 +12,9 @@ export const samplePoints = pgTable(
     placeId: uuid('place_id'),
     code: text('code').notNull(),
     name: text('name').notNull(),
-    kind: text('kind', { enum: ['raw-leachate', 'leak-detection', 'influent', 'effluent', 'storm-water', 'groundwater'] }).notNull(),
+    kind: text('kind', {
+      enum: ['raw-leachate', 'leak-detection', 'influent', 'effluent', 'storm-water', 'groundwater'],
+    }).notNull(),
     aliases: jsonb('aliases').$type<string[]>().notNull(),
   },
   (t) => [
@@ -40,7 +42,13 @@ export const analytes = pgTable(
 
 export const laboratories = pgTable(
   'laboratories',
-  { ...owned, name: text('name').notNull(), limitCited: text('limit_cited', { enum: ['reporting', 'detection'] }).notNull().default('reporting') },
+  {
+    ...owned,
+    name: text('name').notNull(),
+    limitCited: text('limit_cited', { enum: ['reporting', 'detection'] })
+      .notNull()
+      .default('reporting'),
+  },
   (t) => [ownedKey(t), unique('laboratories_name').on(t.organisationId, t.name)],
 );
 
@@ -56,7 +64,11 @@ export const labQualifiers = pgTable(
     }).notNull(),
     wording: text('wording'),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.laboratoryId, () => laboratories), unique('lab_qualifiers_letter').on(t.organisationId, t.laboratoryId, t.letter)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.laboratoryId, () => laboratories),
+    unique('lab_qualifiers_letter').on(t.organisationId, t.laboratoryId, t.letter),
+  ],
 );
 
 /** Answers remembered per laboratory: names it uses for points and analytes, units it leaves out. */
@@ -69,7 +81,11 @@ export const labMappings = pgTable(
     fromText: text('from_text').notNull(),
     toValue: text('to_value').notNull(),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.laboratoryId, () => laboratories), unique('lab_mappings_text').on(t.organisationId, t.laboratoryId, t.kind, t.fromText)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.laboratoryId, () => laboratories),
+    unique('lab_mappings_text').on(t.organisationId, t.laboratoryId, t.kind, t.fromText),
+  ],
 );
 
 export const samplingPlanItems = pgTable(
@@ -84,7 +100,11 @@ export const samplingPlanItems = pgTable(
     fromOn: day('from_on').notNull(),
     toOn: day('to_on'),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.samplePointId, () => samplePoints), belongsTo(t.organisationId, t.analyteId, () => analytes)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.samplePointId, () => samplePoints),
+    belongsTo(t.organisationId, t.analyteId, () => analytes),
+  ],
 );
 
 /** An uploaded sheet: kept byte for byte, staged, confirmed or undone. */

@@ -1,5 +1,16 @@
 import { index, jsonb, pgTable, smallint, text, uuid } from 'drizzle-orm/pg-core';
-import { belongsTo, day, exact, fact, instant, monthCheck, notNegative, owned, ownedKey, volumeM3 } from './columns.ts';
+import {
+  belongsTo,
+  day,
+  exact,
+  fact,
+  instant,
+  monthCheck,
+  notNegative,
+  owned,
+  ownedKey,
+  volumeM3,
+} from './columns.ts';
 import { meters, places, stores, sumps } from './metering.ts';
 import { cells, sites } from './sites.ts';
 
@@ -8,7 +19,9 @@ const observed = {
   observedAt: instant('observed_at').notNull(),
   observedOffsetMinutes: smallint('observed_offset_minutes').notNull(),
   siteDay: day('site_day').notNull(),
-  source: text('source', { enum: ['typed', 'historian', 'import'] }).notNull().default('typed'),
+  source: text('source', { enum: ['typed', 'historian', 'import'] })
+    .notNull()
+    .default('typed'),
   deviceId: text('device_id'),
 };
 
@@ -22,7 +35,9 @@ export const readings = pgTable(
     typedText: text('typed_text').notNull(),
     registerValue: exact('register_value', 3).notNull(),
     /** What the reader said about an unlikely value: nothing, a confirmed rollover, or held until answered. */
-    answer: text('answer', { enum: ['none', 'rollover', 'confirmed', 'held'] }).notNull().default('none'),
+    answer: text('answer', { enum: ['none', 'rollover', 'confirmed', 'held'] })
+      .notNull()
+      .default('none'),
     note: text('note'),
   },
   (t) => [
@@ -64,12 +79,21 @@ export const notRead = pgTable(
     reasonCode: text('reason_code').notNull(),
     note: text('note'),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.siteId, () => sites), index('not_read_day').on(t.organisationId, t.siteId, t.siteDay)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.siteId, () => sites),
+    index('not_read_day').on(t.organisationId, t.siteId, t.siteDay),
+  ],
 );
 
 export const roundNotes = pgTable(
   'round_notes',
-  { ...fact, siteId: uuid('site_id').notNull(), siteDay: day('site_day').notNull(), note: text('note').notNull() },
+  {
+    ...fact,
+    siteId: uuid('site_id').notNull(),
+    siteDay: day('site_day').notNull(),
+    note: text('note').notNull(),
+  },
   (t) => [ownedKey(t), belongsTo(t.organisationId, t.siteId, () => sites)],
 );
 
@@ -86,18 +110,34 @@ export const adjustments = pgTable(
     /** What the raw volume is divided by: 1 + the as-found error. */
     divisor: exact('divisor', 9),
     method: text('method', {
-      enum: ['second-meter', 'hours-times-rate', 'tank-balance', 'neighbour-days', 'judgement', 'as-found-error'],
+      enum: [
+        'second-meter',
+        'hours-times-rate',
+        'tank-balance',
+        'neighbour-days',
+        'judgement',
+        'as-found-error',
+      ],
     }),
     inputs: jsonb('inputs'),
     acceptedById: uuid('accepted_by_id'),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.meterId, () => meters), notNegative('adjustments_volume', t.volumeM3)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.meterId, () => meters),
+    notNegative('adjustments_volume', t.volumeM3),
+  ],
 );
 
 /** Which of two live readings of one instant counts. */
 export const disputes = pgTable(
   'disputes',
-  { ...fact, meterId: uuid('meter_id').notNull(), observedAt: instant('observed_at').notNull(), chosenReadingId: uuid('chosen_reading_id').notNull() },
+  {
+    ...fact,
+    meterId: uuid('meter_id').notNull(),
+    observedAt: instant('observed_at').notNull(),
+    chosenReadingId: uuid('chosen_reading_id').notNull(),
+  },
   (t) => [ownedKey(t), belongsTo(t.organisationId, t.meterId, () => meters)],
 );
 
@@ -142,7 +182,11 @@ export const pendingChanges = pgTable(
     recordedAt: instant('recorded_at').notNull().defaultNow(),
     postedAt: instant('posted_at'),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.siteId, () => sites), monthCheck('pending_changes_month', t.month)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.siteId, () => sites),
+    monthCheck('pending_changes_month', t.month),
+  ],
 );
 
 export const loadsOut = pgTable(
@@ -161,7 +205,9 @@ export const loadsOut = pgTable(
     tareMassKg: exact('tare_mass_kg', 1),
     densityKgPerM3: exact('density_kg_per_m3', 2),
     receivedVolumeM3: volumeM3('received_volume_m3'),
-    officialVolume: text('official_volume', { enum: ['nominal', 'weighed', 'received'] }).notNull().default('nominal'),
+    officialVolume: text('official_volume', { enum: ['nominal', 'weighed', 'received'] })
+      .notNull()
+      .default('nominal'),
   },
   (t) => [
     ownedKey(t),
@@ -203,5 +249,10 @@ export const condensate = pgTable(
     volumeM3: volumeM3('volume_m3').notNull(),
     kind: text('kind', { enum: ['condensate', 'wash-down'] }).notNull(),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.sumpId, () => sumps), monthCheck('condensate_month', t.month), notNegative('condensate_volume', t.volumeM3)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.sumpId, () => sumps),
+    monthCheck('condensate_month', t.month),
+    notNegative('condensate_volume', t.volumeM3),
+  ],
 );

@@ -1,5 +1,14 @@
 import { boolean, index, integer, jsonb, pgTable, text, uuid } from 'drizzle-orm/pg-core';
-import { belongsTo, day, endsAfterStart, instant, monthCheck, notNegative, owned, ownedKey } from './columns.ts';
+import {
+  belongsTo,
+  day,
+  endsAfterStart,
+  instant,
+  monthCheck,
+  notNegative,
+  owned,
+  ownedKey,
+} from './columns.ts';
 import { analytes, samplePoints } from './lab.ts';
 import { places } from './metering.ts';
 import { sites } from './sites.ts';
@@ -15,7 +24,11 @@ export const permits = pgTable(
     fromOn: day('from_on').notNull(),
     toOn: day('to_on'),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.siteId, () => sites), endsAfterStart('permits_dates', t.fromOn, t.toOn)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.siteId, () => sites),
+    endsAfterStart('permits_dates', t.fromOn, t.toOn),
+  ],
 );
 
 export const limits = pgTable(
@@ -27,7 +40,9 @@ export const limits = pgTable(
     analyteId: uuid('analyte_id').notNull(),
     fraction: text('fraction').notNull().default(''),
     flowPlaceId: uuid('flow_place_id'),
-    statistic: text('statistic', { enum: ['daily-maximum', 'daily-minimum', 'monthly-average', 'range'] }).notNull(),
+    statistic: text('statistic', {
+      enum: ['daily-maximum', 'daily-minimum', 'monthly-average', 'range'],
+    }).notNull(),
     quantity: text('quantity', { enum: ['concentration', 'load'] }).notNull(),
     /** Text, so that the permit's own digits stay: 0.20 is not 0.2. */
     valueText: text('value_text'),
@@ -36,8 +51,12 @@ export const limits = pgTable(
     unit: text('unit').notNull(),
     isInclusive: boolean('is_inclusive').notNull().default(true),
     samplesMin: integer('samples_min').notNull().default(1),
-    belowDetectionRule: text('below_detection_rule', { enum: ['zero', 'half', 'full', 'carried'] }).notNull().default('half'),
-    roundingMode: text('rounding_mode', { enum: ['half-up', 'half-even'] }).notNull().default('half-up'),
+    belowDetectionRule: text('below_detection_rule', { enum: ['zero', 'half', 'full', 'carried'] })
+      .notNull()
+      .default('half'),
+    roundingMode: text('rounding_mode', { enum: ['half-up', 'half-even'] })
+      .notNull()
+      .default('half-up'),
     decimals: integer('decimals').notNull(),
     citation: text('citation').notNull(),
     noticeHours: integer('notice_hours'),
@@ -70,7 +89,11 @@ export const verdicts = pgTable(
     working: jsonb('working').notNull(),
     computedAt: instant('computed_at').notNull().defaultNow(),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.limitId, () => limits), monthCheck('verdicts_month', t.month)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.limitId, () => limits),
+    monthCheck('verdicts_month', t.month),
+  ],
 );
 
 export const exceedances = pgTable(

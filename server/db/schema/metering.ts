@@ -1,5 +1,17 @@
 import { boolean, integer, pgTable, text, unique, uuid } from 'drizzle-orm/pg-core';
-import { belongsTo, day, endsAfterStart, exact, fraction, instant, fact, notNegative, owned, ownedKey, positive } from './columns.ts';
+import {
+  belongsTo,
+  day,
+  endsAfterStart,
+  exact,
+  fraction,
+  instant,
+  fact,
+  notNegative,
+  owned,
+  ownedKey,
+  positive,
+} from './columns.ts';
 import { cells, sites } from './sites.ts';
 
 /** Where water is or goes: the ends of every ledger entry. */
@@ -9,7 +21,19 @@ export const places = pgTable(
     ...owned,
     siteId: uuid('site_id').notNull(),
     kind: text('kind', {
-      enum: ['sump', 'header', 'store', 'treatment', 'outfall', 'sewer', 'haulage', 'cell', 'rain', 'air', 'truck'],
+      enum: [
+        'sump',
+        'header',
+        'store',
+        'treatment',
+        'outfall',
+        'sewer',
+        'haulage',
+        'cell',
+        'rain',
+        'air',
+        'truck',
+      ],
     }).notNull(),
     name: text('name').notNull(),
     cellId: uuid('cell_id'),
@@ -69,7 +93,11 @@ export const pumpTests = pgTable(
     testedOn: day('tested_on').notNull(),
     rateLPerS: exact('rate_l_per_s', 3).notNull(),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.pumpId, () => pumps), positive('pump_tests_rate', t.rateLPerS)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.pumpId, () => pumps),
+    positive('pump_tests_rate', t.rateLPerS),
+  ],
 );
 
 /** A volume register. What it shows is multiplied and converted; the register itself is never rewritten. */
@@ -111,7 +139,18 @@ export const meterEvents = pgTable(
     ...fact,
     meterId: uuid('meter_id').notNull(),
     kind: text('kind', {
-      enum: ['install', 'remove', 'replace', 'rollover', 'reset', 'power-loss', 'recalibrate', 'multiplier-changed', 'bypassed', 'suspect'],
+      enum: [
+        'install',
+        'remove',
+        'replace',
+        'rollover',
+        'reset',
+        'power-loss',
+        'recalibrate',
+        'multiplier-changed',
+        'bypassed',
+        'suspect',
+      ],
     }).notNull(),
     observedAt: instant('observed_at').notNull(),
     siteDay: day('site_day').notNull(),

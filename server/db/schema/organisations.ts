@@ -23,7 +23,9 @@ export const memberships = pgTable(
   'memberships',
   {
     ...owned,
-    personId: uuid('person_id').notNull().references(() => people.id),
+    personId: uuid('person_id')
+      .notNull()
+      .references(() => people.id),
     siteId: uuid('site_id'),
     laboratoryId: uuid('laboratory_id'),
     role: text('role').notNull(),
@@ -37,7 +39,9 @@ export const sessions = pgTable(
   'sessions',
   {
     ...owned,
-    personId: uuid('person_id').notNull().references(() => people.id),
+    personId: uuid('person_id')
+      .notNull()
+      .references(() => people.id),
     createdAt: instant('created_at').notNull().defaultNow(),
     lastSeenAt: instant('last_seen_at').notNull().defaultNow(),
     endedAt: instant('ended_at'),
@@ -51,7 +55,9 @@ export const accessLinks = pgTable(
   'access_links',
   {
     ...owned,
-    personId: uuid('person_id').notNull().references(() => people.id),
+    personId: uuid('person_id')
+      .notNull()
+      .references(() => people.id),
     purpose: text('purpose', { enum: ['invitation', 'password-reset'] }).notNull(),
     secretHash: text('secret_hash').notNull().unique(),
     expiresAt: instant('expires_at').notNull(),

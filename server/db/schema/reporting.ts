@@ -1,4 +1,14 @@
-import { bigserial, index, integer, jsonb, pgTable, primaryKey, text, unique, uuid } from 'drizzle-orm/pg-core';
+import {
+  bigserial,
+  index,
+  integer,
+  jsonb,
+  pgTable,
+  primaryKey,
+  text,
+  unique,
+  uuid,
+} from 'drizzle-orm/pg-core';
 import { belongsTo, day, fact, instant, monthCheck, owned, ownedKey } from './columns.ts';
 import { sites } from './sites.ts';
 
@@ -12,7 +22,11 @@ export const monthClosings = pgTable(
     act: text('act', { enum: ['close', 'reopen'] }).notNull(),
     runId: uuid('run_id'),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.siteId, () => sites), monthCheck('month_closings_month', t.month)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.siteId, () => sites),
+    monthCheck('month_closings_month', t.month),
+  ],
 );
 
 export const reports = pgTable(
@@ -32,7 +46,11 @@ export const reports = pgTable(
     certification: text('certification').notNull(),
     trailHash: text('trail_hash'),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.siteId, () => sites), unique('reports_issue').on(t.organisationId, t.siteId, t.quarter, t.issue)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.siteId, () => sites),
+    unique('reports_issue').on(t.organisationId, t.siteId, t.quarter, t.issue),
+  ],
 );
 
 export const tasks = pgTable(

@@ -1,6 +1,16 @@
 import { boolean, integer, jsonb, pgTable, text, unique, uuid } from 'drizzle-orm/pg-core';
 import {
-  belongsTo, day, endsAfterStart, exact, fraction, instant, monthCheck, notNegative, owned, ownedKey, positive,
+  belongsTo,
+  day,
+  endsAfterStart,
+  exact,
+  fraction,
+  instant,
+  monthCheck,
+  notNegative,
+  owned,
+  ownedKey,
+  positive,
 } from './columns.ts';
 
 export const sites = pgTable(
@@ -11,8 +21,12 @@ export const sites = pgTable(
     name: text('name').notNull(),
     latitudeDeg: exact('latitude_deg').notNull(),
     elevationM: exact('elevation_m', 2).notNull(),
-    displayUnits: text('display_units', { enum: ['metric', 'us'] }).notNull().default('metric'),
-    paperSize: text('paper_size', { enum: ['A4', 'Letter'] }).notNull().default('A4'),
+    displayUnits: text('display_units', { enum: ['metric', 'us'] })
+      .notNull()
+      .default('metric'),
+    paperSize: text('paper_size', { enum: ['A4', 'Letter'] })
+      .notNull()
+      .default('A4'),
     reportingYearStartMonth: integer('reporting_year_start_month').notNull().default(1),
     openedOn: day('opened_on').notNull(),
     reportDueDays: integer('report_due_days').notNull().default(60),
@@ -33,7 +47,11 @@ export const siteDayRules = pgTable(
     timeZone: text('time_zone').notNull(),
     dayBoundary: text('day_boundary').notNull(),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.siteId, () => sites), unique('site_day_rules_from').on(t.organisationId, t.siteId, t.validFromOn)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.siteId, () => sites),
+    unique('site_day_rules_from').on(t.organisationId, t.siteId, t.validFromOn),
+  ],
 );
 
 export const cells = pgTable(
@@ -69,7 +87,11 @@ export const cellAreas = pgTable(
     linedAreaM2: exact('lined_area_m2', 3).notNull(),
     evidence: text('evidence'),
   },
-  (t) => [ownedKey(t), belongsTo(t.organisationId, t.cellId, () => cells), positive('cell_areas_positive', t.linedAreaM2)],
+  (t) => [
+    ownedKey(t),
+    belongsTo(t.organisationId, t.cellId, () => cells),
+    positive('cell_areas_positive', t.linedAreaM2),
+  ],
 );
 
 export const coverTypes = pgTable(

@@ -2,9 +2,20 @@ import { Router, type Request, type Response } from 'express';
 import { rateLimit } from 'express-rate-limit';
 import type * as z from 'zod';
 import { Problem } from '#shared/problems.ts';
-import { accessLinkInput, demoSignInInput, firstRunInput, passwordResetInput, signInInput } from '#shared/schemas/access.ts';
+import {
+  accessLinkInput,
+  demoSignInInput,
+  firstRunInput,
+  passwordResetInput,
+  signInInput,
+} from '#shared/schemas/access.ts';
 import type { Dependencies } from '../../http/route.ts';
-import { clearSessionCookie, readSessionCookie, setSessionCookie, type SessionClaims } from '../../http/session-cookie.ts';
+import {
+  clearSessionCookie,
+  readSessionCookie,
+  setSessionCookie,
+  type SessionClaims,
+} from '../../http/session-cookie.ts';
 import { validate } from '../../http/validate.ts';
 import * as access from './access-service.ts';
 
@@ -14,10 +25,14 @@ const throttle = (perQuarterHour: number) =>
     limit: perQuarterHour,
     standardHeaders: 'draft-8',
     legacyHeaders: false,
-    keyGenerator: (request) => `${request.ip ?? ''} ${String((request.body as { email?: unknown } | undefined)?.email ?? '')}`,
+    keyGenerator: (request) =>
+      `${request.ip ?? ''} ${String((request.body as { email?: unknown } | undefined)?.email ?? '')}`,
     validate: { keyGeneratorIpFallback: false },
     handler: () => {
-      throw new Problem('too-many-tries', 'Too many tries for this address. Wait a quarter of an hour, or ask for a new password.');
+      throw new Problem(
+        'too-many-tries',
+        'Too many tries for this address. Wait a quarter of an hour, or ask for a new password.',
+      );
     },
   });
 
@@ -35,13 +50,21 @@ export function accessRoutes(deps: Dependencies): Router {
   router.get('/entrance', async (_request, response) => {
     const state = await access.installationState(deps);
     const people = state.hasDemo ? await access.listDemoPeople(deps) : [];
-    response.json({ isEmpty: state.organisationCount === 0, demoPeople: people, hasMailCatcher: Boolean(deps.caughtMail) });
+    response.json({
+      isEmpty: state.organisationCount === 0,
+      demoPeople: people,
+      hasMailCatcher: Boolean(deps.caughtMail),
+    });
   });
   router.post('/sign-in', throttle(20), async (request, response) => {
     await enter(request, response, await access.signIn(deps, bodyOf(request, signInInput), device(request)));
   });
   router.post('/demo-sign-in', async (request, response) => {
-    await enter(request, response, await access.signInToDemo(deps, bodyOf(request, demoSignInInput).email, device(request)));
+    await enter(
+      request,
+      response,
+      await access.signInToDemo(deps, bodyOf(request, demoSignInInput).email, device(request)),
+    );
   });
   router.post('/sign-out', async (request, response) => {
     const claims = await readSessionCookie(request, deps.sessionSecret);
@@ -54,13 +77,22 @@ export function accessRoutes(deps: Dependencies): Router {
     response.status(202).json({ sentence: 'If this address is known here, a link is on its way.' });
   });
   router.post('/passwords', throttle(20), async (request, response) => {
-    await enter(request, response, await access.setPasswordByLink(deps, bodyOf(request, accessLinkInput), device(request)));
+    await enter(
+      request,
+      response,
+      await access.setPasswordByLink(deps, bodyOf(request, accessLinkInput), device(request)),
+    );
   });
   router.post('/first-run', throttle(10), async (request, response) => {
-    await enter(request, response, await access.startFirstRun(deps, bodyOf(request, firstRunInput), device(request)));
+    await enter(
+      request,
+      response,
+      await access.startFirstRun(deps, bodyOf(request, firstRunInput), device(request)),
+    );
   });
   router.get('/caught-mail', async (_request, response) => {
-    if (!deps.caughtMail) throw new Problem('not-found', 'Mail is sent by a real server here, so nothing is caught.');
+    if (!deps.caughtMail)
+      throw new Problem('not-found', 'Mail is sent by a real server here, so nothing is caught.');
     response.json(await deps.caughtMail());
   });
   return router;

@@ -23,14 +23,21 @@ function closureOf(steps: readonly ReturnType<typeof asStep>[]) {
   for (const step of steps) {
     for (const one of checkClosure(step.terms)) {
       const known = worst.get(one.line);
-      if (!known || Math.abs(one.residualMm) > Math.abs(known.residualMm)) worst.set(one.line, { line: one.line, residualMm: one.residualMm, toleranceMm: one.toleranceMm });
+      if (!known || Math.abs(one.residualMm) > Math.abs(known.residualMm))
+        worst.set(one.line, { line: one.line, residualMm: one.residualMm, toleranceMm: one.toleranceMm });
     }
   }
   return [...worst.values()];
 }
 
 /** The balance of a month: site, cells and plots, of the working run or a frozen one. */
-export async function readBalance(tx: Transaction, context: Context, deps: Dependencies, month: Month, runId: string | undefined): Promise<BalanceView> {
+export async function readBalance(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  month: Month,
+  runId: string | undefined,
+): Promise<BalanceView> {
   const siteId = siteOf(context);
   const record = await readSite(tx, siteId);
   const working = await workingRun(tx, context, deps, record);
@@ -43,27 +50,60 @@ export async function readBalance(tx: Transaction, context: Context, deps: Depen
   const cells = record.cells.map((cell) => {
     const own = steps.filter((step) => step.cellId === cell.id);
     return {
-      id: cell.id, code: cell.code, name: cell.name, ...group(own), pumpedM3: measured.get(`${cell.id} ${month}`)?.volumeM3 ?? null,
+      id: cell.id,
+      code: cell.code,
+      name: cell.name,
+      ...group(own),
+      pumpedM3: measured.get(`${cell.id} ${month}`)?.volumeM3 ?? null,
       plots: own.map((step) => ({
-        stepId: step.id, plotName: record.plots.find((plot) => plot.id === step.plotId)?.name ?? '', coverName: record.coverTypes.find((type) => type.id === step.coverTypeId)?.name ?? '',
-        fromOn: step.fromOn, dayCount: step.dayCount, areaM2: step.areaM2, terms: step.terms,
+        stepId: step.id,
+        plotName: record.plots.find((plot) => plot.id === step.plotId)?.name ?? '',
+        coverName: record.coverTypes.find((type) => type.id === step.coverTypeId)?.name ?? '',
+        fromOn: step.fromOn,
+        dayCount: step.dayCount,
+        areaM2: step.areaM2,
+        terms: step.terms,
       })),
     };
   });
   const pumped = cells.map((cell) => cell.pumpedM3).filter((value): value is number => value !== null);
   const climate = working.climate.find((row) => row.month === month) ?? null;
   return {
-    month, run: { ...run, isWorking: run.kind === 'working', warnings: run.warnings as string[] },
+    month,
+    run: { ...run, isWorking: run.kind === 'working', warnings: run.warnings as string[] },
     differsFromWorking: frozen.length > 0 && frozen[0]!.inputSha256 !== working.run.inputSha256,
-    stopped: working.stopped, firstMonth: working.input.climate[0]!.month, lastMonth: working.input.climate.at(-1)!.month,
-    climate: climate && { rainDayCount: climate.rainDayCount, temperatureDayCount: climate.temperatureDayCount, dayCount: climate.dayCount, rainStation: climate.rainStation, temperatureStation: climate.temperatureStation, choice: climate.choice },
-    site: { ...group(steps), pumpedM3: pumped.length ? pumped.reduce((sum, value) => sum + value, 0) : null }, cells, closure: closureOf(steps),
-    frozenRuns: frozen.map((one) => ({ id: one.id, number: one.number, computedAt: one.computedAt, acceptedAt: one.acceptedAt, note: one.note })),
+    stopped: working.stopped,
+    firstMonth: working.input.climate[0]!.month,
+    lastMonth: working.input.climate.at(-1)!.month,
+    climate: climate && {
+      rainDayCount: climate.rainDayCount,
+      temperatureDayCount: climate.temperatureDayCount,
+      dayCount: climate.dayCount,
+      rainStation: climate.rainStation,
+      temperatureStation: climate.temperatureStation,
+      choice: climate.choice,
+    },
+    site: { ...group(steps), pumpedM3: pumped.length ? pumped.reduce((sum, value) => sum + value, 0) : null },
+    cells,
+    closure: closureOf(steps),
+    frozenRuns: frozen.map((one) => ({
+      id: one.id,
+      number: one.number,
+      computedAt: one.computedAt,
+      acceptedAt: one.acceptedAt,
+      note: one.note,
+    })),
   };
 }
 
 /** The working of one number: a term of one plot and step. */
-export async function readWorking(tx: Transaction, context: Context, deps: Dependencies, stepId: string, term: string): Promise<WorkingView> {
+export async function readWorking(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  stepId: string,
+  term: string,
+): Promise<WorkingView> {
   if (!(term in termRegister)) throw new Problem('not-found', 'There is no such term.');
   const siteId = siteOf(context);
   const record = await readSite(tx, siteId);
@@ -74,20 +114,50 @@ export async function readWorking(tx: Transaction, context: Context, deps: Depen
     if (!found) continue;
     const step = asStep(found);
     const sets = await repository.listParameterSets(tx, siteId);
-    const set = sets.find((one) => one.id === run.parameterSetId) ?? (await currentParameters(tx, context, deps));
+    const set =
+      sets.find((one) => one.id === run.parameterSetId) ?? (await currentParameters(tx, context, deps));
     const parameters = set.values as BalanceParameters;
     const cover = working.input.covers[step.coverTypeId];
     if (!cover) throw new Problem('not-found', 'The cover of this step is no longer part of the site.');
     return {
-      title: termRegister[term as TermName].name, plotName: record.plots.find((plot) => plot.id === step.plotId)?.name ?? '', coverName: cover.name, month: step.month, fromOn: step.fromOn, dayCount: step.dayCount,
+      title: termRegister[term as TermName].name,
+      plotName: record.plots.find((plot) => plot.id === step.plotId)?.name ?? '',
+      coverName: cover.name,
+      month: step.month,
+      fromOn: step.fromOn,
+      dayCount: step.dayCount,
       lines: explainStep(term as TermName, {
-        terms: step.terms, areaM2: step.areaM2, dayCount: step.dayCount, daysInMonth: daysInMonth(step.month), cover,
-        runoffCoefficient: stepCover(cover, step.month, parameters).runoffCoefficient, recessionPerMonth: parameters.recessionPerMonth, channelledFraction: parameters.channelledFraction, leakFraction: parameters.leakFraction,
+        terms: step.terms,
+        areaM2: step.areaM2,
+        dayCount: step.dayCount,
+        daysInMonth: daysInMonth(step.month),
+        cover,
+        runoffCoefficient: stepCover(cover, step.month, parameters).runoffCoefficient,
+        recessionPerMonth: parameters.recessionPerMonth,
+        channelledFraction: parameters.channelledFraction,
+        leakFraction: parameters.leakFraction,
       }),
-      law: { exponential: 'Exponential soil drying, Thornthwaite and Mather 1957', 'equal-availability': 'Equal availability', linear: 'Linear withdrawal' }[parameters.soilLaw],
-      petMethod: { thornthwaite: 'Thornthwaite 1948', hargreaves: 'Hargreaves–Samani 1985, FAO-56 eq. 52', given: 'given values' }[parameters.petMethod],
-      parameterSet: { name: set.name, version: set.version, isConfirmed: set.confirmedAt !== null }, run: { kind: run.kind, number: run.number, computedAt: run.computedAt, engineVersion: run.engineVersion },
+      law: {
+        exponential: 'Exponential soil drying, Thornthwaite and Mather 1957',
+        'equal-availability': 'Equal availability',
+        linear: 'Linear withdrawal',
+      }[parameters.soilLaw],
+      petMethod: {
+        thornthwaite: 'Thornthwaite 1948',
+        hargreaves: 'Hargreaves–Samani 1985, FAO-56 eq. 52',
+        given: 'given values',
+      }[parameters.petMethod],
+      parameterSet: { name: set.name, version: set.version, isConfirmed: set.confirmedAt !== null },
+      run: {
+        kind: run.kind,
+        number: run.number,
+        computedAt: run.computedAt,
+        engineVersion: run.engineVersion,
+      },
     };
   }
-  throw new Problem('not-found', 'This number belongs to a run that is no longer kept. Open the balance again.');
+  throw new Problem(
+    'not-found',
+    'This number belongs to a run that is no longer kept. Open the balance again.',
+  );
 }

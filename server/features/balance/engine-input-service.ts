@@ -16,34 +16,63 @@ function engineCells(record: SiteRecord, returns: Awaited<ReturnType<typeof list
     const placedDeficitM3: Record<Month, number> = {};
     for (const row of record.wastePlaced.filter((one) => one.cellId === cell.id)) {
       placedDeficitM3[row.month] = placedWasteDeficitM3({
-        massT: Number(row.massT), bulkDensityTPerM3: Number(row.bulkDensityTPerM3), moistureFraction: Number(row.moistureFraction), fieldCapacityFraction: Number(row.fieldCapacityFraction),
+        massT: Number(row.massT),
+        bulkDensityTPerM3: Number(row.bulkDensityTPerM3),
+        moistureFraction: Number(row.moistureFraction),
+        fieldCapacityFraction: Number(row.fieldCapacityFraction),
       });
     }
     const plots = record.plots
       .filter((plot) => plot.cellId === cell.id)
       .map((plot) => ({
-        id: plot.id, parentId: plot.parentId, areaM2: Number(plot.areaM2), fromOn: plot.fromOn, toOn: plot.toOn,
+        id: plot.id,
+        parentId: plot.parentId,
+        areaM2: Number(plot.areaM2),
+        fromOn: plot.fromOn,
+        toOn: plot.toOn,
         periods: record.coverPeriods
           .filter((period) => period.plotId === plot.id)
-          .map((period) => ({ coverTypeId: period.coverTypeId, fromOn: period.fromOn, toOn: period.toOn, initialSoilStoreMm: number(period.initialSoilStoreMm) })),
+          .map((period) => ({
+            coverTypeId: period.coverTypeId,
+            fromOn: period.fromOn,
+            toOn: period.toOn,
+            initialSoilStoreMm: number(period.initialSoilStoreMm),
+          })),
       }));
     return {
-      id: cell.id, code: cell.code, initialWasteDeficitMm: Number(cell.initialWasteDeficitMm), initialWasteStoreMm: Number(cell.initialWasteStoreMm), plots, placedDeficitM3,
-      returns: returns.filter((one) => one.cellId === cell.id).map((one) => ({
-        siteDay: one.siteDay, plotIds: one.plotIds as string[], isAtSurface: one.method === 'surface' || one.method === 'tanker-at-face', volumeM3: Number(one.volumeM3),
-      })),
+      id: cell.id,
+      code: cell.code,
+      initialWasteDeficitMm: Number(cell.initialWasteDeficitMm),
+      initialWasteStoreMm: Number(cell.initialWasteStoreMm),
+      plots,
+      placedDeficitM3,
+      returns: returns
+        .filter((one) => one.cellId === cell.id)
+        .map((one) => ({
+          siteDay: one.siteDay,
+          plotIds: one.plotIds as string[],
+          isAtSurface: one.method === 'surface' || one.method === 'tanker-at-face',
+          volumeM3: Number(one.volumeM3),
+        })),
     };
   });
 }
 
 /** Months that can be balanced: in order from the first, up to the first gap nobody has decided on. */
-function balanceMonths(climate: SiteMonthClimate[], firstMonth: Month, currentMonth: Month): { months: SiteMonthClimate[]; stopped: string | null } {
+function balanceMonths(
+  climate: SiteMonthClimate[],
+  firstMonth: Month,
+  currentMonth: Month,
+): { months: SiteMonthClimate[]; stopped: string | null } {
   const months: SiteMonthClimate[] = [];
   for (const row of climate) {
     if (row.month < firstMonth || row.month >= currentMonth) continue;
     if (!row.settled) {
       const missing = row.dayCount - Math.min(row.rainDayCount, row.temperatureDayCount);
-      const stopped = row.choice === 'leave-out' ? `${monthName(row.month)} is left out, so the balance ends before it.` : `${monthName(row.month)} has ${missing} ${missing === 1 ? 'day' : 'days'} without climate. Decide what to do about it under Site, climate.`;
+      const stopped =
+        row.choice === 'leave-out'
+          ? `${monthName(row.month)} is left out, so the balance ends before it.`
+          : `${monthName(row.month)} has ${missing} ${missing === 1 ? 'day' : 'days'} without climate. Decide what to do about it under Site, climate.`;
       return { months, stopped };
     }
     months.push(row);
@@ -56,23 +85,60 @@ function balanceMonths(climate: SiteMonthClimate[], firstMonth: Month, currentMo
  * @returns the input, and a sentence when it ends before the last complete month
  * @throws Problem `balance-refused` when there is nothing to balance yet, naming what is missing
  */
-export async function buildEngineInput(tx: Transaction, record: SiteRecord, parameters: BalanceParameters, today: string): Promise<{ input: EngineInput; climate: SiteMonthClimate[]; stopped: string | null }> {
-  if (!record.plots.length) throw new Problem('balance-refused', 'There is no plot to balance yet. Make a cell with its plots under Site.');
+export async function buildEngineInput(
+  tx: Transaction,
+  record: SiteRecord,
+  parameters: BalanceParameters,
+  today: string,
+): Promise<{ input: EngineInput; climate: SiteMonthClimate[]; stopped: string | null }> {
+  if (!record.plots.length)
+    throw new Problem(
+      'balance-refused',
+      'There is no plot to balance yet. Make a cell with its plots under Site.',
+    );
   const climate = await listSiteClimate(tx, record.site.id);
   const firstPlotOn = record.plots.map((plot) => plot.fromOn).sort()[0]!;
   const { months, stopped } = balanceMonths(climate, monthOfDay(firstPlotOn), monthOfDay(today));
-  if (!months.length) throw new Problem('balance-refused', stopped ?? `There is no complete month of climate since ${dayName(firstPlotOn)}. Upload a climate record under Site.`);
+  if (!months.length)
+    throw new Problem(
+      'balance-refused',
+      stopped ??
+        `There is no complete month of climate since ${dayName(firstPlotOn)}. Upload a climate record under Site.`,
+    );
   const returns = await listReturns(tx, record.site.id, '0001-01-01', '9999-12-31');
-  const covers = Object.fromEntries(record.coverTypes.map((type) => [type.id, {
-    kind: type.kind as CoverKind, name: type.name, availableWaterMm: Number(type.availableWaterMm), membranePassFraction: number(type.membranePassFraction),
-    runoffCoefficientWet: Number(type.runoffCoefficientWet), runoffCoefficientDry: Number(type.runoffCoefficientDry), runoffDestination: type.runoffDestination, petFactor: Number(type.petFactor),
-  }]));
+  const covers = Object.fromEntries(
+    record.coverTypes.map((type) => [
+      type.id,
+      {
+        kind: type.kind as CoverKind,
+        name: type.name,
+        availableWaterMm: Number(type.availableWaterMm),
+        membranePassFraction: number(type.membranePassFraction),
+        runoffCoefficientWet: Number(type.runoffCoefficientWet),
+        runoffCoefficientDry: Number(type.runoffCoefficientDry),
+        runoffDestination: type.runoffDestination,
+        petFactor: Number(type.petFactor),
+      },
+    ]),
+  );
   return {
     input: {
-      latitudeDeg: Number(record.site.latitudeDeg), elevationM: Number(record.site.elevationM),
-      climate: months.map(({ settled }) => ({ month: settled!.month, precipitationMm: settled!.precipitationMm, tMeanC: settled!.tMeanC, tMinC: settled!.tMinC, tMaxC: settled!.tMaxC, petMm: settled!.petMm, dailyPrecipitationMm: settled!.dailyPrecipitationMm })),
-      covers, cells: engineCells(record, returns), parameters,
+      latitudeDeg: Number(record.site.latitudeDeg),
+      elevationM: Number(record.site.elevationM),
+      climate: months.map(({ settled }) => ({
+        month: settled!.month,
+        precipitationMm: settled!.precipitationMm,
+        tMeanC: settled!.tMeanC,
+        tMinC: settled!.tMinC,
+        tMaxC: settled!.tMaxC,
+        petMm: settled!.petMm,
+        dailyPrecipitationMm: settled!.dailyPrecipitationMm,
+      })),
+      covers,
+      cells: engineCells(record, returns),
+      parameters,
     },
-    climate, stopped,
+    climate,
+    stopped,
   };
 }

@@ -1,7 +1,12 @@
 import type * as z from 'zod';
 import { Problem } from '#shared/problems.ts';
 import type { freezeInput, parameterSetInput } from '#shared/schemas/balance.ts';
-import { engineVersion, parameterTemplate, type BalanceParameters, type EngineInput } from '#shared/water-balance/engine-input.ts';
+import {
+  engineVersion,
+  parameterTemplate,
+  type BalanceParameters,
+  type EngineInput,
+} from '#shared/water-balance/engine-input.ts';
 import { runWaterBalance, type StepResult } from '#shared/water-balance/run-water-balance.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import type { Transaction } from '../../db/transaction.ts';
@@ -14,7 +19,9 @@ import { buildEngineInput } from './engine-input-service.ts';
 /** JSON with sorted keys, so that the same input has the same bytes. */
 export function canonicalJson(value: unknown): string {
   return JSON.stringify(value, (_key, inner: unknown) =>
-    inner !== null && typeof inner === 'object' && !Array.isArray(inner) ? Object.fromEntries(Object.entries(inner).sort(([a], [b]) => (a < b ? -1 : 1))) : inner,
+    inner !== null && typeof inner === 'object' && !Array.isArray(inner)
+      ? Object.fromEntries(Object.entries(inner).sort(([a], [b]) => (a < b ? -1 : 1)))
+      : inner,
   );
 }
 
@@ -26,21 +33,43 @@ export async function currentParameters(tx: Transaction, context: Context, deps:
   await repository.lockWorkingRun(tx, siteId);
   const meanwhile = await repository.findCurrentParameterSet(tx, siteId);
   if (meanwhile) return meanwhile;
-  await repository.insertParameterSet(tx, { organisationId: context.organisationId, id: deps.newId(), siteId, name: 'Template', version: 1, values: parameterTemplate, createdById: context.personId, isCurrent: true });
+  await repository.insertParameterSet(tx, {
+    organisationId: context.organisationId,
+    id: deps.newId(),
+    siteId,
+    name: 'Template',
+    version: 1,
+    values: parameterTemplate,
+    createdById: context.personId,
+    isCurrent: true,
+  });
   return (await repository.findCurrentParameterSet(tx, siteId))!;
 }
 
 const stepRows = (context: Context, deps: Dependencies, runId: string, steps: readonly StepResult[]) =>
   steps.map((step) => ({
-    organisationId: context.organisationId, id: deps.newId(), runId, cellId: step.cellId, plotId: step.plotId, coverTypeId: step.coverTypeId, month: step.month, fromOn: step.fromOn,
-    dayCount: step.dayCount, areaM2: step.areaM2, terms: step.terms,
+    organisationId: context.organisationId,
+    id: deps.newId(),
+    runId,
+    cellId: step.cellId,
+    plotId: step.plotId,
+    coverTypeId: step.coverTypeId,
+    month: step.month,
+    fromOn: step.fromOn,
+    dayCount: step.dayCount,
+    areaM2: step.areaM2,
+    terms: step.terms,
   }));
 
 function computeRun(input: EngineInput) {
   try {
     return { ...runWaterBalance(input), problem: null };
   } catch (error) {
-    return { steps: [], warnings: [], problem: error instanceof Error ? error.message : 'The balance could not be computed.' };
+    return {
+      steps: [],
+      warnings: [],
+      problem: error instanceof Error ? error.message : 'The balance could not be computed.',
+    };
   }
 }
 
@@ -52,13 +81,24 @@ export interface WorkingRun {
 }
 
 /** The working run, computed again whenever any of its inputs has changed since. */
-export async function workingRun(tx: Transaction, context: Context, deps: Dependencies, record: SiteRecord): Promise<WorkingRun> {
+export async function workingRun(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  record: SiteRecord,
+): Promise<WorkingRun> {
   const siteId = siteOf(context);
   const parameters = await currentParameters(tx, context, deps);
   const today = (await siteDaysOf(tx, siteId)).dayOf(deps.now().getTime());
-  const { input, climate, stopped } = await buildEngineInput(tx, record, parameters.values as BalanceParameters, today);
+  const { input, climate, stopped } = await buildEngineInput(
+    tx,
+    record,
+    parameters.values as BalanceParameters,
+    today,
+  );
   const inputSha256 = sha256Of(engineVersion + canonicalJson(input));
-  const isCurrent = (run: Awaited<ReturnType<typeof repository.findWorkingRun>>) => run?.inputSha256 === inputSha256 && run.parameterSetId === parameters.id;
+  const isCurrent = (run: Awaited<ReturnType<typeof repository.findWorkingRun>>) =>
+    run?.inputSha256 === inputSha256 && run.parameterSetId === parameters.id;
   const known = await repository.findWorkingRun(tx, siteId);
   if (known && isCurrent(known)) return { run: known, stopped, climate, input };
   // Two pages opened at once: the second waits and finds the first one's run.
@@ -68,40 +108,92 @@ export async function workingRun(tx: Transaction, context: Context, deps: Depend
   const { steps, warnings, problem } = computeRun(input);
   await repository.deleteWorkingRun(tx, siteId);
   const id = deps.newId();
-  await repository.insertRun(tx, { organisationId: context.organisationId, id, siteId, kind: 'working', parameterSetId: parameters.id, engineVersion, inputSha256, warnings, problem, computedAt: deps.now().toISOString() });
+  await repository.insertRun(tx, {
+    organisationId: context.organisationId,
+    id,
+    siteId,
+    kind: 'working',
+    parameterSetId: parameters.id,
+    engineVersion,
+    inputSha256,
+    warnings,
+    problem,
+    computedAt: deps.now().toISOString(),
+  });
   await repository.insertSteps(tx, stepRows(context, deps, id, steps));
   return { run: (await repository.findWorkingRun(tx, siteId))!, stopped, climate, input };
 }
 
 /** Keeps the working run for ever: complete input, its hash, engine version, parameter set and results. */
-export async function freezeRun(tx: Transaction, context: Context, deps: Dependencies, input: z.output<typeof freezeInput>) {
+export async function freezeRun(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  input: z.output<typeof freezeInput>,
+) {
   const siteId = siteOf(context);
   const { run, input: engineInput } = await workingRun(tx, context, deps, await readSite(tx, siteId));
-  if (run.problem) throw new Problem('balance-refused', `The working run has no result to keep. ${run.problem}`);
+  if (run.problem)
+    throw new Problem('balance-refused', `The working run has no result to keep. ${run.problem}`);
   const number = ((await repository.listFrozenRuns(tx, siteId))[0]?.number ?? 0) + 1;
   await repository.insertRun(tx, {
-    organisationId: context.organisationId, id: input.id, siteId, kind: 'frozen', number, parameterSetId: run.parameterSetId, engineVersion: run.engineVersion, inputSha256: run.inputSha256,
-    input: canonicalJson(engineInput), warnings: run.warnings as string[], computedAt: deps.now().toISOString(), frozenById: context.personId, note: input.note ?? null,
+    organisationId: context.organisationId,
+    id: input.id,
+    siteId,
+    kind: 'frozen',
+    number,
+    parameterSetId: run.parameterSetId,
+    engineVersion: run.engineVersion,
+    inputSha256: run.inputSha256,
+    input: canonicalJson(engineInput),
+    warnings: run.warnings as string[],
+    computedAt: deps.now().toISOString(),
+    frozenById: context.personId,
+    note: input.note ?? null,
   });
   const steps = await repository.listSteps(tx, run.id);
-  await repository.insertSteps(tx, steps.map((step) => ({ ...step, id: deps.newId(), runId: input.id })));
-  await recordChange(tx, context, { action: 'freeze', subjectType: 'balance-runs', subjectId: input.id, sentence: `Run ${number} was frozen.`, reason: input.note, after: { number, inputSha256: run.inputSha256 } });
+  await repository.insertSteps(
+    tx,
+    steps.map((step) => ({ ...step, id: deps.newId(), runId: input.id })),
+  );
+  await recordChange(tx, context, {
+    action: 'freeze',
+    subjectType: 'balance-runs',
+    subjectId: input.id,
+    sentence: `Run ${number} was frozen.`,
+    reason: input.note,
+    after: { number, inputSha256: run.inputSha256 },
+  });
   return { id: input.id, number };
 }
 
 /** An accepted frozen run is the one that Compare and Report use. */
 export async function acceptRun(tx: Transaction, context: Context, deps: Dependencies, runId: string) {
   const run = await repository.findRun(tx, siteOf(context), runId);
-  if (!run || run.kind !== 'frozen') throw new Problem('not-found', 'There is no such frozen run at this site.');
+  if (!run || run.kind !== 'frozen')
+    throw new Problem('not-found', 'There is no such frozen run at this site.');
   if (run.acceptedAt) throw new Problem('already-done', `Run ${run.number} was accepted already.`);
   await repository.acceptRun(tx, runId, context.personId, deps.now().toISOString());
-  await recordChange(tx, context, { action: 'accept', subjectType: 'balance-runs', subjectId: runId, sentence: `Run ${run.number} was accepted for Compare and Report.`, after: { number: run.number } });
+  await recordChange(tx, context, {
+    action: 'accept',
+    subjectType: 'balance-runs',
+    subjectId: runId,
+    sentence: `Run ${run.number} was accepted for Compare and Report.`,
+    after: { number: run.number },
+  });
   return { id: runId };
 }
 
 /** The run that predictions are taken from: the newest accepted one, else the working run. */
-export async function predictionRun(tx: Transaction, context: Context, deps: Dependencies, record: SiteRecord) {
-  const accepted = (await repository.listFrozenRuns(tx, siteOf(context))).find((run) => run.acceptedAt !== null);
+export async function predictionRun(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  record: SiteRecord,
+) {
+  const accepted = (await repository.listFrozenRuns(tx, siteOf(context))).find(
+    (run) => run.acceptedAt !== null,
+  );
   if (accepted) return { run: accepted, isAccepted: true };
   return { run: (await workingRun(tx, context, deps, record)).run, isAccepted: false };
 }
@@ -120,21 +212,59 @@ export async function recheckRun(tx: Transaction, context: Context, runId: strin
     const difference = Math.abs(now - stored) / Math.max(1, Math.abs(stored));
     if (!(difference <= worst)) worst = difference;
   }
-  return { number: run.number, stepCount: steps.length, largestRelativeDifference: worst, agrees: worst <= 1e-9, engineThen: run.engineVersion, engineNow: engineVersion };
+  return {
+    number: run.number,
+    stepCount: steps.length,
+    largestRelativeDifference: worst,
+    agrees: worst <= 1e-9,
+    engineThen: run.engineVersion,
+    engineNow: engineVersion,
+  };
 }
 
 /** Stores a new parameter set and makes it current; the working run follows. */
-export async function createParameterSet(tx: Transaction, context: Context, deps: Dependencies, input: z.output<typeof parameterSetInput>) {
+export async function createParameterSet(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  input: z.output<typeof parameterSetInput>,
+) {
   const siteId = siteOf(context);
   const before = await currentParameters(tx, context, deps);
-  const version = Math.max(0, ...(await repository.listParameterSets(tx, siteId)).filter((one) => one.name === input.name).map((one) => one.version)) + 1;
-  await repository.insertParameterSet(tx, { organisationId: context.organisationId, id: input.id, siteId, name: input.name, version, values: input.values, createdById: context.personId, confirmedById: context.personId, confirmedAt: deps.now().toISOString() });
+  const version =
+    Math.max(
+      0,
+      ...(await repository.listParameterSets(tx, siteId))
+        .filter((one) => one.name === input.name)
+        .map((one) => one.version),
+    ) + 1;
+  await repository.insertParameterSet(tx, {
+    organisationId: context.organisationId,
+    id: input.id,
+    siteId,
+    name: input.name,
+    version,
+    values: input.values,
+    createdById: context.personId,
+    confirmedById: context.personId,
+    confirmedAt: deps.now().toISOString(),
+  });
   await repository.makeCurrent(tx, siteId, input.id);
-  await recordChange(tx, context, { action: 'create', subjectType: 'parameter-sets', subjectId: input.id, sentence: `Parameter set ${input.name}, version ${version}, is the current one.`, before: before.values, after: input.values });
+  await recordChange(tx, context, {
+    action: 'create',
+    subjectType: 'parameter-sets',
+    subjectId: input.id,
+    sentence: `Parameter set ${input.name}, version ${version}, is the current one.`,
+    before: before.values,
+    after: input.values,
+  });
   return { id: input.id, version };
 }
 
 /** The set in force and every earlier one, newest first. */
 export async function readParameterSets(tx: Transaction, context: Context, deps: Dependencies) {
-  return { current: await currentParameters(tx, context, deps), sets: await repository.listParameterSets(tx, siteOf(context)) };
+  return {
+    current: await currentParameters(tx, context, deps),
+    sets: await repository.listParameterSets(tx, siteOf(context)),
+  };
 }

@@ -2,7 +2,13 @@ import type * as z from 'zod';
 import type { Day } from '#shared/calendar/day.ts';
 import { monthOfDay } from '#shared/calendar/day.ts';
 import { monthName, monthParts, monthRange, type Month } from '#shared/calendar/month.ts';
-import { monthFromRecord, settleGap, summariseMonth, type ClimateValues, type MonthSummary } from '#shared/climate/month-climate.ts';
+import {
+  monthFromRecord,
+  settleGap,
+  summariseMonth,
+  type ClimateValues,
+  type MonthSummary,
+} from '#shared/climate/month-climate.ts';
 import { fieldProblem } from '#shared/problems.ts';
 import type { gapChoiceInput } from '#shared/schemas/climate.ts';
 import type { MonthClimate } from '#shared/water-balance/engine-input.ts';
@@ -33,12 +39,27 @@ interface StationRecord {
 }
 
 const toNumber = (text: string | null) => (text === null ? null : Number(text));
-const valuesOf = (row: { precipitationMm: string | null; tMinC: string | null; tMaxC: string | null; tMeanC: string | null; petMm: string | null }): ClimateValues => ({
-  precipitationMm: toNumber(row.precipitationMm), tMinC: toNumber(row.tMinC), tMaxC: toNumber(row.tMaxC), tMeanC: toNumber(row.tMeanC), petMm: toNumber(row.petMm),
+const valuesOf = (row: {
+  precipitationMm: string | null;
+  tMinC: string | null;
+  tMaxC: string | null;
+  tMeanC: string | null;
+  petMm: string | null;
+}): ClimateValues => ({
+  precipitationMm: toNumber(row.precipitationMm),
+  tMinC: toNumber(row.tMinC),
+  tMaxC: toNumber(row.tMaxC),
+  tMeanC: toNumber(row.tMeanC),
+  petMm: toNumber(row.petMm),
 });
 
 /** An accumulated reading is spread over its days and stays marked; its sum is kept. */
-function spreadAccumulated(days: Map<Day, ClimateValues>, siteDay: Day, count: number, values: ClimateValues): void {
+function spreadAccumulated(
+  days: Map<Day, ClimateValues>,
+  siteDay: Day,
+  count: number,
+  values: ClimateValues,
+): void {
   const end = Date.parse(`${siteDay}T00:00Z`);
   for (let back = 0; back < count; back += 1) {
     const day = new Date(end - back * 86_400_000).toISOString().slice(0, 10);
@@ -50,14 +71,27 @@ async function readStations(tx: Transaction, siteId: string): Promise<StationRec
   const stations = await repository.listStations(tx, siteId);
   if (!stations.length) return [];
   const ids = stations.map((station) => station.id);
-  const records = new Map(stations.map((station) => [station.id, { id: station.id, name: station.name, days: new Map(), months: new Map(), monthsWithDays: new Set<Month>() } as StationRecord]));
+  const records = new Map(
+    stations.map((station) => [
+      station.id,
+      {
+        id: station.id,
+        name: station.name,
+        days: new Map(),
+        months: new Map(),
+        monthsWithDays: new Set<Month>(),
+      } as StationRecord,
+    ]),
+  );
   for (const row of await repository.listLiveDays(tx, ids)) {
     const record = records.get(row.stationId)!;
-    if (row.kind === 'accumulated' && row.accumulatedDays) spreadAccumulated(record.days, row.siteDay, row.accumulatedDays, valuesOf(row));
+    if (row.kind === 'accumulated' && row.accumulatedDays)
+      spreadAccumulated(record.days, row.siteDay, row.accumulatedDays, valuesOf(row));
     else record.days.set(row.siteDay, valuesOf(row));
     record.monthsWithDays.add(monthOfDay(row.siteDay));
   }
-  for (const row of await repository.listLiveMonths(tx, ids)) records.get(row.stationId)!.months.set(row.month, valuesOf(row));
+  for (const row of await repository.listLiveMonths(tx, ids))
+    records.get(row.stationId)!.months.set(row.month, valuesOf(row));
   return [...records.values()];
 }
 
@@ -68,8 +102,13 @@ function monthOfStation(station: StationRecord, month: Month): MonthSummary | nu
 }
 
 /** Rain from the first station that has any, temperature from the first that has any; both are named. */
-function joinStations(stations: StationRecord[], month: Month): Omit<SiteMonthClimate, 'choice' | 'settled'> | null {
-  const found = stations.map((station) => ({ station, summary: monthOfStation(station, month) })).filter((one) => one.summary !== null);
+function joinStations(
+  stations: StationRecord[],
+  month: Month,
+): Omit<SiteMonthClimate, 'choice' | 'settled'> | null {
+  const found = stations
+    .map((station) => ({ station, summary: monthOfStation(station, month) }))
+    .filter((one) => one.summary !== null);
   const rain = found.find(({ summary }) => summary!.rainDayCount > 0);
   const warm = found.find(({ summary }) => summary!.temperatureDayCount > 0);
   const pet = found.find(({ summary }) => summary!.petMm !== null);
@@ -77,32 +116,51 @@ function joinStations(stations: StationRecord[], month: Month): Omit<SiteMonthCl
   if (!base) return null;
   return {
     ...base,
-    tMeanC: warm?.summary!.tMeanC ?? null, tMinC: warm?.summary!.tMinC ?? null, tMaxC: warm?.summary!.tMaxC ?? null, petMm: pet?.summary!.petMm ?? null,
+    tMeanC: warm?.summary!.tMeanC ?? null,
+    tMinC: warm?.summary!.tMinC ?? null,
+    tMaxC: warm?.summary!.tMaxC ?? null,
+    petMm: pet?.summary!.petMm ?? null,
     temperatureDayCount: warm?.summary!.temperatureDayCount ?? 0,
-    isComplete: base.rainDayCount === base.dayCount && (warm?.summary!.temperatureDayCount ?? 0) === base.dayCount,
-    rainStation: rain?.station.name ?? null, temperatureStation: warm?.station.name ?? null,
+    isComplete:
+      base.rainDayCount === base.dayCount && (warm?.summary!.temperatureDayCount ?? 0) === base.dayCount,
+    rainStation: rain?.station.name ?? null,
+    temperatureStation: warm?.station.name ?? null,
   };
 }
 
 function stationNormal(months: readonly MonthSummary[], month: Month): MonthClimate | null {
-  const same = months.filter((one) => one.isComplete && monthParts(one.month).monthOfYear === monthParts(month).monthOfYear);
+  const same = months.filter(
+    (one) => one.isComplete && monthParts(one.month).monthOfYear === monthParts(month).monthOfYear,
+  );
   if (!same.length) return null;
   const mean = (pick: (row: MonthSummary) => number | null) => {
     const values = same.map(pick).filter((value): value is number => value !== null);
     return values.length ? values.reduce((sum, value) => sum + value, 0) / values.length : null;
   };
-  return { month, precipitationMm: mean((row) => row.precipitationMm) ?? 0, tMeanC: mean((row) => row.tMeanC), tMinC: mean((row) => row.tMinC), tMaxC: mean((row) => row.tMaxC), petMm: mean((row) => row.petMm), dailyPrecipitationMm: null };
+  return {
+    month,
+    precipitationMm: mean((row) => row.precipitationMm) ?? 0,
+    tMeanC: mean((row) => row.tMeanC),
+    tMinC: mean((row) => row.tMinC),
+    tMaxC: mean((row) => row.tMaxC),
+    petMm: mean((row) => row.petMm),
+    dailyPrecipitationMm: null,
+  };
 }
 
 /** Every month of a site that has any climate, in order. */
-export const listSiteClimate = (tx: Transaction, siteId: string): Promise<SiteMonthClimate[]> => remembered(tx, `climate ${siteId}`, () => joinSiteClimate(tx, siteId));
+export const listSiteClimate = (tx: Transaction, siteId: string): Promise<SiteMonthClimate[]> =>
+  remembered(tx, `climate ${siteId}`, () => joinSiteClimate(tx, siteId));
 
 async function joinSiteClimate(tx: Transaction, siteId: string): Promise<SiteMonthClimate[]> {
   const stations = await readStations(tx, siteId);
   const named = stations.flatMap((station) => [...station.months.keys(), ...station.monthsWithDays]).sort();
   if (!named.length) return [];
   const choices = new Map((await repository.listGapChoices(tx, siteId)).map((row) => [row.month, row]));
-  const joined = monthRange(named[0]!, named.at(-1)!).map((month) => ({ month, summary: joinStations(stations, month) }));
+  const joined = monthRange(named[0]!, named.at(-1)!).map((month) => ({
+    month,
+    summary: joinStations(stations, month),
+  }));
   const complete = joined.flatMap(({ summary }) => (summary ? [summary] : []));
   return joined.map(({ month, summary }) => {
     const empty = { ...summariseMonth(month, new Map()), rainStation: null, temperatureStation: null };
@@ -110,20 +168,49 @@ async function joinSiteClimate(tx: Transaction, siteId: string): Promise<SiteMon
     const choice = choices.get(month);
     if (row.isComplete) return { ...row, choice: null, settled: row };
     const other = stations.find((station) => station.id === choice?.otherStationId);
-    const settled = choice ? settleGap(row, choice.choice, stationNormal(complete, month), other ? monthOfStation(other, month) : null) : null;
+    const settled = choice
+      ? settleGap(
+          row,
+          choice.choice,
+          stationNormal(complete, month),
+          other ? monthOfStation(other, month) : null,
+        )
+      : null;
     return { ...row, choice: choice?.choice ?? null, settled };
   });
 }
 
 /** Stores what an engineer chose for a month with missing days. */
-export async function chooseForGap(tx: Transaction, context: Context, input: z.output<typeof gapChoiceInput>) {
+export async function chooseForGap(
+  tx: Transaction,
+  context: Context,
+  input: z.output<typeof gapChoiceInput>,
+) {
   const siteId = siteOf(context);
   const row = (await listSiteClimate(tx, siteId)).find((one) => one.month === input.month);
   if (!row) throw fieldProblem('/month', `There is no climate record around ${monthName(input.month)}.`);
   if (row.isComplete) throw fieldProblem('/month', `${monthName(input.month)} has no missing days.`);
-  if (input.choice === 'other-station' && !input.otherStationId) throw fieldProblem('/otherStationId', 'Choose the station to fill from.');
-  await repository.insertGapChoice(tx, { organisationId: context.organisationId, id: input.id, recordedById: context.personId, siteId, month: input.month, variable: 'precipitation', choice: input.choice, otherStationId: input.otherStationId ?? null, reason: input.reason });
-  await recordChange(tx, context, { action: 'choose', subjectType: 'climate-months', subjectId: input.id, sentence: `Missing climate of ${monthName(input.month)}: ${input.choice.replaceAll('-', ' ')}.`, reason: input.reason, after: input });
+  if (input.choice === 'other-station' && !input.otherStationId)
+    throw fieldProblem('/otherStationId', 'Choose the station to fill from.');
+  await repository.insertGapChoice(tx, {
+    organisationId: context.organisationId,
+    id: input.id,
+    recordedById: context.personId,
+    siteId,
+    month: input.month,
+    variable: 'precipitation',
+    choice: input.choice,
+    otherStationId: input.otherStationId ?? null,
+    reason: input.reason,
+  });
+  await recordChange(tx, context, {
+    action: 'choose',
+    subjectType: 'climate-months',
+    subjectId: input.id,
+    sentence: `Missing climate of ${monthName(input.month)}: ${input.choice.replaceAll('-', ' ')}.`,
+    reason: input.reason,
+    after: input,
+  });
   return { id: input.id };
 }
 
@@ -132,7 +219,17 @@ export async function readClimate(tx: Transaction, context: Context): Promise<Cl
   const climate = await listSiteClimate(tx, siteOf(context));
   const uploads = await listImports(tx, siteOf(context), 'climate', null);
   return {
-    months: climate.map(({ settled, dailyPrecipitationMm: _daily, ...row }) => ({ ...row, isSettled: settled !== null })),
-    uploads: uploads.map((row) => ({ id: row.id, fileName: row.fileName, uploadedAt: row.uploadedAt, counts: row.counts as { read: number; held: number }, confirmedAt: row.confirmedAt, undoneAt: row.undoneAt })),
+    months: climate.map(({ settled, dailyPrecipitationMm: _daily, ...row }) => ({
+      ...row,
+      isSettled: settled !== null,
+    })),
+    uploads: uploads.map((row) => ({
+      id: row.id,
+      fileName: row.fileName,
+      uploadedAt: row.uploadedAt,
+      counts: row.counts as { read: number; held: number },
+      confirmedAt: row.confirmedAt,
+      undoneAt: row.undoneAt,
+    })),
   };
 }

@@ -14,8 +14,19 @@ export interface MeasuredMonth {
 }
 
 /** Share of a header that belongs to a cell in a month: fixed and dated, or in proportion to prediction. */
-function headerShare(record: SiteRecord, placeId: string, cellId: string, month: Month, predicted: ReadonlyMap<string, number>): number {
-  const live = record.headerShares.filter((share) => share.placeId === placeId && share.fromOn <= lastDay(month) && (share.toOn === null || share.toOn > firstDay(month)));
+function headerShare(
+  record: SiteRecord,
+  placeId: string,
+  cellId: string,
+  month: Month,
+  predicted: ReadonlyMap<string, number>,
+): number {
+  const live = record.headerShares.filter(
+    (share) =>
+      share.placeId === placeId &&
+      share.fromOn <= lastDay(month) &&
+      (share.toOn === null || share.toOn > firstDay(month)),
+  );
   const own = live.find((share) => share.cellId === cellId);
   if (!own) return 0;
   if (own.shareFraction !== null) return Number(own.shareFraction);
@@ -30,7 +41,13 @@ function headerShare(record: SiteRecord, placeId: string, cellId: string, month:
  * @returns by `cellId month`; a month without any entry of the cell's sumps is absent: missing, not zero
  * @source method section 9
  */
-export async function measuredByCell(tx: Transaction, record: SiteRecord, first: Month, last: Month, predicted: ReadonlyMap<string, number>): Promise<Map<string, MeasuredMonth>> {
+export async function measuredByCell(
+  tx: Transaction,
+  record: SiteRecord,
+  first: Month,
+  last: Month,
+  predicted: ReadonlyMap<string, number>,
+): Promise<Map<string, MeasuredMonth>> {
   const sums = await sumEntriesByMonth(tx, record.site.id, firstDay(first), lastDay(last));
   const result = new Map<string, MeasuredMonth>();
   const add = (cellId: string, month: Month, volumeM3: number, basis: string, isAllocated: boolean) => {
@@ -42,7 +59,9 @@ export async function measuredByCell(tx: Transaction, record: SiteRecord, first:
     if (isAllocated) row.allocatedM3 += volumeM3;
     result.set(key, row);
   };
-  const primary = new Map(record.sumps.filter((sump) => sump.kind === 'primary').map((sump) => [sump.placeId, sump.cellId]));
+  const primary = new Map(
+    record.sumps.filter((sump) => sump.kind === 'primary').map((sump) => [sump.placeId, sump.cellId]),
+  );
   const headers = new Set(record.places.filter((place) => place.kind === 'header').map((place) => place.id));
   for (const row of sums) {
     const volume = Number(row.volumeM3);

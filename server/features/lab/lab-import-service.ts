@@ -35,25 +35,72 @@ const previewRowsMax = 24;
 
 const countsOf = (rows: readonly LabRow[], skippedCount: number) => {
   const count = (state: LabRow['state']) => rows.filter((row) => row.state === state).length;
-  return { read: rows.length + skippedCount, ok: count('ok'), warned: count('warned'), held: count('held'), skipped: count('skipped') + skippedCount };
+  return {
+    read: rows.length + skippedCount,
+    ok: count('ok'),
+    warned: count('warned'),
+    held: count('held'),
+    skipped: count('skipped') + skippedCount,
+  };
 };
 
-async function catalogOf(tx: Transaction, siteId: string, laboratoryId: string, receivedOn: string, dateOrder: StoredReading['dateOrder']): Promise<LabCatalog> {
+async function catalogOf(
+  tx: Transaction,
+  siteId: string,
+  laboratoryId: string,
+  receivedOn: string,
+  dateOrder: StoredReading['dateOrder'],
+): Promise<LabCatalog> {
   const mappings = await repository.listMappings(tx, laboratoryId);
   const live = await repository.listLiveResults(tx, siteId);
   return {
-    points: (await repository.listSamplePoints(tx, siteId)).map((one) => ({ id: one.id, code: one.code, aliases: [one.name, ...one.aliases] })),
+    points: (await repository.listSamplePoints(tx, siteId)).map((one) => ({
+      id: one.id,
+      code: one.code,
+      aliases: [one.name, ...one.aliases],
+    })),
     analytes: await repository.listAnalytes(tx),
-    qualifiers: new Map((await repository.listQualifiers(tx, laboratoryId)).map((one) => [one.letter, one.meaning])),
+    qualifiers: new Map(
+      (await repository.listQualifiers(tx, laboratoryId)).map((one) => [one.letter, one.meaning]),
+    ),
     mappings: new Map(mappings.map((one) => [`${one.kind} ${tidyName(one.fromText)}`, one.toValue])),
-    existing: new Map(live.filter((one) => one.isCounted).map((one) => [`${one.samplePointId} ${one.analyteId} ${one.fraction} ${one.sampledOn}`, { id: one.id, comparator: one.comparator, value: one.value, unit: one.unit }])),
-    receivedOn, answers: { dateOrder },
+    existing: new Map(
+      live
+        .filter((one) => one.isCounted)
+        .map((one) => [
+          `${one.samplePointId} ${one.analyteId} ${one.fraction} ${one.sampledOn}`,
+          { id: one.id, comparator: one.comparator, value: one.value, unit: one.unit },
+        ]),
+    ),
+    receivedOn,
+    answers: { dateOrder },
   };
 }
 
-async function stage(tx: Transaction, context: Context, deps: Dependencies, importId: string, raws: readonly RawLabRow[], catalog: LabCatalog, skippedCount: number) {
+async function stage(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  importId: string,
+  raws: readonly RawLabRow[],
+  catalog: LabCatalog,
+  skippedCount: number,
+) {
   const rows = resolveLabRows(raws, catalog);
-  await importRepository.replaceRows(tx, importId, rows.map((row, position) => ({ organisationId: context.organisationId, id: deps.newId(), importId, position, sheet: row.sheet, rowNumber: row.rowNumber, state: row.state, payload: row })));
+  await importRepository.replaceRows(
+    tx,
+    importId,
+    rows.map((row, position) => ({
+      organisationId: context.organisationId,
+      id: deps.newId(),
+      importId,
+      position,
+      sheet: row.sheet,
+      rowNumber: row.rowNumber,
+      state: row.state,
+      payload: row,
+    })),
+  );
   const counts = countsOf(rows, skippedCount);
   await importRepository.updateImport(tx, importId, { counts });
   return counts;
@@ -61,7 +108,12 @@ async function stage(tx: Transaction, context: Context, deps: Dependencies, impo
 
 function previewOf(file: SheetFile, reading: LabReading) {
   const sheet = file.sheets.find((one) => one.name === reading.rows[0]?.sheet) ?? file.sheets[0]!;
-  return { sheetName: sheet.name, preview: sheet.rows.slice(0, previewRowsMax).map((row) => ({ number: row.number, cells: row.cells.map(cellText) })) };
+  return {
+    sheetName: sheet.name,
+    preview: sheet.rows
+      .slice(0, previewRowsMax)
+      .map((row) => ({ number: row.number, cells: row.cells.map(cellText) })),
+  };
 }
 
 async function today(tx: Transaction, siteId: string, deps: Dependencies): Promise<string> {
@@ -69,81 +121,235 @@ async function today(tx: Transaction, siteId: string, deps: Dependencies): Promi
 }
 
 /** Takes a laboratory's sheet: kept byte for byte, read in a child process, staged. Nothing is in the record yet. */
-export async function uploadResults(tx: Transaction, context: Context, deps: Dependencies, input: z.output<typeof labUploadInput>, file: UploadedFile | undefined) {
+export async function uploadResults(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  input: z.output<typeof labUploadInput>,
+  file: UploadedFile | undefined,
+) {
   const siteId = siteOf(context);
   if (!file) throw new Problem('file-not-readable', 'Choose a file to upload.');
-  if (context.laboratoryId && context.laboratoryId !== input.laboratoryId) throw fieldProblem('/laboratoryId', 'You upload for your own laboratory.');
-  if (!(await repository.listLaboratories(tx)).some((one) => one.id === input.laboratoryId)) throw fieldProblem('/laboratoryId', 'Choose the laboratory.');
+  if (context.laboratoryId && context.laboratoryId !== input.laboratoryId)
+    throw fieldProblem('/laboratoryId', 'You upload for your own laboratory.');
+  if (!(await repository.listLaboratories(tx)).some((one) => one.id === input.laboratoryId))
+    throw fieldProblem('/laboratoryId', 'Choose the laboratory.');
   const sha256 = sha256Of(file.bytes);
   const same = await importRepository.findSameFile(tx, siteId, 'lab', sha256);
-  if (same) throw new Problem('already-done', `This file was imported on ${dayName(same.confirmedAt!.slice(0, 10))} already. There is nothing to do.`);
+  if (same)
+    throw new Problem(
+      'already-done',
+      `This file was imported on ${dayName(same.confirmedAt!.slice(0, 10))} already. There is nothing to do.`,
+    );
   const read = await readSheet(file);
   const reading = readLabSheets(read.sheets);
-  if (!reading.layout || !reading.rows.length) throw new Problem('file-not-readable', 'No table of results was found. It needs a column of parameters, and results beside them or under sampling dates.');
+  if (!reading.layout || !reading.rows.length)
+    throw new Problem(
+      'file-not-readable',
+      'No table of results was found. It needs a column of parameters, and results beside them or under sampling dates.',
+    );
   await deps.files.put(file.bytes);
-  const stored: StoredReading = { shape: reading.layout.shape, jobNumber: reading.jobNumber, notes: read.notes, skipped: reading.skipped, qualifierKey: reading.qualifierKey, headerRow: reading.layout.headerRow, dateOrder: null, ...previewOf(read, reading) };
+  const stored: StoredReading = {
+    shape: reading.layout.shape,
+    jobNumber: reading.jobNumber,
+    notes: read.notes,
+    skipped: reading.skipped,
+    qualifierKey: reading.qualifierKey,
+    headerRow: reading.layout.headerRow,
+    dateOrder: null,
+    ...previewOf(read, reading),
+  };
   await importRepository.insertImport(tx, {
-    organisationId: context.organisationId, id: input.id, siteId, kind: 'lab', laboratoryId: input.laboratoryId, fileName: file.name.slice(0, 255), fileSha256: sha256, byteCount: file.bytes.length,
-    jobNumber: reading.jobNumber, reading: stored, counts: {}, uploadedById: context.personId, uploadedAt: deps.now().toISOString(),
+    organisationId: context.organisationId,
+    id: input.id,
+    siteId,
+    kind: 'lab',
+    laboratoryId: input.laboratoryId,
+    fileName: file.name.slice(0, 255),
+    fileSha256: sha256,
+    byteCount: file.bytes.length,
+    jobNumber: reading.jobNumber,
+    reading: stored,
+    counts: {},
+    uploadedById: context.personId,
+    uploadedAt: deps.now().toISOString(),
   });
-  const counts = await stage(tx, context, deps, input.id, reading.rows, await catalogOf(tx, siteId, input.laboratoryId, await today(tx, siteId, deps), null), reading.skipped.length);
-  await recordChange(tx, context, { action: 'upload', subjectType: 'imports', subjectId: input.id, sentence: `Laboratory file ${file.name} was uploaded: ${counts.read} rows, ${counts.held} held.`, after: { sha256, counts } });
+  const counts = await stage(
+    tx,
+    context,
+    deps,
+    input.id,
+    reading.rows,
+    await catalogOf(tx, siteId, input.laboratoryId, await today(tx, siteId, deps), null),
+    reading.skipped.length,
+  );
+  await recordChange(tx, context, {
+    action: 'upload',
+    subjectType: 'imports',
+    subjectId: input.id,
+    sentence: `Laboratory file ${file.name} was uploaded: ${counts.read} rows, ${counts.held} held.`,
+    after: { sha256, counts },
+  });
   return { id: input.id, counts };
 }
 
 async function openImport(tx: Transaction, context: Context, importId: string) {
   const row = await importRepository.findImport(tx, siteOf(context), importId);
   const isOthers = context.laboratoryId !== null && row?.laboratoryId !== context.laboratoryId;
-  if (!row || row.kind !== 'lab' || isOthers) throw new Problem('not-found', 'There is no such upload at this site.');
+  if (!row || row.kind !== 'lab' || isOthers)
+    throw new Problem('not-found', 'There is no such upload at this site.');
   return row;
 }
 
 /** Remembers an answer for the laboratory and reads the staged rows again. */
-export async function answerQuestion(tx: Transaction, context: Context, deps: Dependencies, importId: string, input: z.output<typeof labAnswerInput>) {
+export async function answerQuestion(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  importId: string,
+  input: z.output<typeof labAnswerInput>,
+) {
   const row = await openImport(tx, context, importId);
   if (row.confirmedAt) throw new Problem('already-done', 'This upload is written already.');
   const laboratoryId = row.laboratoryId!;
   const reading = row.reading as StoredReading;
   if (input.kind === 'qualifier') {
-    await repository.insertQualifier(tx, { organisationId: context.organisationId, id: deps.newId(), laboratoryId, letter: input.fromText.toUpperCase(), meaning: input.toValue as 'non-detect', wording: reading.qualifierKey.find((one) => one.letter === input.fromText)?.words ?? null });
+    await repository.insertQualifier(tx, {
+      organisationId: context.organisationId,
+      id: deps.newId(),
+      laboratoryId,
+      letter: input.fromText.toUpperCase(),
+      meaning: input.toValue as 'non-detect',
+      wording: reading.qualifierKey.find((one) => one.letter === input.fromText)?.words ?? null,
+    });
   } else if (input.kind === 'date-order') {
     reading.dateOrder = input.toValue === 'month-first' ? 'month-first' : 'day-first';
     await importRepository.updateImport(tx, importId, { reading });
   } else {
-    await repository.saveMapping(tx, { organisationId: context.organisationId, id: deps.newId(), laboratoryId, kind: input.kind, fromText: input.fromText, toValue: input.toValue });
+    await repository.saveMapping(tx, {
+      organisationId: context.organisationId,
+      id: deps.newId(),
+      laboratoryId,
+      kind: input.kind,
+      fromText: input.fromText,
+      toValue: input.toValue,
+    });
   }
   const raws = (await importRepository.listRows(tx, importId)).map((one) => one.payload as LabRow);
-  const counts = await stage(tx, context, deps, importId, raws, await catalogOf(tx, siteOf(context), laboratoryId, await today(tx, siteOf(context), deps), reading.dateOrder), reading.skipped.length);
-  await recordChange(tx, context, { action: 'answer', subjectType: 'imports', subjectId: importId, sentence: `"${input.fromText}" of this laboratory means ${input.toValue}.`, after: input });
+  const counts = await stage(
+    tx,
+    context,
+    deps,
+    importId,
+    raws,
+    await catalogOf(
+      tx,
+      siteOf(context),
+      laboratoryId,
+      await today(tx, siteOf(context), deps),
+      reading.dateOrder,
+    ),
+    reading.skipped.length,
+  );
+  await recordChange(tx, context, {
+    action: 'answer',
+    subjectType: 'imports',
+    subjectId: importId,
+    sentence: `"${input.fromText}" of this laboratory means ${input.toValue}.`,
+    after: input,
+  });
   return { id: importId, counts };
 }
 
-function resultRow(context: Context, deps: Dependencies, siteId: string, laboratoryId: string, importId: string, row: LabRow) {
+function resultRow(
+  context: Context,
+  deps: Dependencies,
+  siteId: string,
+  laboratoryId: string,
+  importId: string,
+  row: LabRow,
+) {
   return {
-    organisationId: context.organisationId, id: deps.newId(), recordedById: context.personId, recordedAt: deps.now().toISOString(), siteId, samplePointId: row.samplePointId!, analyteId: row.analyteId!, fraction: row.fraction, laboratoryId, importId,
-    sheet: row.sheet, cell: row.cell, sampledOn: row.sampledOn!, siteDay: row.sampledOn!, rawText: row.resultText, rawUnit: row.unitText, comparator: row.comparator, value: row.value, unit: row.unit,
-    reportingLimit: row.reportingLimit, detectionLimit: row.detectionLimit, qualifier: row.qualifier, qualifierMeaning: row.qualifierMeaning, missingReason: row.missingReason, printedDecimals: row.printedDecimals,
-    isCounted: row.missingReason === null, notCountedReason: row.missingReason, supersedesId: row.supersedesId, reason: row.supersedesId ? 'Revised by the laboratory' : null,
+    organisationId: context.organisationId,
+    id: deps.newId(),
+    recordedById: context.personId,
+    recordedAt: deps.now().toISOString(),
+    siteId,
+    samplePointId: row.samplePointId!,
+    analyteId: row.analyteId!,
+    fraction: row.fraction,
+    laboratoryId,
+    importId,
+    sheet: row.sheet,
+    cell: row.cell,
+    sampledOn: row.sampledOn!,
+    siteDay: row.sampledOn!,
+    rawText: row.resultText,
+    rawUnit: row.unitText,
+    comparator: row.comparator,
+    value: row.value,
+    unit: row.unit,
+    reportingLimit: row.reportingLimit,
+    detectionLimit: row.detectionLimit,
+    qualifier: row.qualifier,
+    qualifierMeaning: row.qualifierMeaning,
+    missingReason: row.missingReason,
+    printedDecimals: row.printedDecimals,
+    isCounted: row.missingReason === null,
+    notCountedReason: row.missingReason,
+    supersedesId: row.supersedesId,
+    reason: row.supersedesId ? 'Revised by the laboratory' : null,
   };
 }
 
 /** Writes the good rows in this transaction, keeps the held ones, and looks at the limits they touch. */
-export async function confirmResults(tx: Transaction, context: Context, deps: Dependencies, importId: string) {
+export async function confirmResults(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  importId: string,
+) {
   const siteId = siteOf(context);
   const row = await openImport(tx, context, importId);
   if (row.confirmedAt) throw new Problem('already-done', 'This upload is written already.');
   const rows = (await importRepository.listRows(tx, importId)).map((one) => one.payload as LabRow);
   const good = rows.filter((one) => one.state === 'ok' || one.state === 'warned');
-  if (!good.length) throw new Problem('not-ready', 'No row can be written yet. Answer the questions first, or leave the upload as it is.');
-  await repository.insertResults(tx, good.map((one) => resultRow(context, deps, siteId, row.laboratoryId!, importId, one)));
-  await importRepository.updateImport(tx, importId, { confirmedAt: deps.now().toISOString(), confirmedById: context.personId });
+  if (!good.length)
+    throw new Problem(
+      'not-ready',
+      'No row can be written yet. Answer the questions first, or leave the upload as it is.',
+    );
+  await repository.insertResults(
+    tx,
+    good.map((one) => resultRow(context, deps, siteId, row.laboratoryId!, importId, one)),
+  );
+  await importRepository.updateImport(tx, importId, {
+    confirmedAt: deps.now().toISOString(),
+    confirmedById: context.personId,
+  });
   const closed = await listClosedMonths(tx, siteId);
   for (const month of new Set(good.map((one) => monthOfDay(one.sampledOn!)))) {
-    if (closed.has(month)) await insertPendingChange(tx, { organisationId: context.organisationId, id: deps.newId(), siteId, month, factId: importId, sentence: `Results of ${row.fileName} arrived after ${monthName(month)} was closed.` });
+    if (closed.has(month))
+      await insertPendingChange(tx, {
+        organisationId: context.organisationId,
+        id: deps.newId(),
+        siteId,
+        month,
+        factId: importId,
+        sentence: `Results of ${row.fileName} arrived after ${monthName(month)} was closed.`,
+      });
   }
   const heldCount = rows.filter((one) => one.state === 'held').length;
-  await recordChange(tx, context, { action: 'confirm', subjectType: 'imports', subjectId: importId, sentence: `${good.length} results were written from ${row.fileName}; ${heldCount} rows stay held.`, after: row.counts });
-  const exceedances = await openExceedances(tx, context, deps, [...new Set(good.map((one) => monthOfDay(one.sampledOn!)))]);
+  await recordChange(tx, context, {
+    action: 'confirm',
+    subjectType: 'imports',
+    subjectId: importId,
+    sentence: `${good.length} results were written from ${row.fileName}; ${heldCount} rows stay held.`,
+    after: row.counts,
+  });
+  const exceedances = await openExceedances(tx, context, deps, [
+    ...new Set(good.map((one) => monthOfDay(one.sampledOn!))),
+  ]);
   return { id: importId, writtenCount: good.length, heldCount, exceedanceCount: exceedances };
 }
 
@@ -151,28 +357,70 @@ export async function confirmResults(tx: Transaction, context: Context, deps: De
 export async function undoResults(tx: Transaction, context: Context, deps: Dependencies, importId: string) {
   const siteId = siteOf(context);
   const row = await openImport(tx, context, importId);
-  if (!row.confirmedAt || row.undoneAt) throw new Problem('already-done', row.undoneAt ? 'This upload was undone already.' : 'This upload was never written.');
+  if (!row.confirmedAt || row.undoneAt)
+    throw new Problem(
+      'already-done',
+      row.undoneAt ? 'This upload was undone already.' : 'This upload was never written.',
+    );
   const live = await repository.listResultsOfImport(tx, importId);
   const closed = await listClosedMonths(tx, siteId);
   const closedMonth = live.map((one) => monthOfDay(one.siteDay)).find((month) => closed.has(month));
-  if (closedMonth) throw new Problem('month-is-closed', `${monthName(closedMonth)} is closed. Ask the laboratory for a revised file instead; it is kept beside the old values.`);
-  await repository.insertResults(tx, live.map(({ sequence: _sequence, recordedAt: _recordedAt, ...one }) => ({ ...one, id: deps.newId(), recordedById: context.personId, supersedesId: one.id, isVoid: 'yes' as const, reason: `Import of ${row.fileName} undone` })));
-  await importRepository.updateImport(tx, importId, { undoneAt: deps.now().toISOString(), undoneById: context.personId });
-  await recordChange(tx, context, { action: 'undo', subjectType: 'imports', subjectId: importId, sentence: `The import of ${row.fileName} was undone: ${live.length} results.` });
+  if (closedMonth)
+    throw new Problem(
+      'month-is-closed',
+      `${monthName(closedMonth)} is closed. Ask the laboratory for a revised file instead; it is kept beside the old values.`,
+    );
+  await repository.insertResults(
+    tx,
+    live.map(({ sequence: _sequence, recordedAt: _recordedAt, ...one }) => ({
+      ...one,
+      id: deps.newId(),
+      recordedById: context.personId,
+      supersedesId: one.id,
+      isVoid: 'yes' as const,
+      reason: `Import of ${row.fileName} undone`,
+    })),
+  );
+  await importRepository.updateImport(tx, importId, {
+    undoneAt: deps.now().toISOString(),
+    undoneById: context.personId,
+  });
+  await recordChange(tx, context, {
+    action: 'undo',
+    subjectType: 'imports',
+    subjectId: importId,
+    sentence: `The import of ${row.fileName} was undone: ${live.length} results.`,
+  });
   return { id: importId };
 }
 
 /** An upload as the check page shows it, in its three bands. */
-export async function readLabImport(tx: Transaction, context: Context, importId: string): Promise<LabImportView> {
+export async function readLabImport(
+  tx: Transaction,
+  context: Context,
+  importId: string,
+): Promise<LabImportView> {
   const siteId = siteOf(context);
   const row = await openImport(tx, context, importId);
   const rows = (await importRepository.listRows(tx, importId)).map((one) => one.payload as LabRow);
   const points = await repository.listSamplePoints(tx, siteId);
   const analyteRows = await repository.listAnalytes(tx);
   return {
-    id: row.id, fileName: row.fileName, fileSha256: row.fileSha256, uploadedAt: row.uploadedAt, confirmedAt: row.confirmedAt, undoneAt: row.undoneAt, counts: row.counts as ReturnType<typeof countsOf>,
-    reading: row.reading as StoredReading, laboratoryId: row.laboratoryId,
-    rows: rows.map((one) => ({ ...one, pointCode: points.find((point) => point.id === one.samplePointId)?.code ?? null, analyteName: analyteRows.find((analyte) => analyte.id === one.analyteId)?.name ?? null })),
-    points: points.map((one) => ({ id: one.id, code: one.code, name: one.name })), analytes: analyteRows.map((one) => ({ id: one.id, name: one.name, basis: one.basis })),
+    id: row.id,
+    fileName: row.fileName,
+    fileSha256: row.fileSha256,
+    uploadedAt: row.uploadedAt,
+    confirmedAt: row.confirmedAt,
+    undoneAt: row.undoneAt,
+    counts: row.counts as ReturnType<typeof countsOf>,
+    reading: row.reading as StoredReading,
+    laboratoryId: row.laboratoryId,
+    rows: rows.map((one) => ({
+      ...one,
+      pointCode: points.find((point) => point.id === one.samplePointId)?.code ?? null,
+      analyteName: analyteRows.find((analyte) => analyte.id === one.analyteId)?.name ?? null,
+    })),
+    points: points.map((one) => ({ id: one.id, code: one.code, name: one.name })),
+    analytes: analyteRows.map((one) => ({ id: one.id, name: one.name, basis: one.basis })),
   };
 }

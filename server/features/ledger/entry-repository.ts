@@ -7,7 +7,8 @@ import { isLive } from '../readings/reading-repository.ts';
 const rowsPerInsert = 2_000;
 
 export async function insertEntries(tx: Transaction, rows: (typeof entries.$inferInsert)[]): Promise<void> {
-  for (let start = 0; start < rows.length; start += rowsPerInsert) await tx.insert(entries).values(rows.slice(start, start + rowsPerInsert));
+  for (let start = 0; start < rows.length; start += rowsPerInsert)
+    await tx.insert(entries).values(rows.slice(start, start + rowsPerInsert));
 }
 
 /** Entries that stand: neither reversed nor a reversal. */
@@ -15,9 +16,24 @@ const stands: SQL = sql`${entries.reversesId} is null and not exists (select 1 f
 
 export const listLiveEntriesOfMeter = (tx: Transaction, meterId: string, firstDay: string, lastDay: string) =>
   tx
-    .select({ id: entries.id, siteDay: entries.siteDay, basis: entries.basis, volumeM3: entries.volumeM3, fromPlaceId: entries.fromPlaceId, toPlaceId: entries.toPlaceId, factIds: entries.factIds })
+    .select({
+      id: entries.id,
+      siteDay: entries.siteDay,
+      basis: entries.basis,
+      volumeM3: entries.volumeM3,
+      fromPlaceId: entries.fromPlaceId,
+      toPlaceId: entries.toPlaceId,
+      factIds: entries.factIds,
+    })
     .from(entries)
-    .where(and(eq(entries.meterId, meterId), gte(entries.siteDay, firstDay), lte(entries.siteDay, lastDay), stands));
+    .where(
+      and(
+        eq(entries.meterId, meterId),
+        gte(entries.siteDay, firstDay),
+        lte(entries.siteDay, lastDay),
+        stands,
+      ),
+    );
 
 /** Every entry of a span of days, reversals included, oldest first. */
 export const listEntries = (tx: Transaction, siteId: string, firstDay: string, lastDay: string) =>
@@ -29,20 +45,38 @@ export const listEntries = (tx: Transaction, siteId: string, firstDay: string, l
 
 /** Sums per month, pair of places, meter and basis: all that totals are made of. */
 export async function sumEntriesByMonth(tx: Transaction, siteId: string, firstDay: string, lastDay: string) {
-  const found = await tx.execute<{ month: string; from_place_id: string; to_place_id: string; meter_id: string | null; basis: string; volume_m3: string; day_count: string }>(sql`
+  const found = await tx.execute<{
+    month: string;
+    from_place_id: string;
+    to_place_id: string;
+    meter_id: string | null;
+    basis: string;
+    volume_m3: string;
+    day_count: string;
+  }>(sql`
     select to_char(site_day, 'YYYY-MM') as month, from_place_id, to_place_id, meter_id, basis,
       sum(volume_m3)::text as volume_m3, count(distinct site_day) filter (where reverses_id is null)::text as day_count
     from entries where site_id = ${siteId} and site_day between ${firstDay} and ${lastDay}
     group by 1, 2, 3, 4, 5 having sum(volume_m3) <> 0 or count(*) filter (where reverses_id is null) > count(*) filter (where reverses_id is not null)
     order by 1`);
   return found.rows.map((row) => ({
-    month: row.month, fromPlaceId: row.from_place_id, toPlaceId: row.to_place_id, meterId: row.meter_id, basis: row.basis, volumeM3: row.volume_m3, dayCount: Number(row.day_count),
+    month: row.month,
+    fromPlaceId: row.from_place_id,
+    toPlaceId: row.to_place_id,
+    meterId: row.meter_id,
+    basis: row.basis,
+    volumeM3: row.volume_m3,
+    dayCount: Number(row.day_count),
   }));
 }
 
 /** The standing act of each month that was ever closed: the newest row says closed or reopened. */
 export async function listMonthActs(tx: Transaction, siteId: string) {
-  const rows = await tx.select().from(monthClosings).where(eq(monthClosings.siteId, siteId)).orderBy(asc(monthClosings.sequence));
+  const rows = await tx
+    .select()
+    .from(monthClosings)
+    .where(eq(monthClosings.siteId, siteId))
+    .orderBy(asc(monthClosings.sequence));
   return new Map(rows.map((row) => [row.month, row]));
 }
 
@@ -51,9 +85,13 @@ export async function listClosedMonths(tx: Transaction, siteId: string): Promise
   return new Set([...acts].filter(([, row]) => row.act === 'close').map(([month]) => month));
 }
 
-export const insertPendingChange = (tx: Transaction, row: typeof pendingChanges.$inferInsert) => tx.insert(pendingChanges).values(row);
+export const insertPendingChange = (tx: Transaction, row: typeof pendingChanges.$inferInsert) =>
+  tx.insert(pendingChanges).values(row);
 export const listPendingChanges = (tx: Transaction, siteId: string) =>
-  tx.select().from(pendingChanges).where(and(eq(pendingChanges.siteId, siteId), isNull(pendingChanges.postedAt)));
+  tx
+    .select()
+    .from(pendingChanges)
+    .where(and(eq(pendingChanges.siteId, siteId), isNull(pendingChanges.postedAt)));
 export const markPosted = (tx: Transaction, ids: string[], postedAt: string) =>
   tx.update(pendingChanges).set({ postedAt }).where(inArray(pendingChanges.id, ids));
 
@@ -61,17 +99,56 @@ export const markPosted = (tx: Transaction, ids: string[], postedAt: string) =>
 export const lockSiteLedger = (tx: Transaction, siteId: string) =>
   tx.execute(sql`select pg_advisory_xact_lock(hashtextextended(${`ledger:${siteId}`}, 0))`);
 
-export const insertLoadOut = (tx: Transaction, row: typeof loadsOut.$inferInsert) => tx.insert(loadsOut).values(row);
+export const insertLoadOut = (tx: Transaction, row: typeof loadsOut.$inferInsert) =>
+  tx.insert(loadsOut).values(row);
 export const listLoadsOut = (tx: Transaction, siteId: string, firstDay: string, lastDay: string) =>
-  tx.select().from(loadsOut).where(and(eq(loadsOut.siteId, siteId), gte(loadsOut.siteDay, firstDay), lte(loadsOut.siteDay, lastDay), isLive(loadsOut))).orderBy(asc(loadsOut.observedAt));
+  tx
+    .select()
+    .from(loadsOut)
+    .where(
+      and(
+        eq(loadsOut.siteId, siteId),
+        gte(loadsOut.siteDay, firstDay),
+        lte(loadsOut.siteDay, lastDay),
+        isLive(loadsOut),
+      ),
+    )
+    .orderBy(asc(loadsOut.observedAt));
 export async function findLiveTicket(tx: Transaction, siteId: string, hauler: string, ticket: string) {
-  const [row] = await tx.select().from(loadsOut).where(and(eq(loadsOut.siteId, siteId), eq(loadsOut.hauler, hauler), eq(loadsOut.ticket, ticket), isLive(loadsOut)));
+  const [row] = await tx
+    .select()
+    .from(loadsOut)
+    .where(
+      and(
+        eq(loadsOut.siteId, siteId),
+        eq(loadsOut.hauler, hauler),
+        eq(loadsOut.ticket, ticket),
+        isLive(loadsOut),
+      ),
+    );
   return row ?? null;
 }
 export async function findLoadOut(tx: Transaction, id: string) {
-  const [row] = await tx.select().from(loadsOut).where(and(eq(loadsOut.id, id), isLive(loadsOut)));
+  const [row] = await tx
+    .select()
+    .from(loadsOut)
+    .where(and(eq(loadsOut.id, id), isLive(loadsOut)));
   return row ?? null;
 }
-export const findEntriesOfLoad = (tx: Transaction, loadOutId: string) => tx.select().from(entries).where(and(eq(entries.loadOutId, loadOutId), stands));
+export const findEntriesOfLoad = (tx: Transaction, loadOutId: string) =>
+  tx
+    .select()
+    .from(entries)
+    .where(and(eq(entries.loadOutId, loadOutId), stands));
 export const listReturns = (tx: Transaction, siteId: string, firstDay: string, lastDay: string) =>
-  tx.select().from(returns).where(and(eq(returns.siteId, siteId), gte(returns.siteDay, firstDay), lte(returns.siteDay, lastDay), isLive(returns)));
+  tx
+    .select()
+    .from(returns)
+    .where(
+      and(
+        eq(returns.siteId, siteId),
+        gte(returns.siteDay, firstDay),
+        lte(returns.siteDay, lastDay),
+        isLive(returns),
+      ),
+    );

@@ -21,7 +21,10 @@ export interface JudgedLimit {
 type Results = Awaited<ReturnType<typeof listLiveResults>>;
 
 /** Flow of each day through a place: measured entries only, apportioned days are not a day's measurement. */
-function flowsOf(entries: Awaited<ReturnType<typeof listEntries>>, placeId: string | null): Map<string, number> {
+function flowsOf(
+  entries: Awaited<ReturnType<typeof listEntries>>,
+  placeId: string | null,
+): Map<string, number> {
   const flows = new Map<string, number>();
   const notMeasured = new Set<string>();
   for (const entry of entries.filter((one) => one.toPlaceId === placeId)) {
@@ -32,13 +35,36 @@ function flowsOf(entries: Awaited<ReturnType<typeof listEntries>>, placeId: stri
   return flows;
 }
 
-function factsOf(limit: LimitRow, month: Month, results: Results, entries: Awaited<ReturnType<typeof listEntries>>, outfallPlaceId: string | null, heldCount: number): LimitFacts {
-  const own = results.filter((row) => row.samplePointId === limit.samplePointId && row.analyteId === limit.analyteId && row.fraction === limit.fraction && row.isCounted && row.value !== null && row.siteDay >= firstDay(month) && row.siteDay <= lastDay(month));
+function factsOf(
+  limit: LimitRow,
+  month: Month,
+  results: Results,
+  entries: Awaited<ReturnType<typeof listEntries>>,
+  outfallPlaceId: string | null,
+  heldCount: number,
+): LimitFacts {
+  const own = results.filter(
+    (row) =>
+      row.samplePointId === limit.samplePointId &&
+      row.analyteId === limit.analyteId &&
+      row.fraction === limit.fraction &&
+      row.isCounted &&
+      row.value !== null &&
+      row.siteDay >= firstDay(month) &&
+      row.siteDay <= lastDay(month),
+  );
   const flows = flowsOf(entries, limit.flowPlaceId ?? outfallPlaceId);
   const days = monthDays(month);
   return {
-    results: own.map((row) => ({ id: row.id, siteDay: row.siteDay, comparator: row.comparator, value: row.value! })),
-    flowM3ByDay: new Map([...flows].map(([day, flow]) => [day, flow.toFixed(6)])), isNoDischarge: days.every((day) => flows.get(day) === 0), heldCount,
+    results: own.map((row) => ({
+      id: row.id,
+      siteDay: row.siteDay,
+      comparator: row.comparator,
+      value: row.value!,
+    })),
+    flowM3ByDay: new Map([...flows].map(([day, flow]) => [day, flow.toFixed(6)])),
+    isNoDischarge: days.every((day) => flows.get(day) === 0),
+    heldCount,
   };
 }
 
@@ -49,7 +75,8 @@ async function countHeld(tx: Transaction, siteId: string): Promise<Map<string, n
     if (!upload.confirmedAt || upload.undoneAt || !(upload.counts as { held?: number }).held) continue;
     for (const row of await importRepository.listRows(tx, upload.id)) {
       const payload = row.payload as LabRow;
-      if (row.state !== 'held' || !payload.samplePointId || !payload.analyteId || !payload.sampledOn) continue;
+      if (row.state !== 'held' || !payload.samplePointId || !payload.analyteId || !payload.sampledOn)
+        continue;
       const key = `${payload.samplePointId} ${payload.analyteId} ${payload.sampledOn.slice(0, 7)}`;
       counts.set(key, (counts.get(key) ?? 0) + 1);
     }
@@ -58,10 +85,17 @@ async function countHeld(tx: Transaction, siteId: string): Promise<Map<string, n
 }
 
 /** The verdict of every limit in force for each of the months, with its working. */
-export async function judgeMonths(tx: Transaction, siteId: string, months: readonly Month[]): Promise<JudgedLimit[]> {
+export async function judgeMonths(
+  tx: Transaction,
+  siteId: string,
+  months: readonly Month[],
+): Promise<JudgedLimit[]> {
   if (!months.length) return [];
   const permitRows = await repository.listPermits(tx, siteId);
-  const limitRows = await repository.listLimits(tx, permitRows.map((permit) => permit.id));
+  const limitRows = await repository.listLimits(
+    tx,
+    permitRows.map((permit) => permit.id),
+  );
   if (!limitRows.length) return [];
   const [first, last] = [firstDay(months[0]!), lastDay(months.at(-1)!)];
   const results = await listLiveResults(tx, siteId, first, last);
@@ -71,11 +105,26 @@ export async function judgeMonths(tx: Transaction, siteId: string, months: reado
   const held = await countHeld(tx, siteId);
   return months.flatMap((month) =>
     limitRows
-      .filter((limit) => limit.fromOn <= lastDay(month) && (limit.toOn === null || limit.toOn > firstDay(month)))
+      .filter(
+        (limit) => limit.fromOn <= lastDay(month) && (limit.toOn === null || limit.toOn > firstDay(month)),
+      )
       .map((limit) => {
         const point = points.find((one) => one.id === limit.samplePointId);
-        const facts = factsOf(limit, month, results, entries, point?.placeId ?? null, held.get(`${limit.samplePointId} ${limit.analyteId} ${month}`) ?? 0);
-        return { limit, month, pointCode: point?.code ?? '', analyteName: analytes.find((one) => one.id === limit.analyteId)?.name ?? '', verdict: evaluateLimit(limit, facts) };
+        const facts = factsOf(
+          limit,
+          month,
+          results,
+          entries,
+          point?.placeId ?? null,
+          held.get(`${limit.samplePointId} ${limit.analyteId} ${month}`) ?? 0,
+        );
+        return {
+          limit,
+          month,
+          pointCode: point?.code ?? '',
+          analyteName: analytes.find((one) => one.id === limit.analyteId)?.name ?? '',
+          verdict: evaluateLimit(limit, facts),
+        };
       }),
   );
 }

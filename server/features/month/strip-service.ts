@@ -1,5 +1,12 @@
 import { addDays, daysBetween, firstDay, lastDay, monthOfDay } from '#shared/calendar/day.ts';
-import { addMonths, daysInMonth, monthOf, monthParts, monthRange, type Month } from '#shared/calendar/month.ts';
+import {
+  addMonths,
+  daysInMonth,
+  monthOf,
+  monthParts,
+  monthRange,
+  type Month,
+} from '#shared/calendar/month.ts';
 import { sql } from 'drizzle-orm';
 import type { StripView, TubeState } from '#shared/views/month-view.ts';
 import type { Transaction } from '../../db/transaction.ts';
@@ -16,7 +23,12 @@ export function reportingYearStart(month: Month, startMonth: number): Month {
 }
 
 /** Days of a month on which a reading was taken, per meter and store: what the meters tube counts. */
-async function readDayCounts(tx: Transaction, record: SiteRecord, first: string, last: string): Promise<Map<string, number>> {
+async function readDayCounts(
+  tx: Transaction,
+  record: SiteRecord,
+  first: string,
+  last: string,
+): Promise<Map<string, number>> {
   const found = await tx.execute<{ subject_id: string; month: string; day_count: string }>(sql`
     select r.meter_id as subject_id, to_char(r.site_day, 'YYYY-MM') as month, count(distinct r.site_day)::text as day_count from readings r
       join meters m on m.organisation_id = r.organisation_id and m.id = r.meter_id
@@ -29,7 +41,12 @@ async function readDayCounts(tx: Transaction, record: SiteRecord, first: string,
 }
 
 /** The share of expected records that has arrived, per month of a reporting year. */
-export async function readStrip(tx: Transaction, context: Context, deps: Dependencies, month: Month): Promise<StripView> {
+export async function readStrip(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  month: Month,
+): Promise<StripView> {
   const siteId = siteOf(context);
   const record = await readSite(tx, siteId);
   const today = (await siteDaysOf(tx, siteId)).dayOf(deps.now().getTime());
@@ -44,21 +61,39 @@ export async function readStrip(tx: Transaction, context: Context, deps: Depende
   const acts = await listMonthActs(tx, siteId);
   const currentMonth = monthOfDay(today);
   return {
-    yearStart, today,
+    yearStart,
+    today,
     months: months.map((one) => {
-      const daysSoFar = one > currentMonth ? 0 : one === currentMonth ? Math.max(0, daysBetween(firstDay(one), today)) : daysInMonth(one);
+      const daysSoFar =
+        one > currentMonth
+          ? 0
+          : one === currentMonth
+            ? Math.max(0, daysBetween(firstDay(one), today))
+            : daysInMonth(one);
       const row = climate.get(one);
       return {
-        month: one, isFuture: one > currentMonth, isRunning: one === currentMonth, lid: acts.get(one)?.act === 'close' ? 'closed' : acts.get(one)?.act === 'reopen' ? 'ajar' : 'none',
-        climate: { expectedCount: daysSoFar, receivedCount: Math.min(daysSoFar, Math.min(row?.rainDayCount ?? 0, row?.temperatureDayCount ?? 0)) },
-        meters: metersTube(record, one, daysSoFar, counts), lab: labTube(plan, results, one, daysSoFar),
+        month: one,
+        isFuture: one > currentMonth,
+        isRunning: one === currentMonth,
+        lid: acts.get(one)?.act === 'close' ? 'closed' : acts.get(one)?.act === 'reopen' ? 'ajar' : 'none',
+        climate: {
+          expectedCount: daysSoFar,
+          receivedCount: Math.min(daysSoFar, Math.min(row?.rainDayCount ?? 0, row?.temperatureDayCount ?? 0)),
+        },
+        meters: metersTube(record, one, daysSoFar, counts),
+        lab: labTube(plan, results, one, daysSoFar),
       };
     }),
   };
 }
 
 /** Points expected every so many days since they were installed, against days with a reading. */
-function metersTube(record: SiteRecord, month: Month, daysSoFar: number, counts: Map<string, number>): TubeState {
+function metersTube(
+  record: SiteRecord,
+  month: Month,
+  daysSoFar: number,
+  counts: Map<string, number>,
+): TubeState {
   let expectedCount = 0;
   let receivedCount = 0;
   for (const point of record.roundPoints.filter((one) => one.kind === 'meter' || one.kind === 'level')) {
@@ -72,13 +107,27 @@ function metersTube(record: SiteRecord, month: Month, daysSoFar: number, counts:
   return { expectedCount, receivedCount };
 }
 
-function labTube(plan: Awaited<ReturnType<typeof listPlan>>, results: Awaited<ReturnType<typeof listLiveResults>>, month: Month, daysSoFar: number): TubeState {
-  const live = plan.filter((item) => item.fromOn <= lastDay(month) && (item.toOn === null || item.toOn > firstDay(month)));
+function labTube(
+  plan: Awaited<ReturnType<typeof listPlan>>,
+  results: Awaited<ReturnType<typeof listLiveResults>>,
+  month: Month,
+  daysSoFar: number,
+): TubeState {
+  const live = plan.filter(
+    (item) => item.fromOn <= lastDay(month) && (item.toOn === null || item.toOn > firstDay(month)),
+  );
   let expectedCount = 0;
   let receivedCount = 0;
   for (const item of live) {
     const expected = daysSoFar === 0 ? 0 : item.samplesPerMonth;
-    const got = results.filter((row) => row.samplePointId === item.samplePointId && row.analyteId === item.analyteId && row.fraction === item.fraction && row.missingReason === null && row.siteDay.startsWith(month)).length;
+    const got = results.filter(
+      (row) =>
+        row.samplePointId === item.samplePointId &&
+        row.analyteId === item.analyteId &&
+        row.fraction === item.fraction &&
+        row.missingReason === null &&
+        row.siteDay.startsWith(month),
+    ).length;
     expectedCount += expected;
     receivedCount += Math.min(expected, got);
   }

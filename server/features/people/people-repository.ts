@@ -11,10 +11,23 @@ export async function listNames(tx: Transaction): Promise<Map<string, string>> {
 
 export const listPeopleOf = (tx: Transaction, siteId: string) =>
   tx
-    .select({ membershipId: memberships.id, personId: people.id, displayName: people.displayName, email: people.email, role: memberships.role, siteId: memberships.siteId, passwordHash: people.passwordHash })
+    .select({
+      membershipId: memberships.id,
+      personId: people.id,
+      displayName: people.displayName,
+      email: people.email,
+      role: memberships.role,
+      siteId: memberships.siteId,
+      passwordHash: people.passwordHash,
+    })
     .from(memberships)
     .innerJoin(people, eq(people.id, memberships.personId))
-    .where(and(isNull(memberships.endedAt), sql`(${memberships.siteId} is null or ${memberships.siteId} = ${siteId})`))
+    .where(
+      and(
+        isNull(memberships.endedAt),
+        sql`(${memberships.siteId} is null or ${memberships.siteId} = ${siteId})`,
+      ),
+    )
     .orderBy(asc(people.displayName));
 
 /** E-mail addresses of people with one of the roles at a site. */
@@ -23,16 +36,29 @@ export async function listAddresses(tx: Transaction, siteId: string, roles: stri
   return [...new Set(rows.filter((row) => roles.includes(row.role)).map((row) => row.email))];
 }
 
-export async function personForInvitation(tx: Transaction, id: string, email: string, displayName: string): Promise<string> {
-  const found = await tx.execute<{ id: string }>(sql`select person_for_invitation(${id}, ${email}, ${displayName}) as id`);
+export async function personForInvitation(
+  tx: Transaction,
+  id: string,
+  email: string,
+  displayName: string,
+): Promise<string> {
+  const found = await tx.execute<{ id: string }>(
+    sql`select person_for_invitation(${id}, ${email}, ${displayName}) as id`,
+  );
   return found.rows[0]!.id;
 }
 
-export const insertMembership = (tx: Transaction, row: typeof memberships.$inferInsert) => tx.insert(memberships).values(row);
+export const insertMembership = (tx: Transaction, row: typeof memberships.$inferInsert) =>
+  tx.insert(memberships).values(row);
 
 export async function endMembership(tx: Transaction, membershipId: string, endedAt: string) {
-  const [row] = await tx.update(memberships).set({ endedAt }).where(and(eq(memberships.id, membershipId), isNull(memberships.endedAt))).returning();
+  const [row] = await tx
+    .update(memberships)
+    .set({ endedAt })
+    .where(and(eq(memberships.id, membershipId), isNull(memberships.endedAt)))
+    .returning();
   return row ?? null;
 }
 
-export const listLaboratories = (tx: Transaction) => tx.select().from(laboratories).orderBy(asc(laboratories.name));
+export const listLaboratories = (tx: Transaction) =>
+  tx.select().from(laboratories).orderBy(asc(laboratories.name));

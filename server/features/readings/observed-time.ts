@@ -22,16 +22,27 @@ const clockSkewMs = 5 * 60_000;
  * The instant, offset and site day of something seen.
  * @throws Problem for a time to come, an hour the clock skipped, or an hour it showed twice without saying which
  */
-export async function resolveObservedAt(tx: Transaction, siteId: string, now: Date, input: ObservedInput): Promise<Observed> {
+export async function resolveObservedAt(
+  tx: Transaction,
+  siteId: string,
+  now: Date,
+  input: ObservedInput,
+): Promise<Observed> {
   const days = await siteDaysOf(tx, siteId);
   let observedAtMs = input.observedAt ? Date.parse(input.observedAt) : now.getTime();
   if (input.observedLocal) {
     const read = days.readLocal(input.observedLocal);
     if (read.kind === 'missing-hour') {
-      throw fieldProblem('/observedLocal', `The clock skipped ${input.observedLocal.slice(11)} on ${dayName(input.observedLocal.slice(0, 10))}. Enter the time the clock showed, before or after the change.`);
+      throw fieldProblem(
+        '/observedLocal',
+        `The clock skipped ${input.observedLocal.slice(11)} on ${dayName(input.observedLocal.slice(0, 10))}. Enter the time the clock showed, before or after the change.`,
+      );
     }
     if (read.kind === 'repeated-hour' && !input.repeatedHour) {
-      throw fieldProblem('/repeatedHour', `The clock showed ${input.observedLocal.slice(11)} twice on ${dayName(input.observedLocal.slice(0, 10))}. Say whether it was the first or the second time.`);
+      throw fieldProblem(
+        '/repeatedHour',
+        `The clock showed ${input.observedLocal.slice(11)} twice on ${dayName(input.observedLocal.slice(0, 10))}. Say whether it was the first or the second time.`,
+      );
     }
     observedAtMs = Date.parse(read.kind === 'ok' ? read.observedAt : read[input.repeatedHour ?? 'earlier']);
   }

@@ -20,37 +20,96 @@ export function siteOf(context: Context): string {
 }
 
 export async function siteDaysOf(tx: Transaction, siteId: string): Promise<SiteDays> {
-  return remembered(tx, `days ${siteId}`, async () => createSiteDays(await repository.listDayRules(tx, siteId)));
+  return remembered(tx, `days ${siteId}`, async () =>
+    createSiteDays(await repository.listDayRules(tx, siteId)),
+  );
 }
 
 const slugOf = (name: string) =>
-  name.toLowerCase().normalize('NFKD').replace(/[^a-z0-9]+/g, '-').replace(/^-|-$/g, '') || 'site';
+  name
+    .toLowerCase()
+    .normalize('NFKD')
+    .replace(/[^a-z0-9]+/g, '-')
+    .replace(/^-|-$/g, '') || 'site';
 
 /** Makes a site with its day rule, cover types as templates, the places every site has, and its own rain gauge. */
-export async function createSite(tx: Transaction, context: Context, deps: Dependencies, input: z.output<typeof siteInput>) {
+export async function createSite(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  input: z.output<typeof siteInput>,
+) {
   const { organisationId } = context;
   const { timeZone, dayBoundary, ...site } = input;
   await repository.insertSite(tx, { organisationId, slug: slugOf(input.name), ...site });
-  await repository.insertDayRule(tx, { organisationId, id: deps.newId(), siteId: input.id, validFromOn: input.openedOn, timeZone, dayBoundary });
+  await repository.insertDayRule(tx, {
+    organisationId,
+    id: deps.newId(),
+    siteId: input.id,
+    validFromOn: input.openedOn,
+    timeZone,
+    dayBoundary,
+  });
   await repository.insertCoverTypes(
     tx,
     coverTypeTemplates.map((template) => ({
-      organisationId, id: deps.newId(), siteId: input.id, kind: template.kind, name: coverKindNames[template.kind],
-      availableWaterMm: String(template.availableWaterMm), hasSoilStore: template.availableWaterMm > 0,
-      membranePassFraction: template.membranePassFraction === null ? null : String(template.membranePassFraction),
-      runoffCoefficientWet: String(template.runoffCoefficientWet), runoffCoefficientDry: String(template.runoffCoefficientDry),
-      runoffDestination: template.runoffDestination, petFactor: String(template.petFactor), source: template.source,
+      organisationId,
+      id: deps.newId(),
+      siteId: input.id,
+      kind: template.kind,
+      name: coverKindNames[template.kind],
+      availableWaterMm: String(template.availableWaterMm),
+      hasSoilStore: template.availableWaterMm > 0,
+      membranePassFraction:
+        template.membranePassFraction === null ? null : String(template.membranePassFraction),
+      runoffCoefficientWet: String(template.runoffCoefficientWet),
+      runoffCoefficientDry: String(template.runoffCoefficientDry),
+      runoffDestination: template.runoffDestination,
+      petFactor: String(template.petFactor),
+      source: template.source,
     })),
   );
-  await repository.insertPlaces(tx, (['rain', 'air', 'treatment', 'outfall', 'haulage'] as const).map((kind) => ({
-    organisationId, id: deps.newId(), siteId: input.id, kind,
-    name: { rain: 'Rain', air: 'Air', treatment: 'Treatment plant', outfall: 'Outfall 1', haulage: 'Hauled away' }[kind],
-  })));
+  await repository.insertPlaces(
+    tx,
+    (['rain', 'air', 'treatment', 'outfall', 'haulage'] as const).map((kind) => ({
+      organisationId,
+      id: deps.newId(),
+      siteId: input.id,
+      kind,
+      name: {
+        rain: 'Rain',
+        air: 'Air',
+        treatment: 'Treatment plant',
+        outfall: 'Outfall 1',
+        haulage: 'Hauled away',
+      }[kind],
+    })),
+  );
   const stationId = deps.newId();
-  await repository.insertStation(tx, { organisationId, id: stationId, siteId: input.id, name: 'Site rain gauge', kind: 'site-gauge', priority: 1, source: 'read on the round' });
-  await repository.insertRoundPoints(tx, [{ organisationId, id: deps.newId(), siteId: input.id, position: 1, kind: 'rain', subjectId: stationId }]);
+  await repository.insertStation(tx, {
+    organisationId,
+    id: stationId,
+    siteId: input.id,
+    name: 'Site rain gauge',
+    kind: 'site-gauge',
+    priority: 1,
+    source: 'read on the round',
+  });
+  await repository.insertRoundPoints(tx, [
+    { organisationId, id: deps.newId(), siteId: input.id, position: 1, kind: 'rain', subjectId: stationId },
+  ]);
   await ensureAnalytes(tx, context, deps);
-  await recordChange(tx, { ...context, siteId: input.id }, { action: 'create', subjectType: 'sites', subjectId: input.id, sentence: `Site ${input.name} was made.`, after: input });
+  await recordChange(
+    tx,
+    { ...context, siteId: input.id },
+    {
+      action: 'create',
+      subjectType: 'sites',
+      subjectId: input.id,
+      sentence: `Site ${input.name} was made.`,
+      after: input,
+    },
+  );
   return { id: input.id, slug: slugOf(input.name) };
 }
 
@@ -59,30 +118,49 @@ export async function listSites(tx: Transaction, context: Context, deps: Depende
   return Promise.all(
     rows.map(async ({ site, roles }) => {
       const days = await siteDaysOf(tx, site.id);
-      return { id: site.id, slug: site.slug, name: site.name, roles: roles as Role[], today: days.dayOf(deps.now().getTime()), displayUnits: site.displayUnits };
+      return {
+        id: site.id,
+        slug: site.slug,
+        name: site.name,
+        roles: roles as Role[],
+        today: days.dayOf(deps.now().getTime()),
+        displayUnits: site.displayUnits,
+      };
     }),
   );
 }
 
 /** Drops trailing zeros that a numeric column adds, so that 42000.000 reads 42000. */
 function plainNumbers<T>(rows: readonly T[]): T[] {
-  const plain = (value: unknown) => (typeof value === 'string' && /^-?\d+\.\d+$/.test(value) ? new Decimal(value).toFixed() : value);
-  return rows.map((row) => Object.fromEntries(Object.entries(row as object).map(([key, value]) => [key, plain(value)])) as T);
+  const plain = (value: unknown) =>
+    typeof value === 'string' && /^-?\d+\.\d+$/.test(value) ? new Decimal(value).toFixed() : value;
+  return rows.map(
+    (row) =>
+      Object.fromEntries(Object.entries(row as object).map(([key, value]) => [key, plain(value)])) as T,
+  );
 }
 
 /** A site with everything it is made of. */
-export const readSite = (tx: Transaction, siteId: string) => remembered(tx, `site ${siteId}`, () => loadSite(tx, siteId));
+export const readSite = (tx: Transaction, siteId: string) =>
+  remembered(tx, `site ${siteId}`, () => loadSite(tx, siteId));
 
 async function loadSite(tx: Transaction, siteId: string) {
   const site = await repository.findSite(tx, siteId);
   if (!site) throw new Problem('not-found', 'There is no such site.');
   const structure = await repository.readStructure(tx, siteId);
-  const plain = Object.fromEntries(Object.entries(structure).map(([key, rows]) => [key, plainNumbers(rows as object[])])) as unknown as repository.SiteStructure;
+  const plain = Object.fromEntries(
+    Object.entries(structure).map(([key, rows]) => [key, plainNumbers(rows as object[])]),
+  ) as unknown as repository.SiteStructure;
   return { site: plainNumbers([site])[0]!, dayRules: await repository.listDayRules(tx, siteId), ...plain };
 }
 export type SiteRecord = Awaited<ReturnType<typeof readSite>>;
 
-export const settingsTag = (site: { name: string; displayUnits: string; reportDueDays: number; certificationText: string | null }): string =>
+export const settingsTag = (site: {
+  name: string;
+  displayUnits: string;
+  reportDueDays: number;
+  certificationText: string | null;
+}): string =>
   `"${sha256Of(JSON.stringify([site.name, site.displayUnits, site.reportDueDays, site.certificationText])).slice(0, 16)}"`;
 
 /** The site as its page shows it, with the tag that a change of settings must name. */
@@ -92,16 +170,37 @@ export async function readSiteStructure(tx: Transaction, context: Context) {
 }
 
 /** Changes settings when nobody else did since they were read. */
-export async function updateSettings(tx: Transaction, context: Context, input: z.output<typeof siteSettingsInput>, ifMatch: string | undefined) {
+export async function updateSettings(
+  tx: Transaction,
+  context: Context,
+  input: z.output<typeof siteSettingsInput>,
+  ifMatch: string | undefined,
+) {
   const siteId = siteOf(context);
   const before = await repository.findSite(tx, siteId);
   if (!before) throw new Problem('not-found', 'There is no such site.');
-  if (!ifMatch) throw fieldProblem('/if-match', 'Send the If-Match header with the tag of the settings you read.');
+  if (!ifMatch)
+    throw fieldProblem('/if-match', 'Send the If-Match header with the tag of the settings you read.');
   if (ifMatch !== settingsTag(before)) {
-    throw new Problem('changed-meanwhile', `Somebody changed the settings meanwhile: the name is now "${before.name}", units ${before.displayUnits}, report due after ${before.reportDueDays} days. Look at them again and save once more.`);
+    throw new Problem(
+      'changed-meanwhile',
+      `Somebody changed the settings meanwhile: the name is now "${before.name}", units ${before.displayUnits}, report due after ${before.reportDueDays} days. Look at them again and save once more.`,
+    );
   }
   const after = { ...input, certificationText: input.certificationText ?? null };
   await repository.updateSite(tx, siteId, after);
-  await recordChange(tx, context, { action: 'change', subjectType: 'sites', subjectId: siteId, sentence: `Settings of ${input.name} were changed.`, before: { name: before.name, displayUnits: before.displayUnits, reportDueDays: before.reportDueDays, certificationText: before.certificationText }, after });
+  await recordChange(tx, context, {
+    action: 'change',
+    subjectType: 'sites',
+    subjectId: siteId,
+    sentence: `Settings of ${input.name} were changed.`,
+    before: {
+      name: before.name,
+      displayUnits: before.displayUnits,
+      reportDueDays: before.reportDueDays,
+      certificationText: before.certificationText,
+    },
+    after,
+  });
   return { tag: settingsTag({ ...before, ...after }) };
 }

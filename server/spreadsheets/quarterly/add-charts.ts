@@ -5,7 +5,8 @@ const relationships = 'http://schemas.openxmlformats.org/officeDocument/2006/rel
 const packageRelationships = 'http://schemas.openxmlformats.org/package/2006/relationships';
 const head = '<?xml version="1.0" encoding="UTF-8" standalone="yes"?>';
 
-const point = (name: 'from' | 'to', column: number, row: number) => `<xdr:${name}><xdr:col>${column}</xdr:col><xdr:colOff>0</xdr:colOff><xdr:row>${row}</xdr:row><xdr:rowOff>0</xdr:rowOff></xdr:${name}>`;
+const point = (name: 'from' | 'to', column: number, row: number) =>
+  `<xdr:${name}><xdr:col>${column}</xdr:col><xdr:colOff>0</xdr:colOff><xdr:row>${row}</xdr:row><xdr:rowOff>0</xdr:rowOff></xdr:${name}>`;
 
 /** Drawing that places one chart between two cells, with its description as alternative text. */
 const drawingXml = ({ anchor, title, description }: NativeChart) =>
@@ -28,13 +29,28 @@ const put = (zip: JSZip, part: string, text: string) => zip.file(part, text, { c
 async function addChart(zip: JSZip, chart: NativeChart, number: number): Promise<void> {
   const part = await sheetPart(zip, chart.sheet);
   const relsPart = part.replace(/worksheets\/(.+)$/, 'worksheets/_rels/$1.rels');
-  const rels = (await zip.file(relsPart)?.async('string')) ?? `${head}<Relationships xmlns="${packageRelationships}"></Relationships>`;
-  put(zip, relsPart, rels.replace('</Relationships>', `<Relationship Id="rIdChart" Type="${relationships}/drawing" Target="../drawings/chart-drawing${number}.xml"/></Relationships>`));
+  const rels =
+    (await zip.file(relsPart)?.async('string')) ??
+    `${head}<Relationships xmlns="${packageRelationships}"></Relationships>`;
+  put(
+    zip,
+    relsPart,
+    rels.replace(
+      '</Relationships>',
+      `<Relationship Id="rIdChart" Type="${relationships}/drawing" Target="../drawings/chart-drawing${number}.xml"/></Relationships>`,
+    ),
+  );
   const sheet = await zip.file(part)!.async('string');
-  const withNamespace = sheet.includes('xmlns:r=') ? sheet : sheet.replace('<worksheet ', `<worksheet xmlns:r="${relationships}" `);
+  const withNamespace = sheet.includes('xmlns:r=')
+    ? sheet
+    : sheet.replace('<worksheet ', `<worksheet xmlns:r="${relationships}" `);
   put(zip, part, withNamespace.replace('</worksheet>', '<drawing r:id="rIdChart"/></worksheet>'));
   put(zip, `xl/drawings/chart-drawing${number}.xml`, drawingXml(chart));
-  put(zip, `xl/drawings/_rels/chart-drawing${number}.xml.rels`, `${head}<Relationships xmlns="${packageRelationships}"><Relationship Id="rId1" Type="${relationships}/chart" Target="../charts/chart${number}.xml"/></Relationships>`);
+  put(
+    zip,
+    `xl/drawings/_rels/chart-drawing${number}.xml.rels`,
+    `${head}<Relationships xmlns="${packageRelationships}"><Relationship Id="rId1" Type="${relationships}/chart" Target="../charts/chart${number}.xml"/></Relationships>`,
+  );
   put(zip, `xl/charts/chart${number}.xml`, nativeChartXml(chart));
 }
 
@@ -42,16 +58,29 @@ async function addChart(zip: JSZip, chart: NativeChart, number: number): Promise
  * Last step of a workbook: native charts and alternative texts, which exceljs cannot write and would drop.
  * @param pictures alternative text of each picture, in the order they were placed
  */
-export async function addCharts(bytes: Buffer, charts: readonly NativeChart[], pictures: readonly string[]): Promise<Buffer> {
+export async function addCharts(
+  bytes: Buffer,
+  charts: readonly NativeChart[],
+  pictures: readonly string[],
+): Promise<Buffer> {
   const zip = await JSZip.loadAsync(bytes);
   for (const [index, chart] of charts.entries()) await addChart(zip, chart, index + 1);
   const types = await zip.file('[Content_Types].xml')!.async('string');
-  const overrides = charts.map((_, index) => `<Override PartName="/xl/drawings/chart-drawing${index + 1}.xml" ContentType="application/vnd.openxmlformats-officedocument.drawing+xml"/><Override PartName="/xl/charts/chart${index + 1}.xml" ContentType="application/vnd.openxmlformats-officedocument.drawingml.chart+xml"/>`).join('');
+  const overrides = charts
+    .map(
+      (_, index) =>
+        `<Override PartName="/xl/drawings/chart-drawing${index + 1}.xml" ContentType="application/vnd.openxmlformats-officedocument.drawing+xml"/><Override PartName="/xl/charts/chart${index + 1}.xml" ContentType="application/vnd.openxmlformats-officedocument.drawingml.chart+xml"/>`,
+    )
+    .join('');
   put(zip, '[Content_Types].xml', types.replace('</Types>', `${overrides}</Types>`));
   for (const [index, description] of pictures.entries()) {
     const part = `xl/drawings/drawing${index + 1}.xml`;
     const drawing = await zip.file(part)!.async('string');
-    put(zip, part, drawing.replace(/<xdr:cNvPr ([^>]*?)(\/?)>/, `<xdr:cNvPr $1 descr="${escapeXml(description)}"$2>`));
+    put(
+      zip,
+      part,
+      drawing.replace(/<xdr:cNvPr ([^>]*?)(\/?)>/, `<xdr:cNvPr $1 descr="${escapeXml(description)}"$2>`),
+    );
   }
   return zip.generateAsync({ type: 'nodebuffer', compression: 'DEFLATE' });
 }

@@ -9,17 +9,32 @@ import type { CompareRows } from './volume-sheets.ts';
 const summaryHeader = 3;
 
 /** One page: predicted and pumped by cell and month, the quarter, and the worst of every limit. */
-export function fillSummarySheet(sheet: ExcelJS.Worksheet, quarter: Quarter, compare: CompareRows): { siteRow: number } {
+export function fillSummarySheet(
+  sheet: ExcelJS.Worksheet,
+  quarter: Quarter,
+  compare: CompareRows,
+): { siteRow: number } {
   const cell = (column: string, code: string, monthIndex: number) => {
-    const index = quarter.cellMonths.findIndex((one) => one.cellCode === code && one.month === quarter.months[monthIndex]);
+    const index = quarter.cellMonths.findIndex(
+      (one) => one.cellCode === code && one.month === quarter.months[monthIndex],
+    );
     return `Compare!${column}${compare.firstRow + index}`;
   };
   const columns: ColumnSpec[] = [
     { header: 'Leachate, m³', width: 18 },
-    ...quarter.months.flatMap((month): ColumnSpec[] => [{ header: `${monthName(month)} predicted`, format: formats.m3 }, { header: `${monthName(month)} pumped`, format: formats.m3 }]),
-    { header: 'Quarter predicted', format: formats.m3 }, { header: 'Quarter pumped', format: formats.m3 }, { header: 'Quarter difference', format: formats.difference },
+    ...quarter.months.flatMap((month): ColumnSpec[] => [
+      { header: `${monthName(month)} predicted`, format: formats.m3 },
+      { header: `${monthName(month)} pumped`, format: formats.m3 },
+    ]),
+    { header: 'Quarter predicted', format: formats.m3 },
+    { header: 'Quarter pumped', format: formats.m3 },
+    { header: 'Quarter difference', format: formats.difference },
   ];
-  const figures = quarter.cells.map((one) => quarter.months.map((month) => quarter.cellMonths.find((row) => row.cellCode === one.code && row.month === month)!));
+  const figures = quarter.cells.map((one) =>
+    quarter.months.map((month) =>
+      quarter.cellMonths.find((row) => row.cellCode === one.code && row.month === month)!,
+    ),
+  );
   const rows = quarter.cells.map((one, index): CellInput[] => {
     const row = summaryHeader + 1 + index;
     const own = figures[index]!;
@@ -27,36 +42,135 @@ export function fillSummarySheet(sheet: ExcelJS.Worksheet, quarter: Quarter, com
     const pumped = own.reduce((sum, item) => sum + (item.measuredM3 ?? 0), 0);
     return [
       `${one.code} ${one.name}`,
-      ...own.flatMap((item, monthIndex): CellInput[] => [{ formula: cell('D', one.code, monthIndex), result: item.predictedM3 }, { formula: cell('G', one.code, monthIndex), result: item.measuredM3 ?? 'not read' }]),
-      { formula: `SUM(B${row},D${row},F${row})`, result: predicted }, { formula: `SUM(C${row},E${row},G${row})`, result: pumped }, { formula: `I${row}-H${row}`, result: pumped - predicted },
+      ...own.flatMap((item, monthIndex): CellInput[] => [
+        { formula: cell('D', one.code, monthIndex), result: item.predictedM3 },
+        { formula: cell('G', one.code, monthIndex), result: item.measuredM3 ?? 'not read' },
+      ]),
+      { formula: `SUM(B${row},D${row},F${row})`, result: predicted },
+      { formula: `SUM(C${row},E${row},G${row})`, result: pumped },
+      { formula: `I${row}-H${row}`, result: pumped - predicted },
     ];
   });
   const siteRow = summaryHeader + 1 + rows.length;
   const lastColumn = columns.length;
-  const total = (pick: (item: Quarter['cellMonths'][number]) => number, monthIndex: number | null) => figures.reduce((sum, own) => sum + own.filter((_, index) => monthIndex === null || index === monthIndex).reduce((inner, item) => inner + pick(item), 0), 0);
-  const siteTotals = [0, 1, 2].flatMap((index) => [total((item) => item.predictedM3, index), total((item) => item.measuredM3 ?? 0, index)]);
-  const quarterTotals = [total((item) => item.predictedM3, null), total((item) => item.measuredM3 ?? 0, null)];
+  const total = (pick: (item: Quarter['cellMonths'][number]) => number, monthIndex: number | null) =>
+    figures.reduce(
+      (sum, own) =>
+        sum +
+        own
+          .filter((_, index) => monthIndex === null || index === monthIndex)
+          .reduce((inner, item) => inner + pick(item), 0),
+      0,
+    );
+  const siteTotals = [0, 1, 2].flatMap((index) => [
+    total((item) => item.predictedM3, index),
+    total((item) => item.measuredM3 ?? 0, index),
+  ]);
+  const quarterTotals = [
+    total((item) => item.predictedM3, null),
+    total((item) => item.measuredM3 ?? 0, null),
+  ];
   const results = [...siteTotals, ...quarterTotals, quarterTotals[1]! - quarterTotals[0]!];
-  rows.push(['Site', ...results.map((result, index): CellInput => ({ formula: `SUM(${letters(index + 2)}${summaryHeader + 1}:${letters(index + 2)}${siteRow - 1})`, result }))]);
+  rows.push([
+    'Site',
+    ...results.map((result, index): CellInput => ({
+      formula: `SUM(${letters(index + 2)}${summaryHeader + 1}:${letters(index + 2)}${siteRow - 1})`,
+      result,
+    })),
+  ]);
   addTable(sheet, summaryHeader, columns, rows);
-  for (let column = 1; column <= lastColumn; column += 1) sheet.getCell(siteRow, column).font = { name: 'Work Sans', size: 10, bold: true };
-  sheet.getCell(siteRow + 1, 1).value = 'Totals are summed from unrounded values, so printed rows may not add to the total because of rounding.';
+  for (let column = 1; column <= lastColumn; column += 1)
+    sheet.getCell(siteRow, column).font = { name: 'Work Sans', size: 10, bold: true };
+  sheet.getCell(siteRow + 1, 1).value =
+    'Totals are summed from unrounded values, so printed rows may not add to the total because of rounding.';
   const limitHeader = siteRow + 3;
   const verdicts = quarter.verdicts.map((one, index): CellInput[] => [
-    `${one.analyteName}, ${one.limit.statistic.replace('-', ' ')}`, monthName(one.month), { formula: `Loads!H${4 + index}`, result: one.verdict.valueText === null ? 'no value' : Number(one.verdict.valueText.replace('<', '')) },
-    one.limit.statistic === 'range' ? `${one.limit.lowText} to ${one.limit.highText}` : Number(one.limit.valueText), one.limit.unit, one.verdict.word,
+    `${one.analyteName}, ${one.limit.statistic.replace('-', ' ')}`,
+    monthName(one.month),
+    {
+      formula: `Loads!H${4 + index}`,
+      result: one.verdict.valueText === null ? 'no value' : Number(one.verdict.valueText.replace('<', '')),
+    },
+    one.limit.statistic === 'range'
+      ? `${one.limit.lowText} to ${one.limit.highText}`
+      : Number(one.limit.valueText),
+    one.limit.unit,
+    one.verdict.word,
   ]);
-  addTable(sheet, limitHeader, [{ header: 'Limit', width: 32 }, { header: 'Month' }, { header: 'Value', format: '0.####' }, { header: 'Limit' }, { header: 'Unit' }, { header: 'Verdict', width: 17 }], verdicts, { freeze: false });
+  addTable(
+    sheet,
+    limitHeader,
+    [
+      { header: 'Limit', width: 32 },
+      { header: 'Month' },
+      { header: 'Value', format: '0.####' },
+      { header: 'Limit' },
+      { header: 'Unit' },
+      { header: 'Verdict', width: 17 },
+    ],
+    verdicts,
+    { freeze: false },
+  );
   const leakHeader = limitHeader + verdicts.length + 3;
-  addTable(sheet, leakHeader, [{ header: 'Leak detection' }, { header: 'Month' }, { header: 'Volume, m³', format: '0.000' }, { header: 'Rate, L/ha·d', format: '0.0' }, { header: 'Action rate, L/ha·d', format: '0.0' }, { header: 'Verdict' }],
-    quarter.leakDetection.map((one): CellInput[] => [one.sumpCode, monthName(one.month), one.volumeM3 ?? 'not read', one.lPerHaDay ?? 'not read', one.actionRateLPerHaDay ?? '–', one.lPerHaDay === null || one.actionRateLPerHaDay === null ? 'cannot be judged' : one.lPerHaDay > one.actionRateLPerHaDay ? 'exceed' : 'pass']), { freeze: false });
+  addTable(
+    sheet,
+    leakHeader,
+    [
+      { header: 'Leak detection' },
+      { header: 'Month' },
+      { header: 'Volume, m³', format: '0.000' },
+      { header: 'Rate, L/ha·d', format: '0.0' },
+      { header: 'Action rate, L/ha·d', format: '0.0' },
+      { header: 'Verdict' },
+    ],
+    quarter.leakDetection.map((one): CellInput[] => [
+      one.sumpCode,
+      monthName(one.month),
+      one.volumeM3 ?? 'not read',
+      one.lPerHaDay ?? 'not read',
+      one.actionRateLPerHaDay ?? '–',
+      one.lPerHaDay === null || one.actionRateLPerHaDay === null
+        ? 'cannot be judged'
+        : one.lPerHaDay > one.actionRateLPerHaDay
+          ? 'exceed'
+          : 'pass',
+    ]),
+    { freeze: false },
+  );
   const storeHeader = leakHeader + quarter.leakDetection.length + 3;
-  addTable(sheet, storeHeader, [{ header: 'Store' }, { header: 'Month' }, { header: 'Opening, m³', format: formats.m3 }, { header: 'In, m³', format: formats.m3 }, { header: 'Rain, m³', format: formats.m3 }, { header: 'Out, m³', format: formats.m3 }, { header: 'Evaporation, m³', format: formats.m3 }, { header: 'Closing measured, m³', format: formats.m3 }, { header: 'Unaccounted, m³', format: formats.difference }, { header: 'Tolerance, m³', format: formats.m3 }],
+  addTable(
+    sheet,
+    storeHeader,
+    [
+      { header: 'Store' },
+      { header: 'Month' },
+      { header: 'Opening, m³', format: formats.m3 },
+      { header: 'In, m³', format: formats.m3 },
+      { header: 'Rain, m³', format: formats.m3 },
+      { header: 'Out, m³', format: formats.m3 },
+      { header: 'Evaporation, m³', format: formats.m3 },
+      { header: 'Closing measured, m³', format: formats.m3 },
+      { header: 'Unaccounted, m³', format: formats.difference },
+      { header: 'Tolerance, m³', format: formats.m3 },
+    ],
     quarter.stores.map(({ month, name, balance }, index): CellInput[] => {
       const row = storeHeader + 1 + index;
       if (!balance) return [name, monthName(month), 'no level', '–', '–', '–', '–', '–', '–', '–'];
-      return [name, monthName(month), balance.openingM3, balance.inM3, balance.rainM3, balance.outM3, balance.evaporationM3, balance.measuredClosingM3, { formula: `H${row}-(C${row}+D${row}+E${row}-F${row}-G${row})`, result: balance.unaccountedM3 }, balance.toleranceM3];
-    }), { freeze: false });
+      return [
+        name,
+        monthName(month),
+        balance.openingM3,
+        balance.inM3,
+        balance.rainM3,
+        balance.outM3,
+        balance.evaporationM3,
+        balance.measuredClosingM3,
+        { formula: `H${row}-(C${row}+D${row}+E${row}-F${row}-G${row})`, result: balance.unaccountedM3 },
+        balance.toleranceM3,
+      ];
+    }),
+    { freeze: false },
+  );
   return { siteRow };
 }
 
@@ -70,31 +184,95 @@ export interface CheckRow {
 const checkToleranceM3 = 1e-6;
 
 /** Compares the workbook's own results with the application's numbers; the auditor's page. */
-export function addChecksSheet(workbook: ExcelJS.Workbook, quarter: Quarter, title: string, context: { balanceLastRow: number; compare: CompareRows; siteRow: number; pumped: { firstRow: number; lastRow: number } }): { checkCount: number; lastRow: number } {
+export function addChecksSheet(
+  workbook: ExcelJS.Workbook,
+  quarter: Quarter,
+  title: string,
+  context: {
+    balanceLastRow: number;
+    compare: CompareRows;
+    siteRow: number;
+    pumped: { firstRow: number; lastRow: number };
+  },
+): { checkCount: number; lastRow: number } {
   const { balanceLastRow, compare, siteRow, pumped } = context;
   const checks: CheckRow[] = quarter.cellMonths.flatMap((one, index): CheckRow[] => {
     const row = compare.firstRow + index;
-    const predicted: CheckRow = { what: `${one.cellCode} predicted, ${monthName(one.month)}, m³`, formula: `Compare!D${row}`, workbookValue: one.predictedM3, appValue: one.predictedM3 };
+    const predicted: CheckRow = {
+      what: `${one.cellCode} predicted, ${monthName(one.month)}, m³`,
+      formula: `Compare!D${row}`,
+      workbookValue: one.predictedM3,
+      appValue: one.predictedM3,
+    };
     if (one.measuredM3 === null) return [predicted];
-    const direct = quarter.days.filter((day) => day.cellCode === one.cellCode && day.month === one.month).reduce((sum, day) => sum + day.volumeM3 * day.counts, 0);
-    return [predicted, { what: `${one.cellCode} pumped, ${monthName(one.month)}, m³`, formula: `Compare!G${row}`, workbookValue: direct + one.allocatedM3, appValue: one.measuredM3 }];
+    const direct = quarter.days
+      .filter((day) => day.cellCode === one.cellCode && day.month === one.month)
+      .reduce((sum, day) => sum + day.volumeM3 * day.counts, 0);
+    return [
+      predicted,
+      {
+        what: `${one.cellCode} pumped, ${monthName(one.month)}, m³`,
+        formula: `Compare!G${row}`,
+        workbookValue: direct + one.allocatedM3,
+        appValue: one.measuredM3,
+      },
+    ];
   });
   const total = quarter.cellMonths.reduce((sum, one) => sum + one.predictedM3, 0);
-  checks.push({ what: 'Site predicted, quarter, m³', formula: `Summary!H${siteRow}`, workbookValue: total, appValue: total });
+  checks.push({
+    what: 'Site predicted, quarter, m³',
+    formula: `Summary!H${siteRow}`,
+    workbookValue: total,
+    appValue: total,
+  });
   const pumpedTotal = quarter.days.reduce((sum, day) => sum + day.volumeM3 * day.counts, 0);
-  checks.push({ what: 'Sum of counted site days, m³', formula: `SUM(Pumped!Y${pumped.firstRow}:Y${pumped.lastRow})`, workbookValue: pumpedTotal, appValue: quarter.cellMonths.reduce((sum, one) => sum + (one.measuredM3 ?? 0) - one.allocatedM3, 0) });
-  for (const [name, words] of [['soilResidual', 'Soil'], ['wasteResidual', 'Waste']] as const) {
+  checks.push({
+    what: 'Sum of counted site days, m³',
+    formula: `SUM(Pumped!Y${pumped.firstRow}:Y${pumped.lastRow})`,
+    workbookValue: pumpedTotal,
+    appValue: quarter.cellMonths.reduce((sum, one) => sum + (one.measuredM3 ?? 0) - one.allocatedM3, 0),
+  });
+  for (const [name, words] of [
+    ['soilResidual', 'Soil'],
+    ['wasteResidual', 'Waste'],
+  ] as const) {
     const range = `Balance!${balanceColumn(name)}${balanceFirstRow}:${balanceColumn(name)}${balanceLastRow}`;
-    checks.push({ what: `${words} lines: largest left over, mm`, formula: `MAX(MAX(${range}),-MIN(${range}))`, workbookValue: 0, appValue: 0 });
+    checks.push({
+      what: `${words} lines: largest left over, mm`,
+      formula: `MAX(MAX(${range}),-MIN(${range}))`,
+      workbookValue: 0,
+      appValue: 0,
+    });
   }
   const sheet = addSheet(workbook, 'Checks', `${title}: checks`, quarter.site.paperSize, false);
-  sheet.getCell('A2').value = `Each line compares this workbook's own result with the application's number; more than ${checkToleranceM3} apart says LOOK.`;
+  sheet.getCell('A2').value =
+    `Each line compares this workbook's own result with the application's number; more than ${checkToleranceM3} apart says LOOK.`;
   const rows = checks.map((check, index): CellInput[] => {
     const row = 4 + index;
     const difference = check.workbookValue - check.appValue;
-    return [check.what, { formula: check.formula, result: check.workbookValue }, check.appValue, { formula: `B${row}-C${row}`, result: difference }, { formula: `IF(ABS(D${row})<=${checkToleranceM3},"OK","LOOK")`, result: Math.abs(difference) <= checkToleranceM3 ? 'OK' : 'LOOK' }];
+    return [
+      check.what,
+      { formula: check.formula, result: check.workbookValue },
+      check.appValue,
+      { formula: `B${row}-C${row}`, result: difference },
+      {
+        formula: `IF(ABS(D${row})<=${checkToleranceM3},"OK","LOOK")`,
+        result: Math.abs(difference) <= checkToleranceM3 ? 'OK' : 'LOOK',
+      },
+    ];
   });
-  addTable(sheet, 3, [{ header: 'What', width: 44 }, { header: 'Workbook', format: '#,##0.000' }, { header: 'Application', format: '#,##0.000' }, { header: 'Difference', format: '0.0E+00' }, { header: 'Verdict', width: 10 }], rows);
+  addTable(
+    sheet,
+    3,
+    [
+      { header: 'What', width: 44 },
+      { header: 'Workbook', format: '#,##0.000' },
+      { header: 'Application', format: '#,##0.000' },
+      { header: 'Difference', format: '0.0E+00' },
+      { header: 'Verdict', width: 10 },
+    ],
+    rows,
+  );
   return { checkCount: checks.length, lastRow: 3 + checks.length };
 }
 
@@ -108,17 +286,43 @@ export interface IssueWords {
 }
 
 const contents: [string, string][] = [
-  ['Summary', 'one page: leachate by cell, limits, leak detection, stores'], ['Inputs', 'parameters and constants with their source'], ['Balance', 'water balance, one row per plot and step'], ['Pumped', 'registers, intervals and site days'],
-  ['Compare', 'predicted against pumped'], ['Lab', 'laboratory results as they came'], ['Loads', 'limits, verdicts and loads'], ['Checks', 'this workbook against the application'], ['Notes', 'missing days, estimates, edits, definitions'],
+  ['Summary', 'one page: leachate by cell, limits, leak detection, stores'],
+  ['Inputs', 'parameters and constants with their source'],
+  ['Balance', 'water balance, one row per plot and step'],
+  ['Pumped', 'registers, intervals and site days'],
+  ['Compare', 'predicted against pumped'],
+  ['Lab', 'laboratory results as they came'],
+  ['Loads', 'limits, verdicts and loads'],
+  ['Checks', 'this workbook against the application'],
+  ['Notes', 'missing days, estimates, edits, definitions'],
 ];
 
 /** What the book is, for whom, of when, and how to read it. */
-export function fillAboutSheet(sheet: ExcelJS.Worksheet, quarter: Quarter, words: IssueWords, checks: { checkCount: number; lastRow: number }): void {
+export function fillAboutSheet(
+  sheet: ExcelJS.Worksheet,
+  quarter: Quarter,
+  words: IssueWords,
+  checks: { checkCount: number; lastRow: number },
+): void {
   const lines: (readonly [string, CellInput])[] = [
-    ['Site', quarter.site.name], ['Period', `${dayName(`${quarter.months[0]}-01`)} to ${monthName(quarter.months[2]!)}`], ['Issue', words.issue === null ? 'preview, not signed' : `issue ${words.issue}`],
-    ['Signed', words.signedBy ? `${words.signedBy}, ${words.signedAt}` : 'not signed'], ['Certification', words.certification ?? 'The words of the permit stand here when the report is signed.'],
-    ['Checks', { formula: `IF(COUNTIF(Checks!E4:E${checks.lastRow},"OK")=${checks.checkCount},"All ${checks.checkCount} checks OK","LOOK at the Checks sheet")`, result: `All ${checks.checkCount} checks OK` }],
-    ['Made', quarter.generatedAt], ['Data snapshot, SHA-256', words.snapshotSha256], ['Balance', `${quarter.run.kind === 'frozen' ? `frozen run ${quarter.run.number}` : 'working run, not accepted'}, engine ${quarter.run.engineVersion}, ${quarter.parameterSet}`],
+    ['Site', quarter.site.name],
+    ['Period', `${dayName(`${quarter.months[0]}-01`)} to ${monthName(quarter.months[2]!)}`],
+    ['Issue', words.issue === null ? 'preview, not signed' : `issue ${words.issue}`],
+    ['Signed', words.signedBy ? `${words.signedBy}, ${words.signedAt}` : 'not signed'],
+    ['Certification', words.certification ?? 'The words of the permit stand here when the report is signed.'],
+    [
+      'Checks',
+      {
+        formula: `IF(COUNTIF(Checks!E4:E${checks.lastRow},"OK")=${checks.checkCount},"All ${checks.checkCount} checks OK","LOOK at the Checks sheet")`,
+        result: `All ${checks.checkCount} checks OK`,
+      },
+    ],
+    ['Made', quarter.generatedAt],
+    ['Data snapshot, SHA-256', words.snapshotSha256],
+    [
+      'Balance',
+      `${quarter.run.kind === 'frozen' ? `frozen run ${quarter.run.number}` : 'working run, not accepted'}, engine ${quarter.run.engineVersion}, ${quarter.parameterSet}`,
+    ],
   ];
   lines.forEach(([name, value], index) => {
     sheet.getCell(3 + index, 1).value = name;
@@ -135,7 +339,11 @@ export function fillAboutSheet(sheet: ExcelJS.Worksheet, quarter: Quarter, words
     sheet.getCell(start + 1 + index, 2).value = what;
   });
   const key = start + contents.length + 2;
-  ['Blue on pale blue: entered. Black: computed.', 'Marks: A apportioned, E estimated, L allocated; estimated and apportioned days are hatched as well.', 'Missing is written as words: not read, no value, no flow that day. A blank is never a zero.'].forEach((text, index) => {
+  [
+    'Blue on pale blue: entered. Black: computed.',
+    'Marks: A apportioned, E estimated, L allocated; estimated and apportioned days are hatched as well.',
+    'Missing is written as words: not read, no value, no flow that day. A blank is never a zero.',
+  ].forEach((text, index) => {
     sheet.getCell(key + index, 1).value = index === 0 ? 'How to read' : '';
     sheet.getCell(key + index, 2).value = text;
   });

@@ -9,10 +9,20 @@ export function SignOut() {
   const navigate = useNavigate();
   const handleSignOut = async () => {
     const waiting = await countWaiting();
-    if (waiting > 0 && !window.confirm(`${waiting} ${waiting === 1 ? 'entry waits' : 'entries wait'} on this phone and were not sent. They stay here until you sign in again. Sign out?`)) return;
+    if (
+      waiting > 0 &&
+      !window.confirm(
+        `${waiting} ${waiting === 1 ? 'entry waits' : 'entries wait'} on this phone and were not sent. They stay here until you sign in again. Sign out?`,
+      )
+    )
+      return;
     await api.send('POST', '/sign-out', {});
     client.clear();
     await navigate('/sign-in');
   };
-  return <button type="button" className="link text-sm" onClick={() => void handleSignOut()}>Sign out</button>;
+  return (
+    <button type="button" className="link text-sm" onClick={() => void handleSignOut()}>
+      Sign out
+    </button>
+  );
 }

@@ -21,33 +21,125 @@ function Parameters() {
       {({ current }) => {
         const p = current.values as BalanceParameters;
         const rows: [string, string, string][] = [
-          ['Potential ET', { thornthwaite: 'Thornthwaite 1948', hargreaves: 'Hargreaves–Samani 1985', given: 'given values' }[p.petMethod], ''], ['Soil law', p.soilLaw.replace('-', ' '), ''], ['Runoff factor', String(p.runoffFactor), ''], ['PET factor', String(p.petFactor), ''],
-          ['Snow', p.snow.isOn ? `on: snow at or below ${p.snow.tSnowC} °C, rain from ${p.snow.tRainC} °C, melt at most ${p.snow.meltMaxFraction} a month` : 'off', ''], ['Frozen ground', p.isFrostOn ? `percolation stops at or below ${p.tFrostC} °C` : 'off', ''],
-          ['Recession constant of the waste', String(p.recessionPerMonth), '1/month'], ['Channelled share', String(p.channelledFraction), ''], ['Leak share', String(p.leakFraction), ''], ['First store', p.isSpunUp ? 'spun up on the first year' : 'entered, or half', ''], ['Percent muted under', String(p.percentFloorMm), 'mm'],
+          [
+            'Potential ET',
+            {
+              thornthwaite: 'Thornthwaite 1948',
+              hargreaves: 'Hargreaves–Samani 1985',
+              given: 'given values',
+            }[p.petMethod],
+            '',
+          ],
+          ['Soil law', p.soilLaw.replace('-', ' '), ''],
+          ['Runoff factor', String(p.runoffFactor), ''],
+          ['PET factor', String(p.petFactor), ''],
+          [
+            'Snow',
+            p.snow.isOn
+              ? `on: snow at or below ${p.snow.tSnowC} °C, rain from ${p.snow.tRainC} °C, melt at most ${p.snow.meltMaxFraction} a month`
+              : 'off',
+            '',
+          ],
+          ['Frozen ground', p.isFrostOn ? `percolation stops at or below ${p.tFrostC} °C` : 'off', ''],
+          ['Recession constant of the waste', String(p.recessionPerMonth), '1/month'],
+          ['Channelled share', String(p.channelledFraction), ''],
+          ['Leak share', String(p.leakFraction), ''],
+          ['First store', p.isSpunUp ? 'spun up on the first year' : 'entered, or half', ''],
+          ['Percent muted under', String(p.percentFloorMm), 'mm'],
         ];
         if (isEditing) {
           return (
-            <RecordForm<ParameterSetInput> schema={parameterSetInput} defaults={{ id: newId(), name: current.name === 'Template' ? 'Site set' : current.name, values: p }} submitLabel="Save as a new set" onSubmit={(values) => save.mutateAsync(values)} onDone={() => setIsEditing(false)}>
+            <RecordForm<ParameterSetInput>
+              schema={parameterSetInput}
+              defaults={{
+                id: newId(),
+                name: current.name === 'Template' ? 'Site set' : current.name,
+                values: p,
+              }}
+              submitLabel="Save as a new set"
+              onSubmit={(values) => save.mutateAsync(values)}
+              onDone={() => setIsEditing(false)}
+            >
               <TextField name="name" label="Name of the set" />
-              <ChoiceField name="values.petMethod" label="Potential evapotranspiration" options={[{ value: 'thornthwaite', label: 'Thornthwaite 1948' }, { value: 'hargreaves', label: 'Hargreaves–Samani 1985' }, { value: 'given', label: 'given values' }]} hint="Available water of the covers and the method belong together: look at both when one changes." />
-              <ChoiceField name="values.soilLaw" label="Soil law" options={[{ value: 'exponential', label: 'exponential (Thornthwaite and Mather 1957)' }, { value: 'equal-availability', label: 'equal availability' }, { value: 'linear', label: 'linear' }]} />
-              <TextField name="values.runoffFactor" label="Factor on every runoff share" inputMode="decimal" />
-              <TextField name="values.petFactor" label="Factor on potential evapotranspiration" inputMode="decimal" />
-              <TextField name="values.recessionPerMonth" label="Recession constant of the waste" unit="1/month" inputMode="decimal" hint="Template 0.5: our choice, no published constant exists." />
-              <TextField name="values.channelledFraction" label="Channelled share of percolation" inputMode="decimal" />
-              <TextField name="values.leakFraction" label="Share of drained water that leaks" inputMode="decimal" />
+              <ChoiceField
+                name="values.petMethod"
+                label="Potential evapotranspiration"
+                options={[
+                  { value: 'thornthwaite', label: 'Thornthwaite 1948' },
+                  { value: 'hargreaves', label: 'Hargreaves–Samani 1985' },
+                  { value: 'given', label: 'given values' },
+                ]}
+                hint="Available water of the covers and the method belong together: look at both when one changes."
+              />
+              <ChoiceField
+                name="values.soilLaw"
+                label="Soil law"
+                options={[
+                  { value: 'exponential', label: 'exponential (Thornthwaite and Mather 1957)' },
+                  { value: 'equal-availability', label: 'equal availability' },
+                  { value: 'linear', label: 'linear' },
+                ]}
+              />
+              <TextField
+                name="values.runoffFactor"
+                label="Factor on every runoff share"
+                inputMode="decimal"
+              />
+              <TextField
+                name="values.petFactor"
+                label="Factor on potential evapotranspiration"
+                inputMode="decimal"
+              />
+              <TextField
+                name="values.recessionPerMonth"
+                label="Recession constant of the waste"
+                unit="1/month"
+                inputMode="decimal"
+                hint="Template 0.5: our choice, no published constant exists."
+              />
+              <TextField
+                name="values.channelledFraction"
+                label="Channelled share of percolation"
+                inputMode="decimal"
+              />
+              <TextField
+                name="values.leakFraction"
+                label="Share of drained water that leaks"
+                inputMode="decimal"
+              />
               <CheckField name="values.snow.isOn" label="Snow" />
               <CheckField name="values.isFrostOn" label="Frozen ground stops percolation" />
               <CheckField name="values.isSpunUp" label="Spin the first soil store up on the first year" />
-              <p><button type="button" className="link" onClick={() => setIsEditing(false)}>Leave as it is</button></p>
+              <p>
+                <button type="button" className="link" onClick={() => setIsEditing(false)}>
+                  Leave as it is
+                </button>
+              </p>
             </RecordForm>
           );
         }
         return (
           <div className="sheet pad">
-            <p className="font-semibold">{current.name}, version {current.version} {!current.confirmedAt && <Template />}</p>
-            <dl className="grid grid-cols-[minmax(0,1fr)_minmax(0,1.4fr)] gap-x-4 gap-y-1 mt-2 text-sm">{rows.map(([name, value, unit]) => <div key={name} className="contents"><dt className="text-muted">{name}</dt><dd>{value} {unit}</dd></div>)}</dl>
-            {can('change:parameters') && <p className="mt-3"><button type="button" className="btn btn-second" onClick={() => setIsEditing(true)}>Make a new set</button></p>}
+            <p className="font-semibold">
+              {current.name}, version {current.version} {!current.confirmedAt && <Template />}
+            </p>
+            <dl className="grid grid-cols-[minmax(0,1fr)_minmax(0,1.4fr)] gap-x-4 gap-y-1 mt-2 text-sm">
+              {rows.map(([name, value, unit]) => (
+                <div key={name} className="contents">
+                  <dt className="text-muted">{name}</dt>
+                  <dd>
+                    {value} {unit}
+                  </dd>
+                </div>
+              ))}
+            </dl>
+            {can('change:parameters') && (
+              <p className="mt-3">
+                <button type="button" className="btn btn-second" onClick={() => setIsEditing(true)}>
+                  Make a new set
+                </button>
+              </p>
+            )}
           </div>
         );
       }}
@@ -58,7 +150,11 @@ function Parameters() {
 function AcceptButton({ runId }: { runId: string }) {
   const { site } = usePlace();
   const accept = useWrite<Record<string, never>>(site.id, `/balance-runs/${runId}/acceptance`);
-  return <button type="button" className="link" onClick={() => accept.mutate({})}>Accept for Compare and Report</button>;
+  return (
+    <button type="button" className="link" onClick={() => accept.mutate({})}>
+      Accept for Compare and Report
+    </button>
+  );
 }
 
 /** Parameters, the working run, and the frozen runs that keep theirs for ever. */
@@ -67,21 +163,48 @@ export function RunsPanel({ view }: { view: BalanceView }) {
   const freeze = useWrite<{ id: string; note?: string }>(site.id, '/balance-runs');
   return (
     <div className="grid gap-x-8 lg:grid-cols-2 mt-10 no-print">
-      <Section title="Parameters"><Parameters /></Section>
+      <Section title="Parameters">
+        <Parameters />
+      </Section>
       <Section title="Runs">
         <div className="sheet pad grid gap-3">
-          <p><Link to={`/sites/${site.slug}/balance/${view.month}`}>Working run</Link>: follows its inputs, computed again after every change.</p>
+          <p>
+            <Link to={`/sites/${site.slug}/balance/${view.month}`}>Working run</Link>: follows its inputs,
+            computed again after every change.
+          </p>
           <ul className="lines list-none">
             {view.frozenRuns.map((run) => (
               <li key={run.id} className="flex flex-wrap gap-x-4 items-baseline">
-                <Link to={`?run=${run.id}`}>Frozen run {run.number}</Link><span className="hint">{formatInstant(run.computedAt)}{run.note ? `, ${run.note}` : ''}</span>
-                <span className="ml-auto">{run.acceptedAt ? <Word look="good">accepted</Word> : can('freeze:run') ? <AcceptButton runId={run.id} /> : <span className="hint">not accepted</span>}</span>
+                <Link to={`?run=${run.id}`}>Frozen run {run.number}</Link>
+                <span className="hint">
+                  {formatInstant(run.computedAt)}
+                  {run.note ? `, ${run.note}` : ''}
+                </span>
+                <span className="ml-auto">
+                  {run.acceptedAt ? (
+                    <Word look="good">accepted</Word>
+                  ) : can('freeze:run') ? (
+                    <AcceptButton runId={run.id} />
+                  ) : (
+                    <span className="hint">not accepted</span>
+                  )}
+                </span>
               </li>
             ))}
           </ul>
-          {view.frozenRuns.length === 0 && <p className="text-muted">No run was frozen yet. Compare uses the working run until one is accepted.</p>}
+          {view.frozenRuns.length === 0 && (
+            <p className="text-muted">
+              No run was frozen yet. Compare uses the working run until one is accepted.
+            </p>
+          )}
           {can('freeze:run') && !view.run.problem && (
-            <RecordForm<{ id: string; note: string }> key={view.frozenRuns.length} schema={freezeInput} defaults={{ id: newId(), note: '' }} submitLabel="Freeze the working run" onSubmit={(values) => freeze.mutateAsync(values)}>
+            <RecordForm<{ id: string; note: string }>
+              key={view.frozenRuns.length}
+              schema={freezeInput}
+              defaults={{ id: newId(), note: '' }}
+              submitLabel="Freeze the working run"
+              onSubmit={(values) => freeze.mutateAsync(values)}
+            >
               <TextField name="note" label="What it is for" isOptional />
             </RecordForm>
           )}

@@ -16,28 +16,59 @@ function Sheet({ stepId, term }: { stepId: string; term: TermName }) {
     <Viewed query={query}>
       {(view) => (
         <>
-          <p className="hint mb-3">{view.title}, {view.plotName} ({view.coverName}), {monthName(view.month)}{view.fromOn.endsWith('-01') ? '' : ` from ${dayNameShort(view.fromOn)}`}</p>
+          <p className="hint mb-3">
+            {view.title}, {view.plotName} ({view.coverName}), {monthName(view.month)}
+            {view.fromOn.endsWith('-01') ? '' : ` from ${dayNameShort(view.fromOn)}`}
+          </p>
           <table className="tbl tbl-tight">
             <caption className="sr-only">Working of {view.title}</caption>
-            <thead><tr><th scope="col">Line</th><th scope="col">What and how</th><th scope="col" className="r">Value</th></tr></thead>
+            <thead>
+              <tr>
+                <th scope="col">Line</th>
+                <th scope="col">What and how</th>
+                <th scope="col" className="r">
+                  Value
+                </th>
+              </tr>
+            </thead>
             <tbody>
               {view.lines.map((line, index) => (
                 <tr key={line.line} className={index === view.lines.length - 1 ? 'total bg-tint' : ''}>
                   <td>{line.line}</td>
-                  <th scope="row">{line.what} <span className="text-muted font-normal">{line.how}</span>{line.source && <span className="hint block">{line.source}</span>}</th>
-                  <td className="r">{formatNumber(line.value, line.unit === 'm³' ? 1 : line.unit === '' ? 3 : 2)} {line.unit}</td>
+                  <th scope="row">
+                    {line.what} <span className="text-muted font-normal">{line.how}</span>
+                    {line.source && <span className="hint block">{line.source}</span>}
+                  </th>
+                  <td className="r">
+                    {formatNumber(line.value, line.unit === 'm³' ? 1 : line.unit === '' ? 3 : 2)} {line.unit}
+                  </td>
                 </tr>
               ))}
             </tbody>
           </table>
           <dl className="grid grid-cols-[130px_1fr] gap-x-4 gap-y-1 mt-4 text-sm">
-            <dt className="text-muted">Soil law</dt><dd>{view.law}</dd>
-            <dt className="text-muted">Potential ET</dt><dd>{view.petMethod}</dd>
-            <dt className="text-muted">Parameter set</dt><dd>{view.parameterSet.name}, version {view.parameterSet.version} {!view.parameterSet.isConfirmed && <Template />}</dd>
-            <dt className="text-muted">Run</dt><dd>{view.run.kind === 'frozen' ? `frozen run ${view.run.number}` : 'working run'}, {formatInstant(view.run.computedAt)}</dd>
-            <dt className="text-muted">Engine</dt><dd>version {view.run.engineVersion}</dd>
+            <dt className="text-muted">Soil law</dt>
+            <dd>{view.law}</dd>
+            <dt className="text-muted">Potential ET</dt>
+            <dd>{view.petMethod}</dd>
+            <dt className="text-muted">Parameter set</dt>
+            <dd>
+              {view.parameterSet.name}, version {view.parameterSet.version}{' '}
+              {!view.parameterSet.isConfirmed && <Template />}
+            </dd>
+            <dt className="text-muted">Run</dt>
+            <dd>
+              {view.run.kind === 'frozen' ? `frozen run ${view.run.number}` : 'working run'},{' '}
+              {formatInstant(view.run.computedAt)}
+            </dd>
+            <dt className="text-muted">Engine</dt>
+            <dd>version {view.run.engineVersion}</dd>
           </dl>
-          <p className="mt-4"><button type="button" className="btn btn-second" onClick={() => window.print()}>Print this working</button></p>
+          <p className="mt-4">
+            <button type="button" className="btn btn-second" onClick={() => window.print()}>
+              Print this working
+            </button>
+          </p>
         </>
       )}
     </Viewed>
@@ -45,7 +76,13 @@ function Sheet({ stepId, term }: { stepId: string; term: TermName }) {
 }
 
 /** The working of one number, as a sheet with numbered lines and sources. */
-export function WorkingPanel({ working, onClose }: { working: { stepId: string; term: TermName } | null; onClose: () => void }) {
+export function WorkingPanel({
+  working,
+  onClose,
+}: {
+  working: { stepId: string; term: TermName } | null;
+  onClose: () => void;
+}) {
   return (
     <Panel title="Working" isOpen={working !== null} onClose={onClose}>
       {working && <Sheet stepId={working.stepId} term={working.term} />}

@@ -20,9 +20,16 @@ function Findings({ view }: { view: CompareView }) {
     <ul className="sheet lines px-4 list-none">
       {view.findings.map((finding) => (
         <li key={finding.code} className="flex flex-wrap gap-x-5 gap-y-1 items-baseline">
-          <Word look={finding.code === 'lag' ? 'open' : severityLooks[finding.severity]}>{finding.code === 'lag' ? 'Delay' : severityWords[finding.severity]}</Word>
+          <Word look={finding.code === 'lag' ? 'open' : severityLooks[finding.severity]}>
+            {finding.code === 'lag' ? 'Delay' : severityWords[finding.severity]}
+          </Word>
           <span className="flex-1 min-w-[240px]">{finding.sentence}</span>
-          {finding.difference !== undefined && <span className="font-semibold whitespace-nowrap">{formatSigned(finding.difference)} m³ <span className="text-muted font-normal">of ±{formatM3(finding.tolerance ?? 0)}</span></span>}
+          {finding.difference !== undefined && (
+            <span className="font-semibold whitespace-nowrap">
+              {formatSigned(finding.difference)} m³{' '}
+              <span className="text-muted font-normal">of ±{formatM3(finding.tolerance ?? 0)}</span>
+            </span>
+          )}
         </li>
       ))}
     </ul>
@@ -32,7 +39,9 @@ function Findings({ view }: { view: CompareView }) {
 function stateSentence(view: CompareView): string {
   const asking = view.findings.filter((finding) => finding.severity === 'ask');
   const outside = view.rows.filter((row) => row.isInside === false).length;
-  const unexplained = view.rows.filter((row) => row.isInside === false && (!row.note || row.note.state === 'open')).length;
+  const unexplained = view.rows.filter(
+    (row) => row.isInside === false && (!row.note || row.note.state === 'open'),
+  ).length;
   if (!view.rows.length) return 'There is no month to compare yet.';
   const span = `${monthName(view.rows[0]!.month)} to ${monthName(view.rows.at(-1)!.month)}:`;
   if (!outside) return `${span} every month that was read lies inside its tolerance.`;
@@ -47,39 +56,113 @@ export function ComparePage() {
   const cellCode = search.get('cell');
   const isRolling = search.get('view') === 'rolling';
   const monthCount = Number(search.get('months')) === 36 ? 36 : 12;
-  const query = useRecord<CompareView>(site.id, `/compare/${month}?months=${isRolling ? 36 : monthCount}${cellCode ? `&cell=${encodeURIComponent(cellCode)}` : ''}`);
+  const query = useRecord<CompareView>(
+    site.id,
+    `/compare/${month}?months=${isRolling ? 36 : monthCount}${cellCode ? `&cell=${encodeURIComponent(cellCode)}` : ''}`,
+  );
   const [open, setOpen] = useState<string | null>(null);
-  const choose = (name: string, value: string | null) => setSearch((before) => { const next = new URLSearchParams(before); if (value) next.set(name, value); else next.delete(name); return next; });
+  const choose = (name: string, value: string | null) =>
+    setSearch((before) => {
+      const next = new URLSearchParams(before);
+      if (value) next.set(name, value);
+      else next.delete(name);
+      return next;
+    });
   const view = query.data;
   return (
     <>
       <PageHead
         title={view ? `Compare, ${view.cell.code} ${view.cell.name}` : 'Compare'}
         sentence={view && stateSentence(view)}
-        crumb={view && <>{view.run.kind === 'frozen' ? `Frozen run ${view.run.number}` : 'Working run'} of {formatInstant(view.run.computedAt)}{view.run.isAccepted ? ', accepted by an engineer' : ', not accepted by an engineer'}. <Link to={`/sites/${site.slug}/balance/${month}${view.run.kind === 'frozen' ? `?run=${view.run.id}` : ''}`}>See the balance</Link></>}
+        crumb={
+          view && (
+            <>
+              {view.run.kind === 'frozen' ? `Frozen run ${view.run.number}` : 'Working run'} of{' '}
+              {formatInstant(view.run.computedAt)}
+              {view.run.isAccepted ? ', accepted by an engineer' : ', not accepted by an engineer'}.{' '}
+              <Link
+                to={`/sites/${site.slug}/balance/${month}${view.run.kind === 'frozen' ? `?run=${view.run.id}` : ''}`}
+              >
+                See the balance
+              </Link>
+            </>
+          )
+        }
       />
       <Viewed query={query}>
         {(data) => (
           <>
             <div className="flex flex-wrap gap-2 mb-5 no-print" role="group" aria-label="Cell">
-              {data.cells.map((one) => <button key={one.code} type="button" className="choice !w-auto" aria-pressed={data.cell.code === one.code} onClick={() => choose('cell', one.code)}>{one.code} {one.name}</button>)}
+              {data.cells.map((one) => (
+                <button
+                  key={one.code}
+                  type="button"
+                  className="choice !w-auto"
+                  aria-pressed={data.cell.code === one.code}
+                  onClick={() => choose('cell', one.code)}
+                >
+                  {one.code} {one.name}
+                </button>
+              ))}
             </div>
-            {data.rows.length === 0 ? <Empty>No month has a balance yet. <Link to={`/sites/${site.slug}/balance/${month}`}>Look at Balance</Link> to see what it needs.</Empty> : (
+            {data.rows.length === 0 ? (
+              <Empty>
+                No month has a balance yet.{' '}
+                <Link to={`/sites/${site.slug}/balance/${month}`}>Look at Balance</Link> to see what it needs.
+              </Empty>
+            ) : (
               <>
                 <Findings view={data} />
-                <div className="flex flex-wrap gap-2 mt-8 mb-4 items-center no-print" role="group" aria-label="What is shown">
-                  <button type="button" className="choice !w-auto" aria-pressed={!isRolling} onClick={() => choose('view', null)}>Months</button>
-                  <button type="button" className="choice !w-auto" aria-pressed={isRolling} onClick={() => choose('view', 'rolling')}>Rolling twelve and cumulative</button>
-                  {!isRolling && <button type="button" className="link min-h-12" onClick={() => choose('months', monthCount === 12 ? '36' : null)}>{monthCount === 12 ? 'Show three years' : 'Show one year'}</button>}
-                  <button type="button" className="link min-h-12 ml-auto" onClick={() => window.print()}>Print one year</button>
+                <div
+                  className="flex flex-wrap gap-2 mt-8 mb-4 items-center no-print"
+                  role="group"
+                  aria-label="What is shown"
+                >
+                  <button
+                    type="button"
+                    className="choice !w-auto"
+                    aria-pressed={!isRolling}
+                    onClick={() => choose('view', null)}
+                  >
+                    Months
+                  </button>
+                  <button
+                    type="button"
+                    className="choice !w-auto"
+                    aria-pressed={isRolling}
+                    onClick={() => choose('view', 'rolling')}
+                  >
+                    Rolling twelve and cumulative
+                  </button>
+                  {!isRolling && (
+                    <button
+                      type="button"
+                      className="link min-h-12"
+                      onClick={() => choose('months', monthCount === 12 ? '36' : null)}
+                    >
+                      {monthCount === 12 ? 'Show three years' : 'Show one year'}
+                    </button>
+                  )}
+                  <button type="button" className="link min-h-12 ml-auto" onClick={() => window.print()}>
+                    Print one year
+                  </button>
                 </div>
                 {isRolling ? <RollingTable view={data} /> : <MonthTable view={data} onOpen={setOpen} />}
                 <Section title="What is compared">
-                  <p className="max-w-[80ch]">Pumped is what left the cell’s sump, gross of any liquid returned to it. Liquid standing in the sump is not counted. Where cells share a header the meter’s volume is split by the shares in force; such numbers carry the mark ⊕. A small difference is not a proof that a liner is sound.</p>
+                  <p className="max-w-[80ch]">
+                    Pumped is what left the cell’s sump, gross of any liquid returned to it. Liquid standing
+                    in the sump is not counted. Where cells share a header the meter’s volume is split by the
+                    shares in force; such numbers carry the mark ⊕. A small difference is not a proof that a
+                    liner is sound.
+                  </p>
                 </Section>
               </>
             )}
-            <MonthNote cell={data.cell} row={data.rows.find((row) => row.month === open)} onClose={() => setOpen(null)} />
+            <MonthNote
+              cell={data.cell}
+              row={data.rows.find((row) => row.month === open)}
+              onClose={() => setOpen(null)}
+            />
           </>
         )}
       </Viewed>

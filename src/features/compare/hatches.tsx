@@ -12,7 +12,8 @@ const tiles: Record<CoverKind, string> = {
   'evapotranspiration-cover': 'M4 8V3M4 5 2 3M4 5 6 3',
 };
 
-export const hatchFill = (kind: CoverKind): string => (kind === 'lined-floor' ? '#fff' : `url(#hatch-${kind})`);
+export const hatchFill = (kind: CoverKind): string =>
+  kind === 'lined-floor' ? '#fff' : `url(#hatch-${kind})`;
 
 /** The hatches of the page, once. */
 export function HatchDefs() {

@@ -11,19 +11,48 @@ export function CoverTrack({ covers, width = 66 }: { covers: readonly CoverShare
   return (
     <svg aria-hidden width={width} height={height} className="block">
       {covers.map((cover, index) => (
-        <rect key={cover.kind} x={starts[index]! * width} width={cover.share * width} height={height} fill={hatchFill(cover.kind)} stroke="var(--color-edge)" strokeWidth="1" />
+        <rect
+          key={cover.kind}
+          x={starts[index]! * width}
+          width={cover.share * width}
+          height={height}
+          fill={hatchFill(cover.kind)}
+          stroke="var(--color-edge)"
+          strokeWidth="1"
+        />
       ))}
     </svg>
   );
 }
 
 /** A bar from zero; dashed when the value is computed and not measured. */
-export function BarTrack({ value, max, colour, isDashed = false, width = 50 }: { value: number; max: number; colour: string; isDashed?: boolean; width?: number }) {
+export function BarTrack({
+  value,
+  max,
+  colour,
+  isDashed = false,
+  width = 50,
+}: {
+  value: number;
+  max: number;
+  colour: string;
+  isDashed?: boolean;
+  width?: number;
+}) {
   const length = max > 0 ? Math.max(0, (value / max) * width) : 0;
   return (
     <svg aria-hidden width={width} height={height} className="block">
       <line x1="0.5" x2="0.5" y1="0" y2={height} stroke="var(--color-line)" />
-      <rect x="1" y={middle - 8} width={length} height="16" fill={isDashed ? 'none' : colour} stroke={colour} strokeWidth={isDashed ? 1.5 : 0} strokeDasharray={isDashed ? '3 3' : undefined} />
+      <rect
+        x="1"
+        y={middle - 8}
+        width={length}
+        height="16"
+        fill={isDashed ? 'none' : colour}
+        stroke={colour}
+        strokeWidth={isDashed ? 1.5 : 0}
+        strokeDasharray={isDashed ? '3 3' : undefined}
+      />
     </svg>
   );
 }
@@ -35,7 +64,17 @@ interface TrailPoint {
 }
 
 /** A line that runs down the page: from half way to the month before, to half way to the month after. */
-function Segment({ point, x, colour, dash }: { point: TrailPoint; x: (value: number) => number; colour: string; dash?: string }) {
+function Segment({
+  point,
+  x,
+  colour,
+  dash,
+}: {
+  point: TrailPoint;
+  x: (value: number) => number;
+  colour: string;
+  dash?: string;
+}) {
   if (point.value === null) return null;
   const here = `${x(point.value)} ${middle}`;
   const half = (other: number) => (x(other) + x(point.value!)) / 2;
@@ -43,12 +82,26 @@ function Segment({ point, x, colour, dash }: { point: TrailPoint; x: (value: num
   return <path d={path} fill="none" stroke={colour} strokeWidth="2" strokeDasharray={dash} />;
 }
 
-const pointOf = (rows: readonly ComparedRow[], index: number, pick: (row: ComparedRow) => number | null): TrailPoint => {
+const pointOf = (
+  rows: readonly ComparedRow[],
+  index: number,
+  pick: (row: ComparedRow) => number | null,
+): TrailPoint => {
   const at = (position: number) => (rows[position] ? pick(rows[position]) : null);
   return { before: at(index - 1), value: at(index), after: at(index + 1) };
 };
 
-export function StorageTrack({ rows, index, min, max }: { rows: readonly ComparedRow[]; index: number; min: number; max: number }) {
+export function StorageTrack({
+  rows,
+  index,
+  min,
+  max,
+}: {
+  rows: readonly ComparedRow[];
+  index: number;
+  min: number;
+  max: number;
+}) {
   const width = 62;
   const x = (value: number) => 6 + ((value - min) / (max - min || 1)) * (width - 12);
   const point = pointOf(rows, index, (row) => row.storageMm);
@@ -63,18 +116,46 @@ export function StorageTrack({ rows, index, min, max }: { rows: readonly Compare
 }
 
 /** Predicted (dashed, hollow squares) beside pumped (solid, filled circles) on one scale. */
-export function VolumeTrack({ rows, index, max }: { rows: readonly ComparedRow[]; index: number; max: number }) {
+export function VolumeTrack({
+  rows,
+  index,
+  max,
+}: {
+  rows: readonly ComparedRow[];
+  index: number;
+  max: number;
+}) {
   const width = 180;
   const x = (value: number) => 8 + (value / (max || 1)) * (width - 16);
   const predicted = pointOf(rows, index, (row) => row.predictedM3);
   const measured = pointOf(rows, index, (row) => row.measuredM3);
   return (
     <svg aria-hidden width={width} height={height} className="block">
-      {[0, 0.25, 0.5, 0.75, 1].map((share) => <line key={share} x1={x(share * max)} x2={x(share * max)} y1="0" y2={height} stroke="var(--color-line)" strokeWidth={share === 0 ? 1.5 : 1} />)}
+      {[0, 0.25, 0.5, 0.75, 1].map((share) => (
+        <line
+          key={share}
+          x1={x(share * max)}
+          x2={x(share * max)}
+          y1="0"
+          y2={height}
+          stroke="var(--color-line)"
+          strokeWidth={share === 0 ? 1.5 : 1}
+        />
+      ))}
       <Segment point={predicted} x={x} colour="var(--color-s-leachate)" dash="7 4" />
       <Segment point={measured} x={x} colour="var(--color-s-pumped)" />
-      <rect x={x(predicted.value!) - 5} y={middle - 5} width="10" height="10" fill="#fff" stroke="var(--color-s-leachate)" strokeWidth="2" />
-      {measured.value !== null && <circle cx={x(measured.value)} cy={middle} r="5.5" fill="var(--color-s-pumped)" />}
+      <rect
+        x={x(predicted.value!) - 5}
+        y={middle - 5}
+        width="10"
+        height="10"
+        fill="#fff"
+        stroke="var(--color-s-leachate)"
+        strokeWidth="2"
+      />
+      {measured.value !== null && (
+        <circle cx={x(measured.value)} cy={middle} r="5.5" fill="var(--color-s-pumped)" />
+      )}
     </svg>
   );
 }
@@ -87,8 +168,21 @@ export function GapTrack({ row, max }: { row: ComparedRow; max: number }) {
   const gap = row.differenceM3;
   return (
     <svg aria-hidden width={width} height={height} className="block">
-      <rect x={x(-Math.min(band, max))} width={x(Math.min(band, max)) - x(-Math.min(band, max))} height={height} fill="var(--color-sunken)" />
-      {gap !== null && <rect x={Math.min(x(0), x(gap))} y={middle - 8} width={Math.max(1, Math.abs(x(gap) - x(0)))} height="16" fill={row.isInside ? 'var(--color-edge)' : 'var(--color-ink)'} />}
+      <rect
+        x={x(-Math.min(band, max))}
+        width={x(Math.min(band, max)) - x(-Math.min(band, max))}
+        height={height}
+        fill="var(--color-sunken)"
+      />
+      {gap !== null && (
+        <rect
+          x={Math.min(x(0), x(gap))}
+          y={middle - 8}
+          width={Math.max(1, Math.abs(x(gap) - x(0)))}
+          height="16"
+          fill={row.isInside ? 'var(--color-edge)' : 'var(--color-ink)'}
+        />
+      )}
       <line x1={width / 2} x2={width / 2} y1="0" y2={height} stroke="var(--color-ink)" />
     </svg>
   );

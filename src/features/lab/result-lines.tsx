@@ -20,19 +20,47 @@ export function ResultPicture({ results }: { results: readonly LabResultView[] }
   const last = drawn.at(-1)!;
   return (
     <figure className="sheet pad">
-      <svg role="img" aria-label={`${last.analyteName} at ${last.pointCode}: ${drawn.length} results from ${dayName(drawn[0]!.siteDay)} to ${dayName(last.siteDay)}, highest ${max} ${last.unit}. The table has every value.`} viewBox={`0 0 ${width} ${height}`} className="w-full">
+      <svg
+        role="img"
+        aria-label={`${last.analyteName} at ${last.pointCode}: ${drawn.length} results from ${dayName(drawn[0]!.siteDay)} to ${dayName(last.siteDay)}, highest ${max} ${last.unit}. The table has every value.`}
+        viewBox={`0 0 ${width} ${height}`}
+        className="w-full"
+      >
         <line x1="0" x2={width} y1={height - 26} y2={height - 26} stroke="var(--color-line)" />
         {drawn.map((one) => (
           <g key={one.id}>
-            <line x1={x(one)} x2={x(one)} y1={height - 26} y2={y(one)} stroke={colour} strokeDasharray={one.comparator === '<' ? '2 3' : undefined} />
-            <rect x={x(one) - 5} y={y(one) - 5} width="10" height="10" fill={one.comparator === '<' ? '#fff' : colour} stroke={colour} strokeWidth="2" />
+            <line
+              x1={x(one)}
+              x2={x(one)}
+              y1={height - 26}
+              y2={y(one)}
+              stroke={colour}
+              strokeDasharray={one.comparator === '<' ? '2 3' : undefined}
+            />
+            <rect
+              x={x(one) - 5}
+              y={y(one) - 5}
+              width="10"
+              height="10"
+              fill={one.comparator === '<' ? '#fff' : colour}
+              stroke={colour}
+              strokeWidth="2"
+            />
           </g>
         ))}
-        <text x="0" y="14" fontSize="14" fill="var(--color-muted)">{max} {last.unit}</text>
-        <text x="0" y={height - 6} fontSize="14" fill="var(--color-muted)">{dayNameShort(drawn[0]!.siteDay)} {drawn[0]!.siteDay.slice(0, 4)}</text>
-        <text x={width} y={height - 6} fontSize="14" textAnchor="end" fill="var(--color-muted)">{dayNameShort(last.siteDay)} {last.siteDay.slice(0, 4)}</text>
+        <text x="0" y="14" fontSize="14" fill="var(--color-muted)">
+          {max} {last.unit}
+        </text>
+        <text x="0" y={height - 6} fontSize="14" fill="var(--color-muted)">
+          {dayNameShort(drawn[0]!.siteDay)} {drawn[0]!.siteDay.slice(0, 4)}
+        </text>
+        <text x={width} y={height - 6} fontSize="14" textAnchor="end" fill="var(--color-muted)">
+          {dayNameShort(last.siteDay)} {last.siteDay.slice(0, 4)}
+        </text>
       </svg>
-      <figcaption className="hint">Filled: measured. Hollow on a dotted line: below detection, drawn at its limit.</figcaption>
+      <figcaption className="hint">
+        Filled: measured. Hollow on a dotted line: below detection, drawn at its limit.
+      </figcaption>
     </figure>
   );
 }
@@ -49,13 +77,46 @@ export function ResultTable({ results, checkPath }: ResultTableProps) {
     <ScrollBox label="Results">
       <table className="tbl tbl-tight">
         <caption className="sr-only">Results, latest first</caption>
-        <thead><tr><th scope="col">Sampled</th><th scope="col">Point</th><th scope="col">Parameter</th><th scope="col" className="r">Result</th><th scope="col">Unit</th><th scope="col">As the sheet says</th><th scope="col">From</th></tr></thead>
+        <thead>
+          <tr>
+            <th scope="col">Sampled</th>
+            <th scope="col">Point</th>
+            <th scope="col">Parameter</th>
+            <th scope="col" className="r">
+              Result
+            </th>
+            <th scope="col">Unit</th>
+            <th scope="col">As the sheet says</th>
+            <th scope="col">From</th>
+          </tr>
+        </thead>
         <tbody>
           {results.map((one) => (
             <tr key={one.id}>
-              <th scope="row" className="whitespace-nowrap">{dayNameShort(one.siteDay)} {one.siteDay.slice(0, 4)}</th><td>{one.pointCode}</td><td>{one.analyteName}{one.fraction && <span className="hint"> {one.fraction}</span>}{one.isRevision && <span className="hint block">revised by the laboratory</span>}</td>
-              <td className="r font-medium">{formatResult(one)}</td><td>{one.value === null ? '' : one.unit}</td><td className="text-muted">{one.rawText} {one.rawUnit}{one.qualifier ? ` ${one.qualifier}` : ''}</td>
-              <td>{one.importId ? <Link to={`${checkPath}/${one.importId}`}>{one.sheet ? `${one.sheet}, ${one.cell}` : 'upload'}</Link> : 'entered'}</td>
+              <th scope="row" className="whitespace-nowrap">
+                {dayNameShort(one.siteDay)} {one.siteDay.slice(0, 4)}
+              </th>
+              <td>{one.pointCode}</td>
+              <td>
+                {one.analyteName}
+                {one.fraction && <span className="hint"> {one.fraction}</span>}
+                {one.isRevision && <span className="hint block">revised by the laboratory</span>}
+              </td>
+              <td className="r font-medium">{formatResult(one)}</td>
+              <td>{one.value === null ? '' : one.unit}</td>
+              <td className="text-muted">
+                {one.rawText} {one.rawUnit}
+                {one.qualifier ? ` ${one.qualifier}` : ''}
+              </td>
+              <td>
+                {one.importId ? (
+                  <Link to={`${checkPath}/${one.importId}`}>
+                    {one.sheet ? `${one.sheet}, ${one.cell}` : 'upload'}
+                  </Link>
+                ) : (
+                  'entered'
+                )}
+              </td>
             </tr>
           ))}
         </tbody>

@@ -12,8 +12,17 @@ type Interval = EntrySourceView['intervals'][number];
 function IntervalRow({ one }: { one: Interval }) {
   return (
     <tr>
-      <td>{formatLocal(one.from)} to {formatLocal(one.to)}<span className="hint block">{formatNumber(one.hours, 1)} h, {one.basis}</span></td>
-      <td>({one.closing} − {one.opening}{Number(one.wrap) ? ` + ${one.wrap}` : ''}) × {Number(one.multiplier)} {one.unit}{one.heldBecause && <span className="block text-warn">{one.heldBecause}</span>}</td>
+      <td>
+        {formatLocal(one.from)} to {formatLocal(one.to)}
+        <span className="hint block">
+          {formatNumber(one.hours, 1)} h, {one.basis}
+        </span>
+      </td>
+      <td>
+        ({one.closing} − {one.opening}
+        {Number(one.wrap) ? ` + ${one.wrap}` : ''}) × {Number(one.multiplier)} {one.unit}
+        {one.heldBecause && <span className="block text-warn">{one.heldBecause}</span>}
+      </td>
       <td className="r">{one.volumeM3 === null ? 'held' : formatNumber(Number(one.volumeM3), 2)}</td>
     </tr>
   );
@@ -26,22 +35,58 @@ function Source({ entryId }: { entryId: string }) {
     <Viewed query={query}>
       {(view) => (
         <div className="grid gap-5">
-          <p><strong>{formatNumber(Number(view.volumeM3), 3)} m³</strong> on {dayName(view.siteDay)}, <Basis basis={view.basis} />{view.meter && `, meter ${view.meter.code} ${view.meter.name}`}.{view.reason && ` ${view.reason}`}</p>
+          <p>
+            <strong>{formatNumber(Number(view.volumeM3), 3)} m³</strong> on {dayName(view.siteDay)},{' '}
+            <Basis basis={view.basis} />
+            {view.meter && `, meter ${view.meter.code} ${view.meter.name}`}.{view.reason && ` ${view.reason}`}
+          </p>
           {view.intervals.length > 0 && (
             <table className="tbl tbl-tight">
               <caption>Intervals of the day</caption>
-              <thead><tr><th scope="col">From, to</th><th scope="col">How</th><th scope="col" className="r">m³</th></tr></thead>
-              <tbody>{view.intervals.map((one) => <IntervalRow key={one.from} one={one} />)}</tbody>
+              <thead>
+                <tr>
+                  <th scope="col">From, to</th>
+                  <th scope="col">How</th>
+                  <th scope="col" className="r">
+                    m³
+                  </th>
+                </tr>
+              </thead>
+              <tbody>
+                {view.intervals.map((one) => (
+                  <IntervalRow key={one.from} one={one} />
+                ))}
+              </tbody>
             </table>
           )}
           <table className="tbl tbl-tight">
             <caption>What was recorded</caption>
-            <thead><tr><th scope="col">When</th><th scope="col">What was seen</th><th scope="col">By</th></tr></thead>
+            <thead>
+              <tr>
+                <th scope="col">When</th>
+                <th scope="col">What was seen</th>
+                <th scope="col">By</th>
+              </tr>
+            </thead>
             <tbody>
-              {view.facts.map((fact) => <tr key={fact.id}><td className="whitespace-nowrap">{formatLocal(fact.when)}<span className="hint block">{fact.kind}</span></td><td>{fact.words}{fact.note && <span className="hint block">{fact.note}</span>}</td><td>{fact.by}</td></tr>)}
+              {view.facts.map((fact) => (
+                <tr key={fact.id}>
+                  <td className="whitespace-nowrap">
+                    {formatLocal(fact.when)}
+                    <span className="hint block">{fact.kind}</span>
+                  </td>
+                  <td>
+                    {fact.words}
+                    {fact.note && <span className="hint block">{fact.note}</span>}
+                  </td>
+                  <td>{fact.by}</td>
+                </tr>
+              ))}
             </tbody>
           </table>
-          <p className="hint">Posted {formatInstant(view.recordedAt)} by {view.by}.</p>
+          <p className="hint">
+            Posted {formatInstant(view.recordedAt)} by {view.by}.
+          </p>
         </div>
       )}
     </Viewed>

@@ -16,7 +16,11 @@ export function StoresTable({ view }: { view: LedgerView }) {
     ['Out, by meter and ticket', (one) => formatSigned(-one.outM3), false],
     ['Evaporated', (one) => formatSigned(-one.evaporationM3), false],
     ['Expected closing', (one) => formatM3(one.expectedClosingM3), true],
-    [`Measured closing, ${dayName(firstDay(addMonths(view.month, 1)))}`, (one) => formatM3(one.measuredClosingM3), false],
+    [
+      `Measured closing, ${dayName(firstDay(addMonths(view.month, 1)))}`,
+      (one) => formatM3(one.measuredClosingM3),
+      false,
+    ],
     ['Unaccounted', (one) => formatSigned(one.unaccountedM3), true],
     ['Tolerance', (one) => `±${formatM3(one.toleranceM3)}`, false],
   ];
@@ -27,15 +31,48 @@ export function StoresTable({ view }: { view: LedgerView }) {
         <ScrollBox label="Stores, opening to closing">
           <table className="tbl">
             <caption className="sr-only">Stores in {monthName(view.month)}, opening to closing, m³</caption>
-            <thead><tr><th scope="col">m³</th>{whole.map((store) => <th key={store.id} scope="col" className="r">{store.code}</th>)}</tr></thead>
-            <tbody>{lines.map(([name, value, isStrong]) => <tr key={name} className={isStrong ? 'total' : ''}><th scope="row">{name}</th>{whole.map((store) => <td key={store.id} className="r">{value(store.balance!)}</td>)}</tr>)}</tbody>
+            <thead>
+              <tr>
+                <th scope="col">m³</th>
+                {whole.map((store) => (
+                  <th key={store.id} scope="col" className="r">
+                    {store.code}
+                  </th>
+                ))}
+              </tr>
+            </thead>
+            <tbody>
+              {lines.map(([name, value, isStrong]) => (
+                <tr key={name} className={isStrong ? 'total' : ''}>
+                  <th scope="row">{name}</th>
+                  {whole.map((store) => (
+                    <td key={store.id} className="r">
+                      {value(store.balance!)}
+                    </td>
+                  ))}
+                </tr>
+              ))}
+            </tbody>
           </table>
         </ScrollBox>
       )}
       <ul className="mt-3 grid gap-2 list-none">
         {view.stores.map((store) => (
           <li key={store.id}>
-            {store.balance ? <><Word look={store.balance.isInside ? 'good' : 'ask'}>{store.balance.isInside ? 'Inside' : 'Outside'}</Word> <span className="hint">{store.code}: level resolution and meters, together in quadrature.</span></> : <><Word look="ask">Not closed</Word> {store.code}: {store.missing}</>}
+            {store.balance ? (
+              <>
+                <Word look={store.balance.isInside ? 'good' : 'ask'}>
+                  {store.balance.isInside ? 'Inside' : 'Outside'}
+                </Word>{' '}
+                <span className="hint">
+                  {store.code}: level resolution and meters, together in quadrature.
+                </span>
+              </>
+            ) : (
+              <>
+                <Word look="ask">Not closed</Word> {store.code}: {store.missing}
+              </>
+            )}
           </li>
         ))}
       </ul>

@@ -18,10 +18,17 @@ import { ShareTrack } from './share-track.tsx';
 type Judged = LimitsView['verdicts'][number];
 
 function stateSentence(view: LimitsView): string {
-  const running = view.exceedances.filter((one) => !one.closedAt && one.clocks.some((clock) => !clock.doneAt)).length;
+  const running = view.exceedances.filter(
+    (one) => !one.closedAt && one.clocks.some((clock) => !clock.doneAt),
+  ).length;
   const count = (word: string) => view.verdicts.filter((one) => one.verdict.word === word).length;
   const parts = [
-    running ? `${running} ${running === 1 ? 'exceedance has its clock' : 'exceedances have their clocks'} running` : '', count('exceed') ? `${count('exceed')} exceed` : '', count('cannot be judged') ? `${count('cannot be judged')} cannot be judged` : '', count('incomplete') ? `${count('incomplete')} incomplete` : '',
+    running
+      ? `${running} ${running === 1 ? 'exceedance has its clock' : 'exceedances have their clocks'} running`
+      : '',
+    count('exceed') ? `${count('exceed')} exceed` : '',
+    count('cannot be judged') ? `${count('cannot be judged')} cannot be judged` : '',
+    count('incomplete') ? `${count('incomplete')} incomplete` : '',
   ].filter(Boolean);
   if (!view.verdicts.length) return 'No limit is in force in this quarter.';
   return `${parts.length ? `${parts.join(', ')}. ` : ''}${count('pass')} of ${view.verdicts.length} verdicts pass so far.`;
@@ -32,14 +39,61 @@ function VerdictTable({ rows, onOpen }: { rows: readonly Judged[]; onOpen: (row:
     <ScrollBox label={`Verdicts at ${rows[0]!.pointCode}`}>
       <table className="tbl">
         <caption className="sr-only">Verdicts at {rows[0]!.pointCode}</caption>
-        <thead><tr><th scope="col">Parameter</th><th scope="col" className="r">Limit</th><th aria-hidden className="hidden sm:table-cell"><span className="flex justify-between w-[230px] pl-2"><span>nothing</span><span className="text-s-limit">the limit</span></span></th><th scope="col">Verdict</th></tr></thead>
+        <thead>
+          <tr>
+            <th scope="col">Parameter</th>
+            <th scope="col" className="r">
+              Limit
+            </th>
+            <th aria-hidden className="hidden sm:table-cell">
+              <span className="flex justify-between w-[230px] pl-2">
+                <span>nothing</span>
+                <span className="text-s-limit">the limit</span>
+              </span>
+            </th>
+            <th scope="col">Verdict</th>
+          </tr>
+        </thead>
         <tbody>
           {rows.map((row) => (
             <tr key={row.limit.id + row.month}>
-              <th scope="row">{row.analyteName}{row.limit.fraction && ` ${row.limit.fraction}`}{row.limit.quantity === 'load' && ', load'}<span className="hint block">{statisticNames[row.limit.statistic as 'range']}, {monthName(row.month)}{!row.limit.confirmedAt && <> <Template /></>}</span></th>
-              <td className="r">{row.limit.statistic === 'range' ? `${row.limit.lowText} to ${row.limit.highText}` : row.limit.valueText}<span className="hint block">{row.limit.unit}</span></td>
-              <td className="!py-0 !align-middle hidden sm:table-cell"><ShareTrack verdict={row.verdict} /></td>
-              <td className="sm:min-w-[220px]"><VerdictWord word={row.verdict.word} /><span className="hint block">{row.verdict.sentence} <button type="button" className="link" aria-label={`Working: ${row.analyteName}, ${statisticNames[row.limit.statistic as 'range']}, ${monthName(row.month)}`} onClick={() => onOpen(row)}>Working</button></span></td>
+              <th scope="row">
+                {row.analyteName}
+                {row.limit.fraction && ` ${row.limit.fraction}`}
+                {row.limit.quantity === 'load' && ', load'}
+                <span className="hint block">
+                  {statisticNames[row.limit.statistic as 'range']}, {monthName(row.month)}
+                  {!row.limit.confirmedAt && (
+                    <>
+                      {' '}
+                      <Template />
+                    </>
+                  )}
+                </span>
+              </th>
+              <td className="r">
+                {row.limit.statistic === 'range'
+                  ? `${row.limit.lowText} to ${row.limit.highText}`
+                  : row.limit.valueText}
+                <span className="hint block">{row.limit.unit}</span>
+              </td>
+              <td className="!py-0 !align-middle hidden sm:table-cell">
+                <ShareTrack verdict={row.verdict} />
+              </td>
+              <td className="sm:min-w-[220px]">
+                <VerdictWord word={row.verdict.word} />
+                <span className="hint block">
+                  {row.verdict.sentence}{' '}
+                  <button
+                    type="button"
+                    className="link"
+                    aria-label={`Working: ${row.analyteName}, ${statisticNames[row.limit.statistic as 'range']}, ${monthName(row.month)}`}
+                    onClick={() => onOpen(row)}
+                  >
+                    Working
+                  </button>
+                </span>
+              </td>
             </tr>
           ))}
         </tbody>
@@ -52,15 +106,53 @@ function Working({ row }: { row: Judged }) {
   const { verdict, limit } = row;
   return (
     <div className="grid gap-4">
-      <p><VerdictWord word={verdict.word} /> {verdict.sentence}</p>
+      <p>
+        <VerdictWord word={verdict.word} /> {verdict.sentence}
+      </p>
       {verdict.note && <p className="box box-note">{verdict.note}</p>}
-      <p>Limit: {limitWords(limit)}, {statisticNames[limit.statistic as 'range']}; {limit.isInclusive ? 'a value equal to it complies' : 'a value equal to it exceeds'}; {limit.samplesMin} samples required a month; {limit.citation}.</p>
-      {verdict.days.length === 0 ? <Empty>No sample in the month.</Empty> : (
+      <p>
+        Limit: {limitWords(limit)}, {statisticNames[limit.statistic as 'range']};{' '}
+        {limit.isInclusive ? 'a value equal to it complies' : 'a value equal to it exceeds'};{' '}
+        {limit.samplesMin} samples required a month; {limit.citation}.
+      </p>
+      {verdict.days.length === 0 ? (
+        <Empty>No sample in the month.</Empty>
+      ) : (
         <table className="tbl tbl-tight">
           <caption>Days of the month</caption>
-          <thead><tr><th scope="col">Day</th>{limit.quantity === 'load' && <th scope="col" className="r">Flow, m³</th>}<th scope="col" className="r">Value, {limit.unit}</th><th scope="col" className="r">Share of limit</th><th scope="col">Note</th></tr></thead>
+          <thead>
+            <tr>
+              <th scope="col">Day</th>
+              {limit.quantity === 'load' && (
+                <th scope="col" className="r">
+                  Flow, m³
+                </th>
+              )}
+              <th scope="col" className="r">
+                Value, {limit.unit}
+              </th>
+              <th scope="col" className="r">
+                Share of limit
+              </th>
+              <th scope="col">Note</th>
+            </tr>
+          </thead>
           <tbody>
-            {verdict.days.map((day) => <tr key={day.siteDay}><th scope="row">{dayName(day.siteDay)}</th>{limit.quantity === 'load' && <td className="r">{day.flowM3 === null ? 'not read' : formatNumber(Number(day.flowM3), 1)}</td>}<td className="r">{day.valueText || '–'}</td><td className="r">{day.share === null ? '–' : formatNumber(day.share, 2)}</td><td>{day.exceeds ? 'above the limit' : (day.unjudged ?? (day.isBelow ? 'below detection' : ''))}</td></tr>)}
+            {verdict.days.map((day) => (
+              <tr key={day.siteDay}>
+                <th scope="row">{dayName(day.siteDay)}</th>
+                {limit.quantity === 'load' && (
+                  <td className="r">
+                    {day.flowM3 === null ? 'not read' : formatNumber(Number(day.flowM3), 1)}
+                  </td>
+                )}
+                <td className="r">{day.valueText || '–'}</td>
+                <td className="r">{day.share === null ? '–' : formatNumber(day.share, 2)}</td>
+                <td>
+                  {day.exceeds ? 'above the limit' : (day.unjudged ?? (day.isBelow ? 'below detection' : ''))}
+                </td>
+              </tr>
+            ))}
           </tbody>
         </table>
       )}
@@ -77,24 +169,72 @@ export function LimitsPage() {
   const view = query.data;
   return (
     <>
-      <PageHead title={view ? `Limits, ${quarterName(view.quarter)}` : 'Limits'} sentence={view && stateSentence(view)} crumb={view && view.permits.map((permit) => `Permit ${permit.number}, in force since ${dayName(permit.fromOn)}`).join('; ')} />
+      <PageHead
+        title={view ? `Limits, ${quarterName(view.quarter)}` : 'Limits'}
+        sentence={view && stateSentence(view)}
+        crumb={
+          view &&
+          view.permits
+            .map((permit) => `Permit ${permit.number}, in force since ${dayName(permit.fromOn)}`)
+            .join('; ')
+        }
+      />
       <Viewed query={query}>
         {(data) => {
           const points = [...new Set(data.verdicts.map((one) => one.pointCode))];
           const open = data.exceedances.filter((one) => !one.closedAt || data.months.includes(one.month));
-          const undecided = data.verdicts.filter((one) => one.verdict.word === 'cannot be judged' || one.verdict.word === 'incomplete' || one.verdict.note);
+          const undecided = data.verdicts.filter(
+            (one) =>
+              one.verdict.word === 'cannot be judged' ||
+              one.verdict.word === 'incomplete' ||
+              one.verdict.note,
+          );
           return (
             <>
-              <div className="grid gap-4">{open.map((one) => <Exceedance key={one.id} exceedance={one} now={data.now} />)}</div>
-              {points.map((point) => <Section key={point} title={point} aside="every result as a share of its own limit; hollow: below detection"><VerdictTable rows={data.verdicts.filter((one) => one.pointCode === point)} onOpen={setOpened} /></Section>)}
+              <div className="grid gap-4">
+                {open.map((one) => (
+                  <Exceedance key={one.id} exceedance={one} now={data.now} />
+                ))}
+              </div>
+              {points.map((point) => (
+                <Section
+                  key={point}
+                  title={point}
+                  aside="every result as a share of its own limit; hollow: below detection"
+                >
+                  <VerdictTable
+                    rows={data.verdicts.filter((one) => one.pointCode === point)}
+                    onOpen={setOpened}
+                  />
+                </Section>
+              ))}
               {undecided.length > 0 && (
                 <Section title="Not decided, or hanging on a rule">
-                  <ul className="sheet lines px-4 list-none">{undecided.map((row) => <li key={row.limit.id + row.month}><strong>{row.analyteName}, {statisticNames[row.limit.statistic as 'range']}, {monthName(row.month)}: {row.verdict.word}.</strong> {row.verdict.sentence} {row.verdict.note}</li>)}</ul>
+                  <ul className="sheet lines px-4 list-none">
+                    {undecided.map((row) => (
+                      <li key={row.limit.id + row.month}>
+                        <strong>
+                          {row.analyteName}, {statisticNames[row.limit.statistic as 'range']},{' '}
+                          {monthName(row.month)}: {row.verdict.word}.
+                        </strong>{' '}
+                        {row.verdict.sentence} {row.verdict.note}
+                      </li>
+                    ))}
+                  </ul>
                 </Section>
               )}
-              <p className="hint mt-4">A computed pass is not a compliance determination. The permit and the laboratory’s report govern.</p>
+              <p className="hint mt-4">
+                A computed pass is not a compliance determination. The permit and the laboratory’s report
+                govern.
+              </p>
               <Permits view={data} />
-              <Panel title={opened ? `${opened.analyteName}, ${monthName(opened.month)}` : ''} isOpen={opened !== null} onClose={() => setOpened(null)}>{opened && <Working row={opened} />}</Panel>
+              <Panel
+                title={opened ? `${opened.analyteName}, ${monthName(opened.month)}` : ''}
+                isOpen={opened !== null}
+                onClose={() => setOpened(null)}
+              >
+                {opened && <Working row={opened} />}
+              </Panel>
             </>
           );
         }}

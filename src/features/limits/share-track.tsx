@@ -18,11 +18,39 @@ export function ShareTrack({ verdict }: { verdict: LimitsView['verdicts'][number
       <line x1={limitX} x2={limitX} y1="0" y2="36" stroke="var(--color-s-limit)" strokeWidth="2" />
       {marks.map((day) => (
         <g key={day.siteDay}>
-          {day.isBelow && <line x1="8" x2={x(day.share!)} y1="18" y2="18" stroke="var(--color-s-effluent)" strokeDasharray="2 3" />}
-          <rect x={x(day.share!) - 5} y="13" width="10" height="10" fill={day.isBelow ? '#fff' : 'var(--color-s-effluent)'} stroke="var(--color-s-effluent)" strokeWidth="2" />
+          {day.isBelow && (
+            <line
+              x1="8"
+              x2={x(day.share!)}
+              y1="18"
+              y2="18"
+              stroke="var(--color-s-effluent)"
+              strokeDasharray="2 3"
+            />
+          )}
+          <rect
+            x={x(day.share!) - 5}
+            y="13"
+            width="10"
+            height="10"
+            fill={day.isBelow ? '#fff' : 'var(--color-s-effluent)'}
+            stroke="var(--color-s-effluent)"
+            strokeWidth="2"
+          />
         </g>
       ))}
-      {top !== null && <text x={Math.max(30, x(top) - 12)} y="10" textAnchor="end" fontSize="13" fontWeight="600" fill="var(--color-ink)">{formatNumber(top, 2)}</text>}
+      {top !== null && (
+        <text
+          x={Math.max(30, x(top) - 12)}
+          y="10"
+          textAnchor="end"
+          fontSize="13"
+          fontWeight="600"
+          fill="var(--color-ink)"
+        >
+          {formatNumber(top, 2)}
+        </text>
+      )}
     </svg>
   );
 }

@@ -6,41 +6,101 @@ const monthNames = ['Jan', 'Feb', 'Mar', 'Apr', 'May', 'Jun', 'Jul', 'Aug', 'Sep
 
 const largest = (values: readonly number[]) => Math.max(...values.map(Math.abs));
 export const largestDifference = (one: ComputedCase): { differs: number; unit: string } => {
-  const all = one.columns.map((column) => ({ differs: largest(column.computed.map((value, index) => value - column.printed[index]!)), unit: column.unit }));
+  const all = one.columns.map((column) => ({
+    differs: largest(column.computed.map((value, index) => value - column.printed[index]!)),
+    unit: column.unit,
+  }));
   return all.reduce((most, column) => (column.differs > most.differs ? column : most));
 };
 
 /** A published table beside the same numbers computed in this browser, with the differences. */
 export function CaseTable({ one }: { one: ComputedCase }) {
-  const isOutside = one.columns.some((column) => column.computed.some((value, index) => Math.abs(value - column.printed[index]!) > column.tolerance));
+  const isOutside = one.columns.some((column) =>
+    column.computed.some((value, index) => Math.abs(value - column.printed[index]!) > column.tolerance),
+  );
   return (
-    <Section title={one.title} aside={isOutside ? 'outside its tolerance' : 'inside its tolerance'} id={one.id}>
+    <Section
+      title={one.title}
+      aside={isOutside ? 'outside its tolerance' : 'inside its tolerance'}
+      id={one.id}
+    >
       <ScrollBox label={one.title}>
         <table className="tbl tbl-tight">
           <caption className="sr-only">{one.title}: printed, computed and difference</caption>
           <thead>
             <tr>
-              <th scope="col" rowSpan={2} className="sticky left-0 bg-surface">Month</th>
-              {one.given.map((column) => <th key={column.name} scope="col" rowSpan={2} className="r">{column.name}{column.unit && `, ${column.unit}`}</th>)}
-              {one.columns.map((column) => <th key={column.name} scope="colgroup" colSpan={3} className="!text-center border-l border-line">{column.name}{column.unit && `, ${column.unit}`}</th>)}
+              <th scope="col" rowSpan={2} className="sticky left-0 bg-surface">
+                Month
+              </th>
+              {one.given.map((column) => (
+                <th key={column.name} scope="col" rowSpan={2} className="r">
+                  {column.name}
+                  {column.unit && `, ${column.unit}`}
+                </th>
+              ))}
+              {one.columns.map((column) => (
+                <th
+                  key={column.name}
+                  scope="colgroup"
+                  colSpan={3}
+                  className="!text-center border-l border-line"
+                >
+                  {column.name}
+                  {column.unit && `, ${column.unit}`}
+                </th>
+              ))}
             </tr>
-            <tr>{one.columns.flatMap((column) => ['printed', 'computed', 'differs'].map((what, index) => <th key={column.name + what} scope="col" className={`r ${index === 0 ? 'border-l border-line' : ''}`}>{what}</th>))}</tr>
+            <tr>
+              {one.columns.flatMap((column) =>
+                ['printed', 'computed', 'differs'].map((what, index) => (
+                  <th
+                    key={column.name + what}
+                    scope="col"
+                    className={`r ${index === 0 ? 'border-l border-line' : ''}`}
+                  >
+                    {what}
+                  </th>
+                )),
+              )}
+            </tr>
           </thead>
           <tbody>
             {monthNames.map((month, index) => (
               <tr key={month}>
-                <th scope="row" className="sticky left-0 bg-surface">{month}</th>
-                {one.given.map((column) => <td key={column.name} className="r text-muted">{formatNumber(column.values[index]!, Number.isInteger(column.values[index]) ? 0 : 1)}</td>)}
+                <th scope="row" className="sticky left-0 bg-surface">
+                  {month}
+                </th>
+                {one.given.map((column) => (
+                  <td key={column.name} className="r text-muted">
+                    {formatNumber(column.values[index]!, Number.isInteger(column.values[index]) ? 0 : 1)}
+                  </td>
+                ))}
                 {one.columns.flatMap((column) => {
                   const [printed, computed] = [column.printed[index]!, column.computed[index]!];
-                  return [<td key={`${column.name}p`} className="r border-l border-line">{printed}</td>, <td key={`${column.name}c`} className="r font-medium">{formatNumber(computed, column.decimals)}</td>, <td key={`${column.name}d`} className="r text-muted">{formatSigned(computed - printed, column.decimals)}</td>];
+                  return [
+                    <td key={`${column.name}p`} className="r border-l border-line">
+                      {printed}
+                    </td>,
+                    <td key={`${column.name}c`} className="r font-medium">
+                      {formatNumber(computed, column.decimals)}
+                    </td>,
+                    <td key={`${column.name}d`} className="r text-muted">
+                      {formatSigned(computed - printed, column.decimals)}
+                    </td>,
+                  ];
                 })}
               </tr>
             ))}
           </tbody>
         </table>
       </ScrollBox>
-      <p className="hint mt-2 max-w-[96ch]">{one.source}. {one.locator}. {one.isFromMemory ? 'The printed values are remembered from reprints, not read in the report.' : 'Read in the source.'} {one.law} {one.note}</p>
+      <p className="hint mt-2 max-w-[96ch]">
+        {one.source}. {one.locator}.{' '}
+        {one.isFromMemory
+          ? 'The printed values are remembered from reprints, not read in the report.'
+          : 'Read in the source.'}{' '}
+        {one.law} {one.note}
+      </p>
     </Section>
   );
 }
@@ -50,8 +110,40 @@ export function ValueTable({ values }: { values: readonly ComputedValue[] }) {
     <ScrollBox label="Single published values">
       <table className="tbl tbl-tight">
         <caption className="sr-only">Single published values beside what is computed here</caption>
-        <thead><tr><th scope="col">What</th><th scope="col" className="r">Printed</th><th scope="col" className="r">Computed</th><th scope="col" className="r">Differs</th><th scope="col">Unit</th><th scope="col">Source</th></tr></thead>
-        <tbody>{values.map((one) => <tr key={one.id}><th scope="row">{one.what}<span className="hint block">{one.title}</span></th><td className="r">{one.printed}</td><td className="r font-medium">{formatNumber(one.computed, 2)}</td><td className="r text-muted">{formatSigned(one.computed - one.printed, 2)}</td><td>{one.unit}</td><td className="text-sm text-muted">{one.source}{one.isFromMemory ? ' (from memory)' : ''}</td></tr>)}</tbody>
+        <thead>
+          <tr>
+            <th scope="col">What</th>
+            <th scope="col" className="r">
+              Printed
+            </th>
+            <th scope="col" className="r">
+              Computed
+            </th>
+            <th scope="col" className="r">
+              Differs
+            </th>
+            <th scope="col">Unit</th>
+            <th scope="col">Source</th>
+          </tr>
+        </thead>
+        <tbody>
+          {values.map((one) => (
+            <tr key={one.id}>
+              <th scope="row">
+                {one.what}
+                <span className="hint block">{one.title}</span>
+              </th>
+              <td className="r">{one.printed}</td>
+              <td className="r font-medium">{formatNumber(one.computed, 2)}</td>
+              <td className="r text-muted">{formatSigned(one.computed - one.printed, 2)}</td>
+              <td>{one.unit}</td>
+              <td className="text-sm text-muted">
+                {one.source}
+                {one.isFromMemory ? ' (from memory)' : ''}
+              </td>
+            </tr>
+          ))}
+        </tbody>
       </table>
     </ScrollBox>
   );

@@ -11,7 +11,8 @@ interface PointProps {
   onDone: () => void;
 }
 
-const whenOf = (at: string | null) => (at === null ? { observedAt: new Date().toISOString() } : { observedLocal: at });
+const whenOf = (at: string | null) =>
+  at === null ? { observedAt: new Date().toISOString() } : { observedLocal: at };
 
 /** Level of a store as the gauge shows it. A doubtful way of writing is shown back and takes a second tap. */
 export function LevelPoint({ point, round, isToday, onDone }: PointProps) {
@@ -20,17 +21,45 @@ export function LevelPoint({ point, round, isToday, onDone }: PointProps) {
   const [isAsked, setIsAsked] = useState(false);
   const { state, save } = useSave('/levels', `${point.name}: ${text} m`);
   const send = async () => {
-    const saved = await save({ storeId: point.subjectId, levelText: text, isConfirmed: isAsked, ...whenOf(at) });
+    const saved = await save({
+      storeId: point.subjectId,
+      levelText: text,
+      isConfirmed: isAsked,
+      ...whenOf(at),
+    });
     if (saved) onDone();
     else setIsAsked(true);
   };
   return (
-    <form className="grid gap-3" onSubmit={(event) => { event.preventDefault(); void send(); }}>
-      <CounterField label="Level on the gauge, in metres" unit="m" value={text} onChange={(value) => { setText(value); setIsAsked(false); }} isWrong={state.kind === 'problem'} isSigned />
-      <p className="hint">{point.last ? `Last ${Number(point.last.value)} m on ${formatLocal(point.last.at)}. ` : ''}{point.operatingLevelM ? `Highest operating level ${point.operatingLevelM} m, crest ${point.crestLevelM} m.` : ''}</p>
+    <form
+      className="grid gap-3"
+      onSubmit={(event) => {
+        event.preventDefault();
+        void send();
+      }}
+    >
+      <CounterField
+        label="Level on the gauge, in metres"
+        unit="m"
+        value={text}
+        onChange={(value) => {
+          setText(value);
+          setIsAsked(false);
+        }}
+        isWrong={state.kind === 'problem'}
+        isSigned
+      />
+      <p className="hint">
+        {point.last ? `Last ${Number(point.last.value)} m on ${formatLocal(point.last.at)}. ` : ''}
+        {point.operatingLevelM
+          ? `Highest operating level ${point.operatingLevelM} m, crest ${point.crestLevelM} m.`
+          : ''}
+      </p>
       <ReadAt nowLocal={round.nowLocal} value={at} onChange={setAt} />
       <SaveLine state={state} />
-      <button type="submit" className="btn btn-big" disabled={state.kind === 'saving'}>Save the level</button>
+      <button type="submit" className="btn btn-big" disabled={state.kind === 'saving'}>
+        Save the level
+      </button>
     </form>
   );
 }
@@ -44,28 +73,80 @@ export function RainPoint({ point, round, isToday, onDone }: PointProps) {
   const [at, setAt] = useState<string | null>(isToday ? null : `${round.day}T07:30`);
   const { state, save } = useSave('/rain-days', `${point.name}: ${text} mm`);
   const daysId = useId();
-  const kinds = [['measured', 'One day'], ['trace', 'Trace'], ['accumulated', 'Several days'], ['snow-water', 'Melted snow']] as const;
+  const kinds = [
+    ['measured', 'One day'],
+    ['trace', 'Trace'],
+    ['accumulated', 'Several days'],
+    ['snow-water', 'Melted snow'],
+  ] as const;
   const send = async () => {
-    const saved = await save({ stationId: point.subjectId, kind, depthText: kind === 'trace' ? '0' : text, unit: 'mm', isConfirmed: isAsked, ...(kind === 'accumulated' ? { accumulatedDays: Number(days) } : {}), ...whenOf(at) });
+    const saved = await save({
+      stationId: point.subjectId,
+      kind,
+      depthText: kind === 'trace' ? '0' : text,
+      unit: 'mm',
+      isConfirmed: isAsked,
+      ...(kind === 'accumulated' ? { accumulatedDays: Number(days) } : {}),
+      ...whenOf(at),
+    });
     if (saved) onDone();
     else setIsAsked(true);
   };
   return (
-    <form className="grid gap-3" onSubmit={(event) => { event.preventDefault(); void send(); }}>
+    <form
+      className="grid gap-3"
+      onSubmit={(event) => {
+        event.preventDefault();
+        void send();
+      }}
+    >
       <div className="grid grid-cols-2 gap-2" role="group" aria-label="What was read">
-        {kinds.map(([value, label]) => <button key={value} type="button" className="choice" aria-pressed={kind === value} onClick={() => setKind(value)}>{label}</button>)}
+        {kinds.map(([value, label]) => (
+          <button
+            key={value}
+            type="button"
+            className="choice"
+            aria-pressed={kind === value}
+            onClick={() => setKind(value)}
+          >
+            {label}
+          </button>
+        ))}
       </div>
-      {kind !== 'trace' && <CounterField label={kind === 'snow-water' ? 'Water of the melted snow, in millimetres' : 'Rain, in millimetres'} unit="mm" value={text} onChange={(value) => { setText(value); setIsAsked(false); }} isWrong={state.kind === 'problem'} />}
+      {kind !== 'trace' && (
+        <CounterField
+          label={kind === 'snow-water' ? 'Water of the melted snow, in millimetres' : 'Rain, in millimetres'}
+          unit="mm"
+          value={text}
+          onChange={(value) => {
+            setText(value);
+            setIsAsked(false);
+          }}
+          isWrong={state.kind === 'problem'}
+        />
+      )}
       {kind === 'accumulated' && (
         <div>
-          <label className="label" htmlFor={daysId}>Days since the gauge was last emptied</label>
-          <input id={daysId} className="input" inputMode="numeric" value={days} onChange={(event) => setDays(event.target.value)} />
+          <label className="label" htmlFor={daysId}>
+            Days since the gauge was last emptied
+          </label>
+          <input
+            id={daysId}
+            className="input"
+            inputMode="numeric"
+            value={days}
+            onChange={(event) => setDays(event.target.value)}
+          />
         </div>
       )}
-      <p className="hint">Counts for the 24 hours before the reading. A depth of snow is not rain: melt it first.</p>
+      <p className="hint">
+        Counts for the 24 hours before the reading. A depth of snow is not rain: melt it first.
+      </p>
       <ReadAt nowLocal={round.nowLocal} value={at} onChange={setAt} />
       <SaveLine state={state} />
-      <button type="submit" className="btn btn-big" disabled={state.kind === 'saving'}>Save the rain</button>
+      <button type="submit" className="btn btn-big" disabled={state.kind === 'saving'}>
+        Save the rain
+      </button>
     </form>
   );
 }
@@ -81,21 +162,92 @@ export function LoadOut({ round, onDone }: { round: RoundView; onDone: () => voi
   const { state, save } = useSave('/loads-out', `Load ${ticket}`);
   const ids = { ticket: useId(), hauler: useId(), from: useId(), to: useId() };
   const send = async () => {
-    const saved = await save({ ticket, hauler, nominalVolumeM3: volume, fromPlaceId: from, toPlaceId: to, officialVolume: 'nominal', isConfirmed: isAsked, observedAt: new Date().toISOString() });
+    const saved = await save({
+      ticket,
+      hauler,
+      nominalVolumeM3: volume,
+      fromPlaceId: from,
+      toPlaceId: to,
+      officialVolume: 'nominal',
+      isConfirmed: isAsked,
+      observedAt: new Date().toISOString(),
+    });
     if (saved) onDone();
     else setIsAsked(true);
   };
   return (
-    <form className="grid gap-3" onSubmit={(event) => { event.preventDefault(); void send(); }}>
-      <div><label className="label" htmlFor={ids.ticket}>Ticket number</label><input id={ids.ticket} className="input" value={ticket} onChange={(event) => setTicket(event.target.value)} autoComplete="off" /></div>
-      <div><label className="label" htmlFor={ids.hauler}>Hauler</label><input id={ids.hauler} className="input" value={hauler} onChange={(event) => setHauler(event.target.value)} /></div>
-      <CounterField label="Nominal volume of the truck, in cubic metres" unit="m³" value={volume} onChange={setVolume} isWrong={state.kind === 'problem'} />
+    <form
+      className="grid gap-3"
+      onSubmit={(event) => {
+        event.preventDefault();
+        void send();
+      }}
+    >
+      <div>
+        <label className="label" htmlFor={ids.ticket}>
+          Ticket number
+        </label>
+        <input
+          id={ids.ticket}
+          className="input"
+          value={ticket}
+          onChange={(event) => setTicket(event.target.value)}
+          autoComplete="off"
+        />
+      </div>
+      <div>
+        <label className="label" htmlFor={ids.hauler}>
+          Hauler
+        </label>
+        <input
+          id={ids.hauler}
+          className="input"
+          value={hauler}
+          onChange={(event) => setHauler(event.target.value)}
+        />
+      </div>
+      <CounterField
+        label="Nominal volume of the truck, in cubic metres"
+        unit="m³"
+        value={volume}
+        onChange={setVolume}
+        isWrong={state.kind === 'problem'}
+      />
       <div className="grid gap-3 sm:grid-cols-2">
-        <div><label className="label" htmlFor={ids.from}>From</label><select id={ids.from} className="input" value={from} onChange={(event) => setFrom(event.target.value)}>{round.loadPlaces.from.map((place) => <option key={place.id} value={place.id}>{place.name}</option>)}</select></div>
-        <div><label className="label" htmlFor={ids.to}>To</label><select id={ids.to} className="input" value={to} onChange={(event) => setTo(event.target.value)}>{round.loadPlaces.to.map((place) => <option key={place.id} value={place.id}>{place.name}</option>)}</select></div>
+        <div>
+          <label className="label" htmlFor={ids.from}>
+            From
+          </label>
+          <select
+            id={ids.from}
+            className="input"
+            value={from}
+            onChange={(event) => setFrom(event.target.value)}
+          >
+            {round.loadPlaces.from.map((place) => (
+              <option key={place.id} value={place.id}>
+                {place.name}
+              </option>
+            ))}
+          </select>
+        </div>
+        <div>
+          <label className="label" htmlFor={ids.to}>
+            To
+          </label>
+          <select id={ids.to} className="input" value={to} onChange={(event) => setTo(event.target.value)}>
+            {round.loadPlaces.to.map((place) => (
+              <option key={place.id} value={place.id}>
+                {place.name}
+              </option>
+            ))}
+          </select>
+        </div>
       </div>
       <SaveLine state={state} />
-      <button type="submit" className="btn btn-big" disabled={state.kind === 'saving'}>Save the load</button>
+      <button type="submit" className="btn btn-big" disabled={state.kind === 'saving'}>
+        Save the load
+      </button>
     </form>
   );
 }

@@ -1,7 +1,13 @@
 import { useQueryClient } from '@tanstack/react-query';
 import { useEffect, useState } from 'react';
 import { meQuery } from '../../lib/record.ts';
-import { dropFromOutbox, flushOutbox, listOutbox, onOutboxChange, type OutboxItem } from '../../lib/outbox.ts';
+import {
+  dropFromOutbox,
+  flushOutbox,
+  listOutbox,
+  onOutboxChange,
+  type OutboxItem,
+} from '../../lib/outbox.ts';
 
 /** What is kept on this device and not sent yet; shown on every page while there is any. */
 export function OutboxLine({ siteId }: { siteId: string }) {
@@ -10,9 +16,10 @@ export function OutboxLine({ siteId }: { siteId: string }) {
   const personId = client.getQueryData(meQuery.queryKey)?.personId ?? '';
   useEffect(() => {
     const refresh = () => void listOutbox(siteId).then(setItems, () => setItems([]));
-    const send = () => void flushOutbox(siteId, personId).then((count) => {
-      if (count > 0) void client.invalidateQueries({ queryKey: ['site', siteId] });
-    });
+    const send = () =>
+      void flushOutbox(siteId, personId).then((count) => {
+        if (count > 0) void client.invalidateQueries({ queryKey: ['site', siteId] });
+      });
     refresh();
     send();
     const stopListening = onOutboxChange(refresh);
@@ -32,13 +39,31 @@ export function OutboxLine({ siteId }: { siteId: string }) {
       {waiting.length > 0 && (
         <div className="flex flex-wrap items-center gap-3">
           <p className="font-semibold text-warn">{waiting.length} saved on this phone, not sent yet</p>
-          <button type="button" className="btn btn-second ml-auto" onClick={() => void flushOutbox(siteId, personId).then(() => client.invalidateQueries({ queryKey: ['site', siteId] }))}>Send now</button>
+          <button
+            type="button"
+            className="btn btn-second ml-auto"
+            onClick={() =>
+              void flushOutbox(siteId, personId).then(() =>
+                client.invalidateQueries({ queryKey: ['site', siteId] }),
+              )
+            }
+          >
+            Send now
+          </button>
         </div>
       )}
       {asking.map((item) => (
         <div key={item.id} className="flex flex-wrap items-center gap-3">
-          <p><span className="font-semibold text-warn">Needs your answer:</span> {item.label}. {item.problem}</p>
-          <button type="button" className="link ml-auto min-h-12" onClick={() => void dropFromOutbox(item.id)}>Remove from this phone</button>
+          <p>
+            <span className="font-semibold text-warn">Needs your answer:</span> {item.label}. {item.problem}
+          </p>
+          <button
+            type="button"
+            className="link ml-auto min-h-12"
+            onClick={() => void dropFromOutbox(item.id)}
+          >
+            Remove from this phone
+          </button>
         </div>
       ))}
     </div>

@@ -23,48 +23,117 @@ function unitOf(point: RoundPointView): string {
 }
 
 const stateOf = (point: RoundPointView) =>
-  point.done.some((one) => one.state !== 'stored') ? 'ask' : point.done.length ? 'done' : point.notRead ? 'skipped' : 'open';
+  point.done.some((one) => one.state !== 'stored')
+    ? 'ask'
+    : point.done.length
+      ? 'done'
+      : point.notRead
+        ? 'skipped'
+        : 'open';
 
-const circle = { ask: 'bg-warn-bg border-warn text-warn', done: 'bg-done-bg border-done text-done', skipped: 'border-dashed border-edge text-muted', open: 'border-edge' };
+const circle = {
+  ask: 'bg-warn-bg border-warn text-warn',
+  done: 'bg-done-bg border-done text-done',
+  skipped: 'border-dashed border-edge text-muted',
+  open: 'border-edge',
+};
 
 function PointValue({ point }: { point: RoundPointView }) {
   const last = point.done.at(-1);
   if (last) {
     return (
       <span className="text-right leading-tight">
-        <span className="block font-medium">{last.text} {point.kind === 'meter' && unitOf(point)}</span>
-        <span className="hint">{last.state === 'held' ? 'held, your answer' : last.state === 'dispute' ? 'two readings differ' : `${formatLocal(last.at).split(' ').at(-1)}, ${last.by}`}</span>
+        <span className="block font-medium">
+          {last.text} {point.kind === 'meter' && unitOf(point)}
+        </span>
+        <span className="hint">
+          {last.state === 'held'
+            ? 'held, your answer'
+            : last.state === 'dispute'
+              ? 'two readings differ'
+              : `${formatLocal(last.at).split(' ').at(-1)}, ${last.by}`}
+        </span>
       </span>
     );
   }
-  if (point.notRead) return <span className="hint text-right">Not read: {notReadReasonNames[point.notRead.reasonCode as 'frozen']?.toLowerCase()}</span>;
+  if (point.notRead)
+    return (
+      <span className="hint text-right">
+        Not read: {notReadReasonNames[point.notRead.reasonCode as 'frozen']?.toLowerCase()}
+      </span>
+    );
   return <span className="hint">open</span>;
 }
 
-function PointRow({ point, round, isOpen, onOpen, onDone }: { point: RoundPointView; round: RoundView; isOpen: boolean; onOpen: () => void; onDone: () => void }) {
+function PointRow({
+  point,
+  round,
+  isOpen,
+  onOpen,
+  onDone,
+}: {
+  point: RoundPointView;
+  round: RoundView;
+  isOpen: boolean;
+  onOpen: () => void;
+  onDone: () => void;
+}) {
   const [isSkipping, setIsSkipping] = useState(false);
   const { can } = usePlace();
   const state = stateOf(point);
   const panelId = useId();
   const parts = { point, round, isToday: round.day === round.today, onDone };
   return (
-    <li className={`border-b border-line last:border-0 ${isOpen ? 'outline-2 outline-primary -outline-offset-1' : ''}`}>
-      <button type="button" className="w-full grid grid-cols-[32px_minmax(0,1fr)_auto] gap-3 items-center min-h-16 px-3 md:px-4 py-2 text-left cursor-pointer" aria-expanded={isOpen} aria-controls={panelId} onClick={onOpen}>
-        <span aria-hidden className={`size-7 rounded-full border grid place-items-center text-sm font-semibold ${isOpen ? 'bg-primary border-primary text-white' : circle[state]}`}>{point.position}</span>
-        <span className="leading-tight"><span className="font-semibold block text-[18px] md:text-base">{point.name}</span><span className="hint">{point.last ? `last ${point.last.text} ${unitOf(point)} on ${formatLocal(point.last.at)}` : 'never read'}{point.everyDays > 1 ? `, every ${point.everyDays} days` : ''}</span></span>
+    <li
+      className={`border-b border-line last:border-0 ${isOpen ? 'outline-2 outline-primary -outline-offset-1' : ''}`}
+    >
+      <button
+        type="button"
+        className="w-full grid grid-cols-[32px_minmax(0,1fr)_auto] gap-3 items-center min-h-16 px-3 md:px-4 py-2 text-left cursor-pointer"
+        aria-expanded={isOpen}
+        aria-controls={panelId}
+        onClick={onOpen}
+      >
+        <span
+          aria-hidden
+          className={`size-7 rounded-full border grid place-items-center text-sm font-semibold ${isOpen ? 'bg-primary border-primary text-white' : circle[state]}`}
+        >
+          {point.position}
+        </span>
+        <span className="leading-tight">
+          <span className="font-semibold block text-[18px] md:text-base">{point.name}</span>
+          <span className="hint">
+            {point.last
+              ? `last ${point.last.text} ${unitOf(point)} on ${formatLocal(point.last.at)}`
+              : 'never read'}
+            {point.everyDays > 1 ? `, every ${point.everyDays} days` : ''}
+          </span>
+        </span>
         <PointValue point={point} />
       </button>
       {isOpen && (
         <div id={panelId} className="px-3 pb-4 md:pl-[60px] md:pr-4 grid gap-4">
           {can('create:reading') ? (
             isSkipping ? (
-              <NotRead pointId={point.id} day={round.day} name={point.name} onDone={() => { setIsSkipping(false); onDone(); }} />
+              <NotRead
+                pointId={point.id}
+                day={round.day}
+                name={point.name}
+                onDone={() => {
+                  setIsSkipping(false);
+                  onDone();
+                }}
+              />
             ) : (
               <>
                 {point.kind === 'meter' && <MeterPoint key={point.done.length} {...parts} />}
                 {point.kind === 'level' && <LevelPoint {...parts} />}
                 {point.kind === 'rain' && <RainPoint {...parts} />}
-                <p><button type="button" className="link min-h-12" onClick={() => setIsSkipping(true)}>I could not read it</button></p>
+                <p>
+                  <button type="button" className="link min-h-12" onClick={() => setIsSkipping(true)}>
+                    I could not read it
+                  </button>
+                </p>
               </>
             )
           ) : (
@@ -84,11 +153,27 @@ function Handover({ round }: { round: RoundView }) {
   return (
     <Section title="Handover">
       {can('create:reading') && (
-        <form className="grid gap-3" onSubmit={(event) => { event.preventDefault(); void save({ siteDay: round.day, note }).then((answer) => answer && setNote('')); }}>
-          <label className="hint" htmlFor={id}>What the next shift must know. They see this before anything else.</label>
-          <textarea id={id} className="input" rows={3} value={note} onChange={(event) => setNote(event.target.value)} />
+        <form
+          className="grid gap-3"
+          onSubmit={(event) => {
+            event.preventDefault();
+            void save({ siteDay: round.day, note }).then((answer) => answer && setNote(''));
+          }}
+        >
+          <label className="hint" htmlFor={id}>
+            What the next shift must know. They see this before anything else.
+          </label>
+          <textarea
+            id={id}
+            className="input"
+            rows={3}
+            value={note}
+            onChange={(event) => setNote(event.target.value)}
+          />
           <SaveLine state={state} />
-          <button type="submit" className="btn btn-second">Hand over the round</button>
+          <button type="submit" className="btn btn-second">
+            Hand over the round
+          </button>
         </form>
       )}
     </Section>
@@ -108,10 +193,22 @@ export function RoundPage() {
   const [openId, setOpenId] = useState<string | null>(null);
   const [isLoading, setIsLoading] = useState(false);
   const round = query.data;
-  const count = (state: ReturnType<typeof stateOf>) => round?.points.filter((point) => stateOf(point) === state).length ?? 0;
-  const sentence = round && `${count('done')} of ${round.points.length} points read${count('ask') ? `, ${count('ask')} open ${count('ask') === 1 ? 'question' : 'questions'}` : ''}${count('skipped') ? `, ${count('skipped')} not read` : ''}.`;
-  const next = (view: RoundView, after: RoundPointView) => view.points.find((point) => point.position > after.position && stateOf(point) === 'open')?.id ?? null;
-  const dayLink = (target: string, label: string) => <Link to={`/sites/${site.slug}/round/${target}`} aria-current={target === day ? 'date' : undefined} className={`btn btn-second ${target === day ? 'bg-tint' : ''}`}>{label}</Link>;
+  const count = (state: ReturnType<typeof stateOf>) =>
+    round?.points.filter((point) => stateOf(point) === state).length ?? 0;
+  const sentence =
+    round &&
+    `${count('done')} of ${round.points.length} points read${count('ask') ? `, ${count('ask')} open ${count('ask') === 1 ? 'question' : 'questions'}` : ''}${count('skipped') ? `, ${count('skipped')} not read` : ''}.`;
+  const next = (view: RoundView, after: RoundPointView) =>
+    view.points.find((point) => point.position > after.position && stateOf(point) === 'open')?.id ?? null;
+  const dayLink = (target: string, label: string) => (
+    <Link
+      to={`/sites/${site.slug}/round/${target}`}
+      aria-current={target === day ? 'date' : undefined}
+      className={`btn btn-second ${target === day ? 'bg-tint' : ''}`}
+    >
+      {label}
+    </Link>
+  );
   return (
     <>
       <PageHead title={`Round, ${weekday(day)} ${dayName(day)}`} sentence={sentence} />
@@ -120,23 +217,71 @@ export function RoundPage() {
           <TwoColumns
             left={
               <>
-                <div className="flex flex-wrap gap-2 mb-4 no-print">{dayLink(view.today, 'Today')}{dayLink(addDays(view.today, -1), 'Yesterday')}{dayLink(addDays(day, -1), 'A day earlier')}</div>
-                {view.notes.slice(0, 1).map((note) => <p key={note.id} className="box box-note mb-4"><span className="font-semibold">From the last shift, {dayName(note.siteDay)}, {note.by}:</span> {note.note}</p>)}
+                <div className="flex flex-wrap gap-2 mb-4 no-print">
+                  {dayLink(view.today, 'Today')}
+                  {dayLink(addDays(view.today, -1), 'Yesterday')}
+                  {dayLink(addDays(day, -1), 'A day earlier')}
+                </div>
+                {view.notes.slice(0, 1).map((note) => (
+                  <p key={note.id} className="box box-note mb-4">
+                    <span className="font-semibold">
+                      From the last shift, {dayName(note.siteDay)}, {note.by}:
+                    </span>{' '}
+                    {note.note}
+                  </p>
+                ))}
                 {view.points.length === 0 ? (
-                  <Empty>No point is set up for the round yet. An engineer adds meters, stores and gauges under Site.</Empty>
+                  <Empty>
+                    No point is set up for the round yet. An engineer adds meters, stores and gauges under
+                    Site.
+                  </Empty>
                 ) : (
                   <ol className="sheet list-none">
                     {view.points.map((point) => (
-                      <PointRow key={point.id} point={point} round={view} isOpen={openId === point.id} onOpen={() => setOpenId(openId === point.id ? null : point.id)} onDone={() => setOpenId(next(view, point))} />
+                      <PointRow
+                        key={point.id}
+                        point={point}
+                        round={view}
+                        isOpen={openId === point.id}
+                        onOpen={() => setOpenId(openId === point.id ? null : point.id)}
+                        onDone={() => setOpenId(next(view, point))}
+                      />
                     ))}
                   </ol>
                 )}
                 <Section title="Loads out">
                   <div className="sheet pad grid gap-3">
-                    {view.loads.length === 0 ? <p className="text-muted">None on this day.</p> : (
-                      <ul className="lines list-none">{view.loads.map((load) => <li key={load.id} className="flex gap-3"><span className="font-medium">{load.ticket}</span><span>{load.hauler}</span><span className="ml-auto">{Number(load.officialVolume === 'received' ? load.receivedVolumeM3 : load.nominalVolumeM3)} m³ {load.officialVolume}</span></li>)}</ul>
+                    {view.loads.length === 0 ? (
+                      <p className="text-muted">None on this day.</p>
+                    ) : (
+                      <ul className="lines list-none">
+                        {view.loads.map((load) => (
+                          <li key={load.id} className="flex gap-3">
+                            <span className="font-medium">{load.ticket}</span>
+                            <span>{load.hauler}</span>
+                            <span className="ml-auto">
+                              {Number(
+                                load.officialVolume === 'received'
+                                  ? load.receivedVolumeM3
+                                  : load.nominalVolumeM3,
+                              )}{' '}
+                              m³ {load.officialVolume}
+                            </span>
+                          </li>
+                        ))}
+                      </ul>
                     )}
-                    {can('create:reading') && view.loadPlaces.to.length > 0 && (isLoading ? <LoadOut round={view} onDone={() => setIsLoading(false)} /> : <p><button type="button" className="btn btn-second" onClick={() => setIsLoading(true)}>Add a load</button></p>)}
+                    {can('create:reading') &&
+                      view.loadPlaces.to.length > 0 &&
+                      (isLoading ? (
+                        <LoadOut round={view} onDone={() => setIsLoading(false)} />
+                      ) : (
+                        <p>
+                          <button type="button" className="btn btn-second" onClick={() => setIsLoading(true)}>
+                            Add a load
+                          </button>
+                        </p>
+                      ))}
                   </div>
                 </Section>
                 <Handover round={view} />
@@ -145,7 +290,11 @@ export function RoundPage() {
             right={
               <details className="sheet pad" open>
                 <summary className="font-semibold cursor-pointer min-h-6">Before you go out</summary>
-                <ul className="list-disc pl-5 mt-2 grid gap-2">{cautions.map((caution) => <li key={caution}>{caution}</li>)}</ul>
+                <ul className="list-disc pl-5 mt-2 grid gap-2">
+                  {cautions.map((caution) => (
+                    <li key={caution}>{caution}</li>
+                  ))}
+                </ul>
               </details>
             }
           />

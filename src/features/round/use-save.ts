@@ -12,7 +12,12 @@ export interface SavedAnswer {
   warning?: string | null;
 }
 
-export type SaveState = { kind: 'idle' } | { kind: 'saving' } | { kind: 'saved-here' } | { kind: 'sent'; at: string; answer: SavedAnswer } | { kind: 'problem'; text: string };
+export type SaveState =
+  | { kind: 'idle' }
+  | { kind: 'saving' }
+  | { kind: 'saved-here' }
+  | { kind: 'sent'; at: string; answer: SavedAnswer }
+  | { kind: 'problem'; text: string };
 
 /**
  * Saves an entry: first on this device, then to the server. Saving again after a problem keeps the same id,
@@ -26,7 +31,17 @@ export function useSave(path: string, label: string) {
     if (state.kind === 'saving') return null;
     setState({ kind: 'saving' });
     const id = newId();
-    const item: OutboxItem = { id, siteId: site.id, personId: me.personId, path, body: { ...body, id, deviceId: 'browser' }, label, savedAt: new Date().toISOString(), state: 'waiting', problem: null };
+    const item: OutboxItem = {
+      id,
+      siteId: site.id,
+      personId: me.personId,
+      path,
+      body: { ...body, id, deviceId: 'browser' },
+      label,
+      savedAt: new Date().toISOString(),
+      state: 'waiting',
+      problem: null,
+    };
     await keepInOutbox(item).catch(() => undefined);
     const result = await sendFromOutbox(item);
     if (result.kind === 'waiting') {

@@ -12,14 +12,52 @@ function CoverTypeForm({ onDone }: { onDone: () => void }) {
   const { site } = usePlace();
   const save = useWrite<CoverTypeInput>(site.id, '/cover-types');
   return (
-    <RecordForm<CoverTypeInput> schema={coverTypeInput} defaults={{ id: newId(), name: '', availableWaterMm: '', membranePassFraction: '', runoffCoefficientWet: '', runoffCoefficientDry: '', petFactor: '1', source: '' }} submitLabel="Add the cover" onSubmit={(values) => save.mutateAsync(values)} onDone={onDone}>
-      <ChoiceField name="kind" label="Kind" options={coverKinds.map((kind) => ({ value: kind, label: coverKindNames[kind] }))} />
+    <RecordForm<CoverTypeInput>
+      schema={coverTypeInput}
+      defaults={{
+        id: newId(),
+        name: '',
+        availableWaterMm: '',
+        membranePassFraction: '',
+        runoffCoefficientWet: '',
+        runoffCoefficientDry: '',
+        petFactor: '1',
+        source: '',
+      }}
+      submitLabel="Add the cover"
+      onSubmit={(values) => save.mutateAsync(values)}
+      onDone={onDone}
+    >
+      <ChoiceField
+        name="kind"
+        label="Kind"
+        options={coverKinds.map((kind) => ({ value: kind, label: coverKindNames[kind] }))}
+      />
       <TextField name="name" label="Name" />
-      <TextField name="availableWaterMm" label="Available water of the soil, in millimetres" unit="mm" inputMode="decimal" hint="mm/m of the soil × rooted depth: sandy loam 150, silt loam 200, clay loam 250 mm/m (Thornthwaite and Mather 1957, Table 10). 0: no soil store." />
-      <TextField name="membranePassFraction" label="Share that passes the membrane" inputMode="decimal" hint="Share of one; empty without a membrane." isOptional />
+      <TextField
+        name="availableWaterMm"
+        label="Available water of the soil, in millimetres"
+        unit="mm"
+        inputMode="decimal"
+        hint="mm/m of the soil × rooted depth: sandy loam 150, silt loam 200, clay loam 250 mm/m (Thornthwaite and Mather 1957, Table 10). 0: no soil store."
+      />
+      <TextField
+        name="membranePassFraction"
+        label="Share that passes the membrane"
+        inputMode="decimal"
+        hint="Share of one; empty without a membrane."
+        isOptional
+      />
       <TextField name="runoffCoefficientWet" label="Runoff share, wet season" inputMode="decimal" />
       <TextField name="runoffCoefficientDry" label="Runoff share, dry season" inputMode="decimal" />
-      <ChoiceField name="runoffDestination" label="Runoff goes to" options={[{ value: 'storm-water', label: 'storm water' }, { value: 'leachate', label: 'leachate (contact water)' }]} />
+      <ChoiceField
+        name="runoffDestination"
+        label="Runoff goes to"
+        options={[
+          { value: 'storm-water', label: 'storm water' },
+          { value: 'leachate', label: 'leachate (contact water)' },
+        ]}
+      />
       <TextField name="petFactor" label="Factor on potential evapotranspiration" inputMode="decimal" />
       <TextField name="source" label="Source of these values" isLong />
     </RecordForm>
@@ -29,23 +67,77 @@ function CoverTypeForm({ onDone }: { onDone: () => void }) {
 function Confirm({ id, name }: { id: string; name: string }) {
   const { site } = usePlace();
   const confirm = useWrite<Record<string, never>>(site.id, `/cover-types/${id}/confirmation`);
-  return <button type="button" className="link block" aria-label={`Confirm for this site: ${name}`} onClick={() => confirm.mutate({})}>Confirm for this site</button>;
+  return (
+    <button
+      type="button"
+      className="link block"
+      aria-label={`Confirm for this site: ${name}`}
+      onClick={() => confirm.mutate({})}
+    >
+      Confirm for this site
+    </button>
+  );
 }
 
 /** Cover types: four properties, each with its source; templates until an engineer confirms them. */
 export function CoversSection({ view }: SectionProps) {
   const { can } = usePlace();
   return (
-    <Section title="Cover types" id="covers" aside={can('change:site') && <FormLink label="Add a cover type">{(onDone) => <CoverTypeForm onDone={onDone} />}</FormLink>}>
+    <Section
+      title="Cover types"
+      id="covers"
+      aside={
+        can('change:site') && (
+          <FormLink label="Add a cover type">{(onDone) => <CoverTypeForm onDone={onDone} />}</FormLink>
+        )
+      }
+    >
       <ScrollBox label="Cover types">
         <table className="tbl tbl-tight">
           <caption className="sr-only">Cover types and their parameters</caption>
-          <thead><tr><th scope="col">Cover</th><th scope="col" className="r">Available water, mm</th><th scope="col" className="r">Passes membrane</th><th scope="col" className="r">Runoff share, wet / dry</th><th scope="col">Runoff to</th><th scope="col" className="r">PET factor</th><th scope="col">State</th></tr></thead>
+          <thead>
+            <tr>
+              <th scope="col">Cover</th>
+              <th scope="col" className="r">
+                Available water, mm
+              </th>
+              <th scope="col" className="r">
+                Passes membrane
+              </th>
+              <th scope="col" className="r">
+                Runoff share, wet / dry
+              </th>
+              <th scope="col">Runoff to</th>
+              <th scope="col" className="r">
+                PET factor
+              </th>
+              <th scope="col">State</th>
+            </tr>
+          </thead>
           <tbody>
             {view.coverTypes.map((type) => (
               <tr key={type.id}>
-                <th scope="row">{type.name}<span className="hint block max-w-[44ch]">{type.source}</span></th><td className="r">{type.availableWaterMm}</td><td className="r">{type.membranePassFraction ?? 'no membrane'}</td><td className="r">{type.runoffCoefficientWet} / {type.runoffCoefficientDry}</td><td>{type.runoffDestination === 'leachate' ? 'leachate' : 'storm water'}</td><td className="r">{type.petFactor}</td>
-                <td>{type.confirmedAt ? <Word look="good">Confirmed</Word> : <><Template />{can('change:parameters') && <Confirm id={type.id} name={type.name} />}</>}</td>
+                <th scope="row">
+                  {type.name}
+                  <span className="hint block max-w-[44ch]">{type.source}</span>
+                </th>
+                <td className="r">{type.availableWaterMm}</td>
+                <td className="r">{type.membranePassFraction ?? 'no membrane'}</td>
+                <td className="r">
+                  {type.runoffCoefficientWet} / {type.runoffCoefficientDry}
+                </td>
+                <td>{type.runoffDestination === 'leachate' ? 'leachate' : 'storm water'}</td>
+                <td className="r">{type.petFactor}</td>
+                <td>
+                  {type.confirmedAt ? (
+                    <Word look="good">Confirmed</Word>
+                  ) : (
+                    <>
+                      <Template />
+                      {can('change:parameters') && <Confirm id={type.id} name={type.name} />}
+                    </>
+                  )}
+                </td>
               </tr>
             ))}
           </tbody>

@@ -15,18 +15,56 @@ export function NewSitePage() {
     await client.invalidateQueries({ queryKey: ['me'] });
     await navigate(`/sites/${slug}/site`);
   };
-  const defaults: SiteInput = { id: newId(), name: '', latitudeDeg: '', elevationM: '', timeZone: Intl.DateTimeFormat().resolvedOptions().timeZone, dayBoundary: '00:00', openedOn: '', displayUnits: 'metric' };
+  const defaults: SiteInput = {
+    id: newId(),
+    name: '',
+    latitudeDeg: '',
+    elevationM: '',
+    timeZone: Intl.DateTimeFormat().resolvedOptions().timeZone,
+    dayBoundary: '00:00',
+    openedOn: '',
+    displayUnits: 'metric',
+  };
   return (
     <main className="max-w-[760px] mx-auto px-4 py-10">
-      <PageHead title="Make a new site" sentence="Cells, meters and people are added on the site’s own page." crumb={<Link to="/">Your sites</Link>} />
-      <RecordForm<SiteInput> schema={siteInput} defaults={defaults} submitLabel="Make the site" onSubmit={create}>
+      <PageHead
+        title="Make a new site"
+        sentence="Cells, meters and people are added on the site’s own page."
+        crumb={<Link to="/">Your sites</Link>}
+      />
+      <RecordForm<SiteInput>
+        schema={siteInput}
+        defaults={defaults}
+        submitLabel="Make the site"
+        onSubmit={create}
+      >
         <TextField name="name" label="Name of the site" />
-        <TextField name="latitudeDeg" label="Latitude in degrees, south negative" unit="°" hint="It decides the daylight of each month. Like 52.41." />
+        <TextField
+          name="latitudeDeg"
+          label="Latitude in degrees, south negative"
+          unit="°"
+          hint="It decides the daylight of each month. Like 52.41."
+        />
         <TextField name="elevationM" label="Height above the sea, in metres" unit="m" />
-        <TextField name="timeZone" label="Time zone" hint="The IANA name, like Europe/London or America/Chicago." />
-        <TextField name="dayBoundary" label="Time the site day begins" hint="Like 00:00 or 08:00: the hour of the morning round. A day runs from it to the same time on the next." />
+        <TextField
+          name="timeZone"
+          label="Time zone"
+          hint="The IANA name, like Europe/London or America/Chicago."
+        />
+        <TextField
+          name="dayBoundary"
+          label="Time the site day begins"
+          hint="Like 00:00 or 08:00: the hour of the morning round. A day runs from it to the same time on the next."
+        />
         <TextField name="openedOn" label="Day the record begins" hint="Like 2024-01-01." />
-        <ChoiceField name="displayUnits" label="Units shown" options={[{ value: 'metric', label: 'metric: m³, mm, ha' }, { value: 'us', label: 'US: gallons, inches, acres' }]} />
+        <ChoiceField
+          name="displayUnits"
+          label="Units shown"
+          options={[
+            { value: 'metric', label: 'metric: m³, mm, ha' },
+            { value: 'us', label: 'US: gallons, inches, acres' },
+          ]}
+        />
       </RecordForm>
     </main>
   );

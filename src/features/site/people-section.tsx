@@ -9,15 +9,37 @@ import { newId } from '../../lib/new-id.ts';
 import { useRecord, useWrite } from '../../lib/record.ts';
 import { FormLink, optionsOf } from './site-parts.tsx';
 
-function InviteForm({ laboratories, onDone }: { laboratories: PeopleView['laboratories']; onDone: () => void }) {
+function InviteForm({
+  laboratories,
+  onDone,
+}: {
+  laboratories: PeopleView['laboratories'];
+  onDone: () => void;
+}) {
   const { site } = usePlace();
   const invite = useWrite<InvitationInput>(site.id, '/people');
   return (
-    <RecordForm<InvitationInput> schema={invitationInput} defaults={{ id: newId(), email: '', displayName: '' }} submitLabel="Send the invitation" onSubmit={(values) => invite.mutateAsync(values)} onDone={onDone}>
+    <RecordForm<InvitationInput>
+      schema={invitationInput}
+      defaults={{ id: newId(), email: '', displayName: '' }}
+      submitLabel="Send the invitation"
+      onSubmit={(values) => invite.mutateAsync(values)}
+      onDone={onDone}
+    >
       <TextField name="displayName" label="Name" autoComplete="off" />
       <TextField name="email" label="E-mail address" inputMode="email" />
-      <ChoiceField name="role" label="Role at this site" options={roles.map((role) => ({ value: role, label: roleNames[role] }))} />
-      <ChoiceField name="laboratoryId" label="Laboratory" hint="Only for the laboratory role." options={optionsOf(laboratories)} isOptional />
+      <ChoiceField
+        name="role"
+        label="Role at this site"
+        options={roles.map((role) => ({ value: role, label: roleNames[role] }))}
+      />
+      <ChoiceField
+        name="laboratoryId"
+        label="Laboratory"
+        hint="Only for the laboratory role."
+        options={optionsOf(laboratories)}
+        isOptional
+      />
     </RecordForm>
   );
 }
@@ -29,7 +51,22 @@ function EndRole({ id, name }: { id: string; name: string }) {
     <>
       <FormLink label="End the role" title={`End the role of ${name}`}>
         {(onDone) => (
-          <div className="grid gap-4"><p>{name} is signed out at once and cannot come back in this role. What they recorded stays under their name.</p>{end.error && <p role="alert" className="error-text">⚠ {end.error.document.detail}</p>}<p><button type="button" className="btn" onClick={() => end.mutate({}, { onSuccess: onDone })}>End the role</button></p></div>
+          <div className="grid gap-4">
+            <p>
+              {name} is signed out at once and cannot come back in this role. What they recorded stays under
+              their name.
+            </p>
+            {end.error && (
+              <p role="alert" className="error-text">
+                ⚠ {end.error.document.detail}
+              </p>
+            )}
+            <p>
+              <button type="button" className="btn" onClick={() => end.mutate({}, { onSuccess: onDone })}>
+                End the role
+              </button>
+            </p>
+          </div>
         )}
       </FormLink>
     </>
@@ -43,14 +80,47 @@ export function PeopleSection() {
   return (
     <Viewed query={query}>
       {(view) => (
-        <Section title="People" id="people" aside={can('manage:people') && <FormLink label="Invite a person">{(onDone) => <InviteForm laboratories={view.laboratories} onDone={onDone} />}</FormLink>}>
+        <Section
+          title="People"
+          id="people"
+          aside={
+            can('manage:people') && (
+              <FormLink label="Invite a person">
+                {(onDone) => <InviteForm laboratories={view.laboratories} onDone={onDone} />}
+              </FormLink>
+            )
+          }
+        >
           <ScrollBox label="People">
             <table className="tbl tbl-tight">
               <caption className="sr-only">People with a role at the site</caption>
-              <thead><tr><th scope="col">Name</th><th scope="col">E-mail</th><th scope="col">Role</th><th scope="col">State</th><th scope="col"><span className="sr-only">Act</span></th></tr></thead>
+              <thead>
+                <tr>
+                  <th scope="col">Name</th>
+                  <th scope="col">E-mail</th>
+                  <th scope="col">Role</th>
+                  <th scope="col">State</th>
+                  <th scope="col">
+                    <span className="sr-only">Act</span>
+                  </th>
+                </tr>
+              </thead>
               <tbody>
                 {view.people.map((person) => (
-                  <tr key={person.membershipId}><th scope="row">{person.displayName}</th><td>{person.email}</td><td>{roleNames[person.role as Role]}</td><td>{person.hasPassword ? 'has a password' : 'no password yet'}</td><td>{can('manage:people') && person.personId !== me.personId && <EndRole id={person.membershipId} name={`${person.displayName}, ${roleNames[person.role as Role]}`} />}</td></tr>
+                  <tr key={person.membershipId}>
+                    <th scope="row">{person.displayName}</th>
+                    <td>{person.email}</td>
+                    <td>{roleNames[person.role as Role]}</td>
+                    <td>{person.hasPassword ? 'has a password' : 'no password yet'}</td>
+                    <td>
+                      {can('manage:people') && person.personId !== me.personId && (
+                        <EndRole
+                          id={person.membershipId}
+                          name={`${person.displayName}, ${roleNames[person.role as Role]}`}
+                        />
+                      )}
+                    </td>
+                  </tr>
                 ))}
               </tbody>
             </table>

@@ -13,11 +13,28 @@ import { MeteringSection } from './metering-section.tsx';
 import { PeopleSection } from './people-section.tsx';
 import { SettingsSection } from './settings-section.tsx';
 
-const parts = [['cells', 'Cells'], ['covers', 'Cover types'], ['sumps', 'Sumps'], ['meters', 'Meters'], ['stores', 'Stores'], ['order', 'Walking order'], ['climate', 'Climate'], ['settings', 'Settings']] as const;
+const parts = [
+  ['cells', 'Cells'],
+  ['covers', 'Cover types'],
+  ['sumps', 'Sumps'],
+  ['meters', 'Meters'],
+  ['stores', 'Stores'],
+  ['order', 'Walking order'],
+  ['climate', 'Climate'],
+  ['settings', 'Settings'],
+] as const;
 
 function stateSentence(view: SiteStructureView): string {
-  const area = view.cells.reduce((sum, cell) => sum + Number(view.cellAreas.filter((one) => one.cellId === cell.id).at(-1)?.linedAreaM2 ?? 0), 0);
-  const templates = view.coverTypes.filter((type) => !type.confirmedAt && view.coverPeriods.some((period) => period.coverTypeId === type.id && period.toOn === null)).length;
+  const area = view.cells.reduce(
+    (sum, cell) =>
+      sum + Number(view.cellAreas.filter((one) => one.cellId === cell.id).at(-1)?.linedAreaM2 ?? 0),
+    0,
+  );
+  const templates = view.coverTypes.filter(
+    (type) =>
+      !type.confirmedAt &&
+      view.coverPeriods.some((period) => period.coverTypeId === type.id && period.toOn === null),
+  ).length;
   return `${view.cells.length} ${view.cells.length === 1 ? 'cell' : 'cells'}, ${formatHa(area)} ha lined, ${view.meters.length} meters.${templates ? ` ${templates} cover types in use are still templates.` : ''}`;
 }
 
@@ -37,7 +54,13 @@ export function SitePage() {
       <Viewed query={query}>
         {(view) => (
           <>
-            <nav aria-label="On this page" className="flex flex-wrap gap-x-5 mb-6 no-print">{seen.map(([id, name]) => <a key={id} href={`#${id}`} className="min-h-11 inline-flex items-center">{name}</a>)}</nav>
+            <nav aria-label="On this page" className="flex flex-wrap gap-x-5 mb-6 no-print">
+              {seen.map(([id, name]) => (
+                <a key={id} href={`#${id}`} className="min-h-11 inline-flex items-center">
+                  {name}
+                </a>
+              ))}
+            </nav>
             <CellsSection view={view} />
             <CoversSection view={view} />
             <MeteringSection view={view} />

@@ -13,11 +13,23 @@ type Row = TrailView['rows'][number];
 
 function Values({ row }: { row: Row }) {
   if (row.before === null && row.after === null) return null;
-  const block = (title: string, value: unknown) => value !== null && value !== undefined && <div><p className="font-medium">{title}</p><pre className="text-xs whitespace-pre-wrap break-all bg-sunken p-2 rounded-sm">{JSON.stringify(value, null, 1)}</pre></div>;
+  const block = (title: string, value: unknown) =>
+    value !== null &&
+    value !== undefined && (
+      <div>
+        <p className="font-medium">{title}</p>
+        <pre className="text-xs whitespace-pre-wrap break-all bg-sunken p-2 rounded-sm">
+          {JSON.stringify(value, null, 1)}
+        </pre>
+      </div>
+    );
   return (
     <details>
       <summary className="cursor-pointer text-primary">before and after</summary>
-      <div className="grid gap-2 mt-2 max-w-[60ch]">{block('Before', row.before)}{block('After', row.after)}</div>
+      <div className="grid gap-2 mt-2 max-w-[60ch]">
+        {block('Before', row.before)}
+        {block('After', row.after)}
+      </div>
     </details>
   );
 }
@@ -30,8 +42,17 @@ function Chain() {
       <Viewed query={query}>
         {(view) => (
           <>
-            <p><Word look={view.firstFault ? 'bad' : 'good'}>{view.firstFault ? 'The chain is broken' : 'The chain holds'}</Word> {view.firstFault ?? `${view.sealedCount} changes of the organisation are chained by SHA-256${view.unsealedCount ? `, ${view.unsealedCount} are waiting for the next second’s seal` : ''}.`}</p>
-            <p className="hint break-all">Head: {view.headHash}. It is printed in every issued report, so that an old report proves the trail behind it.</p>
+            <p>
+              <Word look={view.firstFault ? 'bad' : 'good'}>
+                {view.firstFault ? 'The chain is broken' : 'The chain holds'}
+              </Word>{' '}
+              {view.firstFault ??
+                `${view.sealedCount} changes of the organisation are chained by SHA-256${view.unsealedCount ? `, ${view.unsealedCount} are waiting for the next second’s seal` : ''}.`}
+            </p>
+            <p className="hint break-all">
+              Head: {view.headHash}. It is printed in every issued report, so that an old report proves the
+              trail behind it.
+            </p>
           </>
         )}
       </Viewed>
@@ -45,13 +66,33 @@ export function TrailPage() {
   const [search, setSearch] = useSearchParams();
   const subject = search.get('subject');
   const query = useInfiniteQuery({
-    queryKey: ['site', site.id, 'trail', subject], initialPageParam: null as number | null, getNextPageParam: (last: TrailView) => last.nextBefore,
-    queryFn: ({ pageParam, signal }) => api.get<TrailView>(`/sites/${site.id}/trail?${new URLSearchParams({ ...(subject ? { subject } : {}), ...(pageParam === null ? {} : { before: String(pageParam) }) })}`, signal),
+    queryKey: ['site', site.id, 'trail', subject],
+    initialPageParam: null as number | null,
+    getNextPageParam: (last: TrailView) => last.nextBefore,
+    queryFn: ({ pageParam, signal }) =>
+      api.get<TrailView>(
+        `/sites/${site.id}/trail?${new URLSearchParams({ ...(subject ? { subject } : {}), ...(pageParam === null ? {} : { before: String(pageParam) }) })}`,
+        signal,
+      ),
   });
   const rows = query.data?.pages.flatMap((page) => page.rows) ?? [];
   return (
     <>
-      <PageHead title="Trail" sentence={subject ? <>Changes of one record only. <button type="button" className="link" onClick={() => setSearch({})}>Show all changes</button></> : 'Every change of this site: who, when, what, and why. Rows are only ever added.'} />
+      <PageHead
+        title="Trail"
+        sentence={
+          subject ? (
+            <>
+              Changes of one record only.{' '}
+              <button type="button" className="link" onClick={() => setSearch({})}>
+                Show all changes
+              </button>
+            </>
+          ) : (
+            'Every change of this site: who, when, what, and why. Rows are only ever added.'
+          )
+        }
+      />
       <Chain />
       {query.isPending && <Loading />}
       {query.isError && <Failed error={query.error} onRetry={() => void query.refetch()} />}
@@ -59,17 +100,50 @@ export function TrailPage() {
         <ScrollBox label="Changes, newest first">
           <table className="tbl tbl-tight">
             <caption className="sr-only">Changes, newest first</caption>
-            <thead><tr><th scope="col" className="r">No.</th><th scope="col">When</th><th scope="col">Who</th><th scope="col">What</th></tr></thead>
+            <thead>
+              <tr>
+                <th scope="col" className="r">
+                  No.
+                </th>
+                <th scope="col">When</th>
+                <th scope="col">Who</th>
+                <th scope="col">What</th>
+              </tr>
+            </thead>
             <tbody>
               {rows.map((row) => (
-                <tr key={row.id}><td className="r text-muted">{row.sequence}</td><td className="whitespace-nowrap">{formatInstant(row.at)}</td><td>{row.by}</td>
-                  <td className="min-w-[260px]">{row.sentence}{row.reason && <span className="hint block">Reason: {row.reason}</span>}<div className="flex flex-wrap gap-x-5"><Values row={row} />{!subject && <Link to={`?subject=${row.subjectId}`} aria-label={`All changes of this record: ${row.sentence}`}>all changes of this record</Link>}</div></td></tr>
+                <tr key={row.id}>
+                  <td className="r text-muted">{row.sequence}</td>
+                  <td className="whitespace-nowrap">{formatInstant(row.at)}</td>
+                  <td>{row.by}</td>
+                  <td className="min-w-[260px]">
+                    {row.sentence}
+                    {row.reason && <span className="hint block">Reason: {row.reason}</span>}
+                    <div className="flex flex-wrap gap-x-5">
+                      <Values row={row} />
+                      {!subject && (
+                        <Link
+                          to={`?subject=${row.subjectId}`}
+                          aria-label={`All changes of this record: ${row.sentence}`}
+                        >
+                          all changes of this record
+                        </Link>
+                      )}
+                    </div>
+                  </td>
+                </tr>
               ))}
             </tbody>
           </table>
         </ScrollBox>
       )}
-      {query.hasNextPage && <p className="mt-4"><button type="button" className="btn btn-second" onClick={() => void query.fetchNextPage()}>Show earlier changes</button></p>}
+      {query.hasNextPage && (
+        <p className="mt-4">
+          <button type="button" className="btn btn-second" onClick={() => void query.fetchNextPage()}>
+            Show earlier changes
+          </button>
+        </p>
+      )}
     </>
   );
 }
