@@ -60,7 +60,23 @@ export async function makeDemoSite(
   for (const type of before.coverTypes.slice(0, 5)) await confirmCoverType(tx, context, deps, type.id);
   const cover = (kind: CoverKind) => before.coverTypes.find((type) => type.kind === kind)!.id;
   const place = (kind: string) => before.places.find((one) => one.kind === kind)!.id;
+  const { cells, openedOn } = await makeCells(tx, context, deps, plan, random, cover);
+  const places = { treatment: place('treatment'), outfall: place('outfall'), haulage: place('haulage') };
+  const sumps = await makeSumps(tx, context, random, cells);
+  const metering = await makeMetering(tx, context, deps, plan, random, { cells, sumps, places, openedOn });
+  return { site, gauge: before.stations[0]!.id, cells, sumps, ...metering };
+}
 
+/** Three cells: one closed, one under intermediate soil, one young, with the waste it receives. */
+async function makeCells(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  plan: DemoPlan,
+  random: Random,
+  cover: (kind: CoverKind) => string,
+): Promise<{ cells: DemoIds['cells']; openedOn: string }> {
+  const id = random.id;
   const cells = { C1: id(), C2: id(), C3: id() };
   await createCell(tx, context, deps, {
     id: cells.C1,
@@ -110,7 +126,17 @@ export async function makeDemoSite(
       source: 'weighbridge',
     });
   }
+  return { cells, openedOn };
+}
 
+/** A primary sump under each cell, and leak detection under the young one. */
+async function makeSumps(
+  tx: Transaction,
+  context: Context,
+  random: Random,
+  cells: DemoIds['cells'],
+): Promise<DemoIds['sumps']> {
+  const id = random.id;
   const sumps = {} as DemoIds['sumps'];
   const offsets = {
     S1: ['0.45', '0.05'],
@@ -140,6 +166,26 @@ export async function makeDemoSite(
       actionRateLPerHaDay: isLeak ? '187' : undefined,
     });
   }
+  return sumps;
+}
+
+interface MadeSite {
+  cells: DemoIds['cells'];
+  sumps: DemoIds['sumps'];
+  places: Omit<DemoIds['places'], 'header'>;
+  openedOn: string;
+}
+
+/** The shared header, the pond, five meters and the tested pump. */
+async function makeMetering(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  plan: DemoPlan,
+  random: Random,
+  made: MadeSite,
+): Promise<Pick<DemoIds, 'pond' | 'meters' | 'pump' | 'places'>> {
+  const id = random.id;
   const pond = { store: id(), place: id() };
   const strapping = rectangularPondTable(pondShape).map((row) => ({
     levelM: row.levelM.toFixed(3),
@@ -148,24 +194,16 @@ export async function makeDemoSite(
   }));
   const header = id();
   await createPlace(tx, context, { id: header, kind: 'header', name: 'Header H1' });
-  await tx
-    .insert(headerShares)
-    .values(
-      (['C1', 'C2'] as const).map((code) => ({
-        organisationId: context.organisationId,
-        id: id(),
-        placeId: header,
-        cellId: cells[code],
-        fromOn: '2016-08-15',
-      })),
-    );
+  await tx.insert(headerShares).values(
+    (['C1', 'C2'] as const).map((code) => ({
+      organisationId: context.organisationId,
+      id: id(),
+      placeId: header,
+      cellId: made.cells[code],
+      fromOn: '2016-08-15',
+    })),
+  );
   const meters = { H1: id(), S3: id(), L3: id(), P1: id(), O1: id() };
-  const places = {
-    header,
-    treatment: place('treatment'),
-    outfall: place('outfall'),
-    haulage: place('haulage'),
-  };
   await createStore(tx, context, deps, {
     id: pond.store,
     placeId: pond.place,
@@ -177,6 +215,41 @@ export async function makeDemoSite(
     operatingLevelM: '2.80',
     strapping,
   });
+  await makeMeters(tx, context, deps, plan, { meters, header, pondPlace: pond.place, ...made });
+  await tx.update(roundPoints).set({ everyDays: 7 }).where(eq(roundPoints.subjectId, meters.L3));
+  const pump = id();
+  await tx.insert(pumps).values({
+    organisationId: context.organisationId,
+    id: pump,
+    sumpId: made.sumps.S3.sump,
+    name: 'S3 pump',
+    designRateLPerS: '5',
+  });
+  await tx.insert(pumpTests).values({
+    organisationId: context.organisationId,
+    id: id(),
+    recordedById: context.personId,
+    pumpId: pump,
+    testedOn: addDays(plan.stuckFrom, -26),
+    rateLPerS: '4.2',
+  });
+  return { pond, meters, pump, places: { header, ...made.places } };
+}
+
+async function makeMeters(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  plan: DemoPlan,
+  {
+    meters,
+    header,
+    pondPlace,
+    sumps,
+    places,
+    openedOn,
+  }: MadeSite & { meters: DemoIds['meters']; header: string; pondPlace: string },
+): Promise<void> {
   const meter = { decimals: 0, installedOn: plan.start, multiplier: '1' };
   await createMeter(tx, context, deps, {
     ...meter,
@@ -184,7 +257,7 @@ export async function makeDemoSite(
     code: 'H1',
     name: 'H1 North and Middle',
     fromPlaceId: header,
-    toPlaceId: pond.place,
+    toPlaceId: pondPlace,
     digits: 6,
     unit: 'm3',
     rateM3PerDayMax: '420',
@@ -195,7 +268,7 @@ export async function makeDemoSite(
     code: 'S3',
     name: 'S3 East sump',
     fromPlaceId: sumps.S3.place,
-    toPlaceId: pond.place,
+    toPlaceId: pondPlace,
     sumpId: sumps.S3.sump,
     digits: 6,
     unit: 'm3',
@@ -208,7 +281,7 @@ export async function makeDemoSite(
     code: 'L3',
     name: 'L3 leak detection',
     fromPlaceId: sumps.L3.place,
-    toPlaceId: pond.place,
+    toPlaceId: pondPlace,
     sumpId: sumps.L3.sump,
     digits: 6,
     unit: 'L',
@@ -220,7 +293,7 @@ export async function makeDemoSite(
     id: meters.P1,
     code: 'P1',
     name: 'P1 plant inflow',
-    fromPlaceId: pond.place,
+    fromPlaceId: pondPlace,
     toPlaceId: places.treatment,
     digits: 7,
     unit: 'm3',
@@ -237,28 +310,6 @@ export async function makeDemoSite(
     unit: 'm3',
     rateM3PerDayMax: '260',
   });
-  await tx.update(roundPoints).set({ everyDays: 7 }).where(eq(roundPoints.subjectId, meters.L3));
-  const pump = id();
-  await tx
-    .insert(pumps)
-    .values({
-      organisationId: context.organisationId,
-      id: pump,
-      sumpId: sumps.S3.sump,
-      name: 'S3 pump',
-      designRateLPerS: '5',
-    });
-  await tx
-    .insert(pumpTests)
-    .values({
-      organisationId: context.organisationId,
-      id: id(),
-      recordedById: context.personId,
-      pumpId: pump,
-      testedOn: addDays(plan.stuckFrom, -26),
-      rateLPerS: '4.2',
-    });
-  return { site, gauge: before.stations[0]!.id, pond, sumps, cells, meters, pump, places };
 }
 
 /** The young cell fills: floor becomes working area, slopes are covered, one part in the middle of a month. */

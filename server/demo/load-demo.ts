@@ -13,7 +13,8 @@ import { planDemo } from './demo-plan.ts';
 import { makeDemoSite } from './demo-site.ts';
 import { generateWeather } from './demo-weather.ts';
 import { loadRecord, loadWeather } from './load-record.ts';
-import { makePermit, tellStory } from './load-story.ts';
+import { makePermit } from './load-permit.ts';
+import { tellStory } from './load-story.ts';
 import { createRandom } from './random.ts';
 
 const seed = 20_260_301;

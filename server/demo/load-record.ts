@@ -51,17 +51,15 @@ export async function loadWeather(
 ): Promise<void> {
   const operator = actors.as('operator', ids.site);
   const airfield = random.id();
-  await tx
-    .insert(stations)
-    .values({
-      organisationId: operator.organisationId,
-      id: airfield,
-      siteId: ids.site,
-      name: 'Selby Moor airfield',
-      kind: 'file',
-      priority: 2,
-      source: 'invented daily record',
-    });
+  await tx.insert(stations).values({
+    organisationId: operator.organisationId,
+    id: airfield,
+    siteId: ids.site,
+    name: 'Selby Moor airfield',
+    kind: 'file',
+    priority: 2,
+    source: 'invented daily record',
+  });
   const missing = weather.at(-4)?.day;
   const fact = (day: Day) => ({
     organisationId: operator.organisationId,

@@ -1,5 +1,6 @@
 import ExcelJS from 'exceljs';
-import { quarterTitle, type Quarter } from '../features/reports/quarter-service.ts';
+import type { Quarter } from '../features/reports/quarter.ts';
+import { quarterTitle } from '../features/reports/quarter-figures.ts';
 import { monthShortName } from '#shared/calendar/month.ts';
 import { monthlyVolumesChart } from '#shared/charts/compare-chart.ts';
 import { addCharts } from './quarterly/add-charts.ts';

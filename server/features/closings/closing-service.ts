@@ -82,19 +82,17 @@ export async function closeMonth(
       ],
     );
   const run = (await balanceRepository.listFrozenRuns(tx, siteId)).find((one) => one.acceptedAt !== null);
-  await tx
-    .insert(monthClosings)
-    .values({
-      organisationId: context.organisationId,
-      id: input.id,
-      recordedById: context.personId,
-      recordedAt: deps.now().toISOString(),
-      siteId,
-      month,
-      act: 'close',
-      runId: run?.id ?? null,
-      reason: input.reason ?? null,
-    });
+  await tx.insert(monthClosings).values({
+    organisationId: context.organisationId,
+    id: input.id,
+    recordedById: context.personId,
+    recordedAt: deps.now().toISOString(),
+    siteId,
+    month,
+    act: 'close',
+    runId: run?.id ?? null,
+    reason: input.reason ?? null,
+  });
   await recordChange(tx, context, {
     action: 'close',
     subjectType: 'month-closings',
@@ -118,18 +116,16 @@ export async function reopenMonth(
   const record = await readSite(tx, siteId);
   if (!(await entryRepository.listClosedMonths(tx, siteId)).has(month))
     throw new Problem('already-done', `${monthName(month)} is not closed.`);
-  await tx
-    .insert(monthClosings)
-    .values({
-      organisationId: context.organisationId,
-      id: input.id,
-      recordedById: context.personId,
-      recordedAt: deps.now().toISOString(),
-      siteId,
-      month,
-      act: 'reopen',
-      reason: input.reason,
-    });
+  await tx.insert(monthClosings).values({
+    organisationId: context.organisationId,
+    id: input.id,
+    recordedById: context.personId,
+    recordedAt: deps.now().toISOString(),
+    siteId,
+    month,
+    act: 'reopen',
+    reason: input.reason,
+  });
   const days = await siteDaysOf(tx, siteId);
   const waiting = (await entryRepository.listPendingChanges(tx, siteId)).filter((one) => one.month === month);
   for (const meterId of new Set(waiting.map((one) => one.meterId).filter((id) => id !== null))) {

@@ -237,15 +237,13 @@ export async function writeNote(
   const record = await readSite(tx, siteId);
   const cell = record.cells.find((one) => one.id === input.cellId);
   if (!cell) throw fieldProblem('/cellId', 'Choose a cell of this site.');
-  await tx
-    .insert(compareNotes)
-    .values({
-      organisationId: context.organisationId,
-      siteId,
-      ...input,
-      writtenAt: deps.now().toISOString(),
-      writtenById: context.personId,
-    });
+  await tx.insert(compareNotes).values({
+    organisationId: context.organisationId,
+    siteId,
+    ...input,
+    writtenAt: deps.now().toISOString(),
+    writtenById: context.personId,
+  });
   await recordChange(tx, context, {
     action: 'note',
     subjectType: 'compare-notes',

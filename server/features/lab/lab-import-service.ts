@@ -1,13 +1,10 @@
 import type * as z from 'zod';
 import { dayName, monthOfDay } from '#shared/calendar/day.ts';
 import { monthName } from '#shared/calendar/month.ts';
-import type { LabRow, RawLabRow } from '#shared/lab/lab-row.ts';
-import { readLabSheets, type LabReading, type SkippedRow } from '#shared/lab/read-lab-sheet.ts';
-import { resolveLabRows, tidyName, type LabCatalog } from '#shared/lab/resolve-lab-rows.ts';
+import type { LabRow } from '#shared/lab/lab-row.ts';
+import { readLabSheets } from '#shared/lab/read-lab-sheet.ts';
 import { Problem, fieldProblem } from '#shared/problems.ts';
 import type { labAnswerInput, labUploadInput } from '#shared/schemas/lab.ts';
-import { cellText, type SheetFile } from '#shared/sheets/sheet.ts';
-import type { LabImportView } from '#shared/views/lab-view.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import { sha256Of } from '../../files/file-store.ts';
@@ -16,109 +13,9 @@ import { readSheet } from '../../spreadsheets/read-sheet.ts';
 import * as importRepository from '../imports/import-repository.ts';
 import { insertPendingChange, listClosedMonths } from '../ledger/entry-repository.ts';
 import { openExceedances } from '../limits/exceedance-service.ts';
-import { siteDaysOf, siteOf } from '../sites/site-service.ts';
+import { siteOf } from '../sites/site-service.ts';
 import * as repository from './lab-repository.ts';
-
-interface StoredReading {
-  shape: string;
-  jobNumber: string | null;
-  notes: string[];
-  skipped: SkippedRow[];
-  qualifierKey: LabReading['qualifierKey'];
-  preview: { number: number; cells: string[] }[];
-  sheetName: string;
-  headerRow: number;
-  dateOrder: 'day-first' | 'month-first' | null;
-}
-
-const previewRowsMax = 24;
-
-const countsOf = (rows: readonly LabRow[], skippedCount: number) => {
-  const count = (state: LabRow['state']) => rows.filter((row) => row.state === state).length;
-  return {
-    read: rows.length + skippedCount,
-    ok: count('ok'),
-    warned: count('warned'),
-    held: count('held'),
-    skipped: count('skipped') + skippedCount,
-  };
-};
-
-async function catalogOf(
-  tx: Transaction,
-  siteId: string,
-  laboratoryId: string,
-  receivedOn: string,
-  dateOrder: StoredReading['dateOrder'],
-): Promise<LabCatalog> {
-  const mappings = await repository.listMappings(tx, laboratoryId);
-  const live = await repository.listLiveResults(tx, siteId);
-  return {
-    points: (await repository.listSamplePoints(tx, siteId)).map((one) => ({
-      id: one.id,
-      code: one.code,
-      aliases: [one.name, ...one.aliases],
-    })),
-    analytes: await repository.listAnalytes(tx),
-    qualifiers: new Map(
-      (await repository.listQualifiers(tx, laboratoryId)).map((one) => [one.letter, one.meaning]),
-    ),
-    mappings: new Map(mappings.map((one) => [`${one.kind} ${tidyName(one.fromText)}`, one.toValue])),
-    existing: new Map(
-      live
-        .filter((one) => one.isCounted)
-        .map((one) => [
-          `${one.samplePointId} ${one.analyteId} ${one.fraction} ${one.sampledOn}`,
-          { id: one.id, comparator: one.comparator, value: one.value, unit: one.unit },
-        ]),
-    ),
-    receivedOn,
-    answers: { dateOrder },
-  };
-}
-
-async function stage(
-  tx: Transaction,
-  context: Context,
-  deps: Dependencies,
-  importId: string,
-  raws: readonly RawLabRow[],
-  catalog: LabCatalog,
-  skippedCount: number,
-) {
-  const rows = resolveLabRows(raws, catalog);
-  await importRepository.replaceRows(
-    tx,
-    importId,
-    rows.map((row, position) => ({
-      organisationId: context.organisationId,
-      id: deps.newId(),
-      importId,
-      position,
-      sheet: row.sheet,
-      rowNumber: row.rowNumber,
-      state: row.state,
-      payload: row,
-    })),
-  );
-  const counts = countsOf(rows, skippedCount);
-  await importRepository.updateImport(tx, importId, { counts });
-  return counts;
-}
-
-function previewOf(file: SheetFile, reading: LabReading) {
-  const sheet = file.sheets.find((one) => one.name === reading.rows[0]?.sheet) ?? file.sheets[0]!;
-  return {
-    sheetName: sheet.name,
-    preview: sheet.rows
-      .slice(0, previewRowsMax)
-      .map((row) => ({ number: row.number, cells: row.cells.map(cellText) })),
-  };
-}
-
-async function today(tx: Transaction, siteId: string, deps: Dependencies): Promise<string> {
-  return (await siteDaysOf(tx, siteId)).dayOf(deps.now().getTime());
-}
+import { previewOf, catalogOf, openImport, stage, today, type StoredReading } from './lab-import-staging.ts';
 
 /** Takes a laboratory's sheet: kept byte for byte, read in a child process, staged. Nothing is in the record yet. */
 export async function uploadResults(
@@ -191,14 +88,6 @@ export async function uploadResults(
     after: { sha256, counts },
   });
   return { id: input.id, counts };
-}
-
-async function openImport(tx: Transaction, context: Context, importId: string) {
-  const row = await importRepository.findImport(tx, siteOf(context), importId);
-  const isOthers = context.laboratoryId !== null && row?.laboratoryId !== context.laboratoryId;
-  if (!row || row.kind !== 'lab' || isOthers)
-    throw new Problem('not-found', 'There is no such upload at this site.');
-  return row;
 }
 
 /** Remembers an answer for the laboratory and reads the staged rows again. */
@@ -392,35 +281,4 @@ export async function undoResults(tx: Transaction, context: Context, deps: Depen
     sentence: `The import of ${row.fileName} was undone: ${live.length} results.`,
   });
   return { id: importId };
-}
-
-/** An upload as the check page shows it, in its three bands. */
-export async function readLabImport(
-  tx: Transaction,
-  context: Context,
-  importId: string,
-): Promise<LabImportView> {
-  const siteId = siteOf(context);
-  const row = await openImport(tx, context, importId);
-  const rows = (await importRepository.listRows(tx, importId)).map((one) => one.payload as LabRow);
-  const points = await repository.listSamplePoints(tx, siteId);
-  const analyteRows = await repository.listAnalytes(tx);
-  return {
-    id: row.id,
-    fileName: row.fileName,
-    fileSha256: row.fileSha256,
-    uploadedAt: row.uploadedAt,
-    confirmedAt: row.confirmedAt,
-    undoneAt: row.undoneAt,
-    counts: row.counts as ReturnType<typeof countsOf>,
-    reading: row.reading as StoredReading,
-    laboratoryId: row.laboratoryId,
-    rows: rows.map((one) => ({
-      ...one,
-      pointCode: points.find((point) => point.id === one.samplePointId)?.code ?? null,
-      analyteName: analyteRows.find((analyte) => analyte.id === one.analyteId)?.name ?? null,
-    })),
-    points: points.map((one) => ({ id: one.id, code: one.code, name: one.name })),
-    analytes: analyteRows.map((one) => ({ id: one.id, name: one.name, basis: one.basis })),
-  };
 }

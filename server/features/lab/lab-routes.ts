@@ -20,13 +20,8 @@ import {
   readLimitChoices,
   readLimits,
 } from '../limits/limit-service.ts';
-import {
-  answerQuestion,
-  confirmResults,
-  readLabImport,
-  undoResults,
-  uploadResults,
-} from './lab-import-service.ts';
+import { answerQuestion, confirmResults, undoResults, uploadResults } from './lab-import-service.ts';
+import { readLabImport } from './lab-import-view.ts';
 import { createLaboratory, createSamplePoint, readLab } from './lab-view.ts';
 
 const clockParams = siteRecordParams.extend({ clockId: recordId });

@@ -19,7 +19,9 @@ import { listNotes } from '../compare/compare-service.ts';
 import { compareTolerance } from '#shared/reconciliation/tolerance.ts';
 import { listAddresses, listNames } from '../people/people-repository.ts';
 import { siteDaysOf, siteOf } from '../sites/site-service.ts';
-import { collectQuarter, dueWords, quarterFigures, type Quarter } from './quarter-service.ts';
+import type { Quarter } from './quarter.ts';
+import { dueWords, quarterFigures } from './quarter-figures.ts';
+import { collectQuarter } from './quarter-service.ts';
 
 const workbookType = 'application/vnd.openxmlformats-officedocument.spreadsheetml.sheet';
 
@@ -265,24 +267,22 @@ export async function signReport(
     snapshotSha256,
   });
   const fileSha256 = await deps.files.put(bytes);
-  await tx
-    .insert(reports)
-    .values({
-      organisationId: context.organisationId,
-      id: input.id,
-      siteId,
-      quarter: quarterKey,
-      issue,
-      fileName: fileNameOf(quarter, `issue-${issue}`),
-      fileSha256,
-      snapshotSha256,
-      snapshot: figures,
-      changes,
-      signedById: context.personId,
-      signedAt,
-      certification,
-      trailHash: headHash,
-    });
+  await tx.insert(reports).values({
+    organisationId: context.organisationId,
+    id: input.id,
+    siteId,
+    quarter: quarterKey,
+    issue,
+    fileName: fileNameOf(quarter, `issue-${issue}`),
+    fileSha256,
+    snapshotSha256,
+    snapshot: figures,
+    changes,
+    signedById: context.personId,
+    signedAt,
+    certification,
+    trailHash: headHash,
+  });
   for (const to of await listAddresses(tx, siteId, ['manager', 'engineer', 'auditor'])) {
     await deps.mail.send(tx, {
       to,

@@ -29,21 +29,19 @@ export async function readTrail(
     .orderBy(desc(trailEntries.sequence))
     .limit(pageSize + 1);
   return {
-    rows: rows
-      .slice(0, pageSize)
-      .map((row) => ({
-        id: row.id,
-        sequence: row.sequence,
-        at: row.at,
-        by: names.get(row.personId) ?? 'somebody who has left',
-        action: row.action,
-        subjectType: row.subjectType,
-        subjectId: row.subjectId,
-        sentence: row.sentence,
-        reason: row.reason,
-        before: row.before,
-        after: row.after,
-      })),
+    rows: rows.slice(0, pageSize).map((row) => ({
+      id: row.id,
+      sequence: row.sequence,
+      at: row.at,
+      by: names.get(row.personId) ?? 'somebody who has left',
+      action: row.action,
+      subjectType: row.subjectType,
+      subjectId: row.subjectId,
+      sentence: row.sentence,
+      reason: row.reason,
+      before: row.before,
+      after: row.after,
+    })),
     nextBefore: rows.length > pageSize ? rows[pageSize - 1]!.sequence : null,
   };
 }

@@ -1,5 +1,5 @@
 import type ExcelJS from 'exceljs';
-import type { Quarter, QuarterStep } from '../../features/reports/quarter-service.ts';
+import type { Quarter, QuarterStep } from '../../features/reports/quarter.ts';
 import {
   addSheet,
   addTable,

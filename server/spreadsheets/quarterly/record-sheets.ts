@@ -1,6 +1,6 @@
 import type ExcelJS from 'exceljs';
 import { monthName } from '#shared/calendar/month.ts';
-import type { Quarter } from '../../features/reports/quarter-service.ts';
+import type { Quarter } from '../../features/reports/quarter.ts';
 import { addSheet, addTable, dayDate, formats, monthDate, type CellInput } from './sheet-tools.ts';
 
 /** Laboratory results, one per row, as they came. */

@@ -1,7 +1,7 @@
 import type ExcelJS from 'exceljs';
 import { monthName } from '#shared/calendar/month.ts';
 import { dayName } from '#shared/calendar/day.ts';
-import type { Quarter } from '../../features/reports/quarter-service.ts';
+import type { Quarter } from '../../features/reports/quarter.ts';
 import { balanceColumn, balanceFirstRow } from './balance-sheet.ts';
 import { addSheet, addTable, formats, letters, type CellInput, type ColumnSpec } from './sheet-tools.ts';
 import type { CompareRows } from './volume-sheets.ts';
@@ -83,7 +83,14 @@ export function fillSummarySheet(
     sheet.getCell(siteRow, column).font = { name: 'Work Sans', size: 10, bold: true };
   sheet.getCell(siteRow + 1, 1).value =
     'Totals are summed from unrounded values, so printed rows may not add to the total because of rounding.';
-  const limitHeader = siteRow + 3;
+  const leakHeader = addVerdicts(sheet, quarter, siteRow + 3);
+  const storeHeader = addLeakDetection(sheet, quarter, leakHeader);
+  addStores(sheet, quarter, storeHeader);
+  return { siteRow };
+}
+
+/** Limits with the value that decides and the verdict. @returns the row of the next table's header */
+function addVerdicts(sheet: ExcelJS.Worksheet, quarter: Quarter, limitHeader: number): number {
   const verdicts = quarter.verdicts.map((one, index): CellInput[] => [
     `${one.analyteName}, ${one.limit.statistic.replace('-', ' ')}`,
     monthName(one.month),
@@ -111,7 +118,11 @@ export function fillSummarySheet(
     verdicts,
     { freeze: false },
   );
-  const leakHeader = limitHeader + verdicts.length + 3;
+  return limitHeader + verdicts.length + 3;
+}
+
+/** Leak detection by sump and month. @returns the row of the next table's header */
+function addLeakDetection(sheet: ExcelJS.Worksheet, quarter: Quarter, leakHeader: number): number {
   addTable(
     sheet,
     leakHeader,
@@ -137,7 +148,11 @@ export function fillSummarySheet(
     ]),
     { freeze: false },
   );
-  const storeHeader = leakHeader + quarter.leakDetection.length + 3;
+  return leakHeader + quarter.leakDetection.length + 3;
+}
+
+/** Stores from opening to closing. */
+function addStores(sheet: ExcelJS.Worksheet, quarter: Quarter, storeHeader: number): void {
   addTable(
     sheet,
     storeHeader,
@@ -171,7 +186,6 @@ export function fillSummarySheet(
     }),
     { freeze: false },
   );
-  return { siteRow };
 }
 
 export interface CheckRow {

@@ -1,6 +1,6 @@
 import type ExcelJS from 'exceljs';
 import { volumeUnitsM3 } from '#shared/units/unit-factors.ts';
-import type { Quarter } from '../../features/reports/quarter-service.ts';
+import type { Quarter } from '../../features/reports/quarter.ts';
 import { balanceColumn, balanceFirstRow } from './balance-sheet.ts';
 import { addSheet, addTable, dayDate, formats, monthDate, type CellInput } from './sheet-tools.ts';
 

@@ -1,0 +1,36 @@
+import { dayName, daysBetween } from '#shared/calendar/day.ts';
+import { monthName, quarterName } from '#shared/calendar/month.ts';
+import type { Quarter } from './quarter.ts';
+
+/** The figures of the report page by name: what a later issue is compared with, and what the Checks sheet repeats. */
+export function quarterFigures(quarter: Quarter): Record<string, number> {
+  const figures: Record<string, number> = {};
+  for (const cell of quarter.cells) {
+    const own = quarter.cellMonths.filter((one) => one.cellCode === cell.code);
+    for (const one of own) {
+      figures[`${cell.code} predicted, ${monthName(one.month)}, m³`] = one.predictedM3;
+      if (one.measuredM3 !== null)
+        figures[`${cell.code} pumped, ${monthName(one.month)}, m³`] = one.measuredM3;
+    }
+    figures[`${cell.code} predicted, quarter, m³`] = own.reduce((sum, one) => sum + one.predictedM3, 0);
+    figures[`${cell.code} pumped, quarter, m³`] = own.reduce((sum, one) => sum + (one.measuredM3 ?? 0), 0);
+  }
+  for (const one of quarter.verdicts) {
+    if (one.verdict.valueText)
+      figures[
+        `${one.analyteName} at ${one.pointCode}, ${one.limit.quantity}, ${one.limit.statistic}, ${monthName(one.month)}, ${one.limit.unit}`
+      ] = Number(one.verdict.valueText.replace('<', ''));
+  }
+  for (const one of quarter.leakDetection)
+    if (one.lPerHaDay !== null)
+      figures[`${one.sumpCode} leak-detection rate, ${monthName(one.month)}, L/ha·d`] = one.lPerHaDay;
+  return figures;
+}
+
+export const quarterTitle = (quarter: Quarter): string =>
+  `${quarter.site.name}, leachate, ${quarterName(quarter.quarter)}`;
+
+export const dueWords = (quarter: Quarter, today: string): string => {
+  const left = daysBetween(today, quarter.dueOn);
+  return `${dayName(quarter.dueOn)}, ${left >= 0 ? `${left} days left` : `${-left} days late`}`;
+};
