@@ -9,6 +9,7 @@ import { insertMembership, personForInvitation } from '../features/people/people
 import type { Context, Dependencies } from '../http/route.ts';
 import { insertLaboratory, insertQualifier } from '../features/lab/lab-repository.ts';
 import { demoPeople } from './demo-people.ts';
+import type { DemoActors } from './demo-actors.ts';
 import { planDemo } from './demo-plan.ts';
 import { makeDemoSite } from './demo-site.ts';
 import { generateWeather } from './demo-weather.ts';
@@ -18,12 +19,6 @@ import { tellStory } from './load-story.ts';
 import { createRandom } from './random.ts';
 
 const seed = 20_260_301;
-
-export interface DemoActors {
-  /** Someone of the demo at the site, at a given moment. */
-  as: (role: (typeof demoPeople)[number]['key'], siteId: string | null) => Context;
-  at: (instant: string) => Dependencies;
-}
 
 async function makePeople(
   tx: Transaction,

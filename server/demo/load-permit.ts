@@ -4,7 +4,7 @@ import { insertPlanItems, insertSamplePoint, listAnalytes } from '../features/la
 import { insertLimits, insertPermit } from '../features/limits/limit-repository.ts';
 import type { DemoPlan } from './demo-plan.ts';
 import type { DemoIds } from './demo-site.ts';
-import type { DemoActors } from './load-demo.ts';
+import type { DemoActors } from './demo-actors.ts';
 import type { Random } from './random.ts';
 
 /** Limits after the pattern of 40 CFR 445.21, and a load limit invented for the demo. */

@@ -30,7 +30,7 @@ import {
   type DemoReading,
 } from './demo-volumes.ts';
 import type { DemoWeatherDay } from './demo-weather.ts';
-import type { DemoActors } from './load-demo.ts';
+import type { DemoActors } from './demo-actors.ts';
 import type { Random } from './random.ts';
 
 const rowsPerInsert = 2_000;

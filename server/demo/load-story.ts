@@ -20,7 +20,7 @@ import { createRoundNote } from '../features/readings/point-service.ts';
 import type { DemoPlan } from './demo-plan.ts';
 import { generateResults, resultsSheet, type DemoResult } from './demo-results.ts';
 import type { DemoIds } from './demo-site.ts';
-import type { DemoActors } from './load-demo.ts';
+import type { DemoActors } from './demo-actors.ts';
 import type { Random } from './random.ts';
 
 /** A month's results with the kept sheet they came in. */

@@ -1,10 +1,10 @@
 import * as z from 'zod';
 import { petMethods } from '../water-balance/engine-input.ts';
-import { optionalText, recordId, requiredText } from './text.ts';
+import { chosenId, optionalText, recordId, requiredText } from './text.ts';
 
 const share = (what: string, max = 1) =>
   z.coerce
-    .number(`Enter ${what}.`)
+    .number(`${what} must be a number.`)
     .min(0, `${what} must be 0 or more.`)
     .max(max, `${what} must be ${max} or less.`);
 
@@ -46,7 +46,7 @@ export const freezeInput = z.object({ id: recordId, note: optionalText(500) });
 
 export const compareNoteInput = z.object({
   id: recordId,
-  cellId: recordId,
+  cellId: chosenId('the cell'),
   month: z.string().regex(/^\d{4}-\d{2}$/),
   cause: requiredText('a cause', 120),
   state: z.enum(['open', 'explained', 'reconciled'], { error: 'Choose how it stands.' }),

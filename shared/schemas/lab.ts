@@ -1,7 +1,8 @@
 import * as z from 'zod';
 import { qualifierMeanings } from '../lab/qualifier-meanings.ts';
 import { dayText, optionalDay } from './days.ts';
-import { optionalId, optionalText, recordId, requiredText } from './text.ts';
+import { optionalWholeNumber, wholeNumber } from './numbers.ts';
+import { chosenId, optionalId, optionalText, recordId, requiredText } from './text.ts';
 
 export const laboratoryInput = z.object({
   id: recordId,
@@ -68,9 +69,9 @@ const limitValue = z.preprocess(
 export const limitInput = z
   .object({
     id: recordId,
-    permitId: recordId,
-    samplePointId: recordId,
-    analyteId: recordId,
+    permitId: chosenId('the permit'),
+    samplePointId: chosenId('the sample point'),
+    analyteId: chosenId('the parameter'),
     fraction: z.string().trim().default(''),
     flowPlaceId: optionalId,
     statistic: z.enum(['daily-maximum', 'daily-minimum', 'monthly-average', 'range'], {
@@ -82,23 +83,14 @@ export const limitInput = z
     highText: limitValue,
     unit: requiredText('the unit', 20),
     isInclusive: z.boolean().default(true),
-    samplesMin: z.coerce.number('Enter how many samples a month are required.').int().min(0).max(31),
+    samplesMin: wholeNumber('the count of samples required a month', 0, 31),
     belowDetectionRule: z.enum(['zero', 'half', 'full', 'carried']),
     roundingMode: z.enum(['half-up', 'half-even']).default('half-up'),
-    decimals: z.coerce.number('Enter the decimals of the limit.').int().min(0).max(9),
+    decimals: wholeNumber('the count of decimals of the limit', 0, 4),
     citation: requiredText('the page or part of the permit'),
-    noticeHours: z.preprocess(
-      (typed) => (typed === '' ? undefined : typed),
-      z.coerce.number().int().min(1).max(720).optional(),
-    ),
-    writtenNoticeDays: z.preprocess(
-      (typed) => (typed === '' ? undefined : typed),
-      z.coerce.number().int().min(1).max(90).optional(),
-    ),
-    resampleDays: z.preprocess(
-      (typed) => (typed === '' ? undefined : typed),
-      z.coerce.number().int().min(1).max(180).optional(),
-    ),
+    noticeHours: optionalWholeNumber('the hours until the call', 1, 720),
+    writtenNoticeDays: optionalWholeNumber('the days until the letter', 1, 90),
+    resampleDays: optionalWholeNumber('the days until the repeat sample', 1, 180),
     fromOn: dayText('the first day of the limit'),
     toOn: optionalDay('the last day of the limit'),
   })

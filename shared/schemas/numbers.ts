@@ -41,6 +41,20 @@ export const typedNumber = ({ what, unit, min, minExclusive, max, aboveMax, deci
       return parsed.value;
     });
 
+/** A whole number within bounds; one sentence names both. @param what the label's words */
+export const wholeNumber = (what: string, min: number, max: number) => {
+  const label = what[0]!.toUpperCase() + what.slice(1);
+  const sentence = `${label} must be a whole number from ${min} to ${max}.`;
+  return z.coerce.number(sentence).int(sentence).min(min, sentence).max(max, sentence);
+};
+
 /** The same, but may be left empty. */
+export const optionalWholeNumber = (what: string, min: number, max: number) =>
+  z.preprocess(
+    (typed) => (typed === '' || typed === null ? undefined : typed),
+    wholeNumber(what, min, max).optional(),
+  );
+
+/** The same as a typed number, but may be left empty. */
 export const optionalNumber = (rule: NumberRule) =>
   z.preprocess((typed) => (typed === '' || typed === null ? undefined : typed), typedNumber(rule).optional());

@@ -2,8 +2,8 @@ import * as z from 'zod';
 import { isDay } from '../calendar/day.ts';
 import { volumeUnits } from '../units/unit-factors.ts';
 import { dayText } from './days.ts';
-import { optionalNumber, typedNumber } from './numbers.ts';
-import { optionalId, optionalText, recordId, requiredText } from './text.ts';
+import { optionalNumber, optionalWholeNumber, typedNumber } from './numbers.ts';
+import { chosenId, optionalId, optionalText, recordId, requiredText } from './text.ts';
 
 const wallTimeHint = 'Enter the day and time of the reading, like 2026-03-04 07:50.';
 
@@ -25,7 +25,7 @@ export const observedFields = {
 
 export const readingInput = z.object({
   id: recordId,
-  meterId: recordId,
+  meterId: chosenId('the meter'),
   registerText: z
     .string({ error: 'Enter what the register shows.' })
     .trim()
@@ -54,16 +54,11 @@ export type LevelInput = z.input<typeof levelInput>;
 
 export const rainInput = z.object({
   id: recordId,
-  stationId: recordId,
+  stationId: chosenId('the gauge'),
   kind: z.enum(['measured', 'trace', 'accumulated', 'snow-water']).default('measured'),
   depthText: z.string().trim().max(40).default(''),
   unit: z.enum(['mm', 'in']).default('mm'),
-  accumulatedDays: z.coerce
-    .number()
-    .int()
-    .min(2, 'An accumulated reading covers at least 2 days.')
-    .max(31)
-    .optional(),
+  accumulatedDays: optionalWholeNumber('the days since the gauge was last emptied', 2, 31),
   isConfirmed: z.boolean().default(false),
   ...observedFields,
 });
@@ -89,7 +84,7 @@ export const notReadReasonNames: Record<(typeof notReadReasons)[number], string>
 export const notReadInput = z
   .object({
     id: recordId,
-    roundPointId: recordId,
+    roundPointId: chosenId('the point of the round'),
     siteDay: dayText('the day'),
     reasonCode: z.enum(notReadReasons, { error: 'Choose why it was not read.' }),
     note: optionalText(),
@@ -112,8 +107,8 @@ export const loadOutInput = z
     ticket: requiredText('the ticket number', 40),
     hauler: requiredText('the hauler', 80),
     truck: optionalText(40),
-    fromPlaceId: recordId,
-    toPlaceId: recordId,
+    fromPlaceId: chosenId('where the water comes from'),
+    toPlaceId: chosenId('where the water goes'),
     nominalVolumeM3: optionalNumber({
       what: 'the nominal volume',
       unit: 'm³',
@@ -159,17 +154,14 @@ const registerText = z.preprocess(
 export const meterEventInput = z
   .object({
     id: recordId,
-    meterId: recordId,
+    meterId: chosenId('the meter'),
     kind: z.enum(
       ['replace', 'rollover', 'reset', 'power-loss', 'multiplier-changed', 'bypassed', 'suspect'],
       { error: 'Choose what happened.' },
     ),
     registerBefore: registerText,
     registerAfter: registerText,
-    digitsAfter: z.preprocess(
-      (typed) => (typed === '' ? undefined : typed),
-      z.coerce.number().int().min(3).max(12).optional(),
-    ),
+    digitsAfter: optionalWholeNumber('the count of digits of the new register', 3, 12),
     unitAfter: z.preprocess((typed) => (typed === '' ? undefined : typed), z.enum(volumeUnits).optional()),
     multiplierAfter: optionalNumber({ what: 'the new multiplier', unit: '', minExclusive: 0, decimals: 6 }),
     note: optionalText(),
@@ -205,7 +197,7 @@ export const estimateMethods = {
 
 export const estimateInput = z.object({
   id: recordId,
-  meterId: recordId,
+  meterId: chosenId('the meter'),
   fromAt: z.iso.datetime({ offset: true, error: 'Enter the start of the span.' }),
   toAt: z.iso.datetime({ offset: true, error: 'Enter the end of the span.' }),
   volumeM3: typedNumber({ what: 'the estimated volume', unit: 'm³', min: 0 }),
@@ -219,6 +211,6 @@ export type EstimateInput = z.input<typeof estimateInput>;
 
 export const settleInput = z.object({
   id: recordId,
-  chosenReadingId: recordId,
+  chosenReadingId: chosenId('one of the two readings'),
   reason: requiredText('the reason', 1000),
 });

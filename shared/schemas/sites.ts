@@ -3,8 +3,8 @@ import { isTimeZone } from '../calendar/site-days.ts';
 import { volumeUnits } from '../units/unit-factors.ts';
 import { coverKinds } from '../water-balance/cover-types.ts';
 import { dayText, monthText, optionalDay } from './days.ts';
-import { optionalNumber, typedNumber } from './numbers.ts';
-import { optionalId, optionalText, recordId, requiredText } from './text.ts';
+import { optionalNumber, typedNumber, wholeNumber } from './numbers.ts';
+import { chosenId, optionalId, optionalText, recordId, requiredText } from './text.ts';
 
 const code = (what: string) =>
   requiredText(what, 20).regex(
@@ -41,11 +41,7 @@ export type SiteInput = z.input<typeof siteInput>;
 export const siteSettingsInput = z.object({
   name: requiredText('the name of the site', 80),
   displayUnits: z.enum(['metric', 'us']),
-  reportDueDays: z.coerce
-    .number('Enter the days as a whole number.')
-    .int()
-    .min(1, 'Enter at least 1 day.')
-    .max(366, 'Enter at most 366 days.'),
+  reportDueDays: wholeNumber('the days until the report is due', 1, 366),
   certificationText: optionalText(4000),
 });
 export type SiteSettingsInput = z.input<typeof siteSettingsInput>;
@@ -54,7 +50,7 @@ export const plotInput = z.object({
   id: recordId,
   name: requiredText('the name of the plot', 60),
   areaM2: typedNumber({ what: 'the area of the plot', unit: 'm²', minExclusive: 0, max: 2_000_000 }),
-  coverTypeId: recordId,
+  coverTypeId: chosenId('the cover'),
 });
 
 export const cellInput = z.object({
@@ -70,9 +66,9 @@ export const cellInput = z.object({
 export type CellInput = z.input<typeof cellInput>;
 
 export const coverChangeInput = z.object({
-  plotId: recordId,
+  plotId: chosenId('the plot'),
   onDay: dayText('the day the ground was covered'),
-  coverTypeId: recordId,
+  coverTypeId: chosenId('the cover'),
   areaM2: typedNumber({ what: 'the area that was covered', unit: 'm²', minExclusive: 0 }),
   newPlotId: recordId,
   restPlotId: recordId,
@@ -84,7 +80,7 @@ export type CoverChangeInput = z.input<typeof coverChangeInput>;
 
 export const coverTypeInput = z.object({
   id: recordId,
-  kind: z.enum(coverKinds),
+  kind: z.enum(coverKinds, { error: 'Choose the kind of cover.' }),
   name: requiredText('the name of the cover', 60),
   availableWaterMm: typedNumber({ what: 'the available water of the soil', unit: 'mm', min: 0, max: 1500 }),
   membranePassFraction: z.preprocess(
@@ -93,7 +89,7 @@ export const coverTypeInput = z.object({
   ),
   runoffCoefficientWet: fractionOf('the runoff share in the wet season'),
   runoffCoefficientDry: fractionOf('the runoff share in the dry season'),
-  runoffDestination: z.enum(['storm-water', 'leachate']),
+  runoffDestination: z.enum(['storm-water', 'leachate'], { error: 'Choose where the runoff goes.' }),
   petFactor: typedNumber({ what: 'the evapotranspiration factor', unit: '', min: 0, max: 1.5 }),
   source: requiredText('the source of these values'),
 });
@@ -101,7 +97,7 @@ export type CoverTypeInput = z.input<typeof coverTypeInput>;
 
 export const wasteInput = z.object({
   id: recordId,
-  cellId: recordId,
+  cellId: chosenId('the cell'),
   month: monthText,
   massT: typedNumber({ what: 'the waste placed', unit: 't', min: 0 }),
   bulkDensityTPerM3: typedNumber({
@@ -119,10 +115,10 @@ export type WasteInput = z.input<typeof wasteInput>;
 
 export const sumpInput = z.object({
   id: recordId,
-  placeId: recordId,
-  cellId: recordId,
+  placeId: chosenId('the place'),
+  cellId: chosenId('the cell'),
   code: code('the code of the sump'),
-  kind: z.enum(['primary', 'leak-detection']),
+  kind: z.enum(['primary', 'leak-detection'], { error: 'Choose the kind of sump.' }),
   areaServedM2: typedNumber({ what: 'the area the sump drains', unit: 'm²', minExclusive: 0 }),
   linerLowPointAboveFloorM: typedNumber({
     what: 'the height of the liner’s low point above the sump floor',
@@ -143,7 +139,9 @@ export type SumpInput = z.input<typeof sumpInput>;
 
 export const placeInput = z.object({
   id: recordId,
-  kind: z.enum(['header', 'treatment', 'outfall', 'sewer', 'haulage', 'truck']),
+  kind: z.enum(['header', 'treatment', 'outfall', 'sewer', 'haulage', 'truck'], {
+    error: 'Choose the kind of place.',
+  }),
   name: requiredText('the name of the place', 60),
 });
 
@@ -151,15 +149,11 @@ export const meterInput = z.object({
   id: recordId,
   code: code('the code of the meter'),
   name: requiredText('the name of the meter', 60),
-  fromPlaceId: recordId,
-  toPlaceId: recordId,
+  fromPlaceId: chosenId('where the water comes from'),
+  toPlaceId: chosenId('where the water goes'),
   sumpId: optionalId,
-  digits: z.coerce
-    .number('Enter how many digits the register shows.')
-    .int()
-    .min(3, 'A register shows at least 3 digits.')
-    .max(12, 'A register shows at most 12 digits.'),
-  decimals: z.coerce.number().int().min(0).max(4).default(0),
+  digits: wholeNumber('the count of digits of the register', 3, 12),
+  decimals: wholeNumber('the count of decimals of the register', 0, 4).default(0),
   unit: z.enum(volumeUnits, { error: 'Choose the unit printed on the register.' }),
   multiplier: typedNumber({ what: 'the multiplier', unit: '', minExclusive: 0, max: 100_000, decimals: 6 }),
   rateM3PerDayMax: typedNumber({ what: 'the largest plausible day', unit: 'm³/d', minExclusive: 0 }),
@@ -169,7 +163,7 @@ export type MeterInput = z.input<typeof meterInput>;
 
 export const storeInput = z.object({
   id: recordId,
-  placeId: recordId,
+  placeId: chosenId('the place'),
   code: code('the code of the store'),
   name: requiredText('the name of the store', 60),
   isCovered: z.boolean(),

@@ -17,6 +17,8 @@ export const optionalText = (lengthMax = 2000) =>
     .transform((text) => (text === '' ? undefined : text));
 
 export const recordId = z.uuid('This is not the id of a record.');
+/** A record a person chooses from a list. @param what the label's words, for the message */
+export const chosenId = (what: string) => z.uuid(`Choose ${what}.`);
 /** A choice that may be left empty. */
 export const optionalId = z.preprocess(
   (chosen) => (chosen === '' || chosen === null ? undefined : chosen),

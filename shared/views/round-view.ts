@@ -4,6 +4,8 @@ export interface PointDone {
   id: string;
   text: string;
   at: string;
+  /** Instant it was seen, to keep it when it is corrected. */
+  observedAt: string;
   by: string;
   state: 'stored' | 'held' | 'dispute';
 }

@@ -6,11 +6,9 @@ export const queryClient = new QueryClient({
   defaultOptions: {
     queries: {
       staleTime: 10_000,
-      networkMode: 'offlineFirst',
-      retry: (count, error) =>
-        count < 2 &&
-        error instanceof ApiProblem &&
-        (error.document.status === 0 || error.document.status === 503),
+      // Asked without a network too: the page then says so at once and offers to try again.
+      networkMode: 'always',
+      retry: (count, error) => count < 2 && error instanceof ApiProblem && error.document.status === 503,
     },
   },
 });

@@ -50,7 +50,8 @@ describe('the operator, on a phone', () => {
     await point('P1 plant inflow').getByRole('button').first().click();
     await page.getByLabel(/^Register/).fill('12');
     await page.getByRole('button', { name: 'Save P1' }).click();
-    await page.getByText(/12/).first().waitFor();
+    await page.getByRole('group', { name: 'A question about P1 plant inflow' }).waitFor();
+    await page.getByRole('button', { name: 'It was read wrong: type it again' }).waitFor();
     await expect
       .poll(
         async () =>

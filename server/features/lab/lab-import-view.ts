@@ -5,7 +5,7 @@ import type { Context } from '../../http/route.ts';
 import * as importRepository from '../imports/import-repository.ts';
 import { siteOf } from '../sites/site-service.ts';
 import * as repository from './lab-repository.ts';
-import type { countsOf} from './lab-import-staging.ts';
+import type { countsOf } from './lab-import-staging.ts';
 import { openImport, type StoredReading } from './lab-import-staging.ts';
 
 /** An upload as the check page shows it, in its three bands. */

@@ -1,12 +1,11 @@
 import { firstDay, lastDay } from '#shared/calendar/day.ts';
 import { addMonths, type Month } from '#shared/calendar/month.ts';
 import type * as z from 'zod';
-import { analyteTemplates } from '#shared/lab/analyte-templates.ts';
 import type { laboratoryInput, samplePointInput } from '#shared/schemas/lab.ts';
 import type { LabView } from '#shared/views/lab-view.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import type { Transaction } from '../../db/transaction.ts';
-import type { Context, Dependencies } from '../../http/route.ts';
+import type { Context } from '../../http/route.ts';
 import * as importRepository from '../imports/import-repository.ts';
 import { listNames } from '../people/people-repository.ts';
 import { siteOf } from '../sites/site-service.ts';
@@ -128,17 +127,4 @@ export async function createLaboratory(
     after: input,
   });
   return { id: input.id };
-}
-
-/** Parameters a new organisation starts with; an organisation that has some keeps its own. */
-export async function ensureAnalytes(tx: Transaction, context: Context, deps: Dependencies): Promise<void> {
-  if ((await repository.listAnalytes(tx)).length) return;
-  await repository.insertAnalytes(
-    tx,
-    analyteTemplates.map((template) => ({
-      organisationId: context.organisationId,
-      id: deps.newId(),
-      ...template,
-    })),
-  );
 }

@@ -121,8 +121,8 @@ export async function findLiveTicket(tx: Transaction, siteId: string, hauler: st
     .where(
       and(
         eq(loadsOut.siteId, siteId),
-        eq(loadsOut.hauler, hauler),
-        eq(loadsOut.ticket, ticket),
+        sql`lower(${loadsOut.hauler}) = lower(${hauler})`,
+        sql`lower(${loadsOut.ticket}) = lower(${ticket})`,
         isLive(loadsOut),
       ),
     );

@@ -1,4 +1,5 @@
 import { addDays, type Day } from '#shared/calendar/day.ts';
+import { monthName, type Month } from '#shared/calendar/month.ts';
 import { createSiteDays, type SiteDays } from '#shared/calendar/site-days.ts';
 import { computeDayVolumes, type DayVolume } from '#shared/ledger/day-volumes.ts';
 import { computeIntervals, type Interval, type MeterFacts } from '#shared/ledger/intervals.ts';
@@ -157,6 +158,7 @@ function entryRows(
 /**
  * Computes the days a new fact touches again, and posts reversals and replacements for those that differ.
  * Days in closed months are not touched: the change waits as pending.
+ * @returns the closed months for which the change waits
  */
 export async function repostMeter(
   tx: Transaction,
@@ -165,11 +167,11 @@ export async function repostMeter(
   record: SiteRecord,
   meterId: string,
   cause: Cause,
-): Promise<void> {
+): Promise<Month[]> {
   const siteId = siteOf(context);
   await repository.lockSiteLedger(tx, siteId);
   const meter = record.meters.find((one) => one.id === meterId);
-  if (!meter) return;
+  if (!meter) return [];
   const days = createSiteDays(record.dayRules);
   const span = await affectedSpan(tx, meterId, days, cause.atMs, cause.toMs ?? cause.atMs);
   const facts = await readMeterFacts(tx, record, meter, span.from, span.to);
@@ -188,10 +190,17 @@ export async function repostMeter(
       month,
       meterId,
       factId: cause.factId,
-      sentence: `${cause.why}, meter ${meter.code}: waits for ${month} to be reopened.`,
+      sentence: `${cause.why}, meter ${meter.code}: waits for ${monthName(month)} to be reopened.`,
     });
   }
+  return plan.pendingMonths;
 }
+
+/** What a person is told whose entry waits for a closed month; null when none does. */
+export const waitsWarning = (months: Month[]): string | null =>
+  months.length
+    ? `${months.map(monthName).join(' and ')} ${months.length > 1 ? 'are' : 'is'} closed. The entry is kept and counts when the site manager reopens the month.`
+    : null;
 
 /** Posts every day of a meter again over a span: used when a month is reopened. */
 export async function repostMonth(

@@ -52,10 +52,11 @@ async function meterLines(
         if (notRead.some((one) => one.roundPointId === point.id && one.siteDay === day)) return 'not-read';
         return day >= today || day < meter.installedOn ? 'none' : 'missing';
       });
+      const name = `${meter.code} ${meter.name}`;
       const missing = monthDays(month).filter((_, index) => days[index] === 'missing');
       if (missing.length)
         lines.push({
-          subject: `${meter.name}, ${listDays(missing)}.`,
+          subject: `${name}, ${listDays(missing)}.`,
           sentence: 'No reading and no reason given.',
           link: `round/${missing[0]}`,
           linkText: 'Enter or give the reason',
@@ -63,28 +64,41 @@ async function meterLines(
       const held = monthDays(month).filter((_, index) => days[index] === 'held');
       if (held.length)
         lines.push({
-          subject: `${meter.name}, ${listDays(held)}.`,
+          subject: `${name}, ${listDays(held)}.`,
           sentence: 'A reading is held until somebody says what happened.',
           link: `round/${held[0]}`,
           linkText: 'Answer',
         });
+      const rateMax = Number(meter.rateM3PerDayMax);
+      for (const day of monthDays(month)) {
+        const volumeM3 = entries
+          .filter((one) => one.meterId === meter.id && one.siteDay === day)
+          .reduce((sum, one) => sum + Number(one.volumeM3), 0);
+        if (volumeM3 <= rateMax) continue;
+        lines.push({
+          subject: `${name}, ${dayNameShort(day)}.`,
+          sentence: `${Math.round(volumeM3)} m³ is more than a plausible day of ${rateMax} m³.`,
+          link: `round/${day}`,
+          linkText: 'Look at the reading',
+        });
+      }
       const spread = monthDays(month).filter((_, index) => days[index] === 'apportioned');
       if (spread.length)
         lines.push({
-          subject: `${meter.name}, ${listDays(spread)}.`,
+          subject: `${name}, ${listDays(spread)}.`,
           sentence: 'Measured over several days, spread evenly.',
           link: `ledger/${month}`,
           linkText: 'See the split',
         });
       for (const one of notRead.filter((row) => row.roundPointId === point.id)) {
         lines.push({
-          subject: `${meter.name}, ${dayNameShort(one.siteDay)}.`,
+          subject: `${name}, ${dayNameShort(one.siteDay)}.`,
           sentence: `Not read: ${notReadReasonNames[one.reasonCode as keyof typeof notReadReasonNames].toLowerCase()}.${one.note ? ` ${one.note}` : ''}`,
           link: null,
           linkText: null,
         });
       }
-      return { name: meter.name, series: 'pumped', days };
+      return { name, series: 'pumped', days };
     });
   return { grid, lines };
 }

@@ -155,7 +155,7 @@ export const listRoundNotes = (tx: Transaction, siteId: string, lastDay: string)
     .from(roundNotes)
     .where(and(eq(roundNotes.siteId, siteId), lte(roundNotes.siteDay, lastDay)))
     .orderBy(desc(roundNotes.sequence))
-    .limit(3);
+    .limit(10);
 
 export const listRainDays = (tx: Transaction, stationIds: string[], firstDay: string, lastDay: string) =>
   tx

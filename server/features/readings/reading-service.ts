@@ -12,7 +12,7 @@ import type { VolumeUnit } from '#shared/units/unit-factors.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
-import { recomputeDays, repostMeter } from '../ledger/posting-service.ts';
+import { recomputeDays, repostMeter, waitsWarning } from '../ledger/posting-service.ts';
 import { readSite, siteDaysOf, siteOf, type SiteRecord } from '../sites/site-service.ts';
 import { resolveObservedAt } from './observed-time.ts';
 import * as repository from './reading-repository.ts';
@@ -66,7 +66,7 @@ function registerValueOf(text: string, spec: RegisterSpec, label: string): strin
 }
 
 /** The reading before, on the register as it is now: a replacement in between starts from what the new register showed. */
-async function lastOnSameRegister(
+export async function lastOnSameRegister(
   tx: Transaction,
   record: SiteRecord,
   meterId: string,
@@ -166,7 +166,7 @@ export async function createReading(
     reason: input.reason ?? input.note,
     after: { ...input, siteDay: observed.siteDay },
   });
-  await repostMeter(tx, context, deps, record, meter.id, {
+  const waiting = await repostMeter(tx, context, deps, record, meter.id, {
     atMs: observed.observedAtMs,
     factId: input.id,
     why: `Reading ${new Decimal(registerValue).toFixed()} of ${dayName(observed.siteDay)}`,
@@ -177,6 +177,7 @@ export async function createReading(
     siteDay: observed.siteDay,
     observedAt: observed.observedAt,
     check,
+    warning: waitsWarning(waiting),
   };
 }
 

@@ -122,6 +122,7 @@ async function meterPoint(
       id: one.id,
       text: one.typedText,
       at: local(one.observedAt),
+      observedAt: one.observedAt,
       by: names.get(one.recordedById) ?? '',
       state:
         one.answer === 'held'
@@ -132,7 +133,7 @@ async function meterPoint(
     };
   });
   return {
-    name: meter.name,
+    name: `${meter.code} ${meter.name}`,
     code: meter.code,
     register: registerAt(record, meterId, endMs),
     rateM3PerDayMax: Number(meter.rateM3PerDayMax),
@@ -177,6 +178,7 @@ async function levelPoint(
         id: one.id,
         text: `${Number(one.levelM)} m`,
         at: local(one.observedAt),
+        observedAt: one.observedAt,
         by: names.get(one.recordedById) ?? '',
         state: 'stored',
       })),
@@ -197,7 +199,9 @@ async function rainPoint(
   const mine = rows.filter((one) => one.siteDay === addDays(day, -1) && one.precipitationMm !== null);
   const before = rows.find((one) => one.siteDay === addDays(day, -2));
   const words = (row: (typeof rows)[number]) =>
-    row.kind === 'trace' ? 'trace' : `${Number(row.precipitationMm)} mm`;
+    row.kind === 'trace'
+      ? 'trace'
+      : `${Number(row.precipitationMm)} mm${row.accumulatedDays ? ` over ${row.accumulatedDays} days` : ''}`;
   return {
     name: station?.name ?? '',
     code: '',
@@ -213,6 +217,7 @@ async function rainPoint(
       id: one.id,
       text: words(one),
       at: local(one.recordedAt),
+      observedAt: one.recordedAt,
       by: names.get(one.recordedById) ?? '',
       state: 'stored',
     })),

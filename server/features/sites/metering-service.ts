@@ -8,6 +8,7 @@ import type { Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
 import { repostMeter } from '../ledger/posting-service.ts';
 import { resolveObservedAt } from '../readings/observed-time.ts';
+import { lastOnSameRegister } from '../readings/reading-service.ts';
 import * as repository from './site-repository.ts';
 import { readSite, siteOf, type SiteRecord } from './site-service.ts';
 
@@ -194,6 +195,12 @@ export async function addMeterEvent(
   const meter = record.meters.find((one) => one.id === input.meterId);
   if (!meter) throw fieldProblem('/meterId', 'Choose a meter of this site.');
   const observed = await resolveObservedAt(tx, siteId, deps.now(), input);
+  const last = await lastOnSameRegister(tx, record, meter.id, observed.observedAt);
+  if (last && input.registerBefore && Number(input.registerBefore) < Number(last.registerValue))
+    throw fieldProblem(
+      '/registerBefore',
+      `Meter ${meter.code} showed ${Number(last.registerValue)} before. Enter what the old register showed last, or correct that reading first.`,
+    );
   await repository.insertMeterEvent(tx, {
     organisationId: context.organisationId,
     id: input.id,

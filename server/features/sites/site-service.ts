@@ -10,7 +10,7 @@ import { remembered } from '../../db/remembered-reads.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import { sha256Of } from '../../files/file-store.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
-import { ensureAnalytes } from '../lab/lab-view.ts';
+import { ensureAnalytes } from '../lab/analyte-service.ts';
 import * as repository from './site-repository.ts';
 
 /** Site of a call whose route carries a site id. */

@@ -1,160 +1,64 @@
-import { useState } from 'react';
-import { checkReading, type ReadingCheck } from '#shared/ledger/check-reading.ts';
-import { parseNumber } from '#shared/ledger/parse-number.ts';
+import { useId, useState } from 'react';
 import { volumeUnitsM3 } from '#shared/units/unit-factors.ts';
-import type { RoundPointView, RoundView } from '#shared/views/round-view.ts';
+import type { PointDone, RoundPointView, RoundView } from '#shared/views/round-view.ts';
+import { usePlace } from '../../app/place.ts';
 import { formatLocal, formatNumber } from '../../lib/format-quantity.ts';
+import { newId } from '../../lib/new-id.ts';
+import { useWrite } from '../../lib/record.ts';
+import { CheckLine, checkOf, registerProblem, unitOf } from './meter-check.tsx';
+import { OddValue } from './odd-value.tsx';
 import { CounterField, ReadAt, SaveLine } from './point-parts.tsx';
 import { useSave } from './use-save.ts';
 
-/** The check the server will make, made while typing; null while there is nothing to check. */
-function liveCheck(point: RoundPointView, text: string): ReadingCheck | null {
-  const parsed = parseNumber(text, { decimals: point.register!.decimals });
-  if (parsed.kind !== 'number' || !point.last) return null;
-  return checkReading({
-    spec: point.register!,
-    rateM3PerDayMax: point.rateM3PerDayMax!,
-    last: { registerValue: point.last.value, observedAtMs: Date.parse(point.last.observedAt) },
-    next: { registerValue: parsed.value, observedAtMs: Date.now() },
-    usualM3PerDay: point.usual ? (point.usual.lowM3 + point.usual.highM3) / 2 : null,
-  });
-}
-
-const hours = (value: number) => `${value.toFixed(1)} h`;
-
-function CheckLine({ point, check }: { point: RoundPointView; check: ReadingCheck }) {
-  const usual = point.usual
-    ? ` Usual day: ${formatNumber(point.usual.lowM3, 0)} to ${formatNumber(point.usual.highM3, 0)} m³.`
-    : '';
-  if (check.kind === 'plain' || check.kind === 'rollover') {
-    return (
-      <p>
-        <span className="font-semibold">{formatNumber(Number(check.volumeM3), 1)} m³</span> in{' '}
-        {hours(check.hours)}
-        {check.kind === 'rollover' ? ', if the register went past its last digit' : ''}.{usual}
-      </p>
-    );
-  }
-  if (check.kind === 'too-fast')
-    return (
-      <p className="text-warn font-medium">
-        {formatNumber(Number(check.volumeM3), 0)} m³ in {hours(check.hours)} is more than this pump can move (
-        {formatNumber(point.rateM3PerDayMax!, 0)} m³/d).{usual}
-      </p>
-    );
-  if (check.kind === 'went-down')
-    return (
-      <p className="text-warn font-medium">
-        This is {formatNumber(Number(check.shortfall), 0)} m³ less than the last reading.
-      </p>
-    );
-  return null;
-}
-
-interface Question {
-  check: ReadingCheck;
-  heldId: string;
-  text: string;
-}
-
-/** Asked under the point, after the value is safe: it stays out of the totals until answered, and blocks nothing. */
-function OddValue({
-  point,
-  question,
-  onAnswer,
-  onRetype,
-}: {
-  point: RoundPointView;
-  question: Question;
-  onAnswer: (answer: 'rollover' | 'confirmed', reason: string) => void;
-  onRetype: () => void;
-}) {
-  const { check } = question;
-  const hint =
-    (check.kind === 'went-down' || check.kind === 'too-fast') && check.transposed ? check.transposed : null;
-  return (
-    <div className="box box-warn grid gap-3" role="group" aria-label={`A question about ${point.name}`}>
-      <p className="font-semibold text-lg">
-        {check.kind === 'too-fast'
-          ? 'This is more than the pump can move. What happened?'
-          : check.kind === 'rollover'
-            ? 'The register went down. Did it pass its last digit?'
-            : 'This is less than last time. What happened?'}
-      </p>
-      <p>
-        Saved as you typed it. It stays out of the totals until this is answered.
-        {hint && ` ${hint} would fit: two digits exchanged?`}
-      </p>
-      <button type="button" className="choice" onClick={onRetype}>
-        I read it wrong: type it again
-      </button>
-      {check.kind === 'rollover' && (
-        <button
-          type="button"
-          className="choice"
-          onClick={() => onAnswer('rollover', 'The register passed its last digit')}
-        >
-          The register went past its last digit: {formatNumber(Number(check.volumeM3), 1)} m³
-        </button>
-      )}
-      {check.kind === 'too-fast' && (
-        <button
-          type="button"
-          className="choice"
-          onClick={() => onAnswer('confirmed', 'Read twice, it really shows this')}
-        >
-          It really shows this, I read it twice
-        </button>
-      )}
-      {check.kind !== 'too-fast' && (
-        <p className="hint">
-          Was the meter exchanged or reset? Leave this open and tell the supervisor, who records it with both
-          readings.
-        </p>
-      )}
-    </div>
-  );
-}
-
-/** Reading of one register: last value, expected day, unit and digits stand there before typing. */
-export function MeterPoint({
-  point,
-  round,
-  isToday,
-  onDone,
-}: {
+interface MeterProps {
   point: RoundPointView;
   round: RoundView;
   isToday: boolean;
   onDone: () => void;
-}) {
+}
+
+/** Entry of one register; a correction keeps the time of what it replaces, and says why. */
+function RegisterForm({
+  point,
+  round,
+  isToday,
+  replaces,
+  onDone,
+  onWarning,
+}: MeterProps & { replaces: PointDone | null; onWarning: (warning: string) => void }) {
   const register = point.register!;
   const [text, setText] = useState('');
-  const [at, setAt] = useState<string | null>(isToday ? null : `${round.day}T07:30`);
-  const [question, setQuestion] = useState<Question | null>(null);
-  const { state, save, reset } = useSave('/readings', `${point.name}: ${text}`);
-  const check = at === null ? liveCheck(point, text) : null;
-  const when = at === null ? { observedAt: new Date().toISOString() } : { observedLocal: at };
-  const send = async (answer: 'none' | 'rollover' | 'confirmed', extra: Record<string, unknown> = {}) => {
-    const saved = await save({ meterId: point.subjectId, registerText: text, answer, ...when, ...extra });
+  const [reason, setReason] = useState(replaces?.state === 'held' ? 'Read wrong, typed again' : '');
+  const [at, setAt] = useState<string | null>(replaces ? replaces.at : isToday ? null : `${round.day}T07:30`);
+  const { state, save, refuse } = useSave('/readings', `${point.name}: ${text} ${unitOf(point)}`);
+  const reasonId = useId();
+  const isSameTime = replaces !== null && at === replaces.at;
+  const check = checkOf(
+    point,
+    text,
+    isSameTime ? Date.parse(replaces.observedAt) : at === null ? Date.now() : Date.parse(`${at}:00Z`),
+  );
+  const send = async () => {
+    const problem = registerProblem(point, text);
+    if (problem) return refuse(problem);
+    if (replaces && reason.trim() === '') return refuse('Say why the reading is replaced.');
+    const when = isSameTime
+      ? { observedAt: replaces.observedAt }
+      : at === null
+        ? { observedAt: new Date().toISOString() }
+        : { observedLocal: at };
+    const saved = await save({
+      meterId: point.subjectId,
+      registerText: text,
+      answer: 'none',
+      ...when,
+      ...(replaces ? { supersedesId: replaces.id, reason } : {}),
+    });
     if (!saved) return;
-    if (saved.state === 'held' && saved.check) setQuestion({ check: saved.check, heldId: saved.id, text });
-    else onDone();
+    setText('');
+    if (saved !== 'kept' && saved.warning) onWarning(saved.warning);
+    else if (saved === 'kept' || saved.state === 'stored') onDone();
   };
-  if (question) {
-    return (
-      <OddValue
-        point={point}
-        question={question}
-        onAnswer={(answer, reason) => void send(answer, { supersedesId: question.heldId, reason })}
-        onRetype={() => {
-          setQuestion(null);
-          reset();
-          setText('');
-        }}
-      />
-    );
-  }
   const unit = volumeUnitsM3[register.unit];
   const multiplier = Number(register.multiplier);
   return (
@@ -162,12 +66,7 @@ export function MeterPoint({
       className="grid gap-3"
       onSubmit={(event) => {
         event.preventDefault();
-        void send(
-          'none',
-          point.done.some((one) => one.state === 'held')
-            ? { supersedesId: point.done.find((one) => one.state === 'held')!.id, reason: 'Read again' }
-            : {},
-        );
+        void send();
       }}
     >
       <CounterField
@@ -181,7 +80,7 @@ export function MeterPoint({
             </span>
           </>
         }
-        unit={multiplier === 1 ? unit.label : `× ${multiplier} ${unit.label}`}
+        unit={unitOf(point)}
         value={text}
         onChange={setText}
         isWrong={state.kind === 'problem'}
@@ -190,18 +89,179 @@ export function MeterPoint({
         {check && <CheckLine point={point} check={check} />}
         {!check && point.last && (
           <p className="hint">
-            Last {point.last.text} {volumeUnitsM3[point.register!.unit].label} on {formatLocal(point.last.at)}
-            .
+            Last {point.last.text} {unitOf(point)} on {formatLocal(point.last.at)}.
             {point.usual &&
               ` Usual day: ${formatNumber(point.usual.lowM3, 0)} to ${formatNumber(point.usual.highM3, 0)} m³.`}
           </p>
         )}
       </div>
       <ReadAt nowLocal={round.nowLocal} value={at} onChange={setAt} />
+      {replaces && (
+        <div>
+          <label className="label" htmlFor={reasonId}>
+            Why {replaces.text} is replaced
+          </label>
+          <input
+            id={reasonId}
+            className="input"
+            value={reason}
+            onChange={(event) => setReason(event.target.value)}
+          />
+        </div>
+      )}
       <SaveLine state={state} />
       <button type="submit" className="btn btn-big" disabled={state.kind === 'saving'}>
         Save {point.code}
       </button>
     </form>
+  );
+}
+
+/** Two readings of one time: who may settle it says which counts, and why. */
+function Dispute({ point }: { point: RoundPointView }) {
+  const { site, can } = usePlace();
+  const [chosenId, setChosenId] = useState('');
+  const [reason, setReason] = useState('');
+  const settle = useWrite<{ id: string; chosenReadingId: string; reason: string }>(site.id, '/disputes');
+  const reasonId = useId();
+  const rivals = point.done.filter((one) => one.state === 'dispute');
+  return (
+    <div className="box box-warn grid gap-3" role="group" aria-label={`Two readings of ${point.name} differ`}>
+      <p className="font-semibold text-lg">Two readings of one time differ. Which one counts?</p>
+      <p>Both are kept. The interval stays out of the totals until one is chosen.</p>
+      {rivals.map((one) => (
+        <button
+          key={one.id}
+          type="button"
+          className="choice"
+          aria-pressed={chosenId === one.id}
+          disabled={!can('settle:reading')}
+          onClick={() => setChosenId(one.id)}
+        >
+          {one.text} {unitOf(point)}, {formatLocal(one.at)}, {one.by}
+        </button>
+      ))}
+      {can('settle:reading') ? (
+        <>
+          <div>
+            <label className="label" htmlFor={reasonId}>
+              Reason
+            </label>
+            <input
+              id={reasonId}
+              className="input"
+              value={reason}
+              onChange={(event) => setReason(event.target.value)}
+            />
+          </div>
+          {settle.error && <p className="error-text">⚠ {settle.error.document.detail}</p>}
+          <button
+            type="button"
+            className="btn"
+            disabled={!chosenId}
+            onClick={() => settle.mutate({ id: newId(), chosenReadingId: chosenId, reason })}
+          >
+            This one counts
+          </button>
+        </>
+      ) : (
+        <p className="hint">The supervisor chooses. Tell them what you saw.</p>
+      )}
+    </div>
+  );
+}
+
+/** One register on the round: to be read, read, in question, or in dispute. */
+export function MeterPoint(props: MeterProps) {
+  const { point, onDone } = props;
+  const [form, setForm] = useState<{ replaces: PointDone | null } | null>(null);
+  const [warning, setWarning] = useState<string | null>(null);
+  const { state, save } = useSave('/readings', `${point.name}: your answer`);
+  const held = point.done.find((one) => one.state === 'held');
+  const last = point.done.at(-1);
+  if (form || !last) {
+    return (
+      <>
+        <RegisterForm
+          key={form?.replaces?.id ?? 'first'}
+          {...props}
+          replaces={form?.replaces ?? null}
+          onDone={() => {
+            setForm(null);
+            onDone();
+          }}
+          onWarning={(text) => {
+            setForm(null);
+            setWarning(text);
+          }}
+        />
+        {form && (
+          <p>
+            <button type="button" className="link min-h-12" onClick={() => setForm(null)}>
+              Leave it as it is
+            </button>
+          </p>
+        )}
+      </>
+    );
+  }
+  if (held) {
+    const answer = async (kind: 'rollover' | 'confirmed', reason: string) => {
+      const saved = await save({
+        meterId: point.subjectId,
+        registerText: held.text,
+        answer: kind,
+        observedAt: held.observedAt,
+        supersedesId: held.id,
+        reason,
+      });
+      if (saved) onDone();
+    };
+    return (
+      <>
+        <OddValue
+          point={point}
+          held={held}
+          check={checkOf(point, held.text, Date.parse(held.observedAt))}
+          onAnswer={(kind, reason) => void answer(kind, reason)}
+          onRetype={() => setForm({ replaces: held })}
+        />
+        <SaveLine state={state} />
+      </>
+    );
+  }
+  if (point.done.some((one) => one.state === 'dispute')) return <Dispute point={point} />;
+  return (
+    <div className="grid gap-3">
+      {warning && (
+        <p className="box box-warn" role="status">
+          {warning}
+        </p>
+      )}
+      <ul className="lines list-none">
+        {point.done.map((one) => (
+          <li key={one.id} className="flex flex-wrap gap-x-4 items-baseline">
+            <span>
+              <span className="font-medium">
+                {one.text} {unitOf(point)}
+              </span>{' '}
+              at {formatLocal(one.at)}, {one.by}
+            </span>
+            <button
+              type="button"
+              className="link min-h-12 ml-auto"
+              onClick={() => setForm({ replaces: one })}
+            >
+              Correct this reading
+            </button>
+          </li>
+        ))}
+      </ul>
+      <p>
+        <button type="button" className="btn btn-second" onClick={() => setForm({ replaces: null })}>
+          Add another reading of the day
+        </button>
+      </p>
+    </div>
   );
 }

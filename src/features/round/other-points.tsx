@@ -19,16 +19,19 @@ export function LevelPoint({ point, round, isToday, onDone }: PointProps) {
   const [text, setText] = useState('');
   const [at, setAt] = useState<string | null>(isToday ? null : `${round.day}T07:30`);
   const [isAsked, setIsAsked] = useState(false);
-  const { state, save } = useSave('/levels', `${point.name}: ${text} m`);
+  const { state, save, refuse } = useSave('/levels', `${point.name}: ${text} m`);
   const send = async () => {
+    if (!/\d/.test(text)) return refuse('Enter the level in metres, like 1.12.');
     const saved = await save({
       storeId: point.subjectId,
       levelText: text,
       isConfirmed: isAsked,
       ...whenOf(at),
     });
-    if (saved) onDone();
-    else setIsAsked(true);
+    if (!saved) return setIsAsked(true);
+    setText('');
+    // A warning of the server stays on the screen until the reader goes on.
+    if (saved === 'kept' || !saved.warning) onDone();
   };
   return (
     <form
@@ -47,7 +50,6 @@ export function LevelPoint({ point, round, isToday, onDone }: PointProps) {
           setIsAsked(false);
         }}
         isWrong={state.kind === 'problem'}
-        isSigned
       />
       <p className="hint">
         {point.last ? `Last ${Number(point.last.value)} m on ${formatLocal(point.last.at)}. ` : ''}
@@ -71,7 +73,7 @@ export function RainPoint({ point, round, isToday, onDone }: PointProps) {
   const [days, setDays] = useState('2');
   const [isAsked, setIsAsked] = useState(false);
   const [at, setAt] = useState<string | null>(isToday ? null : `${round.day}T07:30`);
-  const { state, save } = useSave('/rain-days', `${point.name}: ${text} mm`);
+  const { state, save, refuse } = useSave('/rain-days', `${point.name}: ${text} mm`);
   const daysId = useId();
   const kinds = [
     ['measured', 'One day'],
@@ -80,6 +82,7 @@ export function RainPoint({ point, round, isToday, onDone }: PointProps) {
     ['snow-water', 'Melted snow'],
   ] as const;
   const send = async () => {
+    if (kind !== 'trace' && !/\d/.test(text)) return refuse('Enter the rain in millimetres, like 5.2.');
     const saved = await save({
       stationId: point.subjectId,
       kind,
@@ -89,8 +92,9 @@ export function RainPoint({ point, round, isToday, onDone }: PointProps) {
       ...(kind === 'accumulated' ? { accumulatedDays: Number(days) } : {}),
       ...whenOf(at),
     });
-    if (saved) onDone();
-    else setIsAsked(true);
+    if (!saved) return setIsAsked(true);
+    setText('');
+    if (saved === 'kept' || !saved.warning) onDone();
   };
   return (
     <form
@@ -107,7 +111,10 @@ export function RainPoint({ point, round, isToday, onDone }: PointProps) {
             type="button"
             className="choice"
             aria-pressed={kind === value}
-            onClick={() => setKind(value)}
+            onClick={() => {
+              setKind(value);
+              setIsAsked(false);
+            }}
           >
             {label}
           </button>
@@ -140,7 +147,10 @@ export function RainPoint({ point, round, isToday, onDone }: PointProps) {
         </div>
       )}
       <p className="hint">
-        Counts for the 24 hours before the reading. A depth of snow is not rain: melt it first.
+        {kind === 'accumulated'
+          ? 'Counts for the days since the gauge was last emptied, marked as one amount.'
+          : 'Counts for the 24 hours before the reading.'}{' '}
+        A depth of snow is not rain: melt it first.
       </p>
       <ReadAt nowLocal={round.nowLocal} value={at} onChange={setAt} />
       <SaveLine state={state} />
@@ -159,6 +169,7 @@ export function LoadOut({ round, onDone }: { round: RoundView; onDone: () => voi
   const [from, setFrom] = useState(round.loadPlaces.from[0]?.id ?? '');
   const [to, setTo] = useState(round.loadPlaces.to[0]?.id ?? '');
   const [isAsked, setIsAsked] = useState(false);
+  const [at, setAt] = useState<string | null>(round.day === round.today ? null : `${round.day}T07:30`);
   const { state, save } = useSave('/loads-out', `Load ${ticket}`);
   const ids = { ticket: useId(), hauler: useId(), from: useId(), to: useId() };
   const send = async () => {
@@ -170,7 +181,7 @@ export function LoadOut({ round, onDone }: { round: RoundView; onDone: () => voi
       toPlaceId: to,
       officialVolume: 'nominal',
       isConfirmed: isAsked,
-      observedAt: new Date().toISOString(),
+      ...whenOf(at),
     });
     if (saved) onDone();
     else setIsAsked(true);
@@ -211,8 +222,9 @@ export function LoadOut({ round, onDone }: { round: RoundView; onDone: () => voi
         unit="m³"
         value={volume}
         onChange={setVolume}
-        isWrong={state.kind === 'problem'}
+        isWrong={false}
       />
+      <ReadAt nowLocal={round.nowLocal} value={at} onChange={setAt} />
       <div className="grid gap-3 sm:grid-cols-2">
         <div>
           <label className="label" htmlFor={ids.from}>

@@ -1,32 +1,23 @@
 import { useQueryClient } from '@tanstack/react-query';
-import { useEffect, useState } from 'react';
+import { useEffect } from 'react';
 import { meQuery } from '../../lib/record.ts';
-import {
-  dropFromOutbox,
-  flushOutbox,
-  listOutbox,
-  onOutboxChange,
-  type OutboxItem,
-} from '../../lib/outbox.ts';
+import { dropFromOutbox, flushOutbox } from '../../lib/outbox.ts';
+import { useOutbox } from './use-outbox.ts';
 
 /** What is kept on this device and not sent yet; shown on every page while there is any. */
 export function OutboxLine({ siteId }: { siteId: string }) {
   const client = useQueryClient();
-  const [items, setItems] = useState<OutboxItem[]>([]);
+  const items = useOutbox(siteId);
   const personId = client.getQueryData(meQuery.queryKey)?.personId ?? '';
   useEffect(() => {
-    const refresh = () => void listOutbox(siteId).then(setItems, () => setItems([]));
     const send = () =>
       void flushOutbox(siteId, personId).then((count) => {
         if (count > 0) void client.invalidateQueries({ queryKey: ['site', siteId] });
       });
-    refresh();
     send();
-    const stopListening = onOutboxChange(refresh);
     window.addEventListener('online', send);
     window.addEventListener('focus', send);
     return () => {
-      stopListening();
       window.removeEventListener('online', send);
       window.removeEventListener('focus', send);
     };
@@ -50,6 +41,13 @@ export function OutboxLine({ siteId }: { siteId: string }) {
           >
             Send now
           </button>
+          <ul className="basis-full list-disc pl-5">
+            {waiting.map((item) => (
+              <li key={item.id}>
+                {item.label}, saved {new Date(item.savedAt).toTimeString().slice(0, 5)}
+              </li>
+            ))}
+          </ul>
         </div>
       )}
       {asking.map((item) => (

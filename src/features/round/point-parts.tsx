@@ -25,11 +25,10 @@ interface CounterProps {
   value: string;
   onChange: (value: string) => void;
   isWrong: boolean;
-  isSigned?: boolean;
 }
 
 /** Large number entry with the unit beside it; nothing is cleared, nothing is corrected while typing. */
-export function CounterField({ label, unit, value, onChange, isWrong, isSigned }: CounterProps) {
+export function CounterField({ label, unit, value, onChange, isWrong }: CounterProps) {
   const id = useId();
   return (
     <div>
@@ -40,7 +39,7 @@ export function CounterField({ label, unit, value, onChange, isWrong, isSigned }
         <input
           id={id}
           className="input input-counter"
-          inputMode={isSigned ? undefined : 'decimal'}
+          inputMode="decimal"
           autoComplete="off"
           value={value}
           aria-invalid={isWrong}

@@ -1,7 +1,6 @@
 import { useId, useState } from 'react';
 import { Link, useParams } from 'react-router';
 import { addDays, dayName, weekday } from '#shared/calendar/day.ts';
-import { volumeUnitsM3 } from '#shared/units/unit-factors.ts';
 import { notReadReasonNames } from '#shared/schemas/readings.ts';
 import type { RoundPointView, RoundView } from '#shared/views/round-view.ts';
 import { usePlace } from '../../app/place.ts';
@@ -9,18 +8,12 @@ import { PageHead, Section, TwoColumns } from '../../components/page.tsx';
 import { Empty, Viewed } from '../../components/state.tsx';
 import { formatLocal } from '../../lib/format-quantity.ts';
 import { useRecord } from '../../lib/record.ts';
+import { unitOf } from './meter-check.tsx';
 import { MeterPoint } from './meter-point.tsx';
 import { LevelPoint, LoadOut, RainPoint } from './other-points.tsx';
 import { NotRead, SaveLine } from './point-parts.tsx';
+import { useOutbox } from './use-outbox.ts';
 import { useSave } from './use-save.ts';
-
-/** Unit of what a point shows, as it stands beside the number. */
-function unitOf(point: RoundPointView): string {
-  if (point.kind === 'level') return 'm';
-  if (!point.register) return '';
-  const { unit, multiplier } = point.register;
-  return `${volumeUnitsM3[unit].label}${Number(multiplier) === 1 ? '' : ` × ${Number(multiplier)}`}`;
-}
 
 const stateOf = (point: RoundPointView) =>
   point.done.some((one) => one.state !== 'stored')
@@ -38,7 +31,14 @@ const circle = {
   open: 'border-edge',
 };
 
-function PointValue({ point }: { point: RoundPointView }) {
+function PointValue({ point, kept }: { point: RoundPointView; kept: string | null }) {
+  if (kept)
+    return (
+      <span className="text-right leading-tight">
+        <span className="block font-medium">{kept}</span>
+        <span className="hint">▣ saved on this phone</span>
+      </span>
+    );
   const last = point.done.at(-1);
   if (last) {
     return (
@@ -68,12 +68,15 @@ function PointValue({ point }: { point: RoundPointView }) {
 function PointRow({
   point,
   round,
+  kept,
   isOpen,
   onOpen,
   onDone,
 }: {
   point: RoundPointView;
   round: RoundView;
+  /** What waits on this device for this point; null when nothing does. */
+  kept: string | null;
   isOpen: boolean;
   onOpen: () => void;
   onDone: () => void;
@@ -109,24 +112,31 @@ function PointRow({
             {point.everyDays > 1 ? `, every ${point.everyDays} days` : ''}
           </span>
         </span>
-        <PointValue point={point} />
+        <PointValue point={point} kept={kept} />
       </button>
       {isOpen && (
         <div id={panelId} className="px-3 pb-4 md:pl-[60px] md:pr-4 grid gap-4">
           {can('create:reading') ? (
             isSkipping ? (
-              <NotRead
-                pointId={point.id}
-                day={round.day}
-                name={point.name}
-                onDone={() => {
-                  setIsSkipping(false);
-                  onDone();
-                }}
-              />
+              <>
+                <NotRead
+                  pointId={point.id}
+                  day={round.day}
+                  name={point.name}
+                  onDone={() => {
+                    setIsSkipping(false);
+                    onDone();
+                  }}
+                />
+                <p>
+                  <button type="button" className="link min-h-12" onClick={() => setIsSkipping(false)}>
+                    Back to the reading
+                  </button>
+                </p>
+              </>
             ) : (
               <>
-                {point.kind === 'meter' && <MeterPoint key={point.done.length} {...parts} />}
+                {point.kind === 'meter' && <MeterPoint {...parts} />}
                 {point.kind === 'level' && <LevelPoint {...parts} />}
                 {point.kind === 'rain' && <RainPoint {...parts} />}
                 <p>
@@ -150,8 +160,18 @@ function Handover({ round }: { round: RoundView }) {
   const { state, save } = useSave('/round-notes', 'Handover');
   const { can } = usePlace();
   const id = useId();
+  const today = round.notes.filter((note) => note.siteDay === round.day);
   return (
     <Section title="Handover">
+      {today.length > 0 && (
+        <ul className="lines list-none mb-3">
+          {today.map((note) => (
+            <li key={note.id}>
+              {note.note} <span className="hint">{note.by}</span>
+            </li>
+          ))}
+        </ul>
+      )}
       {can('create:reading') && (
         <form
           className="grid gap-3"
@@ -193,6 +213,16 @@ export function RoundPage() {
   const [openId, setOpenId] = useState<string | null>(null);
   const [isLoading, setIsLoading] = useState(false);
   const round = query.data;
+  const outbox = useOutbox(site.id);
+  const keptOf = (point: RoundPointView) => {
+    const item = outbox.findLast(
+      ({ body }) =>
+        body.roundPointId === point.id ||
+        [body.meterId, body.storeId, body.stationId].includes(point.subjectId),
+    );
+    if (!item) return null;
+    return String(item.body.registerText ?? item.body.levelText ?? item.body.depthText ?? 'not read');
+  };
   const count = (state: ReturnType<typeof stateOf>) =>
     round?.points.filter((point) => stateOf(point) === state).length ?? 0;
   const sentence =
@@ -201,35 +231,34 @@ export function RoundPage() {
   const next = (view: RoundView, after: RoundPointView) =>
     view.points.find((point) => point.position > after.position && stateOf(point) === 'open')?.id ?? null;
   const dayLink = (target: string, label: string) => (
-    <Link
-      to={`/sites/${site.slug}/round/${target}`}
-      aria-current={target === day ? 'date' : undefined}
-      className={`btn btn-second ${target === day ? 'bg-tint' : ''}`}
-    >
+    <Link to={`/sites/${site.slug}/round/${target}`} className="btn btn-second">
       {label}
     </Link>
   );
   return (
     <>
       <PageHead title={`Round, ${weekday(day)} ${dayName(day)}`} sentence={sentence} />
+      <nav aria-label="Days" className="flex flex-wrap gap-2 mb-4 no-print">
+        {round && day !== round.today && dayLink(round.today, 'Today')}
+        {dayLink(addDays(day, -1), 'The day before')}
+        {round && day < round.today && dayLink(addDays(day, 1), 'The day after')}
+      </nav>
       <Viewed query={query}>
         {(view) => (
           <TwoColumns
             left={
               <>
-                <div className="flex flex-wrap gap-2 mb-4 no-print">
-                  {dayLink(view.today, 'Today')}
-                  {dayLink(addDays(view.today, -1), 'Yesterday')}
-                  {dayLink(addDays(day, -1), 'A day earlier')}
-                </div>
-                {view.notes.slice(0, 1).map((note) => (
-                  <p key={note.id} className="box box-note mb-4">
-                    <span className="font-semibold">
-                      From the last shift, {dayName(note.siteDay)}, {note.by}:
-                    </span>{' '}
-                    {note.note}
-                  </p>
-                ))}
+                {view.notes
+                  .filter((note) => note.siteDay !== view.day)
+                  .slice(0, 1)
+                  .map((note) => (
+                    <p key={note.id} className="box box-note mb-4">
+                      <span className="font-semibold">
+                        From the last shift, {dayName(note.siteDay)}, {note.by}:
+                      </span>{' '}
+                      {note.note}
+                    </p>
+                  ))}
                 {view.points.length === 0 ? (
                   <Empty>
                     No point is set up for the round yet. An engineer adds meters, stores and gauges under
@@ -242,6 +271,7 @@ export function RoundPage() {
                         key={point.id}
                         point={point}
                         round={view}
+                        kept={keptOf(point)}
                         isOpen={openId === point.id}
                         onOpen={() => setOpenId(openId === point.id ? null : point.id)}
                         onDone={() => setOpenId(next(view, point))}
@@ -274,7 +304,18 @@ export function RoundPage() {
                     {can('create:reading') &&
                       view.loadPlaces.to.length > 0 &&
                       (isLoading ? (
-                        <LoadOut round={view} onDone={() => setIsLoading(false)} />
+                        <>
+                          <LoadOut round={view} onDone={() => setIsLoading(false)} />
+                          <p>
+                            <button
+                              type="button"
+                              className="link min-h-12"
+                              onClick={() => setIsLoading(false)}
+                            >
+                              Leave without a load
+                            </button>
+                          </p>
+                        </>
                       ) : (
                         <p>
                           <button type="button" className="btn btn-second" onClick={() => setIsLoading(true)}>

@@ -20,14 +20,14 @@ export type SaveState =
   | { kind: 'problem'; text: string };
 
 /**
- * Saves an entry: first on this device, then to the server. Saving again after a problem keeps the same id,
- * so that the record has it once.
+ * Saves an entry: first on this device, then to the server.
+ * @returns the server's answer; 'kept' while it waits on this device; null when it was refused
  */
 export function useSave(path: string, label: string) {
   const { site, me } = usePlace();
   const client = useQueryClient();
   const [state, setState] = useState<SaveState>({ kind: 'idle' });
-  const save = async (body: Record<string, unknown>): Promise<SavedAnswer | null> => {
+  const save = async (body: Record<string, unknown>): Promise<SavedAnswer | 'kept' | null> => {
     if (state.kind === 'saving') return null;
     setState({ kind: 'saving' });
     const id = newId();
@@ -46,13 +46,14 @@ export function useSave(path: string, label: string) {
     const result = await sendFromOutbox(item);
     if (result.kind === 'waiting') {
       setState({ kind: 'saved-here' });
-      return null;
+      return 'kept';
     }
     if (result.kind === 'needs-answer') {
       // The form is still open with what was typed, so the answer is given here.
       const { dropFromOutbox } = await import('../../lib/outbox.ts');
       await dropFromOutbox(id);
-      setState({ kind: 'problem', text: result.problem.document.detail });
+      const { errors, detail } = result.problem.document;
+      setState({ kind: 'problem', text: errors?.map((one) => one.detail).join(' ') || detail });
       return null;
     }
     const answer = result.answer as SavedAnswer;
@@ -60,5 +61,5 @@ export function useSave(path: string, label: string) {
     await client.invalidateQueries({ queryKey: ['site', site.id] });
     return answer;
   };
-  return { state, save, reset: () => setState({ kind: 'idle' }) };
+  return { state, save, refuse: (text: string) => setState({ kind: 'problem', text }) };
 }
