@@ -6,7 +6,7 @@ import { withOrganisation, type Transaction } from '../db/transaction.ts';
 import { foundOrganisation, installationState } from '../features/access/access-repository.ts';
 import { hashPassword } from '../features/access/access-service.ts';
 import { insertMembership, personForInvitation } from '../features/people/people-repository.ts';
-import type { Context, Dependencies } from '../http/route.ts';
+import type { Dependencies } from '../http/route.ts';
 import { insertLaboratory, insertQualifier } from '../features/lab/lab-repository.ts';
 import { demoPeople } from './demo-people.ts';
 import type { DemoActors } from './demo-actors.ts';

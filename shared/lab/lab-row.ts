@@ -10,6 +10,8 @@ export interface RawLabRow {
   fractionText: string;
   cas: string;
   resultText: string;
+  /** A true number of the workbook, whose decimal mark nobody has to guess. */
+  isNumberCell: boolean;
   unitText: string;
   reportingLimitText: string;
   reportingLimitUnitText: string;

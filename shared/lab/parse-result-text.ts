@@ -7,7 +7,7 @@ export type ResultText =
       qualifier: string | null;
       isGroupedOrDecimal: string | null;
     }
-  | { kind: 'below'; limitText: string | null; qualifier: string | null }
+  | { kind: 'below'; limitText: string | null; qualifier: string | null; isGroupedOrDecimal: string | null }
   | { kind: 'missing'; reason: string }
   | { kind: 'question'; sentence: string };
 
@@ -63,9 +63,18 @@ export function parseResultText(text: string): ResultText {
     .trim();
   const lower = tidy.toLowerCase();
   if (lower in missingReasons) return { kind: 'missing', reason: missingReasons[lower]! };
-  if (notDetected.test(lower)) return { kind: 'below', limitText: null, qualifier: null };
+  if (notDetected.test(lower))
+    return { kind: 'below', limitText: null, qualifier: null, isGroupedOrDecimal: null };
   const within = notDetectedWithLimit.exec(lower);
-  if (within) return { kind: 'below', limitText: tidyNumber(within[1]!)?.valueText ?? null, qualifier: null };
+  if (within) {
+    const limit = tidyNumber(within[1]!);
+    return {
+      kind: 'below',
+      limitText: limit?.valueText ?? null,
+      qualifier: null,
+      isGroupedOrDecimal: limit?.other ?? null,
+    };
+  }
   if (lower === 'trace')
     return {
       kind: 'question',
@@ -92,8 +101,10 @@ export function parseResultText(text: string): ResultText {
     };
   const [, sign, , letters = null] = match;
   const qualifier = letters?.toUpperCase() ?? null;
-  if (sign === '<') return { kind: 'below', limitText: read.valueText, qualifier };
-  if (sign === 'U') return { kind: 'below', limitText: read.valueText, qualifier: 'U' };
+  if (sign === '<')
+    return { kind: 'below', limitText: read.valueText, qualifier, isGroupedOrDecimal: read.other };
+  if (sign === 'U')
+    return { kind: 'below', limitText: read.valueText, qualifier: 'U', isGroupedOrDecimal: read.other };
   return {
     kind: 'value',
     comparator: sign === '>' ? '>' : sign === '~' || sign === '≈' ? '~' : '=',

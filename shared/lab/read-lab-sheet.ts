@@ -56,6 +56,7 @@ function rawRow(sheet: Sheet, row: SheetRow, columns: LongLayout['columns'], val
     fractionText: '',
     cas: at('cas'),
     resultText: cellText(row.cells[valueColumn]),
+    isNumberCell: row.cells[valueColumn]?.kind === 'number',
     unitText: at('unit'),
     reportingLimitText: at('reportingLimit'),
     reportingLimitUnitText: at('reportingLimitUnit'),

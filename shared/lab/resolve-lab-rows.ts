@@ -2,6 +2,7 @@ import { Decimal } from 'decimal.js';
 import { daysBetween, type Day } from '../calendar/day.ts';
 import { basisFactor, readUnit } from './concentration-units.ts';
 import type { LabRow, RawLabRow } from './lab-row.ts';
+import { decimalMarkOf, isEitherWay, withPoint, type DecimalMark } from './decimal-mark.ts';
 import { parseResultText, type ResultText } from './parse-result-text.ts';
 import { decideDateOrder, readSampledDate } from './read-sampled-date.ts';
 
@@ -118,20 +119,23 @@ function resolveAnalyte(
   const tidy = tidyName(split.name);
   const mapped = catalog.mappings.get(mappingKey('analyte', row.analyteText));
   const cas = row.cas.replace(/^0+/, '');
-  const analyte = catalog.analytes.find(
-    (one) =>
-      one.id === mapped ||
-      tidyName(one.name) === tidy ||
-      tidyName(one.code) === tidy ||
-      one.aliases.some((alias) => tidyName(alias) === tidy) ||
-      (one.cas !== null && one.cas === cas),
-  );
+  const named = (name: string) =>
+    catalog.analytes.find((one) =>
+      [one.name, one.code, ...one.aliases].some((own) => tidyName(own) === name),
+    );
+  // "Total suspended solids" is a name of its own, not a fraction of "suspended solids".
+  const whole = named(tidyName(row.analyteText));
+  const analyte =
+    catalog.analytes.find((one) => one.id === mapped) ??
+    whole ??
+    named(tidy) ??
+    catalog.analytes.find((one) => one.cas !== null && one.cas === cas);
   if (!analyte) {
     hold(row, 'analyte', `Parameter "${row.analyteText}" is not known here.`);
     return null;
   }
   row.analyteId = analyte.id;
-  row.fraction = split.fraction || row.fractionText || analyte.defaultFraction || '';
+  row.fraction = (whole ? '' : split.fraction) || row.fractionText || analyte.defaultFraction || '';
   return {
     basis: analyte.basis,
     standardUnit: analyte.standardUnit,
@@ -176,27 +180,54 @@ function applyText(row: LabRow, text: ResultText, factors: string[], limitFactor
     row.value = convert(text.valueText, factors);
     row.qualifier = text.qualifier;
     row.printedDecimals = text.valueText.split('.')[1]?.length ?? 0;
+    if (row.unit === 'pH' && new Decimal(row.value).gt(14))
+      return hold(row, 'value', `pH ${row.resultText}: pH lies between 0 and 14. Ask the laboratory.`);
     if (new Decimal(row.value).isZero() && row.unit === 'mg/L')
       warn(row, 'A true zero? Most laboratories cannot report zero.');
   }
 }
 
-/** A comma that may group or divide is settled by the limit beside it or by the other cells of the column. */
-function settleComma(row: LabRow, text: ResultText, column: readonly string[]): ResultText {
-  if (text.kind !== 'value' || text.isGroupedOrDecimal === null) return text;
+/**
+ * Reads the result by the decimal mark of its column, else of its sheet. A number that still reads two ways is
+ * settled by the limit beside it, or asked about.
+ */
+function readResult(row: LabRow, mark: DecimalMark | null): ResultText {
+  if (row.isNumberCell) return parseResultText(row.resultText);
+  if (mark) {
+    const text = withPoint(row.resultText, mark);
+    if (isEitherWay(row.resultText))
+      warn(row, `"${row.resultText}" read as ${text}: other values of the column divide by a ${mark}.`);
+    row.reportingLimitText = withPoint(row.reportingLimitText, mark);
+    row.detectionLimitText = withPoint(row.detectionLimitText, mark);
+    return parseResultText(text);
+  }
+  const text = parseResultText(row.resultText);
+  if ((text.kind !== 'value' && text.kind !== 'below') || text.isGroupedOrDecimal === null) return text;
+  const grouped = text.kind === 'value' ? text.valueText : text.limitText!;
   const limit = Number(row.reportingLimitText.replace(/,/g, ''));
-  const hasPoint = column.some((one) => /^\D*\d+\.\d+/.test(one));
-  if ((Number.isFinite(limit) && limit > 0 && Number(text.isGroupedOrDecimal) < limit) || hasPoint) {
+  if (Number.isFinite(limit) && limit > 0 && Number(text.isGroupedOrDecimal) < limit) {
     warn(
       row,
-      `"${row.resultText}" read as ${text.valueText}: ${hasPoint ? 'other values of the column use a point' : `as a decimal it would lie below the limit ${row.reportingLimitText}`}.`,
+      `"${row.resultText}" read as ${grouped}: as a decimal it would lie below the limit ${row.reportingLimitText}.`,
     );
     return text;
   }
   return {
     kind: 'question',
-    sentence: `Is "${row.resultText}" ${text.valueText} or ${text.isGroupedOrDecimal}?`,
+    sentence: `Is "${row.resultText}" ${grouped} or ${text.isGroupedOrDecimal}? Correct the sheet, or ask the laboratory.`,
   };
+}
+
+/** The decimal mark by column, where the column alone decides, else by sheet. */
+function decimalMarks(raws: readonly RawLabRow[]): (raw: RawLabRow) => DecimalMark | null {
+  const texts = new Map<string, string[]>();
+  for (const raw of raws)
+    for (const key of [columnKey(raw), raw.sheet]) {
+      const known = texts.get(key) ?? texts.set(key, []).get(key)!;
+      if (!raw.isNumberCell) known.push(raw.resultText);
+    }
+  const marks = new Map([...texts].map(([key, own]) => [key, decimalMarkOf(own)]));
+  return (raw) => marks.get(columnKey(raw)) ?? marks.get(raw.sheet) ?? null;
 }
 
 function resolveQualifier(row: LabRow, catalog: LabCatalog): void {
@@ -300,12 +331,7 @@ function settleDoubles(rows: readonly LabRow[]): void {
  * Nothing is guessed: what is not known holds its row, never the file.
  */
 export function resolveLabRows(raws: readonly RawLabRow[], catalog: LabCatalog): LabRow[] {
-  const columns = new Map<string, string[]>();
-  for (const raw of raws) {
-    const known = columns.get(columnKey(raw));
-    if (known) known.push(raw.resultText);
-    else columns.set(columnKey(raw), [raw.resultText]);
-  }
+  const markOf = decimalMarks(raws);
   const order = catalog.answers.dateOrder ?? decideDateOrder(raws.map((raw) => raw.sampledText));
   const rows = raws.map((raw) => {
     const row = emptyRow(raw);
@@ -349,7 +375,7 @@ export function resolveLabRows(raws: readonly RawLabRow[], catalog: LabCatalog):
         const limitUnit = raw.reportingLimitUnitText ? readUnit(raw.reportingLimitUnitText) : unit;
         applyText(
           row,
-          settleComma(row, parseResultText(raw.resultText), columns.get(columnKey(raw))!),
+          readResult(row, markOf(raw)),
           [unit.factor, basis],
           [limitUnit?.factor ?? unit.factor, basis],
         );

@@ -71,6 +71,12 @@ const rounded = (value: Decimal, terms: LimitTerms) =>
   );
 const text = (value: Decimal, terms: LimitTerms) => rounded(value, terms).toFixed(terms.decimals);
 
+/** Says what was rounded, where rounding could decide. */
+const beforeRounding = (value: Decimal, terms: LimitTerms): string =>
+  rounded(value, terms).eq(value)
+    ? ''
+    : ` (${value.toSignificantDigits(6).toFixed()} rounded to the limit’s ${terms.decimals === 1 ? '1 decimal' : `${terms.decimals} decimals`})`;
+
 /** Whether a rounded value lies outside the limit; equal to a maximum complies. */
 function isOutside(value: Decimal, terms: LimitTerms): boolean {
   const v = rounded(value, terms);
@@ -82,7 +88,7 @@ function isOutside(value: Decimal, terms: LimitTerms): boolean {
 
 function shareOf(value: Decimal, terms: LimitTerms): number | null {
   const limit = terms.statistic === 'range' ? terms.highText : terms.valueText;
-  return limit && !new Decimal(limit).isZero() ? value.div(limit).toNumber() : null;
+  return limit && !new Decimal(limit).isZero() ? rounded(value, terms).div(limit).toNumber() : null;
 }
 
 const loadOf = (flowM3: string, concentration: Decimal, unit: string): Decimal =>
@@ -226,7 +232,9 @@ function sentenceOf(terms: LimitTerms, facts: LimitFacts, result: ReturnType<typ
     : '';
   const count = result.word === 'incomplete' ? ` ${result.days.length} of ${terms.samplesMin} samples.` : '';
   const value =
-    result.value === null ? '' : `${text(result.value, terms)} ${terms.unit} against ${limit} ${terms.unit}.`;
+    result.value === null
+      ? ''
+      : `${text(result.value, terms)} ${terms.unit}${beforeRounding(result.value, terms)} against ${limit} ${terms.unit}.`;
   return `${value}${count}${why}${put}`.trim();
 }
 

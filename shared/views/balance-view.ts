@@ -117,7 +117,7 @@ export interface ComparedRow {
 export interface CompareView {
   cell: { id: string; code: string; name: string };
   cells: { code: string; name: string }[];
-  run: BalanceRunView & { isAccepted: boolean };
+  run: BalanceRunView & { isAccepted: boolean; isOutOfDate: boolean };
   percentFloorMm: number;
   rows: ComparedRow[];
   statistics: {

@@ -176,7 +176,8 @@ export interface ReportView {
     cellCode: string;
     month: string;
     areaM2: number;
-    predictedM3: number;
+    isOpen: boolean;
+    predictedM3: number | null;
     measuredM3: number | null;
     estimatedM3: number;
     allocatedM3: number;

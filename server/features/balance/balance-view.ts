@@ -9,7 +9,7 @@ import { termRegister, type StepTerms, type TermName } from '#shared/water-balan
 import type { BalanceView, WorkingView } from '#shared/views/balance-view.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
-import { measuredByCell } from '../compare/measured-service.ts';
+import { measuredByCell, type MeasuredMonth } from '../compare/measured-service.ts';
 import { readSite, siteOf } from '../sites/site-service.ts';
 import * as repository from './balance-repository.ts';
 import { currentParameters, workingRun } from './run-service.ts';
@@ -45,8 +45,16 @@ export async function readBalance(
   const run = runId ? frozen.find((one) => one.id === runId) : working.run;
   if (!run) throw new Problem('not-found', 'There is no such run at this site.');
   const steps = (await repository.listSteps(tx, run.id, month, month)).map(asStep);
-  const measured = await measuredByCell(tx, record, month, month, new Map());
   const group = (rows: typeof steps) => ({ ...sumSteps(rows), headLine: headLine(sumSteps(rows)) });
+  const predicted = new Map(
+    record.cells.map((cell) => {
+      const own = steps.filter((step) => step.cellId === cell.id);
+      return [`${cell.id} ${month}`, sumSteps(own).volumesM3.leachateMm] as const;
+    }),
+  );
+  const measured = steps.length
+    ? await measuredByCell(tx, record, month, month, predicted)
+    : new Map<string, MeasuredMonth>();
   const cells = record.cells.map((cell) => {
     const own = steps.filter((step) => step.cellId === cell.id);
     return {
@@ -83,7 +91,10 @@ export async function readBalance(
       temperatureStation: climate.temperatureStation,
       choice: climate.choice,
     },
-    site: { ...group(steps), pumpedM3: pumped.length ? pumped.reduce((sum, value) => sum + value, 0) : null },
+    site: {
+      ...group(steps),
+      pumpedM3: pumped.length === cells.length ? pumped.reduce((sum, value) => sum + value, 0) : null,
+    },
     cells,
     closure: closureOf(steps),
     frozenRuns: frozen.map((one) => ({

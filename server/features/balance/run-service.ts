@@ -184,7 +184,10 @@ export async function acceptRun(tx: Transaction, context: Context, deps: Depende
   return { id: runId };
 }
 
-/** The run that predictions are taken from: the newest accepted one, else the working run. */
+/**
+ * The run that predictions are taken from: the newest accepted one, else the working run.
+ * @returns `isOutOfDate` when the record has changed since the accepted run was frozen
+ */
 export async function predictionRun(
   tx: Transaction,
   context: Context,
@@ -194,8 +197,10 @@ export async function predictionRun(
   const accepted = (await repository.listFrozenRuns(tx, siteOf(context))).find(
     (run) => run.acceptedAt !== null,
   );
-  if (accepted) return { run: accepted, isAccepted: true };
-  return { run: (await workingRun(tx, context, deps, record)).run, isAccepted: false };
+  const { run: working } = await workingRun(tx, context, deps, record);
+  if (accepted)
+    return { run: accepted, isAccepted: true, isOutOfDate: accepted.inputSha256 !== working.inputSha256 };
+  return { run: working, isAccepted: false, isOutOfDate: false };
 }
 
 /** Recomputes a frozen run from its stored input and says whether the results agree to 1e-9. */

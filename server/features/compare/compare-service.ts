@@ -124,6 +124,18 @@ function findingsOf(rows: ReturnType<typeof compareMonths>, cellCode: string): F
   return findings;
 }
 
+/** A header divided by the prediction cannot tell its cells apart; the reader must know before believing a match. */
+const circularFinding = (cellCode: string, monthCount: number): Finding[] =>
+  monthCount === 0
+    ? []
+    : [
+        {
+          code: 'divided-by-prediction',
+          severity: 'note',
+          sentence: `In ${monthCount} ${monthCount === 1 ? 'month' : 'months'} the volume of ${cellCode} is its part of a shared header, divided in proportion to the prediction. The gap then speaks for the header as a whole, not for ${cellCode}.`,
+        },
+      ];
+
 /** Predicted against measured for one cell, the months up to the chosen one. */
 export async function readCompare(
   tx: Transaction,
@@ -137,7 +149,7 @@ export async function readCompare(
   const record = await readSite(tx, siteId);
   const cell = record.cells.find((one) => one.code === cellCode) ?? record.cells[0];
   if (!cell) throw fieldProblem('/query/cell', 'There is no cell to compare yet. Make one under Site.');
-  const { run, isAccepted } = await predictionRun(tx, context, deps, record);
+  const { run, isAccepted, isOutOfDate } = await predictionRun(tx, context, deps, record);
   const parameters = (await currentParameters(tx, context, deps)).values as BalanceParameters;
   const steps = (await balanceRepository.listSteps(tx, run.id)).map((row) => ({
     ...row,
@@ -181,7 +193,7 @@ export async function readCompare(
   return {
     cell: { id: cell.id, code: cell.code, name: cell.name },
     cells: record.cells.map((one) => ({ code: one.code, name: one.name })),
-    run: { ...run, isAccepted },
+    run: { ...run, isAccepted, isOutOfDate },
     percentFloorMm: parameters.percentFloorMm,
     rows: rows.map((row) => {
       const sum = summed.get(`${cell.id} ${row.month}`)!;
@@ -202,7 +214,14 @@ export async function readCompare(
       };
     }),
     statistics: { ...fitStatistics(pairs), leftOutCount: rows.length - pairs.length },
-    findings: findingsOf(rows, cell.code),
+    findings: [
+      ...findingsOf(rows, cell.code),
+      ...circularFinding(
+        cell.code,
+        rows.filter((row) => (measured.get(`${cell.id} ${row.month}`)?.dividedByPredictionM3 ?? 0) > 0)
+          .length,
+      ),
+    ],
   };
 }
 

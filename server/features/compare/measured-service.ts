@@ -1,5 +1,5 @@
 import { firstDay, lastDay } from '#shared/calendar/day.ts';
-import { monthRange, type Month } from '#shared/calendar/month.ts';
+import type { Month } from '#shared/calendar/month.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import { sumEntriesByMonth } from '../ledger/entry-repository.ts';
 import type { SiteRecord } from '../sites/site-service.ts';
@@ -11,16 +11,23 @@ export interface MeasuredMonth {
   apportionedM3: number;
   /** Part that came through a shared header and was allocated to the cell. */
   allocatedM3: number;
+  /** Part of it that was divided in proportion to the prediction: it cannot test the prediction of one cell. */
+  dividedByPredictionM3: number;
 }
 
-/** Share of a header that belongs to a cell in a month: fixed and dated, or in proportion to prediction. */
+interface HeaderShare {
+  fraction: number;
+  isByPrediction: boolean;
+}
+
+/** Share of a header that belongs to a cell in a month: fixed and dated, or in proportion to prediction; 0 where there is none. */
 function headerShare(
   record: SiteRecord,
   placeId: string,
   cellId: string,
   month: Month,
   predicted: ReadonlyMap<string, number>,
-): number {
+): HeaderShare {
   const live = record.headerShares.filter(
     (share) =>
       share.placeId === placeId &&
@@ -28,10 +35,15 @@ function headerShare(
       (share.toOn === null || share.toOn > firstDay(month)),
   );
   const own = live.find((share) => share.cellId === cellId);
-  if (!own) return 0;
-  if (own.shareFraction !== null) return Number(own.shareFraction);
-  const total = live.reduce((sum, share) => sum + (predicted.get(`${share.cellId} ${month}`) ?? 0), 0);
-  return total > 0 ? (predicted.get(`${cellId} ${month}`) ?? 0) / total : 1 / live.length;
+  if (!own) return { fraction: 0, isByPrediction: false };
+  if (own.shareFraction !== null) return { fraction: Number(own.shareFraction), isByPrediction: false };
+  const known = live.map((share) => predicted.get(`${share.cellId} ${month}`));
+  if (known.some((value) => value === undefined)) return { fraction: 0, isByPrediction: true };
+  const total = known.reduce<number>((sum, value) => sum + value!, 0);
+  return {
+    fraction: total > 0 ? predicted.get(`${cellId} ${month}`)! / total : 1 / live.length,
+    isByPrediction: true,
+  };
 }
 
 /**
@@ -50,13 +62,20 @@ export async function measuredByCell(
 ): Promise<Map<string, MeasuredMonth>> {
   const sums = await sumEntriesByMonth(tx, record.site.id, firstDay(first), lastDay(last));
   const result = new Map<string, MeasuredMonth>();
-  const add = (cellId: string, month: Month, volumeM3: number, basis: string, isAllocated: boolean) => {
+  const add = (cellId: string, month: Month, volumeM3: number, basis: string, share: HeaderShare | null) => {
     const key = `${cellId} ${month}`;
-    const row = result.get(key) ?? { volumeM3: 0, estimatedM3: 0, apportionedM3: 0, allocatedM3: 0 };
+    const row = result.get(key) ?? {
+      volumeM3: 0,
+      estimatedM3: 0,
+      apportionedM3: 0,
+      allocatedM3: 0,
+      dividedByPredictionM3: 0,
+    };
     row.volumeM3 += volumeM3;
     if (basis === 'estimated') row.estimatedM3 += volumeM3;
     if (basis === 'apportioned') row.apportionedM3 += volumeM3;
-    if (isAllocated) row.allocatedM3 += volumeM3;
+    if (share) row.allocatedM3 += volumeM3;
+    if (share?.isByPrediction) row.dividedByPredictionM3 += volumeM3;
     result.set(key, row);
   };
   const primary = new Map(
@@ -67,15 +86,13 @@ export async function measuredByCell(
     const volume = Number(row.volumeM3);
     const fromCell = primary.get(row.fromPlaceId);
     const toCell = primary.get(row.toPlaceId);
-    if (fromCell) add(fromCell, row.month, volume, row.basis, false);
-    if (toCell) add(toCell, row.month, -volume, row.basis, false);
+    if (fromCell) add(fromCell, row.month, volume, row.basis, null);
+    if (toCell) add(toCell, row.month, -volume, row.basis, null);
     if (!headers.has(row.fromPlaceId)) continue;
     for (const cell of record.cells) {
       const share = headerShare(record, row.fromPlaceId, cell.id, row.month, predicted);
-      if (share > 0) add(cell.id, row.month, volume * share, row.basis, true);
+      if (share.fraction > 0) add(cell.id, row.month, volume * share.fraction, row.basis, share);
     }
   }
   return result;
 }
-
-export const monthsBetween = monthRange;

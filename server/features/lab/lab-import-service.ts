@@ -3,6 +3,7 @@ import { dayName, monthOfDay } from '#shared/calendar/day.ts';
 import { monthName } from '#shared/calendar/month.ts';
 import type { LabRow } from '#shared/lab/lab-row.ts';
 import { readLabSheets } from '#shared/lab/read-lab-sheet.ts';
+import { resolveLabRows } from '#shared/lab/resolve-lab-rows.ts';
 import { Problem, fieldProblem } from '#shared/problems.ts';
 import type { labAnswerInput, labUploadInput } from '#shared/schemas/lab.ts';
 import { recordChange } from '../../audit/record-change.ts';
@@ -11,11 +12,52 @@ import { sha256Of } from '../../files/file-store.ts';
 import type { Context, Dependencies, UploadedFile } from '../../http/route.ts';
 import { readSheet } from '../../spreadsheets/read-sheet.ts';
 import * as importRepository from '../imports/import-repository.ts';
-import { insertPendingChange, listClosedMonths } from '../ledger/entry-repository.ts';
+import { insertPendingChange, listClosedMonths, lockSiteLedger } from '../ledger/entry-repository.ts';
 import { openExceedances } from '../limits/exceedance-service.ts';
 import { siteOf } from '../sites/site-service.ts';
 import * as repository from './lab-repository.ts';
 import { previewOf, catalogOf, openImport, stage, today, type StoredReading } from './lab-import-staging.ts';
+
+/** The same bytes twice are one import. */
+async function refuseSameFile(tx: Transaction, siteId: string, sha256: string): Promise<void> {
+  const same = await importRepository.findSameFile(tx, siteId, 'lab', sha256);
+  if (same)
+    throw new Problem(
+      'already-done',
+      `This file was imported on ${dayName(same.confirmedAt!.slice(0, 10))} already. There is nothing to do.`,
+    );
+}
+
+const isSameOutcome = (a: LabRow, b: LabRow): boolean =>
+  a.state === b.state &&
+  a.value === b.value &&
+  a.unit === b.unit &&
+  a.analyteId === b.analyteId &&
+  a.samplePointId === b.samplePointId &&
+  a.supersedesId === b.supersedesId;
+
+/** Reads the staged rows again against the record as it is now. Nothing is in the record yet. */
+export async function restageResults(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  importId: string,
+) {
+  const row = await openImport(tx, context, importId);
+  if (row.confirmedAt) throw new Problem('already-done', 'This upload is written already.');
+  const siteId = siteOf(context);
+  const reading = row.reading as StoredReading;
+  const counts = await stage(
+    tx,
+    context,
+    deps,
+    importId,
+    (await importRepository.listRows(tx, importId)).map((one) => one.payload as LabRow),
+    await catalogOf(tx, siteId, row.laboratoryId!, await today(tx, siteId, deps), reading.dateOrder),
+    reading.skipped.length,
+  );
+  return { id: importId, counts };
+}
 
 /** Takes a laboratory's sheet: kept byte for byte, read in a child process, staged. Nothing is in the record yet. */
 export async function uploadResults(
@@ -32,12 +74,7 @@ export async function uploadResults(
   if (!(await repository.listLaboratories(tx)).some((one) => one.id === input.laboratoryId))
     throw fieldProblem('/laboratoryId', 'Choose the laboratory.');
   const sha256 = sha256Of(file.bytes);
-  const same = await importRepository.findSameFile(tx, siteId, 'lab', sha256);
-  if (same)
-    throw new Problem(
-      'already-done',
-      `This file was imported on ${dayName(same.confirmedAt!.slice(0, 10))} already. There is nothing to do.`,
-    );
+  await refuseSameFile(tx, siteId, sha256);
   const read = await readSheet(file);
   const reading = readLabSheets(read.sheets);
   if (!reading.layout || !reading.rows.length)
@@ -124,22 +161,7 @@ export async function answerQuestion(
       toValue: input.toValue,
     });
   }
-  const raws = (await importRepository.listRows(tx, importId)).map((one) => one.payload as LabRow);
-  const counts = await stage(
-    tx,
-    context,
-    deps,
-    importId,
-    raws,
-    await catalogOf(
-      tx,
-      siteOf(context),
-      laboratoryId,
-      await today(tx, siteOf(context), deps),
-      reading.dateOrder,
-    ),
-    reading.skipped.length,
-  );
+  const { counts } = await restageResults(tx, context, deps, importId);
   await recordChange(tx, context, {
     action: 'answer',
     subjectType: 'imports',
@@ -199,9 +221,20 @@ export async function confirmResults(
   importId: string,
 ) {
   const siteId = siteOf(context);
+  await lockSiteLedger(tx, siteId);
   const row = await openImport(tx, context, importId);
   if (row.confirmedAt) throw new Problem('already-done', 'This upload is written already.');
-  const rows = (await importRepository.listRows(tx, importId)).map((one) => one.payload as LabRow);
+  if (row.undoneAt) throw new Problem('already-done', 'This upload was discarded.');
+  await refuseSameFile(tx, siteId, row.fileSha256);
+  const staged = (await importRepository.listRows(tx, importId)).map((one) => one.payload as LabRow);
+  const receivedOn = await today(tx, siteId, deps);
+  const { dateOrder } = row.reading as StoredReading;
+  const rows = resolveLabRows(staged, await catalogOf(tx, siteId, row.laboratoryId!, receivedOn, dateOrder));
+  if (rows.some((one, index) => !isSameOutcome(one, staged[index]!)))
+    throw new Problem(
+      'changed-meanwhile',
+      'The record or the answers of the laboratory changed since this upload was read. Nothing was written: read it again, then look at what would be written now.',
+    );
   const good = rows.filter((one) => one.state === 'ok' || one.state === 'warned');
   if (!good.length)
     throw new Problem(
@@ -225,7 +258,7 @@ export async function confirmResults(
         siteId,
         month,
         factId: importId,
-        sentence: `Results of ${row.fileName} arrived after ${monthName(month)} was closed.`,
+        sentence: `Results of ${row.fileName} arrived after ${monthName(month)} was closed. They count; an issued report of the month becomes stale.`,
       });
   }
   const heldCount = rows.filter((one) => one.state === 'held').length;
@@ -240,6 +273,32 @@ export async function confirmResults(
     ...new Set(good.map((one) => monthOfDay(one.sampledOn!))),
   ]);
   return { id: importId, writtenCount: good.length, heldCount, exceedanceCount: exceedances };
+}
+
+/** Lays an upload aside that was never written: its file and rows are kept, nothing waits for it any more. */
+export async function discardResults(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  importId: string,
+) {
+  const row = await openImport(tx, context, importId);
+  if (row.confirmedAt || row.undoneAt)
+    throw new Problem(
+      'already-done',
+      row.confirmedAt ? 'This upload is written: undo it instead.' : 'This upload was discarded already.',
+    );
+  await importRepository.updateImport(tx, importId, {
+    undoneAt: deps.now().toISOString(),
+    undoneById: context.personId,
+  });
+  await recordChange(tx, context, {
+    action: 'discard',
+    subjectType: 'imports',
+    subjectId: importId,
+    sentence: `The upload of ${row.fileName} was discarded unwritten.`,
+  });
+  return { id: importId };
 }
 
 /** Voids every result of an upload by rows that say so; refused where a month is closed. */

@@ -20,7 +20,14 @@ import {
   readLimitChoices,
   readLimits,
 } from '../limits/limit-service.ts';
-import { answerQuestion, confirmResults, undoResults, uploadResults } from './lab-import-service.ts';
+import {
+  answerQuestion,
+  confirmResults,
+  discardResults,
+  restageResults,
+  undoResults,
+  uploadResults,
+} from './lab-import-service.ts';
 import { readLabImport } from './lab-import-view.ts';
 import { createLaboratory, createSamplePoint, readLab } from './lab-view.ts';
 
@@ -64,6 +71,20 @@ export const labRoutes: Route[] = [
     permission: 'upload:results',
     params: siteRecordParams,
     handle: ({ tx, context, deps, params }) => confirmResults(tx, context, deps, params.id),
+  }),
+  route({
+    method: 'post',
+    path: '/sites/:siteId/lab-imports/:id/reading',
+    permission: 'upload:results',
+    params: siteRecordParams,
+    handle: ({ tx, context, deps, params }) => restageResults(tx, context, deps, params.id),
+  }),
+  route({
+    method: 'post',
+    path: '/sites/:siteId/lab-imports/:id/discard',
+    permission: 'upload:results',
+    params: siteRecordParams,
+    handle: ({ tx, context, deps, params }) => discardResults(tx, context, deps, params.id),
   }),
   route({
     method: 'post',

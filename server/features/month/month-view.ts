@@ -216,7 +216,7 @@ export async function readMonth(
   const pending = (await listPendingChanges(tx, siteId)).filter((one) => one.month === month);
   for (const one of pending)
     odd.push({
-      subject: 'A change waits.',
+      subject: 'After the closing.',
       sentence: one.sentence,
       link: `trail?subject=${one.factId}`,
       linkText: 'Trail',

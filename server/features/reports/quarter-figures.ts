@@ -1,20 +1,28 @@
 import { dayName, daysBetween } from '#shared/calendar/day.ts';
 import { monthName, quarterName } from '#shared/calendar/month.ts';
+import { totalPairs, type PairTotal } from '#shared/reconciliation/total-pairs.ts';
 import type { Quarter } from './quarter.ts';
+
+function addTotal(figures: Record<string, number>, name: string, total: PairTotal): void {
+  if (total.predictedM3 !== null) figures[`${name} predicted, quarter, m³`] = total.predictedM3;
+  if (total.measuredM3 !== null) figures[`${name} pumped, quarter, m³`] = total.measuredM3;
+  if (total.differenceM3 !== null) figures[`${name} gap, quarter, m³`] = total.differenceM3;
+}
 
 /** The figures of the report page by name: what a later issue is compared with, and what the Checks sheet repeats. */
 export function quarterFigures(quarter: Quarter): Record<string, number> {
   const figures: Record<string, number> = {};
   for (const cell of quarter.cells) {
-    const own = quarter.cellMonths.filter((one) => one.cellCode === cell.code);
+    const own = quarter.cellMonths.filter((one) => one.cellCode === cell.code && one.isOpen);
     for (const one of own) {
-      figures[`${cell.code} predicted, ${monthName(one.month)}, m³`] = one.predictedM3;
+      if (one.predictedM3 !== null)
+        figures[`${cell.code} predicted, ${monthName(one.month)}, m³`] = one.predictedM3;
       if (one.measuredM3 !== null)
         figures[`${cell.code} pumped, ${monthName(one.month)}, m³`] = one.measuredM3;
     }
-    figures[`${cell.code} predicted, quarter, m³`] = own.reduce((sum, one) => sum + one.predictedM3, 0);
-    figures[`${cell.code} pumped, quarter, m³`] = own.reduce((sum, one) => sum + (one.measuredM3 ?? 0), 0);
+    addTotal(figures, `${cell.code}`, totalPairs(own));
   }
+  addTotal(figures, 'Site', totalPairs(quarter.cellMonths.filter((one) => one.isOpen)));
   for (const one of quarter.verdicts) {
     if (one.verdict.valueText)
       figures[

@@ -7,10 +7,10 @@ import { stepCover } from '#shared/water-balance/run-water-balance.ts';
 import type { CoverKind } from '#shared/water-balance/cover-types.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import * as balanceRepository from '../balance/balance-repository.ts';
-import { measuredByCell } from '../compare/measured-service.ts';
+import { measuredByCell, type MeasuredMonth } from '../compare/measured-service.ts';
 import * as entryRepository from '../ledger/entry-repository.ts';
 import type { SiteRecord } from '../sites/site-service.ts';
-import type { Quarter, QuarterDay, QuarterStep } from './quarter.ts';
+import type { Quarter, QuarterCellMonth, QuarterDay, QuarterStep } from './quarter.ts';
 
 export async function stepsOf(
   tx: Transaction,
@@ -55,6 +55,32 @@ export async function stepsOf(
     );
 }
 
+/** Predicted and measured of every cell and month; what is not there stays null. */
+export function cellMonthsOf(
+  record: SiteRecord,
+  months: Month[],
+  predicted: ReadonlyMap<string, { volumeM3: number; areaM2: number }>,
+  measured: ReadonlyMap<string, MeasuredMonth>,
+): QuarterCellMonth[] {
+  return record.cells.flatMap((cell) =>
+    months.map((month) => {
+      const key = `${cell.id} ${month}`;
+      const own = measured.get(key);
+      return {
+        cellId: cell.id,
+        cellCode: cell.code,
+        month,
+        areaM2: predicted.get(key)?.areaM2 ?? 0,
+        isOpen: cell.openedOn <= lastDay(month),
+        predictedM3: predicted.get(key)?.volumeM3 ?? null,
+        measuredM3: own?.volumeM3 ?? null,
+        estimatedM3: own?.estimatedM3 ?? 0,
+        allocatedM3: own?.allocatedM3 ?? 0,
+      };
+    }),
+  );
+}
+
 /** Predicted and pumped of the whole site, month by month, for the charts. */
 export async function historyOf(
   tx: Transaction,
@@ -80,7 +106,8 @@ export async function historyOf(
           {
             month,
             predictedM3: cells.reduce((sum, cell) => sum + predicted.get(`${cell.id} ${month}`)!, 0),
-            measuredM3: read.length ? read.reduce((sum, one) => sum + one.volumeM3, 0) : null,
+            measuredM3:
+              read.length === cells.length ? read.reduce((sum, one) => sum + one.volumeM3, 0) : null,
           },
         ]
       : [];

@@ -13,7 +13,7 @@ import { recomputeDays } from '../ledger/posting-service.ts';
 import { judgeMonths } from '../limits/verdict-service.ts';
 import { readSite, siteDaysOf, siteOf } from '../sites/site-service.ts';
 import type { Quarter } from './quarter.ts';
-import { daysOf, historyOf, leakDetectionOf, stepsOf } from './quarter-parts.ts';
+import { cellMonthsOf, daysOf, historyOf, leakDetectionOf, stepsOf } from './quarter-parts.ts';
 import { notesOf } from './quarter-notes.ts';
 
 /** Collects the quarter from one transaction, so that all sheets agree with each other. */
@@ -100,21 +100,7 @@ export async function collectQuarter(
     parameterSet: `${set.name}, version ${set.version}${set.confirmedAt ? '' : ' (template, not confirmed)'}`,
     cells: record.cells.map((cell) => ({ code: cell.code, name: cell.name })),
     steps,
-    cellMonths: record.cells.flatMap((cell) =>
-      months.map((month) => {
-        const key = `${cell.id} ${month}`;
-        const own = measured.get(key);
-        return {
-          cellCode: cell.code,
-          month,
-          areaM2: predicted.get(key)?.areaM2 ?? 0,
-          predictedM3: predicted.get(key)?.volumeM3 ?? 0,
-          measuredM3: own?.volumeM3 ?? null,
-          estimatedM3: own?.estimatedM3 ?? 0,
-          allocatedM3: own?.allocatedM3 ?? 0,
-        };
-      }),
-    ),
+    cellMonths: cellMonthsOf(record, months, predicted, measured),
     history: await historyOf(tx, record, run.id, months[2]!),
     intervals,
     days: await daysOf(tx, record, months),

@@ -22,10 +22,15 @@ export interface QuarterStep {
 }
 
 export interface QuarterCellMonth {
+  cellId: string;
   cellCode: string;
   month: Month;
   areaM2: number;
-  predictedM3: number;
+  /** False before the cell opened: nothing is expected of it. */
+  isOpen: boolean;
+  /** Null where the run does not reach the month. */
+  predictedM3: number | null;
+  /** Null where nothing was read. */
   measuredM3: number | null;
   estimatedM3: number;
   allocatedM3: number;

@@ -68,21 +68,34 @@ async function readinessOf(tx: Transaction, siteId: string, quarter: Quarter): P
       link: `balance/${quarter.months[2]}`,
     });
   const notes = await listNotes(tx, siteId);
-  for (const one of quarter.cellMonths) {
+  for (const month of quarter.months) {
+    const without = quarter.cellMonths.filter(
+      (one) => one.month === month && one.isOpen && one.predictedM3 === null,
+    );
+    if (without.length)
+      lines.push({
+        state: 'stops',
+        sentence: `There is no prediction for ${monthName(month)}: the balance does not reach it. Freeze and accept a run that does.`,
+        link: `balance/${month}`,
+      });
+  }
+  for (const one of quarter.cellMonths.filter((row) => row.isOpen)) {
     if (one.measuredM3 === null)
       lines.push({
         state: 'ask',
         sentence: `${one.cellCode}: nothing was measured in ${monthName(one.month)}.`,
         link: `ledger/${one.month}`,
       });
-    else {
+    else if (one.predictedM3 !== null) {
       const difference = one.measuredM3 - one.predictedM3;
       const tolerance = compareTolerance({
         predictedM3: one.predictedM3,
         measuredM3: one.measuredM3,
         areaM2: one.areaM2,
       });
-      const explained = notes.some((note) => note.month === one.month && note.state !== 'open');
+      const explained = notes.some(
+        (note) => note.cellId === one.cellId && note.month === one.month && note.state !== 'open',
+      );
       if (Math.abs(difference) > tolerance.valueM3 && !explained)
         lines.push({
           state: 'ask',

@@ -1,12 +1,26 @@
 import type ExcelJS from 'exceljs';
 import { monthName } from '#shared/calendar/month.ts';
-import { dayName } from '#shared/calendar/day.ts';
+import { dayName, firstDay, lastDay } from '#shared/calendar/day.ts';
+import { totalPairs, type PairTotal } from '#shared/reconciliation/total-pairs.ts';
 import type { Quarter } from '../../features/reports/quarter.ts';
 import { balanceColumn, balanceFirstRow } from './balance-sheet.ts';
 import { addSheet, addTable, formats, letters, type CellInput, type ColumnSpec } from './sheet-tools.ts';
 import type { CompareRows } from './volume-sheets.ts';
 
 const summaryHeader = 3;
+
+/** A sum that says in words when there is nothing to add: SUM alone would make it a zero. */
+const sumOf = (range: string, result: number | null, words: string): CellInput => ({
+  formula: `IF(COUNT(${range})=0,"${words}",SUM(${range}))`,
+  result: result ?? words,
+});
+
+/** The three columns of the quarter: no difference while a month of it lacks one side. */
+const quarterOf = (row: number, total: PairTotal): CellInput[] => [
+  sumOf(`B${row},D${row},F${row}`, total.predictedM3, 'no prediction'),
+  sumOf(`C${row},E${row},G${row}`, total.measuredM3, 'not read'),
+  total.differenceM3 === null ? 'not whole' : { formula: `I${row}-H${row}`, result: total.differenceM3 },
+];
 
 /** One page: predicted and pumped by cell and month, the quarter, and the worst of every limit. */
 export function fillSummarySheet(
@@ -21,7 +35,7 @@ export function fillSummarySheet(
     return `Compare!${column}${compare.firstRow + index}`;
   };
   const columns: ColumnSpec[] = [
-    { header: 'Leachate, m³', width: 18 },
+    { header: 'Leachate, m³', width: 34 },
     ...quarter.months.flatMap((month): ColumnSpec[] => [
       { header: `${monthName(month)} predicted`, format: formats.m3 },
       { header: `${monthName(month)} pumped`, format: formats.m3 },
@@ -38,45 +52,42 @@ export function fillSummarySheet(
   const rows = quarter.cells.map((one, index): CellInput[] => {
     const row = summaryHeader + 1 + index;
     const own = figures[index]!;
-    const predicted = own.reduce((sum, item) => sum + item.predictedM3, 0);
-    const pumped = own.reduce((sum, item) => sum + (item.measuredM3 ?? 0), 0);
+    const total = totalPairs(own.filter((item) => item.isOpen));
     return [
       `${one.code} ${one.name}`,
       ...own.flatMap((item, monthIndex): CellInput[] => [
-        { formula: cell('D', one.code, monthIndex), result: item.predictedM3 },
-        { formula: cell('G', one.code, monthIndex), result: item.measuredM3 ?? 'not read' },
+        {
+          formula: cell('D', one.code, monthIndex),
+          result: item.predictedM3 ?? (item.isOpen ? 'no prediction' : 'not open'),
+        },
+        {
+          formula: cell('G', one.code, monthIndex),
+          result: item.measuredM3 ?? (item.isOpen ? 'not read' : 'not open'),
+        },
       ]),
-      { formula: `SUM(B${row},D${row},F${row})`, result: predicted },
-      { formula: `SUM(C${row},E${row},G${row})`, result: pumped },
-      { formula: `I${row}-H${row}`, result: pumped - predicted },
+      ...quarterOf(row, total),
     ];
   });
   const siteRow = summaryHeader + 1 + rows.length;
   const lastColumn = columns.length;
-  const total = (pick: (item: Quarter['cellMonths'][number]) => number, monthIndex: number | null) =>
-    figures.reduce(
-      (sum, own) =>
-        sum +
-        own
-          .filter((_, index) => monthIndex === null || index === monthIndex)
-          .reduce((inner, item) => inner + pick(item), 0),
-      0,
-    );
-  const siteTotals = [0, 1, 2].flatMap((index) => [
-    total((item) => item.predictedM3, index),
-    total((item) => item.measuredM3 ?? 0, index),
-  ]);
-  const quarterTotals = [
-    total((item) => item.predictedM3, null),
-    total((item) => item.measuredM3 ?? 0, null),
-  ];
-  const results = [...siteTotals, ...quarterTotals, quarterTotals[1]! - quarterTotals[0]!];
+  const siteMonths = quarter.months.map((month) =>
+    totalPairs(quarter.cellMonths.filter((item) => item.isOpen && item.month === month)),
+  );
   rows.push([
     'Site',
-    ...results.map((result, index): CellInput => ({
-      formula: `SUM(${letters(index + 2)}${summaryHeader + 1}:${letters(index + 2)}${siteRow - 1})`,
-      result,
-    })),
+    ...siteMonths.flatMap((month, index): CellInput[] => [
+      sumOf(
+        `${letters(2 * index + 2)}${summaryHeader + 1}:${letters(2 * index + 2)}${siteRow - 1}`,
+        month.predictedM3,
+        'no prediction',
+      ),
+      sumOf(
+        `${letters(2 * index + 3)}${summaryHeader + 1}:${letters(2 * index + 3)}${siteRow - 1}`,
+        month.measuredM3,
+        'not read',
+      ),
+    ]),
+    ...quarterOf(siteRow, totalPairs(quarter.cellMonths.filter((item) => item.isOpen))),
   ]);
   addTable(sheet, summaryHeader, columns, rows);
   for (let column = 1; column <= lastColumn; column += 1)
@@ -212,6 +223,7 @@ export function addChecksSheet(
   const { balanceLastRow, compare, siteRow, pumped } = context;
   const checks: CheckRow[] = quarter.cellMonths.flatMap((one, index): CheckRow[] => {
     const row = compare.firstRow + index;
+    if (one.predictedM3 === null) return [];
     const predicted: CheckRow = {
       what: `${one.cellCode} predicted, ${monthName(one.month)}, m³`,
       formula: `Compare!D${row}`,
@@ -232,7 +244,7 @@ export function addChecksSheet(
       },
     ];
   });
-  const total = quarter.cellMonths.reduce((sum, one) => sum + one.predictedM3, 0);
+  const total = quarter.cellMonths.reduce((sum, one) => sum + (one.predictedM3 ?? 0), 0);
   checks.push({
     what: 'Site predicted, quarter, m³',
     formula: `Summary!H${siteRow}`,
@@ -320,7 +332,7 @@ export function fillAboutSheet(
 ): void {
   const lines: (readonly [string, CellInput])[] = [
     ['Site', quarter.site.name],
-    ['Period', `${dayName(`${quarter.months[0]}-01`)} to ${monthName(quarter.months[2]!)}`],
+    ['Period', `${dayName(firstDay(quarter.months[0]!))} to ${dayName(lastDay(quarter.months[2]!))}`],
     ['Issue', words.issue === null ? 'preview, not signed' : `issue ${words.issue}`],
     ['Signed', words.signedBy ? `${words.signedBy}, ${words.signedAt}` : 'not signed'],
     ['Certification', words.certification ?? 'The words of the permit stand here when the report is signed.'],

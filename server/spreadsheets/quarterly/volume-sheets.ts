@@ -151,30 +151,42 @@ export function addCompareSheet(
     const own = quarter.days.filter((entry) => entry.cellCode === one.cellCode && entry.month === one.month);
     const direct = own.reduce((sum, entry) => sum + entry.volumeM3 * entry.counts, 0);
     const measured = direct + one.allocatedM3;
-    const difference = measured - one.predictedM3;
-    running = isFirst ? difference : running + difference;
-    const isMissing = one.measuredM3 === null;
+    const difference = measured - (one.predictedM3 ?? 0);
+    const missing = !one.isOpen
+      ? 'not open'
+      : one.predictedM3 === null
+        ? 'no prediction'
+        : one.measuredM3 === null
+          ? 'not read'
+          : null;
+    running = (isFirst ? 0 : running) + (missing ? 0 : difference);
     return [
       one.cellCode,
       monthDate(one.month),
       one.areaM2,
-      {
-        formula: `SUMIFS(${range(balanceColumn('leachateM3'))},${range(balanceColumn('cell'))},A${row},${range(balanceColumn('month'))},B${row})`,
-        result: one.predictedM3,
-      },
+      one.predictedM3 === null
+        ? missing
+        : {
+            formula: `SUMIFS(${range(balanceColumn('leachateM3'))},${range(balanceColumn('cell'))},A${row},${range(balanceColumn('month'))},B${row})`,
+            result: one.predictedM3,
+          },
       { formula: `SUMIFS(${day('Y')},${day('W')},A${row},${day('Q')},B${row})`, result: direct },
       one.allocatedM3,
-      isMissing ? 'not read' : { formula: `E${row}+F${row}`, result: measured },
-      isMissing ? 'not read' : { formula: `G${row}-D${row}`, result: difference },
-      isMissing
-        ? 'not read'
-        : {
-            formula: `IF(D${row}=0,"not defined",H${row}/D${row})`,
-            result: one.predictedM3 === 0 ? 'not defined' : difference / one.predictedM3,
-          },
-      isMissing ? 'not read' : { formula: isFirst ? `H${row}` : `N(J${row - 1})+H${row}`, result: running },
+      one.measuredM3 === null
+        ? one.isOpen
+          ? 'not read'
+          : 'not open'
+        : { formula: `E${row}+F${row}`, result: measured },
+      missing ?? { formula: `G${row}-D${row}`, result: difference },
+      missing ?? {
+        formula: `IF(D${row}=0,"not defined",H${row}/D${row})`,
+        result: one.predictedM3 === 0 ? 'not defined' : difference / one.predictedM3!,
+      },
+      missing ?? { formula: isFirst ? `H${row}` : `N(J${row - 1})+H${row}`, result: running },
       one.estimatedM3,
-      isMissing || measured === 0 ? 0 : { formula: `K${row}/G${row}`, result: one.estimatedM3 / measured },
+      one.measuredM3 === null || measured === 0
+        ? 0
+        : { formula: `K${row}/G${row}`, result: one.estimatedM3 / measured },
     ];
   });
   addTable(

@@ -44,6 +44,7 @@ function stateSentence(view: CompareView): string {
   ).length;
   if (!view.rows.length) return 'There is no month to compare yet.';
   const span = `${monthName(view.rows[0]!.month)} to ${monthName(view.rows.at(-1)!.month)}:`;
+  if (view.rows.every((row) => row.measuredM3 === null)) return `${span} nothing was read.`;
   if (!outside) return `${span} every month that was read lies inside its tolerance.`;
   return `${span} ${outside} of ${view.rows.length} months lie outside their tolerance${unexplained ? `, ${unexplained} without an explanation` : ', all explained'}.${asking.length ? '' : ' The year as a whole agrees.'}`;
 }
@@ -80,6 +81,9 @@ export function ComparePage() {
               {view.run.kind === 'frozen' ? `Frozen run ${view.run.number}` : 'Working run'} of{' '}
               {formatInstant(view.run.computedAt)}
               {view.run.isAccepted ? ', accepted by an engineer' : ', not accepted by an engineer'}.{' '}
+              {view.run.isOutOfDate && (
+                <strong>The record has changed since: the working run differs from this one. </strong>
+              )}
               <Link
                 to={`/sites/${site.slug}/balance/${month}${view.run.kind === 'frozen' ? `?run=${view.run.id}` : ''}`}
               >

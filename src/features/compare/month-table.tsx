@@ -1,4 +1,5 @@
 import { monthShortName } from '#shared/calendar/month.ts';
+import { totalPairs } from '#shared/reconciliation/total-pairs.ts';
 import type { CompareView, ComparedRow } from '#shared/views/balance-view.ts';
 import { ScrollBox } from '../../components/page.tsx';
 import { Word } from '../../components/words.tsx';
@@ -32,8 +33,7 @@ function WhatHappened({ row }: { row: ComparedRow }) {
 
 function Totals({ rows }: { rows: readonly ComparedRow[] }) {
   const total = (pick: (row: ComparedRow) => number) => rows.reduce((sum, row) => sum + pick(row), 0);
-  const read = rows.filter((row) => row.measuredM3 !== null);
-  const gap = read.reduce((sum, row) => sum + row.differenceM3!, 0);
+  const volumes = totalPairs(rows);
   return (
     <tr>
       <th scope="row" className="sticky left-0 bg-surface">
@@ -46,9 +46,9 @@ function Totals({ rows }: { rows: readonly ComparedRow[] }) {
       <td />
       <td />
       <td className="r">{formatM3(total((row) => row.predictedM3))}</td>
-      <td className="r">{formatM3(read.reduce((sum, row) => sum + row.measuredM3!, 0))}</td>
+      <td className="r">{volumes.measuredM3 === null ? 'not read' : formatM3(volumes.measuredM3)}</td>
       <td />
-      <td className="r">{formatSigned(gap)}</td>
+      <td className="r">{volumes.differenceM3 === null ? '–' : formatSigned(volumes.differenceM3)}</td>
       <td />
       <td />
     </tr>

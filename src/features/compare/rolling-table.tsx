@@ -106,8 +106,10 @@ export function RollingTable({ view }: { view: CompareView }) {
                   <th scope="row" className="sticky left-0 bg-surface whitespace-nowrap">
                     {monthName(row.month)}
                   </th>
-                  <td className="r">{formatM3(row.rolling.predictedM3)}</td>
-                  <td className="r">{formatM3(row.rolling.measuredM3)}</td>
+                  <td className="r">{row.rolling.monthCount ? formatM3(row.rolling.predictedM3) : '–'}</td>
+                  <td className="r">
+                    {row.rolling.monthCount ? formatM3(row.rolling.measuredM3) : 'not read'}
+                  </td>
                   <td className="r">
                     {row.rolling.percent === null ? '–' : formatPercent(row.rolling.percent)}
                   </td>

@@ -15,28 +15,40 @@ function Act({ view }: { view: LabImportView }) {
     { writtenCount: number; heldCount: number; exceedanceCount: number }
   >(site.id, `/lab-imports/${view.id}/confirmation`);
   const undo = useWrite<Record<string, never>>(site.id, `/lab-imports/${view.id}/undo`);
+  const reread = useWrite<Record<string, never>>(site.id, `/lab-imports/${view.id}/reading`, {
+    onDone: () => confirm.reset(),
+  });
+  const discard = useWrite<Record<string, never>>(site.id, `/lab-imports/${view.id}/discard`);
   const { month = '' } = useParams();
   if (!can('upload:results')) return null;
   const writeCount = view.counts.ok + view.counts.warned;
-  const error = confirm.error ?? undo.error;
+  const error = confirm.error ?? undo.error ?? reread.error ?? discard.error;
   return (
     <div className="mt-6 grid gap-3 no-print" role="status">
       {confirm.data && (
         <p className="box box-done">
           {confirm.data.writtenCount} results were written, {confirm.data.heldCount} stay held
           {confirm.data.exceedanceCount
-            ? `. ${confirm.data.exceedanceCount} exceedance${confirm.data.exceedanceCount === 1 ? ' was' : 's were'} opened, with the clock running`
+            ? `. ${confirm.data.exceedanceCount} exceedance${confirm.data.exceedanceCount === 1 ? ' was' : 's were'} opened; Limits shows what is due`
             : ''}
           .
         </p>
       )}
       {error && (
         <p role="alert" className="error-text">
-          ⚠ {error.document.detail}
+          ⚠ {error.document.detail}{' '}
+          {error.kind === 'changed-meanwhile' && (
+            <button type="button" className="link" onClick={() => reread.mutate({})}>
+              Read it again
+            </button>
+          )}
         </p>
       )}
       {view.undoneAt ? (
-        <p>This upload was undone. The file and its rows are kept.</p>
+        <p>
+          This upload was {view.confirmedAt ? 'undone' : 'discarded unwritten'}. The file and its rows are
+          kept.
+        </p>
       ) : view.confirmedAt ? (
         <p>
           <button
@@ -49,21 +61,28 @@ function Act({ view }: { view: LabImportView }) {
           </button>{' '}
           <span className="hint">Every value it wrote is voided, not erased.</span>
         </p>
-      ) : writeCount === 0 ? (
-        <p>No row can be written yet. Answer the questions above, or leave the upload as it is.</p>
       ) : (
         <div className="flex flex-wrap gap-3 items-center">
-          <button
-            type="button"
-            className="btn"
-            disabled={confirm.isPending}
-            onClick={() => confirm.mutate({})}
-          >
-            Write {writeCount} {writeCount === 1 ? 'result' : 'results'}
-          </button>
+          {writeCount === 0 ? (
+            <p className="basis-full">
+              No row can be written yet. Answer the questions above, or lay the upload aside.
+            </p>
+          ) : (
+            <button
+              type="button"
+              className="btn"
+              disabled={confirm.isPending}
+              onClick={() => confirm.mutate({})}
+            >
+              Write {writeCount} {writeCount === 1 ? 'result' : 'results'}
+            </button>
+          )}
           <Link className="btn btn-second" to={`/sites/${site.slug}/lab/${month}`}>
             Leave without writing
           </Link>
+          <button type="button" className="link min-h-12" onClick={() => discard.mutate({})}>
+            Discard this upload
+          </button>
           <span className="hint">One step, and it can be undone. Held rows stay with this upload.</span>
         </div>
       )}
@@ -74,13 +93,13 @@ function Act({ view }: { view: LabImportView }) {
 /** An uploaded sheet in three bands: as it looks, how it is read, what will be written. */
 export function LabCheckPage() {
   const { importId = '' } = useParams();
-  const { site } = usePlace();
+  const { site, can } = usePlace();
   const query = useRecord<LabImportView>(site.id, `/lab-imports/${importId}`);
   const view = query.data;
   const sentence =
     view &&
     (view.undoneAt
-      ? `${view.counts.read} rows; undone.`
+      ? `${view.counts.read} rows; ${view.confirmedAt ? 'undone' : 'discarded'}.`
       : view.confirmedAt
         ? `${view.counts.read} rows, written. ${view.counts.held} are held.`
         : `${view.counts.read} rows. ${view.counts.held ? `${view.counts.held} are held and need an answer; the rest can be written without them.` : 'None is held.'} Nothing is stored yet.`);
@@ -103,7 +122,7 @@ export function LabCheckPage() {
             <Section title="What will be written">
               <Strip rows={data.rows} />
             </Section>
-            {!data.confirmedAt && (
+            {!data.confirmedAt && !data.undoneAt && can('upload:results') && (
               <Section title="Held" aside="an answer is remembered for this laboratory">
                 <QuestionList view={data} />
               </Section>

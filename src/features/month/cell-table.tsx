@@ -1,4 +1,5 @@
 import { Link } from 'react-router';
+import { totalPairs } from '#shared/reconciliation/total-pairs.ts';
 import type { MonthView } from '#shared/views/month-view.ts';
 import { ScrollBox } from '../../components/page.tsx';
 import { Empty } from '../../components/state.tsx';
@@ -18,11 +19,7 @@ export function CellTable({ view, slug, units }: { view: MonthView; slug: string
         No balance for this month yet: the climate record does not reach it, or a gap is not decided.
       </Empty>
     );
-  const measured = rows.filter((row) => row.measuredM3 !== null);
-  const total = {
-    predicted: rows.reduce((sum, row) => sum + row.predictedM3!, 0),
-    measured: measured.reduce((sum, row) => sum + row.measuredM3!, 0),
-  };
+  const total = totalPairs(rows);
   return (
     <>
       <ScrollBox label="Leachate of the month by cell">
@@ -81,18 +78,18 @@ export function CellTable({ view, slug, units }: { view: MonthView; slug: string
           <tfoot>
             <tr>
               <th scope="row">Site</th>
-              <td className="r">{formatVolume(total.predicted, units)}</td>
-              <td className="r">{formatVolume(total.measured, units)}</td>
+              <td className="r">{formatVolume(total.predictedM3!, units)}</td>
               <td className="r">
-                {formatSigned(
-                  units === 'us'
-                    ? (total.measured - total.predicted) * 264.172052
-                    : total.measured - total.predicted,
-                )}
+                {total.measuredM3 === null ? 'not read' : formatVolume(total.measuredM3, units)}
               </td>
               <td className="r">
-                {total.predicted
-                  ? formatPercent((100 * (total.measured - total.predicted)) / total.predicted)
+                {total.differenceM3 === null
+                  ? '–'
+                  : formatSigned(units === 'us' ? total.differenceM3 * 264.172052 : total.differenceM3)}
+              </td>
+              <td className="r">
+                {total.differenceM3 !== null && total.predictedM3
+                  ? formatPercent((100 * total.differenceM3) / total.predictedM3)
                   : '–'}
               </td>
             </tr>

@@ -1,4 +1,5 @@
 import { monthName, monthShortName } from '#shared/calendar/month.ts';
+import { totalPairs } from '#shared/reconciliation/total-pairs.ts';
 import type { ReportView } from '#shared/views/lab-view.ts';
 import { ScrollBox } from '../../components/page.tsx';
 import { VerdictWord } from '../../components/words.tsx';
@@ -7,38 +8,42 @@ import { formatM3, formatNumber, formatSigned } from '../../lib/format-quantity.
 export function VolumeTable({ view }: { view: ReportView }) {
   const of = (code: string, month: string) =>
     view.cellMonths.find((one) => one.cellCode === code && one.month === month);
-  const sum = (rows: ReportView['cellMonths'], pick: (row: ReportView['cellMonths'][number]) => number) =>
-    rows.reduce((total, row) => total + pick(row), 0);
   const line = (name: string, rows: (month: string) => ReportView['cellMonths']) => {
     const all = view.months.flatMap(rows);
-    const predicted = sum(all, (row) => row.predictedM3);
-    const measured = sum(all, (row) => row.measuredM3 ?? 0);
+    const quarter = totalPairs(all);
     return (
       <>
         <th scope="row">{name}</th>
         {view.months.map((month) => {
           const own = rows(month);
-          const isRead = own.some((row) => row.measuredM3 !== null);
+          const total = totalPairs(own);
+          const none = own.length ? null : 'not open';
           return [
             <td key={`${month}p`} className="r">
-              {formatM3(sum(own, (row) => row.predictedM3))}
+              {total.predictedM3 === null ? (none ?? 'no prediction') : formatM3(total.predictedM3)}
             </td>,
             <td key={`${month}m`} className="r">
-              {isRead ? (
+              {total.measuredM3 !== null ? (
                 <>
                   {own.some((row) => row.estimatedM3 > 0) && '◌ '}
                   {own.some((row) => row.allocatedM3 > 0) && '⊕ '}
-                  {formatM3(sum(own, (row) => row.measuredM3 ?? 0))}
+                  {formatM3(total.measuredM3)}
                 </>
               ) : (
-                'not read'
+                (none ?? 'not read')
               )}
             </td>,
           ];
         })}
-        <td className="r font-semibold">{formatM3(predicted)}</td>
-        <td className="r font-semibold">{formatM3(measured)}</td>
-        <td className="r font-semibold">{formatSigned(measured - predicted)}</td>
+        <td className="r font-semibold">
+          {quarter.predictedM3 === null ? 'no prediction' : formatM3(quarter.predictedM3)}
+        </td>
+        <td className="r font-semibold">
+          {quarter.measuredM3 === null ? 'not read' : formatM3(quarter.measuredM3)}
+        </td>
+        <td className="r font-semibold">
+          {quarter.differenceM3 === null ? 'not whole' : formatSigned(quarter.differenceM3)}
+        </td>
       </>
     );
   };
@@ -73,13 +78,15 @@ export function VolumeTable({ view }: { view: ReportView }) {
             <tr key={cell.code}>
               {line(`${cell.code} ${cell.name}`, (month) => {
                 const row = of(cell.code, month);
-                return row ? [row] : [];
+                return row?.isOpen ? [row] : [];
               })}
             </tr>
           ))}
         </tbody>
         <tfoot>
-          <tr>{line('Site', (month) => view.cellMonths.filter((one) => one.month === month))}</tr>
+          <tr>
+            {line('Site', (month) => view.cellMonths.filter((one) => one.month === month && one.isOpen))}
+          </tr>
         </tfoot>
       </table>
     </ScrollBox>

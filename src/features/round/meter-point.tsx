@@ -28,6 +28,7 @@ function RegisterForm({
 }: MeterProps & { replaces: PointDone | null; onWarning: (warning: string) => void }) {
   const register = point.register!;
   const [text, setText] = useState('');
+  const [typedAtMs, setTypedAtMs] = useState(() => Date.now());
   const [reason, setReason] = useState(replaces?.state === 'held' ? 'Read wrong, typed again' : '');
   const [at, setAt] = useState<string | null>(replaces ? replaces.at : isToday ? null : `${round.day}T07:30`);
   const { state, save, refuse } = useSave('/readings', `${point.name}: ${text} ${unitOf(point)}`);
@@ -36,7 +37,7 @@ function RegisterForm({
   const check = checkOf(
     point,
     text,
-    isSameTime ? Date.parse(replaces.observedAt) : at === null ? Date.now() : Date.parse(`${at}:00Z`),
+    isSameTime ? Date.parse(replaces.observedAt) : at === null ? typedAtMs : Date.parse(`${at}:00Z`),
   );
   const send = async () => {
     const problem = registerProblem(point, text);
@@ -82,7 +83,10 @@ function RegisterForm({
         }
         unit={unitOf(point)}
         value={text}
-        onChange={setText}
+        onChange={(value) => {
+          setText(value);
+          setTypedAtMs(Date.now());
+        }}
         isWrong={state.kind === 'problem'}
       />
       <div aria-live="polite" className="min-h-6">
