@@ -141,6 +141,8 @@ export interface LimitsView {
     periodKey: string;
     seenAt: string;
     seenBy: string;
+    /** False when the results behind an open exceedance were undone or revised and no longer exceed. */
+    isStanding: boolean;
     closedAt: string | null;
     cause: string | null;
     clocks: {

@@ -1,6 +1,5 @@
 import type * as z from 'zod';
-import { dayName } from '#shared/calendar/day.ts';
-import { monthName, type Month } from '#shared/calendar/month.ts';
+import type { Month } from '#shared/calendar/month.ts';
 import { Problem } from '#shared/problems.ts';
 import type { clockDoneInput, exceedanceCloseInput, exceedanceNoteInput } from '#shared/schemas/lab.ts';
 import { recordChange } from '../../audit/record-change.ts';
@@ -9,36 +8,11 @@ import type { Context, Dependencies } from '../../http/route.ts';
 import { listAddresses } from '../people/people-repository.ts';
 import { findSite } from '../sites/site-repository.ts';
 import { siteOf } from '../sites/site-service.ts';
+import { exceededPeriods } from './exceeded-periods.ts';
 import * as repository from './limit-repository.ts';
 import { judgeMonths, type JudgedLimit } from './verdict-service.ts';
 
 const hourMs = 3_600_000;
-
-/** One period of a limit that was exceeded: a day, or the month for an average. */
-function exceededPeriods({
-  limit,
-  month,
-  verdict,
-  analyteName,
-  pointCode,
-}: JudgedLimit): { periodKey: string; sentence: string }[] {
-  if (verdict.word !== 'exceed') return [];
-  const limitText = limit.statistic === 'range' ? `${limit.lowText} to ${limit.highText}` : limit.valueText;
-  if (limit.statistic === 'monthly-average') {
-    return [
-      {
-        periodKey: month,
-        sentence: `${analyteName} at ${pointCode}: average ${verdict.valueText} ${limit.unit} in ${monthName(month)}; limit ${limitText} ${limit.unit}, monthly average.`,
-      },
-    ];
-  }
-  return verdict.days
-    .filter((day) => day.exceeds)
-    .map((day) => ({
-      periodKey: day.siteDay,
-      sentence: `${analyteName} at ${pointCode}: ${day.valueText} ${limit.unit} on ${dayName(day.siteDay)}; limit ${limitText} ${limit.unit}, ${limit.statistic.replace('-', ' ')}.`,
-    }));
-}
 
 function clocksOf(limit: JudgedLimit['limit'], seenMs: number): { step: string; dueMs: number }[] {
   return [

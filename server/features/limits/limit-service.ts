@@ -10,6 +10,7 @@ import { listAnalytes, listSamplePoints } from '../lab/lab-repository.ts';
 import { listNames } from '../people/people-repository.ts';
 import { readSite, siteOf } from '../sites/site-service.ts';
 import * as repository from './limit-repository.ts';
+import { standingKeys } from './exceeded-periods.ts';
 import { judgeMonths } from './verdict-service.ts';
 
 export async function createPermit(tx: Transaction, context: Context, input: z.output<typeof permitInput>) {
@@ -108,8 +109,11 @@ export async function readLimits(
   const months = quarterMonths(quarterOf(month)).filter((one) => one <= month);
   const names = await listNames(tx);
   const permits = await repository.listPermits(tx, siteId);
-  const judged = await judgeMonths(tx, siteId, months);
   const exceedances = await repository.listExceedances(tx, siteId);
+  const open = exceedances.filter((one) => one.closedAt === null).map((one) => one.month);
+  const all = await judgeMonths(tx, siteId, [...new Set([...open, ...months])].sort());
+  const judged = all.filter((one) => months.includes(one.month));
+  const standing = standingKeys(all);
   const ids = exceedances.map((one) => one.id);
   const clocks = await repository.listClocks(tx, ids);
   const notes = await repository.listExceedanceNotes(tx, ids);
@@ -125,6 +129,7 @@ export async function readLimits(
     exceedances: exceedances.map((one) => ({
       ...one,
       seenBy: names.get(one.seenById) ?? '',
+      isStanding: one.closedAt !== null || standing.has(`${one.limitId} ${one.periodKey}`),
       clocks: clocks
         .filter((clock) => clock.exceedanceId === one.id)
         .map((clock) => ({ ...clock, doneBy: clock.doneById ? (names.get(clock.doneById) ?? '') : null })),

@@ -40,5 +40,6 @@ export const quarterTitle = (quarter: Quarter): string =>
 
 export const dueWords = (quarter: Quarter, today: string): string => {
   const left = daysBetween(today, quarter.dueOn);
-  return `${dayName(quarter.dueOn)}, ${left >= 0 ? `${left} days left` : `${-left} days late`}`;
+  const words = left >= 0 ? `${left} days left` : `${-left} days ago`;
+  return `${dayName(quarter.dueOn)}, ${words}`;
 };

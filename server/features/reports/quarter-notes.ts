@@ -2,9 +2,9 @@ import { firstDay, lastDay } from '#shared/calendar/day.ts';
 import type { Month } from '#shared/calendar/month.ts';
 import { notReadReasonNames } from '#shared/schemas/readings.ts';
 import type { Transaction } from '../../db/transaction.ts';
-import type { Dependencies } from '../../http/route.ts';
 import { listSiteClimate } from '../climate/climate-service.ts';
 import { listNotes } from '../compare/compare-service.ts';
+import { listClocks, listExceedances } from '../limits/limit-repository.ts';
 import * as entryRepository from '../ledger/entry-repository.ts';
 import { listAdjustments, listNotRead } from '../readings/reading-repository.ts';
 import type { SiteRecord } from '../sites/site-service.ts';
@@ -14,7 +14,6 @@ export async function notesOf(
   tx: Transaction,
   record: SiteRecord,
   months: Month[],
-  deps: Dependencies,
 ): Promise<Quarter['notes']> {
   const [first, last] = [firstDay(months[0]!), lastDay(months.at(-1)!)];
   const notes: Quarter['notes'] = [];
@@ -70,12 +69,30 @@ export async function notesOf(
       sentence: `${row.state}: ${row.cause}. ${row.note}`,
     });
   }
+  const exceedances = (await listExceedances(tx, record.site.id)).filter((one) => months.includes(one.month));
+  const clocks = await listClocks(
+    tx,
+    exceedances.map((one) => one.id),
+  );
+  for (const row of exceedances) {
+    const steps = clocks
+      .filter((clock) => clock.exceedanceId === row.id)
+      .map(
+        (clock) =>
+          `${clock.step}: ${clock.doneAt ? `done, ${clock.doneNote ?? ''}` : `due ${clock.dueAt.slice(0, 10)}`}`,
+      );
+    notes.push({
+      when: row.periodKey,
+      subject: 'Exceedance',
+      sentence: [row.sentence, ...steps, row.closedAt ? `Closed: ${row.cause ?? ''}` : 'Open.'].join(' '),
+    });
+  }
   for (const row of (await entryRepository.listPendingChanges(tx, record.site.id)).filter((one) =>
     months.includes(one.month),
   ))
     notes.push({ when: row.month, subject: 'Waiting', sentence: row.sentence });
   notes.push({
-    when: deps.now().toISOString().slice(0, 10),
+    when: last,
     subject: 'Liquid in sumps',
     sentence: 'The change of liquid standing in the sumps is counted as 0.',
   });

@@ -129,6 +129,6 @@ export async function collectQuarter(
       missingReason: row.missingReason,
       qualifier: row.qualifier,
     })),
-    notes: await notesOf(tx, record, months, deps),
+    notes: await notesOf(tx, record, months),
   };
 }

@@ -217,6 +217,8 @@ export async function previewReport(
     signedBy: null,
     signedAt: null,
     certification: null,
+    reason: null,
+    trailHead: null,
     changes: [],
     snapshotSha256,
   });
@@ -276,6 +278,8 @@ export async function signReport(
     signedBy,
     signedAt,
     certification,
+    reason: input.reason ?? null,
+    trailHead: headHash,
     changes,
     snapshotSha256,
   });

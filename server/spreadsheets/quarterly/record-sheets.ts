@@ -241,7 +241,7 @@ export function addNotesSheet(workbook: ExcelJS.Workbook, quarter: Quarter, titl
     );
   sheet.getCell('A2').value = estimated.length
     ? `Estimated: ${estimated.join('; ')}.`
-    : 'No estimated volume in the quarter.';
+    : 'No estimated volume among the leachate of the cells in this quarter.';
   addTable(
     sheet,
     3,

@@ -307,9 +307,15 @@ export interface IssueWords {
   signedBy: string | null;
   signedAt: string | null;
   certification: string | null;
+  /** Why it was signed although something was open; null when nothing was. */
+  reason: string | null;
+  /** Newest link of the trail's chain when it was signed. */
+  trailHead: string | null;
   changes: { name: string; issued: number; now: number }[];
   snapshotSha256: string;
 }
+
+const instantWords = (iso: string): string => `${dayName(iso.slice(0, 10))}, ${iso.slice(11, 16)} UTC`;
 
 const contents: [string, string][] = [
   ['Summary', 'one page: leachate by cell, limits, leak detection, stores'],
@@ -334,7 +340,7 @@ export function fillAboutSheet(
     ['Site', quarter.site.name],
     ['Period', `${dayName(firstDay(quarter.months[0]!))} to ${dayName(lastDay(quarter.months[2]!))}`],
     ['Issue', words.issue === null ? 'preview, not signed' : `issue ${words.issue}`],
-    ['Signed', words.signedBy ? `${words.signedBy}, ${words.signedAt}` : 'not signed'],
+    ['Signed', words.signedBy ? `${words.signedBy}, ${instantWords(words.signedAt!)}` : 'not signed'],
     ['Certification', words.certification ?? 'The words of the permit stand here when the report is signed.'],
     [
       'Checks',
@@ -343,8 +349,10 @@ export function fillAboutSheet(
         result: `All ${checks.checkCount} checks OK`,
       },
     ],
-    ['Made', quarter.generatedAt],
+    ...(words.reason ? ([['Signed with open points', words.reason]] as const) : []),
+    ['Made', instantWords(quarter.generatedAt)],
     ['Data snapshot, SHA-256', words.snapshotSha256],
+    ['Trail when signed, SHA-256', words.trailHead ?? 'not signed'],
     [
       'Balance',
       `${quarter.run.kind === 'frozen' ? `frozen run ${quarter.run.number}` : 'working run, not accepted'}, engine ${quarter.run.engineVersion}, ${quarter.parameterSet}`,

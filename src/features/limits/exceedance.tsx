@@ -72,58 +72,72 @@ export function Exceedance({ exceedance, now }: { exceedance: ExceedanceView; no
           <p>
             <strong>{exceedance.sentence}</strong> Seen by {exceedance.seenBy}.
           </p>
+          {!exceedance.isStanding && (
+            <p className="box box-warn">
+              As the record stands now, nothing exceeds here: the results behind it were undone or revised.
+              Close it with that reason, or find the result again in Lab.
+            </p>
+          )}
           {running && !exceedance.closedAt && (
             <ClockBar seenAt={exceedance.seenAt} clock={running} now={now} />
           )}
           {exceedance.cause && <p>Cause: {exceedance.cause}</p>}
         </div>
-        <ScrollBox label={`Steps and when they are due: ${exceedance.sentence}`}>
-          <table className="tbl tbl-tight">
-            <caption className="sr-only">Steps after the exceedance</caption>
-            <thead>
-              <tr>
-                <th scope="col">Step</th>
-                <th scope="col">Due</th>
-                <th scope="col">State</th>
-              </tr>
-            </thead>
-            <tbody>
-              {exceedance.clocks.map((clock) => (
-                <tr key={clock.id}>
-                  <th scope="row">
-                    {clock.step}
-                    <span className="hint block">{clock.citation}</span>
-                  </th>
-                  <td>{formatInstant(clock.dueAt)}</td>
-                  <td>
-                    {clock.doneAt ? (
-                      <>
-                        <Word look="good">Done</Word>
-                        <span className="hint block">
-                          {formatInstant(clock.doneAt)}, {clock.doneBy}: {clock.doneNote}
-                        </span>
-                      </>
-                    ) : (
-                      <>
-                        <Word look={clock === running ? 'clock' : 'open'}>Open</Word>
-                        {can('follow:exceedance') && !exceedance.closedAt && (
-                          <button
-                            type="button"
-                            className="link block"
-                            aria-label={`Record it: ${clock.step}`}
-                            onClick={() => setDoing({ kind: 'clock', clock })}
-                          >
-                            Record it
-                          </button>
-                        )}
-                      </>
-                    )}
-                  </td>
+        {exceedance.clocks.length === 0 && (
+          <p className="hint">
+            No step and no deadline was entered with this limit. Look in the permit what has to be done, and
+            by when.
+          </p>
+        )}
+        {exceedance.clocks.length > 0 && (
+          <ScrollBox label={`Steps and when they are due: ${exceedance.sentence}`}>
+            <table className="tbl tbl-tight">
+              <caption className="sr-only">Steps after the exceedance</caption>
+              <thead>
+                <tr>
+                  <th scope="col">Step</th>
+                  <th scope="col">Due</th>
+                  <th scope="col">State</th>
                 </tr>
-              ))}
-            </tbody>
-          </table>
-        </ScrollBox>
+              </thead>
+              <tbody>
+                {exceedance.clocks.map((clock) => (
+                  <tr key={clock.id}>
+                    <th scope="row">
+                      {clock.step}
+                      <span className="hint block">{clock.citation}</span>
+                    </th>
+                    <td>{formatInstant(clock.dueAt)}</td>
+                    <td>
+                      {clock.doneAt ? (
+                        <>
+                          <Word look="good">Done</Word>
+                          <span className="hint block">
+                            {formatInstant(clock.doneAt)}, {clock.doneBy}: {clock.doneNote}
+                          </span>
+                        </>
+                      ) : (
+                        <>
+                          <Word look={clock === running ? 'clock' : 'open'}>Open</Word>
+                          {can('follow:exceedance') && !exceedance.closedAt && (
+                            <button
+                              type="button"
+                              className="link block"
+                              aria-label={`Record it: ${clock.step}`}
+                              onClick={() => setDoing({ kind: 'clock', clock })}
+                            >
+                              Record it
+                            </button>
+                          )}
+                        </>
+                      )}
+                    </td>
+                  </tr>
+                ))}
+              </tbody>
+            </table>
+          </ScrollBox>
+        )}
       </div>
       {exceedance.notes.length > 0 && (
         <ul className="list-disc pl-5">

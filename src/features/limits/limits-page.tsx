@@ -18,13 +18,12 @@ import { ShareTrack } from './share-track.tsx';
 type Judged = LimitsView['verdicts'][number];
 
 function stateSentence(view: LimitsView): string {
-  const running = view.exceedances.filter(
-    (one) => !one.closedAt && one.clocks.some((clock) => !clock.doneAt),
-  ).length;
+  const open = view.exceedances.filter((one) => !one.closedAt);
+  const running = open.filter((one) => one.clocks.some((clock) => !clock.doneAt)).length;
   const count = (word: string) => view.verdicts.filter((one) => one.verdict.word === word).length;
   const parts = [
-    running
-      ? `${running} ${running === 1 ? 'exceedance has its clock' : 'exceedances have their clocks'} running`
+    open.length
+      ? `${open.length} ${open.length === 1 ? 'exceedance is' : 'exceedances are'} open${running ? `, ${running} with a clock running` : ''}`
       : '',
     count('exceed') ? `${count('exceed')} exceed` : '',
     count('cannot be judged') ? `${count('cannot be judged')} cannot be judged` : '',
