@@ -6,6 +6,7 @@ import type { CoverShare } from './site-view.ts';
 
 export interface BalanceGroup {
   areaM2: number;
+  meanAreaM2: number;
   volumesM3: Record<TermName, number>;
   headLine: HeadLine;
   pumpedM3: number | null;

@@ -22,6 +22,8 @@ interface StepForWorking {
   recessionPerMonth: number;
   channelledFraction: number;
   leakFraction: number;
+  /** What the month's PET rests on, where the method needs it. */
+  pet: { tMeanC: number | null; heatIndex: number | null; daylightHours: number };
 }
 
 /** The chain of terms that a term rests on, in the order they are computed. */
@@ -35,10 +37,19 @@ const chains: Partial<Record<TermName, TermName[]>> = {
   coverDrainMm: ['percolationMm'],
   absorbedMm: ['percolationMm', 'passedMm', 'returnToWasteMm'],
   dWasteMm: ['passedMm', 'returnToWasteMm', 'freeMoistureMm', 'absorbedMm', 'wasteStoreMm'],
-  drainedMm: ['passedMm', 'returnToWasteMm', 'freeMoistureMm', 'absorbedMm', 'wasteStoreMm'],
-  leakedMm: ['drainedMm'],
-  collectedMm: ['passedMm', 'absorbedMm', 'drainedMm'],
-  leachateMm: ['passedMm', 'absorbedMm', 'drainedMm', 'collectedMm', 'runoffToLeachateMm'],
+  drainedMm: ['passedMm', 'returnToWasteMm', 'freeMoistureMm', 'absorbedMm'],
+  leakedMm: ['passedMm', 'returnToWasteMm', 'freeMoistureMm', 'absorbedMm', 'drainedMm'],
+  collectedMm: ['passedMm', 'returnToWasteMm', 'freeMoistureMm', 'absorbedMm', 'drainedMm'],
+  leachateMm: [
+    'percolationMm',
+    'passedMm',
+    'returnToWasteMm',
+    'freeMoistureMm',
+    'absorbedMm',
+    'drainedMm',
+    'collectedMm',
+    'runoffToLeachateMm',
+  ],
 };
 
 function settingsOf(term: TermName, step: StepForWorking): Omit<WorkingLine, 'line'>[] {
@@ -69,28 +80,91 @@ function settingsOf(term: TermName, step: StepForWorking): Omit<WorkingLine, 'li
   return rows;
 }
 
-/** Store at the start of the step, for the terms that begin from one. */
-function startOf(term: TermName, { terms }: StepForWorking): Omit<WorkingLine, 'line'>[] {
-  const chain = [term, ...(chains[term] ?? [])];
-  const rows: Omit<WorkingLine, 'line'>[] = [];
-  if (chain.includes('soilStoreMm') || term === 'aetMm') {
-    rows.push({
-      what: 'Soil store before',
-      how: 'end of the step before',
-      value: terms.soilStoreMm - terms.dSoilMm + terms.soilWaterBroughtMm,
-      unit: 'mm',
-      source: null,
-    });
-  }
-  if (chain.includes('wasteStoreMm'))
-    rows.push({
-      what: 'Waste store before',
-      how: 'end of the step before',
-      value: terms.wasteStoreMm - terms.dWasteMm,
-      unit: 'mm',
-      source: null,
-    });
+type Row = Omit<WorkingLine, 'line'>;
+
+const given = (what: string, how: string, value: number, unit: string): Row => ({
+  what,
+  how,
+  value,
+  unit,
+  source: null,
+});
+
+/** The soil at the start: as the step before left it, and with the soil placed on this day. */
+function soilStart({ terms }: StepForWorking): Row[] {
+  const beforeMm = terms.soilStoreMm - terms.dSoilMm;
+  const rows = [given('Soil store before', 'end of the step before', beforeMm, 'mm')];
+  if (terms.soilWaterBroughtMm !== 0)
+    rows.push(
+      given(
+        'Water brought with soil',
+        'store of the new soil − store of the old',
+        terms.soilWaterBroughtMm,
+        'mm',
+      ),
+      given('Soil store to begin with', 'before + brought', beforeMm + terms.soilWaterBroughtMm, 'mm'),
+    );
   return rows;
+}
+
+/** The waste at the start, and how much of an even inflow stays in it: φ of the linear reservoir. */
+function wasteStart({ terms, recessionPerMonth, dayCount, daysInMonth }: StepForWorking): Row[] {
+  const months = dayCount / daysInMonth;
+  const exponent = recessionPerMonth * months;
+  return [
+    given('Deficit before', 'end of the step before + placed', terms.wasteDeficitMm + terms.absorbedMm, 'mm'),
+    given('Waste store before', 'end of the step before', terms.wasteStoreMm - terms.dWasteMm, 'mm'),
+    given('Length of the step, t', `${dayCount} of ${daysInMonth} days`, months, 'months'),
+    given(
+      'Share kept, φ',
+      '(1 − exp(−c·t)) ÷ (c·t)',
+      exponent === 0 ? 1 : -Math.expm1(-exponent) / exponent,
+      '',
+    ),
+    given(
+      'Inflow to the waste',
+      'passed + returned + free moisture − absorbed',
+      terms.passedMm + terms.returnToWasteMm + terms.freeMoistureMm - terms.absorbedMm,
+      'mm',
+    ),
+  ];
+}
+
+/** What the month's PET came from. */
+function petStart({ terms, cover, dayCount, daysInMonth, pet }: StepForWorking): Row[] {
+  const rows: Row[] = [];
+  if (pet.tMeanC !== null) rows.push(given('Mean temperature', 'climate record', pet.tMeanC, '°C'));
+  if (pet.heatIndex !== null) {
+    rows.push(
+      given(
+        'Heat index of the record, I',
+        'sum of (T ÷ 5)^1.514 over the long-term means',
+        pet.heatIndex,
+        '',
+      ),
+    );
+    rows.push(given('Daylight on the 15th', 'from the latitude', pet.daylightHours, 'h'));
+  }
+  if (cover.petFactor > 0)
+    rows.push(
+      given(
+        'PET of the month',
+        'by the method of the parameter set',
+        (terms.petMm / cover.petFactor) * (daysInMonth / dayCount),
+        'mm',
+      ),
+    );
+  return rows;
+}
+
+/** What the terms of a working begin from. */
+function startOf(term: TermName, step: StepForWorking): Row[] {
+  const chain = new Set<TermName>([term, ...(chains[term] ?? [])]);
+  return [
+    ...(chain.has('petMm') ? petStart(step) : []),
+    ...(chain.has('soilStoreMm') || term === 'aetMm' ? soilStart(step) : []),
+    ...(chain.has('absorbedMm') || chain.has('wasteStoreMm') ? wasteStart(step) : []),
+  ];
 }
 
 /**

@@ -1,4 +1,4 @@
-import type { Month } from '../calendar/month.ts';
+import { daysInMonth, type Month } from '../calendar/month.ts';
 import type { StepResult } from './run-water-balance.ts';
 import { termRegister, type StepTerms, type TermName } from './terms.ts';
 
@@ -8,18 +8,23 @@ const termNames = Object.keys(termRegister) as TermName[];
 
 /** Volumes of a group of steps, m³, under the terms' own names. */
 export interface SummedTerms {
+  /** Ground at the end, m². */
   areaM2: number;
+  /** Ground over the days of the months, m²: what a depth of the months is counted over. */
+  meanAreaM2: number;
   volumesM3: Record<TermName, number>;
 }
 
 /**
  * Adds steps to volumes, m³. Flows add over plots and time; stores add over the plots at their last step.
- * The area is that of the ground at the end.
+ * A cell that opens in mid-month has a mean area below its area at the end.
  */
 export function sumSteps(
   steps: readonly Pick<StepResult, 'plotId' | 'areaM2' | 'fromOn' | 'dayCount' | 'terms'>[],
 ): SummedTerms {
   const volumesM3 = Object.fromEntries(termNames.map((name) => [name, 0])) as Record<TermName, number>;
+  const dayCounts = new Map(steps.map(({ fromOn }) => [fromOn.slice(0, 7), daysInMonth(fromOn.slice(0, 7))]));
+  const areaDays = steps.reduce((sum, step) => sum + step.areaM2 * step.dayCount, 0);
   const lastOfPlot = new Map<string, (typeof steps)[number]>();
   for (const step of steps) {
     for (const name of termNames)
@@ -31,7 +36,16 @@ export function sumSteps(
   const standing = [...lastOfPlot.values()].filter((step) => endNumber(step) === lastDay);
   for (const step of standing)
     for (const name of stateTerms) volumesM3[name] += (step.terms[name] * step.areaM2) / 1000;
-  return { areaM2: standing.reduce((sum, step) => sum + step.areaM2, 0), volumesM3 };
+  return {
+    areaM2: standing.reduce((sum, step) => sum + step.areaM2, 0),
+    meanAreaM2:
+      areaDays /
+      Math.max(
+        1,
+        [...dayCounts.values()].reduce((sum, count) => sum + count, 0),
+      ),
+    volumesM3,
+  };
 }
 
 const endNumber = (step: { fromOn: string; dayCount: number }) =>

@@ -78,7 +78,7 @@ export const termRegister: Record<TermName, { name: string; words: string; sourc
     words: 'PET while the soil gains; what enters + what the soil gives while it dries',
     source: 'Thornthwaite & Mather 1957',
   },
-  dSoilMm: { name: 'Into soil', words: 'soil store after − before', source: 'method 5' },
+  dSoilMm: { name: 'Into soil', words: 'store at the end − end of the step before', source: 'method 5' },
   soilStoreMm: {
     name: 'Soil store at the end',
     words: 'min(capacity, before + surplus), or before × exp(shortfall ÷ capacity)',

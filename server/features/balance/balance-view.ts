@@ -1,9 +1,12 @@
+import { dayOfYear } from '#shared/calendar/day.ts';
 import { daysInMonth, type Month } from '#shared/calendar/month.ts';
 import { Problem } from '#shared/problems.ts';
 import { checkClosure } from '#shared/water-balance/check-closure.ts';
-import type { BalanceParameters } from '#shared/water-balance/engine-input.ts';
+import type { BalanceParameters, EngineInput } from '#shared/water-balance/engine-input.ts';
 import { explainStep } from '#shared/water-balance/explain-step.ts';
+import { recordHeatIndex } from '#shared/water-balance/potential-evapotranspiration.ts';
 import { stepCover } from '#shared/water-balance/run-water-balance.ts';
+import { daylightHours, declinationRad } from '#shared/water-balance/solar-geometry.ts';
 import { headLine, sumSteps } from '#shared/water-balance/sum-steps.ts';
 import { termRegister, type StepTerms, type TermName } from '#shared/water-balance/terms.ts';
 import type { BalanceView, WorkingView } from '#shared/views/balance-view.ts';
@@ -107,6 +110,15 @@ export async function readBalance(
   };
 }
 
+/** What the PET of a month rests on by the method in force. */
+function petOf(input: EngineInput, month: Month, { petMethod }: BalanceParameters) {
+  return {
+    tMeanC: petMethod === 'given' ? null : (input.climate.find((row) => row.month === month)?.tMeanC ?? null),
+    heatIndex: petMethod === 'thornthwaite' ? recordHeatIndex(input.climate) : null,
+    daylightHours: daylightHours(input.latitudeDeg, declinationRad(dayOfYear(`${month}-15`))),
+  };
+}
+
 /** The working of one number: a term of one plot and step. */
 export async function readWorking(
   tx: Transaction,
@@ -129,6 +141,7 @@ export async function readWorking(
       sets.find((one) => one.id === run.parameterSetId) ?? (await currentParameters(tx, context, deps));
     const parameters = set.values as BalanceParameters;
     const cover = working.input.covers[step.coverTypeId];
+    const frozenInput = (await repository.findRun(tx, siteId, run.id))?.input;
     if (!cover) throw new Problem('not-found', 'The cover of this step is no longer part of the site.');
     return {
       title: termRegister[term as TermName].name,
@@ -147,6 +160,11 @@ export async function readWorking(
         recessionPerMonth: parameters.recessionPerMonth,
         channelledFraction: parameters.channelledFraction,
         leakFraction: parameters.leakFraction,
+        pet: petOf(
+          frozenInput ? (JSON.parse(frozenInput) as EngineInput) : working.input,
+          step.month,
+          parameters,
+        ),
       }),
       law: {
         exponential: 'Exponential soil drying, Thornthwaite and Mather 1957',

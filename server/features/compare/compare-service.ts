@@ -177,8 +177,8 @@ export async function readCompare(
       const sum = summed.get(`${cell.id} ${month}`)!;
       return {
         month,
-        areaM2: sum.areaM2,
-        rainMm: (sum.volumesM3.precipitationMm / sum.areaM2) * 1000,
+        areaM2: sum.meanAreaM2,
+        rainMm: (sum.volumesM3.precipitationMm / sum.meanAreaM2) * 1000,
         predictedM3: sum.volumesM3.leachateMm,
         measuredM3: measured.get(`${cell.id} ${month}`)?.volumeM3 ?? null,
       };
@@ -199,11 +199,11 @@ export async function readCompare(
       const sum = summed.get(`${cell.id} ${row.month}`)!;
       const group = byKey.get(`${cell.id} ${row.month}`)!;
       const own = measured.get(`${cell.id} ${row.month}`);
-      const perMm = (value: number) => (value / sum.areaM2) * 1000;
+      const perMm = (value: number, areaM2: number) => (value / areaM2) * 1000;
       return {
         ...row,
-        aetMm: perMm(sum.volumesM3.aetMm),
-        storageMm: perMm(sum.volumesM3.soilStoreMm + sum.volumesM3.wasteStoreMm),
+        aetMm: perMm(sum.volumesM3.aetMm, sum.meanAreaM2),
+        storageMm: perMm(sum.volumesM3.soilStoreMm + sum.volumesM3.wasteStoreMm, sum.areaM2),
         estimatedPercent: own && own.volumeM3 > 0 ? (100 * own.estimatedM3) / own.volumeM3 : 0,
         allocatedPercent: own && own.volumeM3 > 0 ? (100 * own.allocatedM3) / own.volumeM3 : 0,
         covers: coversOf(record, group),

@@ -102,6 +102,12 @@ export async function changeCover(
   const coverType = record.coverTypes.find((one) => one.id === input.coverTypeId);
   if (!plot) throw fieldProblem('/plotId', 'Choose a plot of this site.');
   if (!coverType) throw fieldProblem('/coverTypeId', 'Choose a cover of this site.');
+  const capacityMm = Number(coverType.availableWaterMm);
+  if (input.initialSoilStoreMm !== undefined && Number(input.initialSoilStoreMm) > capacityMm)
+    throw fieldProblem(
+      '/initialSoilStoreMm',
+      `${coverType.name} holds at most ${capacityMm} mm. Enter the water in the placed soil up to that.`,
+    );
   if (input.onDay > (await siteDaysOf(tx, siteOf(context))).dayOf(deps.now().getTime()))
     throw fieldProblem('/onDay', 'This day is still to come. Record the cover when the ground is covered.');
   const split = splitPlot(plot, input);
@@ -119,6 +125,11 @@ export async function changeCover(
     );
   if (!current)
     throw fieldProblem('/onDay', `Plot ${plot.name} has no cover on ${dayName(input.onDay)} to change from.`);
+  if (current.coverTypeId === coverType.id)
+    throw fieldProblem(
+      '/coverTypeId',
+      `Plot ${plot.name} has ${coverType.name} already. Choose another cover.`,
+    );
   await repository.endCoverPeriod(tx, current.id, input.onDay);
   const cover = { organisationId, fromOn: input.onDay, evidence: input.evidence };
   const initialSoilStoreMm = input.initialSoilStoreMm ?? null;

@@ -112,8 +112,15 @@ export function BalancePage() {
                   <SignedBars group={group} />
                 </Section>
                 <Section title="By plot" aside="m³; any number opens its working">
-                  <PlotTable view={data} onOpen={(stepId, term) => setWorking({ stepId, term })} />
-                  <p className="hint mt-2">Rows may not add to the total because of rounding.</p>
+                  <PlotTable
+                    view={data}
+                    cell={cell ?? null}
+                    onOpen={(stepId, term) => setWorking({ stepId, term })}
+                  />
+                  <p className="hint mt-2">
+                    Across: what comes in, less what goes away or into storage, is the leachate. Rows may not
+                    add because of rounding.
+                  </p>
                 </Section>
                 <Section title="Lines that must close" aside="largest left over of any plot and step, mm">
                   <ScrollBox label="Lines that must close">

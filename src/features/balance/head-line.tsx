@@ -14,7 +14,12 @@ function headTerms({ headLine: h }: BalanceGroup): (Bar & { sign: '+' | '−' | 
   const out = h.intoStorageM3 < 0;
   return [
     { sign: '+', name: 'Rain', valueM3: h.rainM3, colour: 'var(--color-s-rain)' },
-    { sign: '+', name: 'Other water in', valueM3: h.otherInM3, colour: 'var(--color-s-rain)' },
+    {
+      sign: h.otherInM3 < 0 ? '−' : '+',
+      name: h.otherInM3 < 0 ? 'Left with the old soil' : 'Other water in',
+      valueM3: Math.abs(h.otherInM3),
+      colour: h.otherInM3 < 0 ? 'var(--color-s-runoff)' : 'var(--color-s-rain)',
+    },
     { sign: '−', name: 'Runoff away', valueM3: h.runoffM3, colour: 'var(--color-s-runoff)' },
     { sign: '−', name: 'Evapotranspiration', valueM3: h.evapotranspirationM3, colour: 'var(--color-s-et)' },
     {
@@ -136,7 +141,9 @@ export function SignedBars({ group }: { group: BalanceGroup }) {
             <tr key={row.name} className={row.isDashed ? 'total' : ''}>
               <th scope="row">{row.name}</th>
               <td className="r">{formatM3(row.shown)}</td>
-              <td className="r">{group.areaM2 ? formatMm((row.shown / group.areaM2) * 1000) : '–'}</td>
+              <td className="r">
+                {group.meanAreaM2 ? formatMm((row.shown / group.meanAreaM2) * 1000) : '–'}
+              </td>
               <td aria-hidden>
                 <div className="h-5 border-l border-ink" style={{ marginLeft: scale(0) }} />
                 <div className="relative h-5 -mt-5">

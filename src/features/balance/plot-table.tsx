@@ -5,25 +5,51 @@ import { termRegister, type TermName } from '#shared/water-balance/terms.ts';
 import { ScrollBox } from '../../components/page.tsx';
 import { formatHa, formatM3 } from '../../lib/format-quantity.ts';
 
+/** Across the row these add up: what comes in, less what goes away or is stored, is the leachate. */
 const plotTerms: TermName[] = [
   'precipitationMm',
+  'soilWaterBroughtMm',
+  'surfaceReturnMm',
+  'returnToWasteMm',
+  'freeMoistureMm',
   'runoffToStormMm',
-  'runoffToLeachateMm',
+  'coverDrainMm',
   'aetMm',
+  'dSnowMm',
   'dSoilMm',
-  'percolationMm',
   'absorbedMm',
   'dWasteMm',
+  'leakedMm',
   'leachateMm',
 ];
+/** Shown only in a month in which some plot has them. */
+const rareTerms = new Set<TermName>([
+  'soilWaterBroughtMm',
+  'surfaceReturnMm',
+  'returnToWasteMm',
+  'freeMoistureMm',
+  'coverDrainMm',
+  'dSnowMm',
+  'leakedMm',
+]);
 
 export function PlotTable({
   view,
+  cell: only,
   onOpen,
 }: {
   view: BalanceView;
+  /** One cell, or null for the whole site. */
+  cell: BalanceView['cells'][number] | null;
   onOpen: (stepId: string, term: TermName) => void;
 }) {
+  const cells = only ? [only] : view.cells;
+  const total = only ?? view.site;
+  const shown = plotTerms.filter(
+    (term) =>
+      !rareTerms.has(term) ||
+      cells.some((cell) => cell.plots.some((plot) => Math.abs(plot.terms[term]) > 1e-9)),
+  );
   return (
     <ScrollBox label="Balance by plot">
       <table className="tbl tbl-tight">
@@ -41,7 +67,7 @@ export function PlotTable({
             <th scope="col" className="r">
               Days
             </th>
-            {plotTerms.map((term) => (
+            {shown.map((term) => (
               <th key={term} scope="col" className="r">
                 {termRegister[term].name}, m³
               </th>
@@ -49,7 +75,7 @@ export function PlotTable({
           </tr>
         </thead>
         <tbody>
-          {view.cells.flatMap((cell) =>
+          {cells.flatMap((cell) =>
             cell.plots.map((plot) => (
               <tr key={plot.stepId}>
                 <th scope="row" className="sticky left-0 bg-surface">
@@ -61,7 +87,7 @@ export function PlotTable({
                 </th>
                 <td className="r">{formatHa(plot.areaM2)}</td>
                 <td className="r">{plot.dayCount}</td>
-                {plotTerms.map((term) => (
+                {shown.map((term) => (
                   <td key={term} className="r">
                     <button
                       type="button"
@@ -80,13 +106,13 @@ export function PlotTable({
         <tfoot>
           <tr>
             <th scope="row" className="sticky left-0 bg-surface">
-              Site
+              {only ? only.code : 'Site'}
             </th>
-            <td className="r">{formatHa(view.site.areaM2)}</td>
+            <td className="r">{formatHa(total.areaM2)}</td>
             <td />
-            {plotTerms.map((term) => (
+            {shown.map((term) => (
               <td key={term} className="r">
-                {formatM3(view.site.volumesM3[term])}
+                {formatM3(total.volumesM3[term])}
               </td>
             ))}
           </tr>
