@@ -115,7 +115,7 @@ async function makeCells(
   });
   await coverHistory(tx, context, deps, plan, random, cover, { floor, face });
   for (const month of monthRange(addMonths(plan.firstMonth, 3), addMonths(plan.anchor, -1))) {
-    await addWaste(tx, context, {
+    await addWaste(tx, context, deps, {
       id: id(),
       cellId: cells.C3,
       month,

@@ -71,20 +71,21 @@ const rounded = (value: Decimal, terms: LimitTerms) =>
   );
 const text = (value: Decimal, terms: LimitTerms) => rounded(value, terms).toFixed(terms.decimals);
 
-/** Says what was rounded, where rounding could decide. */
-const beforeRounding = (value: Decimal, terms: LimitTerms): string =>
-  rounded(value, terms).eq(value)
-    ? ''
-    : ` (${value.toSignificantDigits(6).toFixed()} rounded to the limit’s ${terms.decimals === 1 ? '1 decimal' : `${terms.decimals} decimals`})`;
-
 /** Whether a rounded value lies outside the limit; equal to a maximum complies. */
-function isOutside(value: Decimal, terms: LimitTerms): boolean {
-  const v = rounded(value, terms);
+const isOutside = (value: Decimal, terms: LimitTerms): boolean => liesOutside(rounded(value, terms), terms);
+
+function liesOutside(v: Decimal, terms: LimitTerms): boolean {
   const over = (limit: string) => (terms.isInclusive ? v.gt(limit) : v.gte(limit));
   const under = (limit: string) => (terms.isInclusive ? v.lt(limit) : v.lte(limit));
   if (terms.statistic === 'range') return under(terms.lowText!) || over(terms.highText!);
   return terms.statistic === 'daily-minimum' ? under(terms.valueText!) : over(terms.valueText!);
 }
+
+/** Says what was rounded, where the rounding decides. */
+const beforeRounding = (value: Decimal, terms: LimitTerms): string =>
+  liesOutside(value, terms) === isOutside(value, terms)
+    ? ''
+    : ` (${value.toSignificantDigits(6).toFixed()}, rounded once to the limit’s digits)`;
 
 function shareOf(value: Decimal, terms: LimitTerms): number | null {
   const limit = terms.statistic === 'range' ? terms.highText : terms.valueText;

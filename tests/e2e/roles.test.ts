@@ -223,7 +223,7 @@ describe('the laboratory', () => {
     await page.getByLabel('It is').selectOption({ label: 'EFF-1 Outfall 1' });
     await page.getByRole('button', { name: 'Use this answer' }).click();
     await page.getByRole('button', { name: 'Write 2 results' }).click();
-    await page.getByText(/2 results were written, 1 stay held/).waitFor();
+    await page.getByText(/2 results were written, 1 row stays held/).waitFor();
     await page.getByRole('button', { name: 'Undo this import' }).click();
     await page.getByText('This upload was undone.').waitFor();
   });
@@ -235,7 +235,7 @@ describe('the site manager', () => {
   it('records the call of an exceedance while its clock runs', async () => {
     const { page } = held.visit;
     await held.visit.go(`${site}/limits/2026-03`);
-    await page.getByText(/exceedances? ha(s|ve) (its|their) clocks? running/).waitFor();
+    await page.getByText(/exceedances? (is|are) open, \d+ with a clock running/).waitFor();
     await page
       .getByRole('button', { name: /^Record it: Tell the authority/ })
       .first()

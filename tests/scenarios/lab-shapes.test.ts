@@ -216,3 +216,44 @@ describe('23: what is held, and what is left as text', () => {
     });
   });
 });
+
+describe('marks, names and ranges', () => {
+  const head = ['Client ID', 'Sampled', 'Parameter', 'Result', 'Units', 'RL'];
+  const read = (rows: (string | number)[][]) =>
+    resolveLabRows(
+      readLabSheets([
+        sheetOf([
+          head,
+          ...rows.map(([name, result, unit]) => ['LCH-C1', '2026-03-03', name!, result!, unit!, '']),
+        ]),
+      ]).rows,
+      catalog(),
+    );
+
+  it('a decimal comma of one value decides the others of its column', () => {
+    const [ammonia, chloride] = read([
+      ['Ammonia as N', '651,5', 'mg/L'],
+      ['Chloride', '1,385', 'g/L'],
+    ]);
+    expect(Number(ammonia!.value)).toBe(651.5);
+    expect(Number(chloride!.value)).toBe(1385);
+    expect(chloride!.messages.join(' ')).toContain('read as 1.385');
+  });
+
+  it('a comma that nothing decides is asked about, below a limit too', () => {
+    const rows = read([
+      ['Chloride', '1,385', 'mg/L'],
+      ['Ammonia as N', '<1,250', 'mg/L'],
+    ]);
+    expect(rows.map((row) => row.state)).toEqual(['held', 'held']);
+  });
+
+  it('“Total suspended solids” is TSS, not a total fraction of it', () => {
+    const [tss] = read([['Total suspended solids', 14, 'mg/L']]);
+    expect(tss).toMatchObject({ analyteId: 'tss', fraction: '' });
+  });
+
+  it('pH 74 is held', () => {
+    expect(read([['pH', 74, 'pH']])[0]).toMatchObject({ state: 'held' });
+  });
+});

@@ -262,3 +262,13 @@ describe('40 CFR 445.21, limits of a non-hazardous landfill (provenance in data/
     },
   );
 });
+
+describe('rounding once, to the limit’s digits', () => {
+  // 0.204 rounds to 0.20, which equals the limit and complies (method section 11).
+  it('says so where it decides, and the share follows the rounded value', () => {
+    const verdict = evaluateLimit(terms({ valueText: '0.20' }), facts(['0.204']));
+    expect(verdict).toMatchObject({ word: 'pass', valueText: '0.20', share: 1 });
+    expect(verdict.sentence).toContain('0.204, rounded once');
+    expect(evaluateLimit(terms({ valueText: '0.20' }), facts(['0.205'])).word).toBe('exceed');
+  });
+});

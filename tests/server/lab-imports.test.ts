@@ -176,6 +176,48 @@ describe('sheets of a laboratory, in the demo', () => {
     });
   });
 
+  it('one file uploaded twice is written once; an upload can be laid aside', async () => {
+    const bytes = Buffer.from(
+      'Client ID,Sampled,Parameter,Result,Units,RL\nEFF-1,2026-03-05,TSS,14,mg/L,2\n',
+    );
+    const first = (await upload(bytes, 'twice.csv').expect(201)).body.id as string;
+    const second = (await upload(bytes, 'twice.csv').expect(201)).body.id as string;
+    await act(second, 'confirmation').expect(201);
+    const before = await resultCount();
+    expect((await act(first, 'confirmation').expect(409)).body.detail).toContain('imported');
+    expect(await resultCount()).toBe(before);
+    await act(first, 'discard').expect(201);
+    await act(first, 'confirmation').expect(409);
+    await act(second, 'discard').expect(409);
+  });
+
+  it('an upload read before the record changed is read again before it is written', async () => {
+    const list = (tss: string) =>
+      Buffer.from(`Client ID,Sampled,Parameter,Result,Units,RL\nEFF-1,2026-03-06,TSS,${tss},mg/L,2\n`);
+    const older = (await upload(list('15'), 'older.csv').expect(201)).body.id as string;
+    const newer = (await upload(list('16'), 'newer.csv').expect(201)).body.id as string;
+    await act(newer, 'confirmation').expect(201);
+    await act(older, 'confirmation').expect(412);
+    await act(older, 'reading').expect(201);
+    expect((await check(older)).rows[0]).toMatchObject({ supersedesWords: '16 mg/L' });
+    await act(older, 'confirmation').expect(201);
+  });
+
+  it('an exceedance whose result was undone says that it no longer stands', async () => {
+    const bytes = Buffer.from(
+      'Client ID,Sampled,Parameter,Result,Units,RL\nEFF-1,2026-03-04,Ammonia (as N),11.9,mg/L,0.1\n',
+    );
+    const importId = (await upload(bytes, 'undone.csv').expect(201)).body.id as string;
+    await act(importId, 'confirmation').expect(201);
+    const opened = async () =>
+      ((await engineer.get(`/api/v1/sites/${siteId}/limits/2026-03`)).body as LimitsView).exceedances.find(
+        (one) => one.periodKey === '2026-03-04',
+      )!;
+    expect((await opened()).isStanding).toBe(true);
+    await act(importId, 'undo').expect(201);
+    expect((await opened()).isStanding).toBe(false);
+  });
+
   it('a limit is a template until the manager confirms it', async () => {
     const manager = await record.as('manager');
     const limits = (await manager.get(`/api/v1/sites/${siteId}/limits/2026-03`)).body as LimitsView;

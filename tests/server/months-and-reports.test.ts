@@ -63,6 +63,17 @@ describe('closing, reopening, signing, and what arrives late', () => {
     const after = await get<LedgerView>('/ledger/2026-01');
     expect(after.entries).toEqual(before.entries);
     expect(after.pending.length).toBe(before.pending.length + 1);
+    const last = await record.admin.query<{ register_value: string }>(
+      `select register_value from readings where meter_id = $1 and observed_at < '2026-01-20T14:00Z'
+       order by observed_at desc limit 1`,
+      [s3],
+    );
+    const late = await post(supervisor, '/readings', {
+      meterId: s3,
+      registerText: String(Number(last.rows[0]!.register_value) + 1),
+      observedLocal: '2026-01-20T14:00',
+    }).expect(201);
+    expect((late.body as { warning: string }).warning).toContain('January 2026 is closed');
   });
 
   it('reopening needs the manager and a reason; the waiting change is posted as reversal and replacement', async () => {

@@ -135,6 +135,15 @@ describe('the round, over HTTP', () => {
 
   it('6: a swap to US gal × 100 counts 40 + 66.24 m³, and later days follow the new register', async () => {
     await read('318402', '2026-03-12T08:00', { answer: 'confirmed' });
+    const low = await save('/meter-events', {
+      meterId,
+      kind: 'replace',
+      observedLocal: '2026-03-12T10:30',
+      registerBefore: '300000',
+      registerAfter: '12',
+    });
+    expect(low.status).toBe(422);
+    expect((low.body as ProblemDocument).detail).toContain('showed 318402 before');
     await save('/meter-events', {
       meterId,
       kind: 'replace',
@@ -275,10 +284,10 @@ describe('the round, over HTTP', () => {
   });
 
   it('22: a ticket entered twice is refused as a duplicate, leading zeros kept', async () => {
-    const load = async (ticket: string) =>
+    const load = async (ticket: string, hauler = 'Dunmere') =>
       save('/loads-out', {
         ticket,
-        hauler: 'Dunmere',
+        hauler,
         fromPlaceId: await site.placeId('treatment'),
         toPlaceId: await site.placeId('haulage'),
         nominalVolumeM3: '20.8',
@@ -288,6 +297,7 @@ describe('the round, over HTTP', () => {
     const twice = await load('004417');
     expect(twice.status).toBeGreaterThanOrEqual(400);
     expect((twice.body as ProblemDocument).detail).toContain('004417');
+    expect((await load('004417', ' dunmere ')).status).toBe(422);
     expect((await ledger('2026-03')).loads).toMatchObject({ count: 1, nominalM3: 20.8 });
   });
 
@@ -297,7 +307,7 @@ describe('the round, over HTTP', () => {
     )!;
     const source = (await site.engineer.get(`/api/v1/sites/${site.siteId}/entries/${entry.id}`).expect(200))
       .body as { facts: { words: string }[]; intervals: { volumeM3: string }[] };
-    expect(source.facts.map((fact) => fact.words)).toEqual(['0184212', '184298']);
+    expect(source.facts.map((fact) => fact.words)).toEqual(['0184212 m³', '184298 m³']);
     expect(Number(source.intervals[0]!.volumeM3)).toBe(86);
   });
 });

@@ -104,6 +104,14 @@ describe('a site and what it is made of', () => {
       evidence: 'photo',
     };
     await write(site.engineer, `/sites/${site.siteId}/cover-periods`, body).expect(201);
+    const soil = {
+      ...body,
+      onDay: '2026-02-10',
+      coverTypeId: await site.coverTypeId('intermediate-soil'),
+      initialSoilStoreMm: '900',
+    };
+    expect((await refused('/cover-periods', soil)).detail).toMatch(/holds at most \d+ mm/);
+    expect((await refused('/cover-periods', { ...body, onDay: '2026-02-10' })).detail).toContain('already');
     expect((await refused('/cover-periods', { ...body, onDay: '2026-01-20' })).detail).toContain(
       'Two covers cannot lie on one plot at once',
     );

@@ -180,7 +180,16 @@ async function joinSiteClimate(tx: Transaction, siteId: string): Promise<SiteMon
   });
 }
 
-/** Stores what an engineer chose for a month with missing days. */
+const cannotFill = {
+  'scale-by-days': 'it has no day with rain to scale from, or no temperature',
+  'other-station': 'that station does not have the whole month',
+  'station-normal': 'no year of the record has this month whole',
+} as const;
+
+/**
+ * Stores what an engineer chose for a month with missing days; the newest choice holds.
+ * @throws Problem when the choice cannot fill the month
+ */
 export async function chooseForGap(
   tx: Transaction,
   context: Context,
@@ -203,6 +212,12 @@ export async function chooseForGap(
     otherStationId: input.otherStationId ?? null,
     reason: input.reason,
   });
+  const after = (await joinSiteClimate(tx, siteId)).find((one) => one.month === input.month);
+  if (input.choice !== 'leave-out' && !after?.settled)
+    throw fieldProblem(
+      input.choice === 'other-station' ? '/otherStationId' : '/choice',
+      `This does not fill ${monthName(input.month)}: ${cannotFill[input.choice]}. Make another choice, or upload the missing days.`,
+    );
   await recordChange(tx, context, {
     action: 'choose',
     subjectType: 'climate-months',

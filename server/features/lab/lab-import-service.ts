@@ -1,4 +1,5 @@
 import type * as z from 'zod';
+import { counted } from '#shared/count-words.ts';
 import { dayName, monthOfDay } from '#shared/calendar/day.ts';
 import { monthName } from '#shared/calendar/month.ts';
 import type { LabRow } from '#shared/lab/lab-row.ts';
@@ -266,7 +267,7 @@ export async function confirmResults(
     action: 'confirm',
     subjectType: 'imports',
     subjectId: importId,
-    sentence: `${good.length} results were written from ${row.fileName}; ${heldCount} rows stay held.`,
+    sentence: `${counted(good.length, 'result was', 'results were')} written from ${row.fileName}; ${counted(heldCount, 'row stays', 'rows stay')} held.`,
     after: row.counts,
   });
   const exceedances = await openExceedances(tx, context, deps, [

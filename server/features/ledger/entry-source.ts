@@ -1,5 +1,7 @@
 import { eq, inArray } from 'drizzle-orm';
+import type { RegisterSpec } from '#shared/ledger/register.ts';
 import { Problem } from '#shared/problems.ts';
+import { volumeUnitsM3 } from '#shared/units/unit-factors.ts';
 import type { EntrySourceView } from '#shared/views/month-view.ts';
 import { meterEvents } from '../../db/schema/metering.ts';
 import { adjustments, entries, loadsOut, readings } from '../../db/schema/ledger.ts';
@@ -7,7 +9,12 @@ import type { Transaction } from '../../db/transaction.ts';
 import type { Context } from '../../http/route.ts';
 import { listNames } from '../people/people-repository.ts';
 import { readSite, siteDaysOf, siteOf } from '../sites/site-service.ts';
+import { registerAt } from '../readings/reading-service.ts';
 import { recomputeDays } from './posting-service.ts';
+
+/** Unit of a register as it stands beside its number. */
+const registerWords = ({ unit, multiplier }: RegisterSpec) =>
+  `${Number(multiplier) === 1 ? '' : `× ${Number(multiplier)} `}${volumeUnitsM3[unit].label}`;
 
 /** Where the number of an entry comes from: the readings, events, layers or ticket behind it, and the intervals of its day. */
 export async function readEntrySource(
@@ -28,7 +35,7 @@ export async function readEntrySource(
       id: row.id,
       kind: 'reading',
       when: local(row.observedAt),
-      words: row.typedText,
+      words: `${row.typedText} ${registerWords(registerAt(record, row.meterId, Date.parse(row.observedAt)))}`,
       by: names.get(row.recordedById) ?? '',
       note: row.note ?? row.reason,
     })),
@@ -36,7 +43,7 @@ export async function readEntrySource(
       id: row.id,
       kind: 'meter event',
       when: local(row.observedAt),
-      words: `${row.kind}: ${row.registerBefore ?? '–'} → ${row.registerAfter ?? '–'}`,
+      words: `${row.kind.replace('-', ' ')}: register ${row.registerBefore ?? '–'} before, ${row.registerAfter ?? '–'} after`,
       by: names.get(row.recordedById) ?? '',
       note: row.note,
     })),

@@ -5,6 +5,7 @@ import type { DayState, GridLine, MonthLine, MonthView } from '#shared/views/mon
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
 import { listStations, listLiveDays } from '../climate/climate-repository.ts';
+import { listSiteClimate } from '../climate/climate-service.ts';
 import { closingObstacles } from '../closings/closing-service.ts';
 import { readCompare } from '../compare/compare-service.ts';
 import { readLab } from '../lab/lab-view.ts';
@@ -120,17 +121,22 @@ async function climateGrid(
     firstDay(month),
     lastDay(month),
   );
+  // A monthly record has no days of its own: the month is known, its days are not.
+  const whole = (await listSiteClimate(tx, siteId)).find((one) => one.month === month);
+  const isMonthly = Boolean(whole?.isComplete) && !rows.length;
   const line = (name: string, has: (row: (typeof rows)[number]) => boolean): GridLine => ({
     name,
     series: 'rain',
     days: monthDays(month).map((day) =>
-      rows.some((row) => row.siteDay === day && has(row))
-        ? rows.some((row) => row.siteDay === day && row.kind === 'accumulated')
-          ? 'apportioned'
-          : 'read'
-        : day >= today
-          ? 'none'
-          : 'missing',
+      isMonthly
+        ? 'apportioned'
+        : rows.some((row) => row.siteDay === day && has(row))
+          ? rows.some((row) => row.siteDay === day && row.kind === 'accumulated')
+            ? 'apportioned'
+            : 'read'
+          : day >= today
+            ? 'none'
+            : 'missing',
     ),
   });
   return [

@@ -26,7 +26,7 @@ export function quarterFigures(quarter: Quarter): Record<string, number> {
   for (const one of quarter.verdicts) {
     if (one.verdict.valueText)
       figures[
-        `${one.analyteName} at ${one.pointCode}, ${one.limit.quantity}, ${one.limit.statistic}, ${monthName(one.month)}, ${one.limit.unit}`
+        `${one.analyteName} at ${one.pointCode}, ${one.limit.quantity}, ${one.limit.statistic.replace('-', ' ')}, ${monthName(one.month)}, ${one.limit.unit}`
       ] = Number(one.verdict.valueText.replace('<', ''));
   }
   for (const one of quarter.leakDetection)

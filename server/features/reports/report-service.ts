@@ -1,5 +1,6 @@
 import { asc, eq } from 'drizzle-orm';
 import type * as z from 'zod';
+import { counted } from '#shared/count-words.ts';
 import { dayName, monthOfDay } from '#shared/calendar/day.ts';
 import { monthName, quarterName } from '#shared/calendar/month.ts';
 import { Problem } from '#shared/problems.ts';
@@ -119,7 +120,7 @@ async function readinessOf(tx: Transaction, siteId: string, quarter: Quarter): P
   if (undecided.length)
     lines.push({
       state: 'ask',
-      sentence: `${undecided.length} verdicts are incomplete or cannot be judged.`,
+      sentence: `${counted(undecided.length, 'verdict is', 'verdicts are')} incomplete or cannot be judged.`,
       link: `limits/${quarter.months[2]}`,
     });
   const held = (await importRepository.listImports(tx, siteId, 'lab', null)).filter(
@@ -131,7 +132,11 @@ async function readinessOf(tx: Transaction, siteId: string, quarter: Quarter): P
   if (held.length)
     lines.push({
       state: 'ask',
-      sentence: `${held.reduce((sum, one) => sum + (one.counts as { held: number }).held, 0)} laboratory rows are held.`,
+      sentence: `${counted(
+        held.reduce((sum, one) => sum + (one.counts as { held: number }).held, 0),
+        'laboratory row is',
+        'laboratory rows are',
+      )} held.`,
       link: `lab/${quarter.months[2]}`,
     });
   const estimated = quarter.cellMonths.reduce((sum, one) => sum + one.estimatedM3, 0);

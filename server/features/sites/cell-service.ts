@@ -208,8 +208,19 @@ export async function confirmCoverType(
   return { id: coverTypeId };
 }
 
-export async function addWaste(tx: Transaction, context: Context, input: z.output<typeof wasteInput>) {
+export async function addWaste(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  input: z.output<typeof wasteInput>,
+) {
   const record = await readSite(tx, siteOf(context));
+  const today = (await siteDaysOf(tx, record.site.id)).dayOf(deps.now().getTime());
+  if (input.month > today.slice(0, 7))
+    throw fieldProblem(
+      '/month',
+      `${monthName(input.month)} is still to come. Enter the waste once it is placed.`,
+    );
   const cell = record.cells.find((one) => one.id === input.cellId);
   if (!cell) throw fieldProblem('/cellId', 'Choose a cell of this site.');
   if (record.wastePlaced.some((row) => row.cellId === cell.id && row.month === input.month)) {

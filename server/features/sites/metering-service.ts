@@ -42,6 +42,15 @@ export async function createSump(tx: Transaction, context: Context, input: z.out
   const errors: FieldProblem[] = [];
   if (record.sumps.some((sump) => sump.code === input.code))
     errors.push({ pointer: '/code', detail: `There is already a sump ${input.code}. Choose another code.` });
+  const linedM2 = Math.max(
+    0,
+    ...record.cellAreas.filter((area) => area.cellId === cell.id).map((area) => Number(area.linedAreaM2)),
+  );
+  if (linedM2 > 0 && Number(input.areaServedM2) > linedM2)
+    errors.push({
+      pointer: '/areaServedM2',
+      detail: `${cell.code} has ${linedM2} m² lined; a sump cannot drain more than that.`,
+    });
   if (input.kind === 'leak-detection' && !input.actionRateLPerHaDay)
     errors.push({
       pointer: '/actionRateLPerHaDay',

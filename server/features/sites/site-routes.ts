@@ -84,7 +84,7 @@ export const siteRoutes: Route[] = [
     permission: 'change:site',
     params: siteParams,
     body: wasteInput,
-    handle: ({ tx, context, body }) => addWaste(tx, context, body),
+    handle: ({ tx, context, deps, body }) => addWaste(tx, context, deps, body),
   }),
   route({
     method: 'post',

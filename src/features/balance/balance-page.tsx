@@ -118,8 +118,8 @@ export function BalancePage() {
                     onOpen={(stepId, term) => setWorking({ stepId, term })}
                   />
                   <p className="hint mt-2">
-                    Across: what comes in, less what goes away or into storage, is the leachate. Rows may not
-                    add because of rounding.
+                    Across: what comes in, less what goes away or into storage, is the leachate. Percolation
+                    is on the way and not added. Rows may not add because of rounding.
                   </p>
                 </Section>
                 <Section title="Lines that must close" aside="largest left over of any plot and step, mm">

@@ -131,7 +131,7 @@ export function SignedBars({ group }: { group: BalanceGroup }) {
             <th scope="col" className="r">
               mm
             </th>
-            <th scope="col" className="min-w-[180px] w-1/2">
+            <th scope="col" className="min-w-[100px] w-1/2">
               <span className="sr-only">Bar</span>
             </th>
           </tr>

@@ -5,7 +5,7 @@ import { termRegister, type TermName } from '#shared/water-balance/terms.ts';
 import { ScrollBox } from '../../components/page.tsx';
 import { formatHa, formatM3 } from '../../lib/format-quantity.ts';
 
-/** Across the row these add up: what comes in, less what goes away or is stored, is the leachate. */
+/** Across the row these add up, percolation apart: what comes in, less what goes away or is stored, is the leachate. */
 const plotTerms: TermName[] = [
   'precipitationMm',
   'soilWaterBroughtMm',
@@ -17,6 +17,7 @@ const plotTerms: TermName[] = [
   'aetMm',
   'dSnowMm',
   'dSoilMm',
+  'percolationMm',
   'absorbedMm',
   'dWasteMm',
   'leakedMm',
@@ -88,7 +89,7 @@ export function PlotTable({
                 <td className="r">{formatHa(plot.areaM2)}</td>
                 <td className="r">{plot.dayCount}</td>
                 {shown.map((term) => (
-                  <td key={term} className="r">
+                  <td key={term} className={term === 'percolationMm' ? 'r italic text-muted' : 'r'}>
                     <button
                       type="button"
                       className="number-button"

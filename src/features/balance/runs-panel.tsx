@@ -162,7 +162,7 @@ export function RunsPanel({ view }: { view: BalanceView }) {
   const { site, can } = usePlace();
   const freeze = useWrite<{ id: string; note?: string }>(site.id, '/balance-runs');
   return (
-    <div className="grid gap-x-8 lg:grid-cols-2 mt-10 no-print">
+    <div className="grid gap-8 lg:grid-cols-2 mt-10 no-print [&>section]:mt-0">
       <Section title="Parameters">
         <Parameters />
       </Section>

@@ -15,7 +15,7 @@ const niceMax = (value: number): number => {
 
 function WhatHappened({ row }: { row: ComparedRow }) {
   return (
-    <div className="text-sm leading-tight min-w-[150px] py-1">
+    <div className="text-sm leading-tight min-w-[190px] py-1">
       {row.events.map((event) => (
         <p key={event.onDay + event.sentence}>
           <strong>{event.when}</strong> {event.sentence}

@@ -125,7 +125,7 @@ export function VolumeTrack({
   index: number;
   max: number;
 }) {
-  const width = 180;
+  const width = 150;
   const x = (value: number) => 8 + (value / (max || 1)) * (width - 16);
   const predicted = pointOf(rows, index, (row) => row.predictedM3);
   const measured = pointOf(rows, index, (row) => row.measuredM3);

@@ -1,3 +1,4 @@
+import { counted } from '#shared/count-words.ts';
 import { columnLetter } from '#shared/sheets/sheet.ts';
 import type { LabImportView } from '#shared/views/lab-view.ts';
 import { ScrollBox } from '../../components/page.tsx';
@@ -111,7 +112,7 @@ export function HowRead({ view }: { view: LabImportView }) {
           )}
           {reading.skipped.length > 0 && (
             <li>
-              {reading.skipped.length} rows are not results:{' '}
+              {counted(reading.skipped.length, 'row is not a result', 'rows are not results')}:{' '}
               {reading.skipped
                 .slice(0, 4)
                 .map((row) => `row ${row.rowNumber} “${row.text.slice(0, 40)}” (${row.why})`)

@@ -1,3 +1,4 @@
+import { counted } from '#shared/count-words.ts';
 import { Link, useParams } from 'react-router';
 import type { LabImportView } from '#shared/views/lab-view.ts';
 import { usePlace } from '../../app/place.ts';
@@ -27,7 +28,8 @@ function Act({ view }: { view: LabImportView }) {
     <div className="mt-6 grid gap-3 no-print" role="status">
       {confirm.data && (
         <p className="box box-done">
-          {confirm.data.writtenCount} results were written, {confirm.data.heldCount} stay held
+          {counted(confirm.data.writtenCount, 'result was', 'results were')} written,{' '}
+          {counted(confirm.data.heldCount, 'row stays', 'rows stay')} held
           {confirm.data.exceedanceCount
             ? `. ${confirm.data.exceedanceCount} exceedance${confirm.data.exceedanceCount === 1 ? ' was' : 's were'} opened; Limits shows what is due`
             : ''}

@@ -1,3 +1,4 @@
+import { useState } from 'react';
 import { dayName } from '#shared/calendar/day.ts';
 import type { EntrySourceView } from '#shared/views/month-view.ts';
 import { usePlace } from '../../app/place.ts';
@@ -6,6 +7,12 @@ import { Viewed } from '../../components/state.tsx';
 import { Basis } from '../../components/words.tsx';
 import { formatInstant, formatLocal, formatNumber } from '../../lib/format-quantity.ts';
 import { useRecord } from '../../lib/record.ts';
+import { isVoidable, VoidFact } from './void-fact.tsx';
+
+const heldWords = {
+  'register-went-down': 'held: the register went down, and nobody has said why',
+  dispute: 'held: two readings of one time differ',
+};
 
 type Interval = EntrySourceView['intervals'][number];
 
@@ -21,15 +28,18 @@ function IntervalRow({ one }: { one: Interval }) {
       <td>
         ({one.closing} − {one.opening}
         {Number(one.wrap) ? ` + ${one.wrap}` : ''}) × {Number(one.multiplier)} {one.unit}
-        {one.heldBecause && <span className="block text-warn">{one.heldBecause}</span>}
+        {one.heldBecause && (
+          <span className="block text-warn">{heldWords[one.heldBecause as 'dispute']}</span>
+        )}
       </td>
       <td className="r">{one.volumeM3 === null ? 'held' : formatNumber(Number(one.volumeM3), 2)}</td>
     </tr>
   );
 }
 
-function Source({ entryId }: { entryId: string }) {
-  const { site } = usePlace();
+function Source({ entryId, onDone }: { entryId: string; onDone: () => void }) {
+  const { site, can } = usePlace();
+  const [voidingId, setVoidingId] = useState<string | null>(null);
   const query = useRecord<EntrySourceView>(site.id, `/entries/${entryId}`);
   return (
     <Viewed query={query}>
@@ -78,6 +88,14 @@ function Source({ entryId }: { entryId: string }) {
                   <td>
                     {fact.words}
                     {fact.note && <span className="hint block">{fact.note}</span>}
+                    {can('settle:reading') && isVoidable(fact.kind) && fact.id !== voidingId && (
+                      <button type="button" className="link block" onClick={() => setVoidingId(fact.id)}>
+                        Void it
+                      </button>
+                    )}
+                    {isVoidable(fact.kind) && fact.id === voidingId && (
+                      <VoidFact kind={fact.kind} id={fact.id} onDone={onDone} />
+                    )}
                   </td>
                   <td>{fact.by}</td>
                 </tr>
@@ -97,7 +115,7 @@ function Source({ entryId }: { entryId: string }) {
 export function EntrySource({ entryId, onClose }: { entryId: string | null; onClose: () => void }) {
   return (
     <Panel title="Where this number comes from" isOpen={entryId !== null} onClose={onClose}>
-      {entryId && <Source entryId={entryId} />}
+      {entryId && <Source key={entryId} entryId={entryId} onDone={onClose} />}
     </Panel>
   );
 }

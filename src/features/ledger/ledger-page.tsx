@@ -252,7 +252,7 @@ export function LedgerPage() {
             {view.stores.map((store) => (
               <FlowPicture key={store.id} view={view} store={store} />
             ))}
-            <div className="grid gap-x-8 mt-8 lg:grid-cols-2 items-start">
+            <div className="grid gap-8 mt-8 lg:grid-cols-2 items-start [&>section]:mt-0">
               <Section title="Stores, opening to closing" aside="m³">
                 <StoresTable view={view} />
               </Section>

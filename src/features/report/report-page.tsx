@@ -15,12 +15,16 @@ const stateWords = { ready: ['good', 'Ready'], stops: ['bad', 'Stops'], ask: ['a
 function Readiness({ view }: { view: ReportView }) {
   const { site } = usePlace();
   const { stops } = counts(view);
+  const own = view.issues.filter((one) => one.quarter === view.quarter).at(-1);
+  const isCurrent = own !== undefined && !own.isStale;
   return (
     <Section
       title={
         stops
           ? `Can it be signed? Not yet: ${stops} ${stops === 1 ? 'thing stops' : 'things stop'} it`
-          : 'Can it be signed? Yes'
+          : isCurrent
+            ? 'Signed; what was open then'
+            : 'Can it be signed? Yes'
       }
     >
       <ul className="sheet lines px-4 list-none">

@@ -117,19 +117,20 @@ function Months({ view, climate }: SectionProps & { climate: ClimateView }) {
                 <td>
                   {row.isComplete ? (
                     <Word look="good">Complete</Word>
-                  ) : row.choice ? (
-                    <>
-                      <Word look="note">Choice</Word>
-                      <span className="hint block">
-                        {choiceNames[row.choice as keyof typeof choiceNames]}
-                      </span>
-                    </>
                   ) : (
                     <>
-                      <Word look="ask">Days missing</Word>
+                      <Word look={row.choice ? 'note' : 'ask'}>{row.choice ? 'Choice' : 'Days missing'}</Word>
+                      {row.choice && (
+                        <span className="hint block">
+                          {choiceNames[row.choice as keyof typeof choiceNames]}
+                        </span>
+                      )}
                       {can('change:parameters') && (
                         <span className="block">
-                          <FormLink label="Choose" title={`Missing days, ${monthName(row.month)}`}>
+                          <FormLink
+                            label={row.choice ? 'Choose again' : 'Choose'}
+                            title={`Missing days, ${monthName(row.month)}`}
+                          >
                             {(onDone) => <GapForm view={view} month={row.month} onDone={onDone} />}
                           </FormLink>
                         </span>

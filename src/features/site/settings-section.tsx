@@ -76,7 +76,7 @@ export function SettingsSection({ view }: SectionProps) {
         )
       }
     >
-      <dl className="sheet pad grid gap-x-6 gap-y-1 grid-cols-[minmax(130px,220px)_1fr]">
+      <dl className="sheet pad grid gap-x-6 gap-y-1 sm:grid-cols-[minmax(130px,220px)_1fr]">
         <dt className="text-muted">Latitude</dt>
         <dd>{site.latitudeDeg}°</dd>
         <dt className="text-muted">Height</dt>

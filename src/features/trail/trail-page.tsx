@@ -44,14 +44,14 @@ function Chain() {
           <>
             <p>
               <Word look={view.firstFault ? 'bad' : 'good'}>
-                {view.firstFault ? 'The chain is broken' : 'The chain holds'}
+                {view.firstFault ? 'The chain is broken:' : 'The chain holds:'}
               </Word>{' '}
               {view.firstFault ??
                 `${view.sealedCount} changes of the organisation are chained by SHA-256${view.unsealedCount ? `, ${view.unsealedCount} are waiting for the next second’s seal` : ''}.`}
             </p>
             <p className="hint break-all">
               Head: {view.headHash}. It is printed in every issued report, so that an old report proves the
-              trail behind it.
+              trail behind it. Numbers run through all sites of the organisation, so one site’s list has gaps.
             </p>
           </>
         )}
@@ -102,21 +102,22 @@ export function TrailPage() {
             <caption className="sr-only">Changes, newest first</caption>
             <thead>
               <tr>
-                <th scope="col" className="r">
+                <th scope="col" className="r hidden sm:table-cell">
                   No.
                 </th>
-                <th scope="col">When</th>
-                <th scope="col">Who</th>
+                <th scope="col">When and who</th>
                 <th scope="col">What</th>
               </tr>
             </thead>
             <tbody>
               {rows.map((row) => (
                 <tr key={row.id}>
-                  <td className="r text-muted">{row.sequence}</td>
-                  <td className="whitespace-nowrap">{formatInstant(row.at)}</td>
-                  <td>{row.by}</td>
-                  <td className="min-w-[260px]">
+                  <td className="r text-muted hidden sm:table-cell">{row.sequence}</td>
+                  <td className="sm:whitespace-nowrap">
+                    {formatInstant(row.at)}
+                    <span className="hint block">{row.by}</span>
+                  </td>
+                  <td className="sm:w-2/3">
                     {row.sentence}
                     {row.reason && <span className="hint block">Reason: {row.reason}</span>}
                     <div className="flex flex-wrap gap-x-5">
