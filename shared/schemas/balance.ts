@@ -8,6 +8,11 @@ const share = (what: string, max = 1) =>
     .min(0, `${what} must be 0 or more.`)
     .max(max, `${what} must be ${max} or less.`);
 
+const degrees = (what: string, min: number, max: number) => {
+  const sentence = `${what} must be from ${min} to ${max} °C.`;
+  return z.coerce.number(sentence).min(min, sentence).max(max, sentence);
+};
+
 /** Parameters of the model as they are stored, form and wire. */
 export const balanceParameters = z.object({
   petMethod: z.enum(petMethods),
@@ -19,8 +24,8 @@ export const balanceParameters = z.object({
   snow: z
     .object({
       isOn: z.boolean(),
-      tSnowC: z.coerce.number().min(-30).max(5),
-      tRainC: z.coerce.number().min(-5).max(10),
+      tSnowC: degrees('The snow temperature', -30, 5),
+      tRainC: degrees('The rain temperature', -5, 10),
       meltMaxFraction: share('The largest melt share'),
     })
     .refine((snow) => snow.tRainC > snow.tSnowC, {
@@ -28,7 +33,7 @@ export const balanceParameters = z.object({
       message: 'The rain temperature must lie above the snow temperature.',
     }),
   isFrostOn: z.boolean(),
-  tFrostC: z.coerce.number().min(-20).max(5),
+  tFrostC: degrees('The frost temperature', -20, 5),
   recessionPerMonth: share('The recession constant', 5),
   channelledFraction: share('The channelled share'),
   leakFraction: share('The leak share'),

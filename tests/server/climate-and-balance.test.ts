@@ -1,6 +1,7 @@
 import { readFileSync } from 'node:fs';
 import { parse } from 'csv-parse/sync';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import type { ProblemDocument } from '#shared/problems.ts';
 import type { BalanceView } from '#shared/views/balance-view.ts';
 import type { ClimateImportView } from '#shared/views/lab-view.ts';
 import type { ClimateView } from '#shared/views/site-view.ts';
@@ -107,6 +108,19 @@ describe('climate files and the balance', () => {
       `/balance-runs/${runId}/recheck`,
     );
     expect(JSON.stringify(recheck)).toMatch(/agree|isSame|true/);
+  });
+
+  it('a set that the record cannot serve is refused, and the one in force stays', async () => {
+    const { current } = await get<{ current: { id: string; values: object } }>('/parameter-sets');
+    const refused = await write(site.engineer, `/sites/${site.siteId}/parameter-sets`, {
+      id: id(),
+      name: 'Given values',
+      values: { ...current.values, petMethod: 'given' },
+    }).expect(422);
+    expect((refused.body as ProblemDocument).errors).toMatchObject([
+      { pointer: '/values/petMethod', detail: expect.stringContaining('has no given PET') as string },
+    ]);
+    expect((await get<{ current: { id: string } }>('/parameter-sets')).current.id).toBe(current.id);
   });
 
   it('every figure opens to its working, and the last line of it is the figure', async () => {

@@ -1,5 +1,5 @@
 import type * as z from 'zod';
-import { Problem } from '#shared/problems.ts';
+import { Problem, fieldProblem } from '#shared/problems.ts';
 import type { freezeInput, parameterSetInput } from '#shared/schemas/balance.ts';
 import {
   engineVersion,
@@ -227,7 +227,26 @@ export async function recheckRun(tx: Transaction, context: Context, runId: strin
   };
 }
 
-/** Stores a new parameter set and makes it current; the working run follows. */
+/** Why the balance cannot be computed with these parameters; null when it can, or when there is nothing to compute yet. */
+async function problemWith(
+  tx: Transaction,
+  deps: Dependencies,
+  record: SiteRecord,
+  values: BalanceParameters,
+): Promise<string | null> {
+  const today = (await siteDaysOf(tx, record.site.id)).dayOf(deps.now().getTime());
+  try {
+    return computeRun((await buildEngineInput(tx, record, values, today)).input).problem;
+  } catch (error) {
+    if (error instanceof Problem) return null;
+    throw error;
+  }
+}
+
+/**
+ * Stores a new parameter set and makes it current; the working run follows.
+ * @throws Problem when the record lacks what the set needs and did not lack it before
+ */
 export async function createParameterSet(
   tx: Transaction,
   context: Context,
@@ -236,6 +255,10 @@ export async function createParameterSet(
 ) {
   const siteId = siteOf(context);
   const before = await currentParameters(tx, context, deps);
+  const record = await readSite(tx, siteId);
+  const problem = await problemWith(tx, deps, record, input.values);
+  if (problem && !(await problemWith(tx, deps, record, before.values as BalanceParameters)))
+    throw fieldProblem('/values/petMethod', `The balance could not be computed with this set: ${problem}`);
   const version =
     Math.max(
       0,

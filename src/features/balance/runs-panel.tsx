@@ -108,6 +108,13 @@ function Parameters() {
                 inputMode="decimal"
               />
               <CheckField name="values.snow.isOn" label="Snow" />
+              <TextField name="values.snow.tSnowC" label="All snow at or below" unit="°C" inputMode="text" />
+              <TextField name="values.snow.tRainC" label="All rain at or above" unit="°C" inputMode="text" />
+              <TextField
+                name="values.snow.meltMaxFraction"
+                label="Largest share of the snow that melts in a month"
+                inputMode="decimal"
+              />
               <CheckField name="values.isFrostOn" label="Frozen ground stops percolation" />
               <CheckField name="values.isSpunUp" label="Spin the first soil store up on the first year" />
               <p>

@@ -274,7 +274,9 @@ export function RoundPage() {
                         kept={keptOf(point)}
                         isOpen={openId === point.id}
                         onOpen={() => setOpenId(openId === point.id ? null : point.id)}
-                        onDone={() => setOpenId(next(view, point))}
+                        onDone={() =>
+                          setOpenId((current) => (current === point.id ? next(view, point) : current))
+                        }
                       />
                     ))}
                   </ol>
