@@ -1,4 +1,4 @@
-import { daysInMonth, type Month } from '../calendar/month.ts';
+import { daysInMonth } from '../calendar/month.ts';
 import type { StepResult } from './run-water-balance.ts';
 import { termRegister, type StepTerms, type TermName } from './terms.ts';
 
@@ -65,8 +65,6 @@ export function sumByCellAndMonth(steps: readonly StepResult[]): Map<string, Sum
   }
   return new Map([...groups].map(([key, group]) => [key, sumSteps(group)]));
 }
-
-export const cellMonthKey = (cellId: string, month: Month): string => `${cellId} ${month}`;
 
 /** The terms that the head line of the balance puts together, m³; zero terms are left out of the line, not of the table. */
 export interface HeadLine {

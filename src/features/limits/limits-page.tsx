@@ -79,7 +79,7 @@ function VerdictTable({ rows, onOpen }: { rows: readonly Judged[]; onOpen: (row:
               <td className="!py-0 !align-middle hidden sm:table-cell">
                 <ShareTrack verdict={row.verdict} />
               </td>
-              <td className="min-w-[13rem]">
+              <td className="min-w-[8rem] sm:min-w-[220px]">
                 <VerdictWord word={row.verdict.word} />
                 <span className="hint block">
                   {row.verdict.sentence}{' '}
