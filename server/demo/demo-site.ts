@@ -5,9 +5,10 @@ import type { CoverKind } from '#shared/water-balance/cover-types.ts';
 import { headerShares, pumpTests, pumps } from '../db/schema/metering.ts';
 import { roundPoints } from '../db/schema/sites.ts';
 import type { Transaction } from '../db/transaction.ts';
-import { addWaste, changeCover, confirmCoverType, createCell } from '../features/sites/cell-service.ts';
+import { addWaste, createCell } from '../features/sites/cell-service.ts';
+import { changeCover, confirmCoverType } from '../features/sites/cover-service.ts';
 import { createMeter, createPlace, createStore, createSump } from '../features/sites/metering-service.ts';
-import { readSite, updateSettings, createSite, settingsTag } from '../features/sites/site-service.ts';
+import { createSite, readSiteStructure, updateSettings } from '../features/sites/site-service.ts';
 import type { Context, Dependencies } from '../http/route.ts';
 import { eq } from 'drizzle-orm';
 import type { DemoPlan } from './demo-plan.ts';
@@ -39,23 +40,26 @@ export async function makeDemoSite(
 ): Promise<DemoIds> {
   const id = random.id;
   const site = id();
-  await createSite(tx, { ...engineer, siteId: null }, deps, {
-    id: site,
+  const facts = {
     name: 'Varrow Hill',
     latitudeDeg: '53.4',
     elevationM: '118',
+    openedOn: '2011-05-02',
+    displayUnits: 'metric' as const,
+  };
+  await createSite(tx, { ...engineer, siteId: null }, deps, {
+    id: site,
+    ...facts,
     timeZone: 'Europe/London',
     dayBoundary: '00:00',
-    openedOn: '2011-05-02',
-    displayUnits: 'metric',
   });
   const context = { ...engineer, siteId: site };
-  const before = await readSite(tx, site);
+  const before = await readSiteStructure(tx, context);
   await updateSettings(
     tx,
     context,
-    { name: 'Varrow Hill', displayUnits: 'metric', reportDueDays: 60, certificationText: certification },
-    settingsTag(before.site),
+    { ...facts, reportDueDays: 60, certificationText: certification },
+    before.settingsTag,
   );
   for (const type of before.coverTypes.slice(0, 5)) await confirmCoverType(tx, context, deps, type.id);
   const cover = (kind: CoverKind) => before.coverTypes.find((type) => type.kind === kind)!.id;

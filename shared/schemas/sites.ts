@@ -21,11 +21,16 @@ const fractionOf = (what: string) =>
     aboveMax: 'Enter a share of one: 0.18, not 18.',
   });
 
-export const siteInput = z.object({
-  id: recordId,
+const siteFacts = {
   name: requiredText('the name of the site', 80),
   latitudeDeg: typedNumber({ what: 'the latitude', unit: '°', min: -66, max: 66, decimals: 6 }),
   elevationM: typedNumber({ what: 'the height above the sea', unit: 'm', min: -430, max: 6000 }),
+  openedOn: dayText('the day the site opened'),
+};
+
+export const siteInput = z.object({
+  id: recordId,
+  ...siteFacts,
   timeZone: requiredText('the time zone').refine(
     isTimeZone,
     'Enter a time zone by its IANA name, like Europe/London or America/Chicago.',
@@ -33,13 +38,12 @@ export const siteInput = z.object({
   dayBoundary: z
     .string()
     .regex(/^([01]\d|2[0-3]):[0-5]\d$/, 'Enter the time the site day begins, like 00:00 or 08:00.'),
-  openedOn: dayText('the day the site opened'),
   displayUnits: z.enum(['metric', 'us']).default('metric'),
 });
 export type SiteInput = z.input<typeof siteInput>;
 
 export const siteSettingsInput = z.object({
-  name: requiredText('the name of the site', 80),
+  ...siteFacts,
   displayUnits: z.enum(['metric', 'us']),
   reportDueDays: wholeNumber('the days until the report is due', 1, 366),
   certificationText: optionalText(4000),
@@ -77,6 +81,23 @@ export const coverChangeInput = z.object({
   initialSoilStoreMm: optionalNumber({ what: 'the water in the placed soil', unit: 'mm', min: 0, max: 2000 }),
 });
 export type CoverChangeInput = z.input<typeof coverChangeInput>;
+
+/** What a cover entry should have been: another cover, or nothing, which takes the entry out. */
+export const coverCorrectionInput = z.object({
+  coverPeriodId: chosenId('the cover entry'),
+  coverTypeId: z.union([z.literal('none'), z.uuid()], {
+    error: 'Choose the cover that it was, or that it was not covered then.',
+  }),
+  reason: requiredText('how the error came to light'),
+});
+export type CoverCorrectionInput = z.input<typeof coverCorrectionInput>;
+
+export const cellNameInput = z.object({
+  cellId: chosenId('the cell'),
+  code: code('the code of the cell'),
+  name: requiredText('the name of the cell', 60),
+});
+export type CellNameInput = z.input<typeof cellNameInput>;
 
 export const coverTypeInput = z.object({
   id: recordId,

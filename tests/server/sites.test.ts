@@ -123,18 +123,78 @@ describe('a site and what it is made of', () => {
     ).toContain('cannot be covered on it');
   });
 
-  it('settings changed meanwhile are noticed', async () => {
+  it('a cover entry made in error is taken out, last one first; a split plot goes on whole again', async () => {
+    const correct = (coverPeriodId: string, coverTypeId: string) => ({
+      coverPeriodId,
+      coverTypeId,
+      reason: 'the survey was of another bench',
+    });
+    const path = `/sites/${site.siteId}/cover-corrections`;
+    const periodOf = async (name: string, fromOn: string) => {
+      const { plots, coverPeriods } = await site.view();
+      const ids = plots.filter((plot) => plot.name === name).map((plot) => plot.id);
+      return coverPeriods.find((one) => ids.includes(one.plotId) && one.fromOn === fromOn)!.id;
+    };
+    const split = await periodOf('Bench', '2026-01-12');
+    expect((await refused('/cover-corrections', correct(split, 'none'))).detail).toContain(
+      'covered again on 1 February 2026',
+    );
+    const opening = await periodOf('Whole', '2025-01-01');
+    expect((await refused('/cover-corrections', correct(opening, 'none'))).detail).toContain(
+      'began under this cover',
+    );
+    const daily = await periodOf('Whole', '2026-02-01');
+    const same = correct(daily, await site.coverTypeId('working-area'));
+    expect((await refused('/cover-corrections', same)).detail).toContain('right before or after');
+    await write(site.engineer, path, correct(daily, await site.coverTypeId('final-soil'))).expect(201);
+    expect(await site.view()).toMatchObject({
+      coverPeriods: expect.arrayContaining([
+        expect.objectContaining({ fromOn: '2026-02-01', coverTypeId: await site.coverTypeId('final-soil') }),
+      ]),
+    });
+    await write(site.engineer, path, correct(await periodOf('Whole', '2026-02-01'), 'none')).expect(201);
+    await write(site.engineer, path, correct(split, 'none')).expect(201);
+    const { plots, coverPeriods } = await site.view();
+    expect(plots).toEqual([expect.objectContaining({ id: plotId, toOn: null, areaM2: '42000' })]);
+    expect(coverPeriods).toEqual([expect.objectContaining({ id: opening, toOn: null })]);
+    const kept = await record.admin.query(
+      'select count(*)::int as n from cover_periods where withdrawn_at is not null',
+    );
+    expect(kept.rows).toEqual([{ n: 4 }]);
+  });
+
+  it('a cell is renamed, but not to a code that stands', async () => {
+    const [cell] = (await site.view()).cells;
+    const rename = (code: string) => ({ cellId: cell!.id, code, name: 'North rim' });
+    await write(site.engineer, `/sites/${site.siteId}/cell-names`, rename('C7')).expect(201);
+    expect((await site.view()).cells).toMatchObject([{ code: 'C7', name: 'North rim' }]);
+    await write(site.engineer, `/sites/${site.siteId}/cell-names`, rename('C1')).expect(201);
+  });
+
+  it('settings changed meanwhile are noticed; the record may begin earlier, not after its first cell', async () => {
     const { settingsTag } = await site.view();
-    const put = (name: string, tag: string) =>
+    const put = (name: string, tag: string, openedOn = '2023-06-01') =>
       site.engineer
         .put(`/api/v1/sites/${site.siteId}`)
         .set('Idempotency-Key', id())
         .set('If-Match', tag)
-        .send({ name, displayUnits: 'metric', reportDueDays: '60', certificationText: '' });
+        .send({
+          name,
+          latitudeDeg: '37.6475',
+          elevationM: '402',
+          openedOn,
+          displayUnits: 'metric',
+          reportDueDays: '60',
+          certificationText: '',
+        });
     await put('Northcote East', settingsTag).expect(200);
     const late = await put('Northcote West', settingsTag).expect(412);
     expect((late.body as ProblemDocument).type).toBe('/problems/changed-meanwhile');
-    expect((await site.view()).site.name).toBe('Northcote East');
+    const view = await site.view();
+    expect(view.site).toMatchObject({ name: 'Northcote East', openedOn: '2023-06-01' });
+    expect(view.dayRules).toMatchObject([{ validFromOn: '2023-06-01' }]);
+    const after = await put('Northcote East', view.settingsTag, '2025-02-01').expect(422);
+    expect((after.body as ProblemDocument).detail).toContain('opened on 1 January 2025');
   });
 
   it('codes that stand already, a meter to itself and a store that shrinks are refused', async () => {

@@ -134,6 +134,7 @@ export const plots = pgTable(
     areaM2: exact('area_m2', 3).notNull(),
     fromOn: day('from_on').notNull(),
     toOn: day('to_on'),
+    withdrawnAt: instant('withdrawn_at'),
   },
   (t) => [
     ownedKey(t),
@@ -143,7 +144,7 @@ export const plots = pgTable(
   ],
 );
 
-/** One cover type at a time on a plot; the exclusion constraint is in the migration. */
+/** One cover type at a time on a plot; the exclusion constraint, blind to withdrawn rows, is in the migrations. */
 export const coverPeriods = pgTable(
   'cover_periods',
   {
@@ -154,6 +155,7 @@ export const coverPeriods = pgTable(
     toOn: day('to_on'),
     evidence: text('evidence').notNull(),
     initialSoilStoreMm: exact('initial_soil_store_mm', 3),
+    withdrawnAt: instant('withdrawn_at'),
   },
   (t) => [
     ownedKey(t),

@@ -2,9 +2,8 @@ import type * as z from 'zod';
 import { dayName } from '#shared/calendar/day.ts';
 import { monthName } from '#shared/calendar/month.ts';
 import { Problem, fieldProblem, type FieldProblem } from '#shared/problems.ts';
-import type { cellInput, coverChangeInput, coverTypeInput, wasteInput } from '#shared/schemas/sites.ts';
+import type { cellInput, cellNameInput, wasteInput } from '#shared/schemas/sites.ts';
 import { checkPlotAreas } from '#shared/site/check-plot-areas.ts';
-import { splitPlot } from '#shared/site/split-plot.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
@@ -31,7 +30,7 @@ export async function createCell(
   if (input.openedOn < record.site.openedOn)
     errors.push({
       pointer: '/openedOn',
-      detail: `The site opened on ${record.site.openedOn}; the cell cannot have opened before it.`,
+      detail: `The record of the site begins on ${dayName(record.site.openedOn)}; the cell cannot have opened before it. Change the first day under Settings.`,
     });
   if (record.cells.some((cell) => cell.code === input.code))
     errors.push({ pointer: '/code', detail: `There is already a cell ${input.code}. Choose another code.` });
@@ -89,123 +88,27 @@ export async function createCell(
   return { id: input.id };
 }
 
-/** Records that a plot, or part of it, was covered on a day. */
-export async function changeCover(
+/** A cell under another code or name; everything recorded for it stays with it. */
+export async function renameCell(
   tx: Transaction,
   context: Context,
-  deps: Dependencies,
-  input: z.output<typeof coverChangeInput>,
+  { cellId, code, name }: z.output<typeof cellNameInput>,
 ) {
-  const { organisationId } = context;
   const record = await readSite(tx, siteOf(context));
-  const plot = record.plots.find((one) => one.id === input.plotId);
-  const coverType = record.coverTypes.find((one) => one.id === input.coverTypeId);
-  if (!plot) throw fieldProblem('/plotId', 'Choose a plot of this site.');
-  if (!coverType) throw fieldProblem('/coverTypeId', 'Choose a cover of this site.');
-  const capacityMm = Number(coverType.availableWaterMm);
-  if (input.initialSoilStoreMm !== undefined && Number(input.initialSoilStoreMm) > capacityMm)
-    throw fieldProblem(
-      '/initialSoilStoreMm',
-      `${coverType.name} holds at most ${capacityMm} mm. Enter the water in the placed soil up to that.`,
-    );
-  if (input.onDay > (await siteDaysOf(tx, siteOf(context))).dayOf(deps.now().getTime()))
-    throw fieldProblem('/onDay', 'This day is still to come. Record the cover when the ground is covered.');
-  const split = splitPlot(plot, input);
-  if ('refused' in split)
-    throw fieldProblem(split.refused.includes('cannot be covered') ? '/areaM2' : '/onDay', split.refused);
-  const periods = record.coverPeriods.filter((period) => period.plotId === plot.id);
-  const current = periods.find(
-    (period) => period.fromOn <= input.onDay && (period.toOn === null || period.toOn > input.onDay),
-  );
-  const later = periods.find((period) => period.fromOn >= input.onDay);
-  if (later)
-    throw fieldProblem(
-      '/onDay',
-      `Plot ${plot.name} already has a cover from ${dayName(later.fromOn)} to ${later.toOn ? dayName(later.toOn) : 'now'}. Two covers cannot lie on one plot at once; choose a later day.`,
-    );
-  if (!current)
-    throw fieldProblem('/onDay', `Plot ${plot.name} has no cover on ${dayName(input.onDay)} to change from.`);
-  if (current.coverTypeId === coverType.id)
-    throw fieldProblem(
-      '/coverTypeId',
-      `Plot ${plot.name} has ${coverType.name} already. Choose another cover.`,
-    );
-  await repository.endCoverPeriod(tx, current.id, input.onDay);
-  const cover = { organisationId, fromOn: input.onDay, evidence: input.evidence };
-  const initialSoilStoreMm = input.initialSoilStoreMm ?? null;
-  if (split.restAreaM2 === null) {
-    await repository.insertCoverPeriods(tx, [
-      { ...cover, id: deps.newId(), plotId: plot.id, coverTypeId: coverType.id, initialSoilStoreMm },
-    ]);
-  } else {
-    await repository.endPlot(tx, plot.id, input.onDay);
-    const child = { organisationId, cellId: plot.cellId, parentId: plot.id, fromOn: input.onDay };
-    await repository.insertPlots(tx, [
-      { ...child, id: input.newPlotId, name: input.newPlotName, areaM2: split.coveredAreaM2 },
-      { ...child, id: input.restPlotId, name: plot.name, areaM2: split.restAreaM2 },
-    ]);
-    await repository.insertCoverPeriods(tx, [
-      { ...cover, id: deps.newId(), plotId: input.newPlotId, coverTypeId: coverType.id, initialSoilStoreMm },
-      { ...cover, id: deps.newId(), plotId: input.restPlotId, coverTypeId: current.coverTypeId },
-    ]);
-  }
+  const cell = record.cells.find((one) => one.id === cellId);
+  if (!cell) throw new Problem('not-found', 'There is no such cell at this site.');
+  if (record.cells.some((one) => one.id !== cellId && one.code === code))
+    throw fieldProblem('/code', `There is already a cell ${code}. Choose another code.`);
+  await repository.updateCell(tx, cellId, { code, name });
   await recordChange(tx, context, {
     action: 'change',
-    subjectType: 'plots',
-    subjectId: plot.id,
-    sentence: `${split.coveredAreaM2} m² of plot ${plot.name} became ${coverType.name} on ${dayName(input.onDay)}.`,
-    reason: input.evidence,
-    before: { plot, cover: current },
-    after: input,
+    subjectType: 'cells',
+    subjectId: cellId,
+    sentence: `Cell ${cell.code} ${cell.name} is called ${code} ${name} now.`,
+    before: cell,
+    after: { code, name },
   });
-  return { id: split.restAreaM2 === null ? plot.id : input.newPlotId };
-}
-
-export async function createCoverType(
-  tx: Transaction,
-  context: Context,
-  input: z.output<typeof coverTypeInput>,
-) {
-  const siteId = siteOf(context);
-  await repository.insertCoverTypes(tx, [
-    {
-      organisationId: context.organisationId,
-      siteId,
-      hasSoilStore: Number(input.availableWaterMm) > 0,
-      ...input,
-      membranePassFraction: input.membranePassFraction ?? null,
-    },
-  ]);
-  await recordChange(tx, context, {
-    action: 'create',
-    subjectType: 'cover-types',
-    subjectId: input.id,
-    sentence: `Cover ${input.name} was added.`,
-    after: input,
-  });
-  return { id: input.id };
-}
-
-/** A template becomes the site's own value when an engineer confirms it. */
-export async function confirmCoverType(
-  tx: Transaction,
-  context: Context,
-  deps: Dependencies,
-  coverTypeId: string,
-) {
-  const record = await readSite(tx, siteOf(context));
-  const type = record.coverTypes.find((one) => one.id === coverTypeId);
-  if (!type) throw new Problem('not-found', 'There is no such cover at this site.');
-  if (type.confirmedAt) throw new Problem('already-done', `${type.name} was confirmed already.`);
-  await repository.confirmCoverType(tx, coverTypeId, context.personId, deps.now().toISOString());
-  await recordChange(tx, context, {
-    action: 'confirm',
-    subjectType: 'cover-types',
-    subjectId: coverTypeId,
-    sentence: `The values of ${type.name} were confirmed.`,
-    after: type,
-  });
-  return { id: coverTypeId };
+  return { id: cellId };
 }
 
 export async function addWaste(

@@ -60,6 +60,8 @@ export const listDayRules = (tx: Transaction, siteId: string) =>
 export const insertSite = (tx: Transaction, row: typeof sites.$inferInsert) => tx.insert(sites).values(row);
 export const insertDayRule = (tx: Transaction, row: typeof siteDayRules.$inferInsert) =>
   tx.insert(siteDayRules).values(row);
+export const moveFirstDayRule = (tx: Transaction, id: string, validFromOn: string) =>
+  tx.update(siteDayRules).set({ validFromOn }).where(eq(siteDayRules.id, id));
 export const updateSite = (tx: Transaction, siteId: string, row: Partial<typeof sites.$inferInsert>) =>
   tx.update(sites).set(row).where(eq(sites.id, siteId));
 
@@ -71,7 +73,7 @@ export async function readStructure(tx: Transaction, siteId: string) {
     ? await tx
         .select()
         .from(plots)
-        .where(inArray(plots.cellId, cellIds))
+        .where(and(inArray(plots.cellId, cellIds), isNull(plots.withdrawnAt)))
         .orderBy(asc(plots.fromOn), asc(plots.name))
     : [];
   const plotIds = plotRows.map((plot) => plot.id);
@@ -104,7 +106,7 @@ export async function readStructure(tx: Transaction, siteId: string) {
       ? await tx
           .select()
           .from(coverPeriods)
-          .where(inArray(coverPeriods.plotId, plotIds))
+          .where(and(inArray(coverPeriods.plotId, plotIds), isNull(coverPeriods.withdrawnAt)))
           .orderBy(asc(coverPeriods.fromOn))
       : [],
     coverTypes: await tx
@@ -189,12 +191,19 @@ export const insertCellArea = (tx: Transaction, row: typeof cellAreas.$inferInse
   tx.insert(cellAreas).values(row);
 export const insertPlots = (tx: Transaction, rows: (typeof plots.$inferInsert)[]) =>
   tx.insert(plots).values(rows);
-export const endPlot = (tx: Transaction, plotId: string, toOn: string) =>
-  tx.update(plots).set({ toOn }).where(eq(plots.id, plotId));
+export const updateCell = (tx: Transaction, id: string, row: Partial<typeof cells.$inferInsert>) =>
+  tx.update(cells).set(row).where(eq(cells.id, id));
+/** Ends or withdraws plots, or lets them go on. */
+export const updatePlots = (tx: Transaction, ids: string[], row: Partial<typeof plots.$inferInsert>) =>
+  tx.update(plots).set(row).where(inArray(plots.id, ids));
 export const insertCoverPeriods = (tx: Transaction, rows: (typeof coverPeriods.$inferInsert)[]) =>
   tx.insert(coverPeriods).values(rows);
-export const endCoverPeriod = (tx: Transaction, id: string, toOn: string) =>
-  tx.update(coverPeriods).set({ toOn }).where(eq(coverPeriods.id, id));
+/** Ends or withdraws covers, or lets them go on. */
+export const updateCoverPeriods = (
+  tx: Transaction,
+  ids: string[],
+  row: Partial<typeof coverPeriods.$inferInsert>,
+) => tx.update(coverPeriods).set(row).where(inArray(coverPeriods.id, ids));
 export const insertCoverTypes = (tx: Transaction, rows: (typeof coverTypes.$inferInsert)[]) =>
   tx.insert(coverTypes).values(rows);
 export const confirmCoverType = (tx: Transaction, id: string, confirmedById: string, confirmedAt: string) =>

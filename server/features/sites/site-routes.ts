@@ -1,7 +1,9 @@
 import { siteParams, siteRecordParams } from '#shared/schemas/params.ts';
 import {
   cellInput,
+  cellNameInput,
   coverChangeInput,
+  coverCorrectionInput,
   coverTypeInput,
   meterInput,
   placeInput,
@@ -14,7 +16,8 @@ import {
 import { meterEventInput } from '#shared/schemas/readings.ts';
 import { route, type Route } from '../../http/route.ts';
 import { readMe } from '../access/access-service.ts';
-import { addWaste, changeCover, confirmCoverType, createCell, createCoverType } from './cell-service.ts';
+import { addWaste, createCell, renameCell } from './cell-service.ts';
+import { changeCover, confirmCoverType, correctCover, createCoverType } from './cover-service.ts';
 import { addMeterEvent, createMeter, createPlace, createStore, createSump } from './metering-service.ts';
 import { createSite, readSiteStructure, updateSettings } from './site-service.ts';
 
@@ -62,6 +65,22 @@ export const siteRoutes: Route[] = [
     params: siteParams,
     body: coverChangeInput,
     handle: ({ tx, context, deps, body }) => changeCover(tx, context, deps, body),
+  }),
+  route({
+    method: 'post',
+    path: '/sites/:siteId/cell-names',
+    permission: 'change:site',
+    params: siteParams,
+    body: cellNameInput,
+    handle: ({ tx, context, body }) => renameCell(tx, context, body),
+  }),
+  route({
+    method: 'post',
+    path: '/sites/:siteId/cover-corrections',
+    permission: 'change:site',
+    params: siteParams,
+    body: coverCorrectionInput,
+    handle: ({ tx, context, deps, body }) => correctCover(tx, context, deps, body),
   }),
   route({
     method: 'post',

@@ -1,5 +1,6 @@
 import { Decimal } from 'decimal.js';
 import type * as z from 'zod';
+import { dayName } from '#shared/calendar/day.ts';
 import { createSiteDays, type SiteDays } from '#shared/calendar/site-days.ts';
 import { Problem, fieldProblem } from '#shared/problems.ts';
 import type { Role } from '#shared/permissions.ts';
@@ -155,13 +156,19 @@ async function loadSite(tx: Transaction, siteId: string) {
 }
 export type SiteRecord = Awaited<ReturnType<typeof readSite>>;
 
-export const settingsTag = (site: {
-  name: string;
-  displayUnits: string;
-  reportDueDays: number;
-  certificationText: string | null;
-}): string =>
-  `"${sha256Of(JSON.stringify([site.name, site.displayUnits, site.reportDueDays, site.certificationText])).slice(0, 16)}"`;
+/** What an engineer may change of a site. */
+const settingsOf = (site: SiteRecord['site']) => ({
+  name: site.name,
+  latitudeDeg: site.latitudeDeg,
+  elevationM: site.elevationM,
+  openedOn: site.openedOn,
+  displayUnits: site.displayUnits,
+  reportDueDays: site.reportDueDays,
+  certificationText: site.certificationText,
+});
+
+const settingsTag = (site: SiteRecord['site']): string =>
+  `"${sha256Of(JSON.stringify(settingsOf(site))).slice(0, 16)}"`;
 
 /** The site as its page shows it, with the tag that a change of settings must name. */
 export async function readSiteStructure(tx: Transaction, context: Context) {
@@ -169,7 +176,10 @@ export async function readSiteStructure(tx: Transaction, context: Context) {
   return { ...record, settingsTag: settingsTag(record.site) };
 }
 
-/** Changes settings when nobody else did since they were read. */
+/**
+ * Changes settings when nobody else did since they were read. A record that begins earlier takes its first day rule
+ * along; it cannot begin after its first cell opened.
+ */
 export async function updateSettings(
   tx: Transaction,
   context: Context,
@@ -177,30 +187,33 @@ export async function updateSettings(
   ifMatch: string | undefined,
 ) {
   const siteId = siteOf(context);
-  const before = await repository.findSite(tx, siteId);
-  if (!before) throw new Problem('not-found', 'There is no such site.');
+  const { site, cells, dayRules } = await readSite(tx, siteId);
   if (!ifMatch)
     throw fieldProblem('/if-match', 'Send the If-Match header with the tag of the settings you read.');
-  if (ifMatch !== settingsTag(before)) {
+  if (ifMatch !== settingsTag(site)) {
     throw new Problem(
       'changed-meanwhile',
-      `Somebody changed the settings meanwhile: the name is now "${before.name}", units ${before.displayUnits}, report due after ${before.reportDueDays} days. Look at them again and save once more.`,
+      `Somebody changed the settings meanwhile: the name is now "${site.name}", units ${site.displayUnits}, report due after ${site.reportDueDays} days. Look at them again and save once more.`,
+    );
+  }
+  const early = cells.find((cell) => cell.openedOn < input.openedOn);
+  if (early) {
+    throw fieldProblem(
+      '/openedOn',
+      `Cell ${early.code} opened on ${dayName(early.openedOn)}; the record cannot begin after it.`,
     );
   }
   const after = { ...input, certificationText: input.certificationText ?? null };
   await repository.updateSite(tx, siteId, after);
+  if (input.openedOn < dayRules[0]!.validFromOn)
+    await repository.moveFirstDayRule(tx, dayRules[0]!.id, input.openedOn);
   await recordChange(tx, context, {
     action: 'change',
     subjectType: 'sites',
     subjectId: siteId,
     sentence: `Settings of ${input.name} were changed.`,
-    before: {
-      name: before.name,
-      displayUnits: before.displayUnits,
-      reportDueDays: before.reportDueDays,
-      certificationText: before.certificationText,
-    },
+    before: settingsOf(site),
     after,
   });
-  return { tag: settingsTag({ ...before, ...after }) };
+  return { tag: settingsTag({ ...site, ...after }) };
 }

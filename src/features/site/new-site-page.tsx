@@ -1,10 +1,11 @@
 import { useQueryClient } from '@tanstack/react-query';
 import { Link, useNavigate } from 'react-router';
 import { siteInput, type SiteInput } from '#shared/schemas/sites.ts';
-import { ChoiceField, RecordForm, TextField } from '../../components/form.tsx';
+import { RecordForm, TextField } from '../../components/form.tsx';
 import { PageHead } from '../../components/page.tsx';
 import { api } from '../../lib/api-client.ts';
 import { newId } from '../../lib/new-id.ts';
+import { SiteFactFields } from './site-parts.tsx';
 
 /** A new site: name, place, and how its day runs. Cells follow on its own page. */
 export function NewSitePage() {
@@ -38,14 +39,7 @@ export function NewSitePage() {
         submitLabel="Make the site"
         onSubmit={create}
       >
-        <TextField name="name" label="Name of the site" />
-        <TextField
-          name="latitudeDeg"
-          label="Latitude in degrees, south negative"
-          unit="°"
-          hint="It decides the daylight of each month. Like 52.41."
-        />
-        <TextField name="elevationM" label="Height above the sea, in metres" unit="m" />
+        <SiteFactFields />
         <TextField
           name="timeZone"
           label="Time zone"
@@ -55,15 +49,6 @@ export function NewSitePage() {
           name="dayBoundary"
           label="Time the site day begins"
           hint="Like 00:00 or 08:00: the hour of the morning round. A day runs from it to the same time on the next."
-        />
-        <TextField name="openedOn" label="Day the record begins" hint="Like 2024-01-01." />
-        <ChoiceField
-          name="displayUnits"
-          label="Units shown"
-          options={[
-            { value: 'metric', label: 'metric: m³, mm, ha' },
-            { value: 'us', label: 'US: gallons, inches, acres' },
-          ]}
         />
       </RecordForm>
     </main>

@@ -1,13 +1,16 @@
 import { dayName } from '#shared/calendar/day.ts';
 import { siteSettingsInput } from '#shared/schemas/sites.ts';
 import { usePlace } from '../../app/place.ts';
-import { ChoiceField, RecordForm, TextField } from '../../components/form.tsx';
+import { RecordForm, TextField } from '../../components/form.tsx';
 import { Section } from '../../components/page.tsx';
 import { useWrite } from '../../lib/record.ts';
-import { FormLink, type SectionProps } from './site-parts.tsx';
+import { FormLink, SiteFactFields, type SectionProps } from './site-parts.tsx';
 
 interface SiteSettings {
   name: string;
+  latitudeDeg: string;
+  elevationM: string;
+  openedOn: string;
   displayUnits: 'metric' | 'us';
   reportDueDays: string;
   certificationText: string;
@@ -19,12 +22,16 @@ function SettingsForm({ view, onDone }: SectionProps & { onDone: () => void }) {
     method: 'PUT',
     headers: { 'if-match': view.settingsTag },
   });
-  const { name, displayUnits, reportDueDays, certificationText } = view.site;
+  const { name, latitudeDeg, elevationM, openedOn, displayUnits, reportDueDays, certificationText } =
+    view.site;
   return (
     <RecordForm<SiteSettings>
       schema={siteSettingsInput}
       defaults={{
         name,
+        latitudeDeg,
+        elevationM,
+        openedOn,
         displayUnits,
         reportDueDays: String(reportDueDays),
         certificationText: certificationText ?? '',
@@ -33,15 +40,7 @@ function SettingsForm({ view, onDone }: SectionProps & { onDone: () => void }) {
       onSubmit={(values) => save.mutateAsync(values)}
       onDone={onDone}
     >
-      <TextField name="name" label="Name of the site" />
-      <ChoiceField
-        name="displayUnits"
-        label="Units shown"
-        options={[
-          { value: 'metric', label: 'metric' },
-          { value: 'us', label: 'US' },
-        ]}
-      />
+      <SiteFactFields />
       <TextField
         name="reportDueDays"
         label="Days from the end of the quarter to the report"
