@@ -94,11 +94,7 @@ export function generateResults(random: Random, plan: DemoPlan): DemoResult[] {
 }
 
 /** A month's results as the laboratory's sheet: letterhead, table, footnote. */
-export function resultsSheet(
-  results: readonly DemoResult[],
-  month: Month,
-  revision = 0,
-): { csv: string; firstRow: number } {
+export function resultsSheet(results: readonly DemoResult[], month: Month, revision: number): string {
   const quote = (value: string) => (/[",\n]/.test(value) ? `"${value.replaceAll('"', '""')}"` : value);
   const rows = results.map((one) =>
     [one.point, one.day, one.analyte, one.text, one.unit, one.limit, one.limit ? 'mg/L' : '']
@@ -111,8 +107,5 @@ export function resultsSheet(
     ',,,,,,',
     'Client ID,Sampled,Parameter,Result,Units,RL,RL Units',
   ];
-  return {
-    csv: [...head, ...rows, ',,,,,,', 'U = not detected at RL; J = estimated below RL,,,,,,'].join('\n'),
-    firstRow: head.length + 1,
-  };
+  return [...head, ...rows, ',,,,,,', 'U = not detected at RL; J = estimated below RL,,,,,,'].join('\n');
 }

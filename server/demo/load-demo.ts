@@ -104,6 +104,6 @@ export async function loadDemo(deps: Dependencies): Promise<void> {
     await loadWeather(tx, actors, ids, weather, random);
     await makePermit(tx, actors, ids, plan, random);
     await loadRecord(tx, actors, ids, plan, weather, random);
-    await tellStory(tx, actors, ids, plan, laboratoryId, random);
+    await tellStory(tx, actors, ids, plan, random);
   });
 }

@@ -1,107 +1,42 @@
 import { addDays, firstDay, lastDay, monthOfDay } from '#shared/calendar/day.ts';
 import { addMonths, monthRange, quarterMonths, type Month } from '#shared/calendar/month.ts';
-import { tidyName, splitAnalyteText } from '#shared/lab/resolve-lab-rows.ts';
 import type { Transaction } from '../db/transaction.ts';
-import { sha256Of } from '../files/file-store.ts';
 import { freezeRun, acceptRun } from '../features/balance/run-service.ts';
 import { closeMonth, reopenMonth } from '../features/closings/closing-service.ts';
 import { writeNote } from '../features/compare/compare-service.ts';
-import { insertImport } from '../features/imports/import-repository.ts';
-import {
-  insertResults,
-  listAnalytes,
-  listLiveResults,
-  listSamplePoints,
-} from '../features/lab/lab-repository.ts';
+import { confirmResults, uploadResults } from '../features/lab/lab-import-service.ts';
 import { openExceedances } from '../features/limits/exceedance-service.ts';
 import { createLoadOut, voidLoadOut } from '../features/loads-out/load-out-service.ts';
 import { signReport } from '../features/reports/report-service.ts';
 import { createRoundNote } from '../features/readings/point-service.ts';
+import type { Context, Dependencies } from '../http/route.ts';
 import type { DemoPlan } from './demo-plan.ts';
 import { generateResults, resultsSheet, type DemoResult } from './demo-results.ts';
 import type { DemoIds } from './demo-site.ts';
 import type { DemoActors } from './demo-actors.ts';
 import type { Random } from './random.ts';
 
-/** A month's results with the kept sheet they came in. */
-async function storeMonth(
+/** A month's sheet as the laboratory sends it, by the same way as any other: kept, read, staged, written. */
+async function sendSheet(
   tx: Transaction,
-  actors: DemoActors,
-  ids: DemoIds,
-  laboratoryId: string,
-  random: Random,
-  month: Month,
+  lab: Context,
+  deps: Dependencies,
   results: readonly DemoResult[],
-  receivedAt: string,
+  revision = 0,
 ): Promise<void> {
-  const lab = actors.as('lab', ids.site);
-  const deps = actors.at(receivedAt);
-  const points = await listSamplePoints(tx, ids.site);
-  const analytes = await listAnalytes(tx);
-  const { csv, firstRow } = resultsSheet(results, month);
-  const bytes = Buffer.from(csv, 'utf8');
-  const importId = random.id();
-  await deps.files.put(bytes);
-  const counts = { read: results.length + 1, ok: results.length, warned: 0, held: 0, skipped: 1 };
-  await insertImport(tx, {
-    organisationId: lab.organisationId,
-    id: importId,
-    siteId: ids.site,
-    kind: 'lab',
-    laboratoryId,
-    fileName: `pellam-varrow-${month}.csv`,
-    fileSha256: sha256Of(bytes),
-    byteCount: bytes.length,
-    jobNumber: `${month.slice(2, 4)}-${month.slice(5)}07`,
-    reading: {
-      shape: 'long-list',
-      notes: [],
-      skipped: [],
-      qualifierKey: [],
-      preview: [],
-      sheetName: 'Sheet',
-      headerRow: 4,
-      jobNumber: null,
-      dateOrder: null,
-    },
-    counts,
-    uploadedById: lab.personId,
-    uploadedAt: receivedAt,
-    confirmedById: lab.personId,
-    confirmedAt: receivedAt,
-  });
-  await insertResults(
+  const id = deps.newId();
+  const month = results[0]!.month;
+  const name = `pellam-varrow-${month}${revision ? `-revision-${revision}` : ''}.csv`;
+  const bytes = Buffer.from(resultsSheet(results, month, revision), 'utf8');
+  const { counts } = await uploadResults(
     tx,
-    results.map((one, index) => {
-      const split = splitAnalyteText(one.analyte);
-      const analyte = analytes.find((row) => tidyName(row.name) === tidyName(split.name))!;
-      const isBelow = one.text.startsWith('<');
-      const value = isBelow ? one.text.slice(1) : one.text;
-      return {
-        organisationId: lab.organisationId,
-        id: random.id(),
-        recordedById: lab.personId,
-        recordedAt: receivedAt,
-        siteId: ids.site,
-        samplePointId: points.find((row) => row.code === one.point)!.id,
-        analyteId: analyte.id,
-        fraction: split.fraction || (analyte.defaultFraction ?? ''),
-        laboratoryId,
-        importId,
-        sheet: 'Sheet',
-        cell: `D${firstRow + index}`,
-        sampledOn: one.day,
-        siteDay: one.day,
-        rawText: one.text,
-        rawUnit: one.unit,
-        comparator: isBelow ? ('<' as const) : ('=' as const),
-        value,
-        unit: one.unit === 'pH' ? 'pH' : 'mg/L',
-        reportingLimit: one.limit || null,
-        printedDecimals: value.split('.')[1]?.length ?? 0,
-      };
-    }),
+    lab,
+    deps,
+    { id, laboratoryId: lab.laboratoryId! },
+    { name, bytes },
   );
+  if (counts.held) throw new Error(`${counts.held} rows of the demo's ${name} are held`);
+  await confirmResults(tx, lab, deps, id);
 }
 
 /** Everything that people decided: closings, runs, a report, a revision, an exceedance, a doubled ticket. */
@@ -110,7 +45,6 @@ export async function tellStory(
   actors: DemoActors,
   ids: DemoIds,
   plan: DemoPlan,
-  laboratoryId: string,
   random: Random,
 ): Promise<void> {
   const [engineer, manager, operator, supervisor] = (
@@ -127,19 +61,13 @@ export async function tellStory(
     Date.parse(wanted) < Date.parse(`${plan.today}T06:30:00Z`)
       ? wanted
       : `${addDays(plan.today, -1)}T16:00:00Z`;
+  const lab = actors.as('lab', ids.site);
+  const seenAt = new Date(now.getTime() - 6 * 3_600_000).toISOString();
   for (const month of monthRange(plan.firstMonth, plan.anchor)) {
     const own = results.filter((one) => one.month === month);
-    if (own.length)
-      await storeMonth(
-        tx,
-        actors,
-        ids,
-        laboratoryId,
-        random,
-        month,
-        own,
-        earliest(`${addDays(lastDay(month), 9)}T14:10:00Z`),
-      );
+    const sentAt = earliest(`${addDays(lastDay(month), 9)}T14:10:00Z`);
+    const isLatest = month === monthOfDay(plan.exceedanceDay);
+    if (own.length) await sendSheet(tx, lab, actors.at(isLatest ? seenAt : sentAt), own);
   }
   const doubled = {
     ticket: '004417',
@@ -196,15 +124,19 @@ export async function tellStory(
     isConfirmed: true,
     reason: 'Open questions are explained in the notes.',
   });
-  await reviseZinc(tx, actors, ids, plan, laboratoryId, random, addDays(signDay, 12));
+  await sendSheet(
+    tx,
+    lab,
+    actors.at(`${addDays(signDay, 12)}T13:00:00Z`),
+    reviseZinc(results.filter((one) => one.month === issuedMonths[2])),
+    1,
+  );
   await reopenMonth(tx, manager, actors.at(`${addDays(signDay, 13)}T10:00:00Z`), issuedMonths[2]!, {
     id: random.id(),
     reason: 'The laboratory revised a zinc result after the report was issued.',
   });
   await freezeAndAccept(tx, actors, ids, random, addDays(firstDay(plan.anchor), 0), 'All complete months.');
 
-  const seenAt = new Date(now.getTime() - 6 * 3_600_000).toISOString();
-  await openExceedances(tx, engineer, actors.at(seenAt), [monthOfDay(plan.exceedanceDay)]);
   await createRoundNote(tx, operator, actors.at(`${addDays(plan.today, -1)}T08:40:00Z`), {
     id: random.id(),
     siteDay: addDays(plan.today, -1),
@@ -227,36 +159,8 @@ async function freezeAndAccept(
 }
 
 /** After the issue the laboratory revises one zinc result from below detection to 0.18 mg/L. */
-async function reviseZinc(
-  tx: Transaction,
-  actors: DemoActors,
-  ids: DemoIds,
-  plan: DemoPlan,
-  laboratoryId: string,
-  random: Random,
-  day: string,
-): Promise<void> {
-  const lab = actors.as('lab', ids.site);
-  const last = quarterMonths(plan.issuedQuarter)[2]!;
-  const zinc = (await listAnalytes(tx)).find((one) => one.code === 'zinc')!;
-  const live = (await listLiveResults(tx, ids.site, firstDay(last), lastDay(last))).filter(
-    (one) => one.analyteId === zinc.id,
-  );
-  const old = live.find((one) => one.comparator === '<') ?? live[0];
-  if (!old) return;
-  const { sequence: _sequence, ...copy } = old;
-  await insertResults(tx, [
-    {
-      ...copy,
-      id: random.id(),
-      recordedById: lab.personId,
-      recordedAt: `${day}T13:00:00Z`,
-      laboratoryId,
-      comparator: '=',
-      value: '0.18',
-      rawText: '0.18',
-      supersedesId: old.id,
-      reason: 'Revised by the laboratory',
-    },
-  ]);
+function reviseZinc(results: readonly DemoResult[]): DemoResult[] {
+  const zinc = results.filter((one) => one.analyte.startsWith('Zinc'));
+  const old = zinc.find((one) => one.text.startsWith('<')) ?? zinc[0];
+  return results.map((one) => (one === old ? { ...one, text: '0.18' } : one));
 }

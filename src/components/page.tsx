@@ -21,7 +21,7 @@ export function PageHead({ title, sentence, crumb }: PageHeadProps) {
   return (
     <div className="mb-6">
       <title>{`${title} – Tallyweir`}</title>
-      {crumb && <p className="text-sm text-muted">{crumb}</p>}
+      {crumb && <p className="text-sm text-muted mb-1">{crumb}</p>}
       <h1 ref={heading} tabIndex={-1}>
         {title}
       </h1>

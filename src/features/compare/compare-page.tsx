@@ -71,7 +71,7 @@ export function ComparePage() {
     });
   const view = query.data;
   return (
-    <>
+    <div className="print-wide">
       <PageHead
         title={view ? `Compare, ${view.cell.code} ${view.cell.name}` : 'Compare'}
         sentence={view && stateSentence(view)}
@@ -170,6 +170,6 @@ export function ComparePage() {
           </>
         )}
       </Viewed>
-    </>
+    </div>
   );
 }

@@ -27,7 +27,7 @@ export function LabSetup({ view }: { view: LabView }) {
   const savePoint = useWrite<SamplePointInput>(site.id, '/sample-points');
   const close = () => setOpen(null);
   return (
-    <div className="no-print">
+    <div className="no-print mt-8">
       <Section title="Laboratories and sample points">
         <div className="sheet pad grid gap-3">
           <p>

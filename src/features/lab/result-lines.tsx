@@ -80,8 +80,7 @@ export function ResultTable({ results, checkPath }: ResultTableProps) {
         <thead>
           <tr>
             <th scope="col">Sampled</th>
-            <th scope="col">Point</th>
-            <th scope="col">Parameter</th>
+            <th scope="col">Parameter, point</th>
             <th scope="col" className="r">
               Result
             </th>
@@ -96,19 +95,19 @@ export function ResultTable({ results, checkPath }: ResultTableProps) {
               <th scope="row" className="whitespace-nowrap">
                 {dayNameShort(one.siteDay)} {one.siteDay.slice(0, 4)}
               </th>
-              <td>{one.pointCode}</td>
               <td>
                 {one.analyteName}
                 {one.fraction && <span className="hint"> {one.fraction}</span>}
+                <span className="hint block">{one.pointCode}</span>
                 {one.isRevision && <span className="hint block">revised by the laboratory</span>}
               </td>
               <td className="r font-medium">{formatResult(one)}</td>
               <td>{one.value === null ? '' : one.unit}</td>
-              <td className="text-muted">
+              <td className="text-muted whitespace-nowrap">
                 {one.rawText} {one.rawUnit}
                 {one.qualifier ? ` ${one.qualifier}` : ''}
               </td>
-              <td>
+              <td className="whitespace-nowrap">
                 {one.importId ? (
                   <Link to={`${checkPath}/${one.importId}`}>
                     {one.sheet ? `${one.sheet}, ${one.cell}` : 'upload'}

@@ -46,8 +46,7 @@ function FlowsTable({ view }: { view: LedgerView }) {
         <caption className="sr-only">Volumes from place to place in {monthName(view.month)}, m³</caption>
         <thead>
           <tr>
-            <th scope="col">From</th>
-            <th scope="col">To</th>
+            <th scope="col">From, to</th>
             <th scope="col" className="r">
               Volume, m³
             </th>
@@ -57,8 +56,9 @@ function FlowsTable({ view }: { view: LedgerView }) {
         <tbody>
           {view.flows.map((flow) => (
             <tr key={flow.fromPlaceId + flow.toPlaceId}>
-              <th scope="row">{flow.from}</th>
-              <td>{flow.to}</td>
+              <th scope="row">
+                {flow.from} → {flow.to}
+              </th>
               <td className="r">{formatM3(flow.volumeM3)}</td>
               <td className="text-sm">
                 {Object.entries(flow.bases).map(([basis, volume]) => (
@@ -105,8 +105,7 @@ function Entries({ view, onOpen }: { view: LedgerView; onOpen: (id: string) => v
           <thead>
             <tr>
               <th scope="col">Day</th>
-              <th scope="col">From</th>
-              <th scope="col">To</th>
+              <th scope="col">From, to</th>
               <th scope="col" className="r">
                 Volume, m³
               </th>
@@ -121,8 +120,9 @@ function Entries({ view, onOpen }: { view: LedgerView; onOpen: (id: string) => v
                 <th scope="row" className="whitespace-nowrap">
                   {dayNameShort(entry.siteDay)}
                 </th>
-                <td>{entry.from}</td>
-                <td>{entry.to}</td>
+                <td className="min-w-[11em]!">
+                  {entry.from} → {entry.to}
+                </td>
                 <td className="r">
                   <button
                     type="button"

@@ -137,7 +137,7 @@ export function ValueTable({ values }: { values: readonly ComputedValue[] }) {
               <td className="r font-medium">{formatNumber(one.computed, 2)}</td>
               <td className="r text-muted">{formatSigned(one.computed - one.printed, 2)}</td>
               <td>{one.unit}</td>
-              <td className="text-sm text-muted">
+              <td className="text-sm text-muted min-w-[24em]!">
                 {one.source}
                 {one.isFromMemory ? ' (from memory)' : ''}
               </td>

@@ -1,6 +1,6 @@
 import { useId, useState } from 'react';
 import { Link, useParams } from 'react-router';
-import { addDays, dayName, weekday } from '#shared/calendar/day.ts';
+import { addDays, dayName, dayNameShort, weekday } from '#shared/calendar/day.ts';
 import { notReadReasonNames } from '#shared/schemas/readings.ts';
 import type { RoundPointView, RoundView } from '#shared/views/round-view.ts';
 import { usePlace } from '../../app/place.ts';
@@ -15,23 +15,38 @@ import { NotRead, SaveLine } from './point-parts.tsx';
 import { useOutbox } from './use-outbox.ts';
 import { useSave } from './use-save.ts';
 
-const stateOf = (point: RoundPointView) =>
+/** Day a point that is not read daily is due again; null when it is due every day or was never read. */
+const dueOn = (point: RoundPointView) =>
+  point.everyDays > 1 && point.last ? addDays(point.last.at.slice(0, 10), point.everyDays) : null;
+
+const stateOf = (point: RoundPointView, day: string) =>
   point.done.some((one) => one.state !== 'stored')
     ? 'ask'
     : point.done.length
       ? 'done'
       : point.notRead
         ? 'skipped'
-        : 'open';
+        : (dueOn(point) ?? day) > day
+          ? 'later'
+          : 'open';
 
 const circle = {
   ask: 'bg-warn-bg border-warn text-warn',
   done: 'bg-done-bg border-done text-done',
   skipped: 'border-dashed border-edge text-muted',
+  later: 'border-dashed border-line text-muted',
   open: 'border-edge',
 };
 
-function PointValue({ point, kept }: { point: RoundPointView; kept: string | null }) {
+function PointValue({
+  point,
+  state,
+  kept,
+}: {
+  point: RoundPointView;
+  state: ReturnType<typeof stateOf>;
+  kept: string | null;
+}) {
   if (kept)
     return (
       <span className="text-right leading-tight">
@@ -62,7 +77,7 @@ function PointValue({ point, kept }: { point: RoundPointView; kept: string | nul
         Not read: {notReadReasonNames[point.notRead.reasonCode as 'frozen']?.toLowerCase()}
       </span>
     );
-  return <span className="hint">open</span>;
+  return <span className="hint">{state === 'later' ? `due ${dayNameShort(dueOn(point)!)}` : 'open'}</span>;
 }
 
 function PointRow({
@@ -83,7 +98,7 @@ function PointRow({
 }) {
   const [isSkipping, setIsSkipping] = useState(false);
   const { can } = usePlace();
-  const state = stateOf(point);
+  const state = stateOf(point, round.day);
   const panelId = useId();
   const parts = { point, round, isToday: round.day === round.today, onDone };
   return (
@@ -112,7 +127,7 @@ function PointRow({
             {point.everyDays > 1 ? `, every ${point.everyDays} days` : ''}
           </span>
         </span>
-        <PointValue point={point} kept={kept} />
+        <PointValue point={point} state={state} kept={kept} />
       </button>
       {isOpen && (
         <div id={panelId} className="px-3 pb-4 md:pl-[60px] md:pr-4 grid gap-4">
@@ -224,12 +239,13 @@ export function RoundPage() {
     return String(item.body.registerText ?? item.body.levelText ?? item.body.depthText ?? 'not read');
   };
   const count = (state: ReturnType<typeof stateOf>) =>
-    round?.points.filter((point) => stateOf(point) === state).length ?? 0;
+    round?.points.filter((point) => stateOf(point, day) === state).length ?? 0;
   const sentence =
     round &&
-    `${count('done')} of ${round.points.length} points read${count('ask') ? `, ${count('ask')} open ${count('ask') === 1 ? 'question' : 'questions'}` : ''}${count('skipped') ? `, ${count('skipped')} not read` : ''}.`;
+    `${count('done')} of ${round.points.length - count('later')} points read${count('ask') ? `, ${count('ask')} open ${count('ask') === 1 ? 'question' : 'questions'}` : ''}${count('skipped') ? `, ${count('skipped')} not read` : ''}${count('later') ? `, ${count('later')} not due` : ''}.`;
   const next = (view: RoundView, after: RoundPointView) =>
-    view.points.find((point) => point.position > after.position && stateOf(point) === 'open')?.id ?? null;
+    view.points.find((point) => point.position > after.position && stateOf(point, day) === 'open')?.id ??
+    null;
   const dayLink = (target: string, label: string) => (
     <Link to={`/sites/${site.slug}/round/${target}`} className="btn btn-second">
       {label}
