@@ -1,5 +1,5 @@
 import { addDays, firstDay, lastDay, monthOfDay } from '#shared/calendar/day.ts';
-import { addMonths, monthRange, quarterMonths, type Month } from '#shared/calendar/month.ts';
+import { addMonths, monthRange, quarterMonths } from '#shared/calendar/month.ts';
 import type { Transaction } from '../db/transaction.ts';
 import { freezeRun, acceptRun } from '../features/balance/run-service.ts';
 import { closeMonth, reopenMonth } from '../features/closings/closing-service.ts';
@@ -16,7 +16,7 @@ import type { DemoIds } from './demo-site.ts';
 import type { DemoActors } from './demo-actors.ts';
 import type { Random } from './random.ts';
 
-/** A month's sheet as the laboratory sends it, by the same way as any other: kept, read, staged, written. */
+/** A month's sheet as the laboratory sends it, by the same way as every other: kept, read, staged, written. */
 async function sendSheet(
   tx: Transaction,
   lab: Context,
