@@ -9,7 +9,24 @@ export interface ClimateValues {
   tMaxC: number | null;
   tMeanC: number | null;
   petMm: number | null;
+  panMm: number | null;
+  windMPerS: number | null;
+  relativeHumidityPercent: number | null;
+  sunshineHours: number | null;
 }
+
+/** A day or month of which nothing is known. */
+export const noClimate: ClimateValues = {
+  precipitationMm: null,
+  tMinC: null,
+  tMaxC: null,
+  tMeanC: null,
+  petMm: null,
+  panMm: null,
+  windMPerS: null,
+  relativeHumidityPercent: null,
+  sunshineHours: null,
+};
 
 export interface MonthSummary extends MonthClimate {
   /** Days of the month with precipitation, with temperature, and days in the month. */
@@ -33,20 +50,36 @@ export const dayMeanC = (day: ClimateValues): number | null =>
  * @param byDay values by day; days without a row are missing
  */
 export function summariseMonth(month: Month, byDay: ReadonlyMap<Day, ClimateValues>): MonthSummary {
-  const days = monthDays(month).map((day) => byDay.get(day) ?? null);
-  const rain = days.map((day) => day?.precipitationMm ?? null);
-  const rainDays = present(rain);
-  const means = present(days.map((day) => (day ? dayMeanC(day) : null)));
-  const pet = present(days.map((day) => day?.petMm ?? null));
+  const days = monthDays(month).map((day) => byDay.get(day) ?? noClimate);
   const dayCount = daysInMonth(month);
+  const of = (field: keyof ClimateValues) => present(days.map((day) => day[field]));
+  /** Every day of a field, or null when one is missing. */
+  const whole = (values: number[]) => (values.length === dayCount ? values : null);
+  const sumOf = (field: keyof ClimateValues) =>
+    whole(of(field))?.reduce((sum, value) => sum + value, 0) ?? null;
+  const meanOf = (field: keyof ClimateValues) => mean(whole(of(field)) ?? []);
+  const rainDays = of('precipitationMm');
+  const means = present(days.map(dayMeanC));
   return {
     month,
     precipitationMm: rainDays.reduce((sum, value) => sum + value, 0),
     tMeanC: mean(means),
-    tMinC: mean(present(days.map((day) => day?.tMinC ?? null))),
-    tMaxC: mean(present(days.map((day) => day?.tMaxC ?? null))),
-    petMm: pet.length === dayCount ? pet.reduce((sum, value) => sum + value, 0) : null,
-    dailyPrecipitationMm: rainDays.length === dayCount ? rainDays : null,
+    tMinC: mean(of('tMinC')),
+    tMaxC: mean(of('tMaxC')),
+    petMm: sumOf('petMm'),
+    panMm: sumOf('panMm'),
+    windMPerS: meanOf('windMPerS'),
+    relativeHumidityPercent: meanOf('relativeHumidityPercent'),
+    sunshineHours: meanOf('sunshineHours'),
+    days: whole(rainDays) && {
+      precipitationMm: rainDays,
+      tMinC: whole(of('tMinC')),
+      tMaxC: whole(of('tMaxC')),
+      tMeanC: whole(means),
+      windMPerS: whole(of('windMPerS')),
+      relativeHumidityPercent: whole(of('relativeHumidityPercent')),
+      sunshineHours: whole(of('sunshineHours')),
+    },
     rainDayCount: rainDays.length,
     temperatureDayCount: means.length,
     dayCount,
@@ -60,13 +93,11 @@ export function monthFromRecord(month: Month, values: ClimateValues): MonthSumma
   const dayCount = daysInMonth(month);
   const hasRain = values.precipitationMm !== null;
   return {
+    ...values,
     month,
     precipitationMm: values.precipitationMm ?? 0,
     tMeanC,
-    tMinC: values.tMinC,
-    tMaxC: values.tMaxC,
-    petMm: values.petMm,
-    dailyPrecipitationMm: null,
+    days: null,
     rainDayCount: hasRain ? dayCount : 0,
     temperatureDayCount: tMeanC !== null ? dayCount : 0,
     dayCount,
@@ -92,11 +123,10 @@ export function settleGap(
     return {
       ...summary,
       precipitationMm: (summary.precipitationMm * summary.dayCount) / summary.rainDayCount,
-      dailyPrecipitationMm: null,
+      days: null,
     };
   }
   if (choice === 'other-station') return other?.isComplete ? other : null;
-  if (choice === 'station-normal')
-    return normal && { ...normal, month: summary.month, dailyPrecipitationMm: null };
+  if (choice === 'station-normal') return normal && { ...normal, month: summary.month, days: null };
   return null;
 }

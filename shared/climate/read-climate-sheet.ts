@@ -5,7 +5,17 @@ import { parseNumber } from '../ledger/parse-number.ts';
 import { cellText, columnLetter, type Sheet, type SheetCell } from '../sheets/sheet.ts';
 import { depthUnitsMm, fahrenheitToCelsius, type DepthUnit } from '../units/unit-factors.ts';
 
-export const climateFields = ['precipitationMm', 'tMinC', 'tMaxC', 'tMeanC', 'petMm'] as const;
+export const climateFields = [
+  'precipitationMm',
+  'tMinC',
+  'tMaxC',
+  'tMeanC',
+  'petMm',
+  'panMm',
+  'windMPerS',
+  'relativeHumidityPercent',
+  'sunshineHours',
+] as const;
 export type ClimateField = (typeof climateFields)[number];
 export const climateFieldNames: Record<ClimateField, string> = {
   precipitationMm: 'precipitation',
@@ -13,9 +23,44 @@ export const climateFieldNames: Record<ClimateField, string> = {
   tMaxC: 'maximum temperature',
   tMeanC: 'mean temperature',
   petMm: 'potential evapotranspiration',
+  panMm: 'pan evaporation',
+  windMPerS: 'wind at 2 m',
+  relativeHumidityPercent: 'relative humidity',
+  sunshineHours: 'bright sunshine a day',
 };
 
-export type ClimateUnit = DepthUnit | 'C' | 'F';
+export type ClimateUnit = DepthUnit | 'C' | 'F' | 'm/s' | 'km/h' | 'mph' | '%' | 'h';
+
+const depthChoices: readonly ClimateUnit[] = ['mm', 'cm', 'in', 'mm-tenths', 'in-hundredths'];
+const temperatureChoices: readonly ClimateUnit[] = ['C', 'F'];
+
+/** Units a column of a field may be in; the first is what the record keeps. */
+export const climateUnitsOf: Record<ClimateField, readonly ClimateUnit[]> = {
+  precipitationMm: depthChoices,
+  tMinC: temperatureChoices,
+  tMaxC: temperatureChoices,
+  tMeanC: temperatureChoices,
+  petMm: depthChoices,
+  panMm: depthChoices,
+  windMPerS: ['m/s', 'km/h', 'mph'],
+  relativeHumidityPercent: ['%'],
+  sunshineHours: ['h'],
+};
+
+export const climateUnitNames: Record<ClimateUnit, string> = {
+  mm: 'mm',
+  cm: 'cm',
+  in: 'inches',
+  'mm-tenths': 'tenths of a mm',
+  'in-hundredths': 'hundredths of an inch',
+  C: '°C',
+  F: '°F',
+  'm/s': 'm/s',
+  'km/h': 'km/h',
+  mph: 'miles an hour',
+  '%': '%',
+  h: 'hours',
+};
 
 /** How a sheet is read: which column is what, in which unit. The person can change it before confirming. */
 export interface ClimateMapping {
@@ -41,13 +86,18 @@ const fieldPatterns: [ClimateField, RegExp][] = [
   ['tMaxC', /^(t|temp).{0,3}max|max.{0,6}temp/i],
   ['tMinC', /^(t|temp).{0,3}min|min.{0,6}temp/i],
   ['tMeanC', /^(t|temp).{0,3}(mean|avg|med)|mean.{0,6}temp|^temp(erature)?\b|^tavg/i],
+  ['panMm', /\bpan\b|^epan/i],
   ['petMm', /^(pet|eto?)\b|evapotransp/i],
+  ['windMPerS', /^(wind|u2|wspd)/i],
+  ['relativeHumidityPercent', /^(rh|rel.{0,10}hum|humidity)/i],
+  ['sunshineHours', /^(sun(shine)?)\b|bright sun/i],
   ['precipitationMm', /^(prcp|precip|rain|prec|ppt)/i],
 ];
 
 function unitOf(header: string, field: ClimateField): ClimateUnit {
-  const isTemperature = field.startsWith('t');
-  if (isTemperature) return /[_ (°]f\)?$/i.test(header) ? 'F' : 'C';
+  if (climateUnitsOf[field] === temperatureChoices) return /[_ (°]f\)?$/i.test(header) ? 'F' : 'C';
+  if (field === 'windMPerS') return /km/i.test(header) ? 'km/h' : /mph|mi/i.test(header) ? 'mph' : 'm/s';
+  if (climateUnitsOf[field] !== depthChoices) return climateUnitsOf[field][0]!;
   if (/[_ (,]in(ch(es)?)?\)?$/i.test(header)) return 'in';
   if (/[_ (,]cm\)?$/i.test(header)) return 'cm';
   return 'mm';
@@ -95,10 +145,12 @@ function whenOf(cells: (SheetCell | null)[], mapping: ClimateMapping): string {
 
 const missingMarks = new Set(['', '-', '--', 'NA', 'N/A', 'null', '-9999', '-99.9', 'M']);
 
-/** A value in millimetres or degrees Celsius as exact text. */
+/** A value in the unit the record keeps, as exact text. 1 mile an hour is 0.44704 m/s exactly. */
 function convert(value: string, unit: ClimateUnit): string {
-  if (unit === 'C') return new Decimal(value).toFixed();
+  if (unit === 'C' || unit === 'm/s' || unit === '%' || unit === 'h') return new Decimal(value).toFixed();
   if (unit === 'F') return fahrenheitToCelsius(value).toDecimalPlaces(3).toFixed();
+  if (unit === 'km/h') return new Decimal(value).div(3.6).toDecimalPlaces(3).toFixed();
+  if (unit === 'mph') return new Decimal(value).times(0.44704).toDecimalPlaces(3).toFixed();
   return new Decimal(value).times(depthUnitsMm[unit]).toDecimalPlaces(3).toFixed();
 }
 
@@ -124,6 +176,18 @@ function checkRow(row: ClimateRow, kind: ClimateMapping['kind']): void {
     const value = number(field);
     if (value !== null && (value > warmestC || value < -90))
       hold(`${value} °C is not a temperature on Earth. Check the unit: °F, or tenths?`);
+  }
+  const within: [ClimateField, number, string][] = [
+    ['petMm', kind === 'daily' ? 25 : 600, 'mm of potential evapotranspiration'],
+    ['panMm', kind === 'daily' ? 30 : 700, 'mm of pan evaporation'],
+    ['windMPerS', 60, 'm/s of wind'],
+    ['relativeHumidityPercent', 100, '% of relative humidity'],
+    ['sunshineHours', 24, 'hours of sunshine a day'],
+  ];
+  for (const [field, max, words] of within) {
+    const value = number(field);
+    if (value !== null && (value < 0 || value > max))
+      hold(`${value} ${words} is not possible for a ${kind === 'daily' ? 'day' : 'month'}. Check the unit.`);
   }
 }
 

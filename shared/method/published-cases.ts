@@ -4,9 +4,8 @@ import {
   thornthwaiteMm,
   thornthwaiteUnadjustedMm,
 } from '../water-balance/thornthwaite.ts';
-import { hargreavesMmPerDay } from '../water-balance/hargreaves.ts';
 import type { SoilLaw } from '../water-balance/soil-store.ts';
-import { declinationRad, daylightHours, extraterrestrialRadiation } from '../water-balance/solar-geometry.ts';
+import { daylightHours } from '../water-balance/solar-geometry.ts';
 import { tryBalance, type TryBalanceMonth } from '../water-balance/try-balance.ts';
 
 /** A published case as it is kept in `data/published`. */
@@ -271,66 +270,4 @@ export function computePublishedCases(cases: readonly PublishedCase[]): Computed
     ...plans.map((plan) => computeBalanceCase(find(plan.id), plan)),
     computeRichmondHill(find('step-richmond-hill-pet')),
   ];
-}
-
-interface SingleCase {
-  id: string;
-  title: string;
-  source: string;
-  locator: string;
-  read_or_memory: string;
-  inputs: Record<string, { value: unknown; unit: string }>;
-  expected: Record<string, { value: number; unit: string; tol: number }>;
-}
-
-export interface ComputedValue {
-  id: string;
-  title: string;
-  what: string;
-  unit: string;
-  source: string;
-  isFromMemory: boolean;
-  printed: number;
-  computed: number;
-  tolerance: number;
-}
-
-/** Single published values of sun and evapotranspiration, each beside what is computed here. */
-export function computePublishedValues(cases: readonly SingleCase[]): ComputedValue[] {
-  const rows: [string, string, string, (input: (name: string) => number) => number][] = [
-    [
-      'fao56-ex08',
-      'Ra',
-      'Extraterrestrial radiation',
-      (input) => extraterrestrialRadiation(input('latitude'), input('J')),
-    ],
-    ['fao56-ex09', 'N', 'Daylight', (input) => daylightHours(input('latitude'), declinationRad(input('J')))],
-    [
-      'fao56-ex20-hargreaves',
-      'ETo',
-      'Reference evapotranspiration by Hargreaves',
-      (input) =>
-        hargreavesMmPerDay({
-          tMinC: input('Tmin'),
-          tMaxC: input('Tmax'),
-          radiationMjPerM2Day: extraterrestrialRadiation(input('latitude'), input('J')),
-        }),
-    ],
-  ];
-  return rows.map(([id, key, what, compute]) => {
-    const found = cases.find((one) => one.id === id);
-    const expected = found?.expected[key];
-    if (!found || !expected) throw new RangeError(`The published value ${id} ${key} is missing.`);
-    return {
-      id,
-      title: found.title,
-      what,
-      unit: expected.unit,
-      source: `${found.source}, ${found.locator}`,
-      isFromMemory: found.read_or_memory.startsWith('memory'),
-      printed: expected.value,
-      tolerance: expected.tol,
-      computed: compute((name) => Number(found.inputs[name]?.value)),
-    };
-  });
 }

@@ -1,5 +1,6 @@
 import * as z from 'zod';
-import { petMethods } from '../water-balance/engine-input.ts';
+import { petMethods, runoffMethods } from '../water-balance/engine-input.ts';
+import { soilConductivityMaxMPerS } from '../water-balance/liner-leakage.ts';
 import { chosenId, optionalText, recordId, requiredText } from './text.ts';
 
 const share = (what: string, max = 1) =>
@@ -13,10 +14,37 @@ const degrees = (what: string, min: number, max: number) => {
   return z.coerce.number(sentence).min(min, sentence).max(max, sentence);
 };
 
+const within = (what: string, unit: string, min: number, max: number) => {
+  const sentence = `${what} must be from ${min} to ${max} ${unit}.`;
+  return z.coerce.number(sentence).min(min, sentence).max(max, sentence);
+};
+
+/** A membrane with its defects, the soil under it and the drain over it. */
+export const defectLeakage = z.object({
+  defectsPerHa: within('The count of defects', 'a hectare', 0, 1000),
+  defectAreaM2: within('The area of a defect', 'm²', 2e-7, 5e-4),
+  contact: z.enum(['good', 'poor'], { error: 'Choose the contact.' }),
+  soilThicknessM: within('The thickness of the soil', 'm', 0.005, 10),
+  soilConductivityMPerS: z.coerce
+    .number('Enter the conductivity in m/s, like 1e-9.')
+    .gt(0, 'The conductivity must be above 0.')
+    .max(
+      soilConductivityMaxMPerS,
+      'The formula holds for soil below 1e-6 m/s. On more permeable soil enter a share instead.',
+    ),
+  drainLengthM: within('The length of the drain', 'm', 0.5, 500),
+  slope: within('The slope', '(rise over run)', 0.001, 1.5),
+  drainConductivityMPerS: within('The conductivity of the drain', 'm/s', 1e-7, 10),
+});
+
 /** Parameters of the model as they are stored, form and wire. */
 export const balanceParameters = z.object({
   petMethod: z.enum(petMethods),
   hotMonths: z.enum(['table', 'power']),
+  panCoefficient: within('The pan coefficient', '', 0.2, 1.2),
+  windMPerS: within('The wind', 'm/s', 0.5, 15),
+  radiationCoefficient: within('The radiation coefficient', '', 0.1, 0.25),
+  runoffMethod: z.enum(runoffMethods),
   soilLaw: z.enum(['exponential', 'equal-availability', 'linear']),
   wetMonths: z.array(z.number().int().min(1).max(12)),
   runoffFactor: share('The runoff factor', 3),
@@ -27,6 +55,7 @@ export const balanceParameters = z.object({
       tSnowC: degrees('The snow temperature', -30, 5),
       tRainC: degrees('The rain temperature', -5, 10),
       meltMaxFraction: share('The largest melt share'),
+      meltMmPerCDay: within('The melt of a day', 'mm/°C', 0.5, 10),
     })
     .refine((snow) => snow.tRainC > snow.tSnowC, {
       path: ['tRainC'],
@@ -36,7 +65,9 @@ export const balanceParameters = z.object({
   tFrostC: degrees('The frost temperature', -20, 5),
   recessionPerMonth: share('The recession constant', 5),
   channelledFraction: share('The channelled share'),
+  leakMethod: z.enum(['fraction', 'defects']),
   leakFraction: share('The leak share'),
+  liner: defectLeakage,
   isSpunUp: z.boolean(),
   percentFloorMm: share('The floor for percent', 100),
 });

@@ -1,5 +1,5 @@
 import * as z from 'zod';
-import { climateFields } from '../climate/read-climate-sheet.ts';
+import { climateFields, climateUnitNames, type ClimateUnit } from '../climate/read-climate-sheet.ts';
 import { monthText } from './days.ts';
 import { optionalId, recordId, requiredText } from './text.ts';
 
@@ -17,7 +17,7 @@ export const climateMappingInput = z.object({
       z.object({
         field: z.enum(climateFields),
         column: z.number().int().min(0).max(199),
-        unit: z.enum(['mm', 'cm', 'in', 'mm-tenths', 'in-hundredths', 'C', 'F']),
+        unit: z.enum(Object.keys(climateUnitNames) as [ClimateUnit, ...ClimateUnit[]]),
       }),
     )
     .min(1, 'Choose at least one column to read.'),

@@ -2,6 +2,7 @@ import * as z from 'zod';
 import { isTimeZone } from '../calendar/site-days.ts';
 import { volumeUnits } from '../units/unit-factors.ts';
 import { coverKinds } from '../water-balance/cover-types.ts';
+import { defectLeakage } from './balance.ts';
 import { dayText, monthText, optionalDay } from './days.ts';
 import { optionalNumber, typedNumber, wholeNumber } from './numbers.ts';
 import { chosenId, optionalId, optionalText, recordId, requiredText } from './text.ts';
@@ -110,6 +111,8 @@ export const coverTypeInput = z.object({
   ),
   runoffCoefficientWet: fractionOf('the runoff share in the wet season'),
   runoffCoefficientDry: fractionOf('the runoff share in the dry season'),
+  membraneDefects: defectLeakage.nullable().default(null),
+  curveNumber: optionalNumber({ what: 'the curve number', unit: '', min: 30, max: 100, decimals: 2 }),
   runoffDestination: z.enum(['storm-water', 'leachate'], { error: 'Choose where the runoff goes.' }),
   petFactor: typedNumber({ what: 'the evapotranspiration factor', unit: '', min: 0, max: 1.5 }),
   source: requiredText('the source of these values'),

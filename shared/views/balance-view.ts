@@ -72,6 +72,8 @@ export interface WorkingView {
   lines: WorkingLine[];
   law: string;
   petMethod: string;
+  /** What the run says about this month. */
+  warnings: string[];
   parameterSet: { name: string; version: number; isConfirmed: boolean };
   run: { kind: string; number: number | null; computedAt: string; engineVersion: string };
 }
@@ -80,7 +82,7 @@ export interface ParameterSetView {
   id: string;
   name: string;
   version: number;
-  values: unknown;
+  values: BalanceParameters;
   createdAt: string;
   confirmedAt: string | null;
   isCurrent: boolean;

@@ -40,6 +40,8 @@ export interface SiteStructureView {
     name: string;
     availableWaterMm: string;
     membranePassFraction: string | null;
+    membraneDefects: { defectsPerHa: number } | null;
+    curveNumber: string | null;
     runoffCoefficientWet: string;
     runoffCoefficientDry: string;
     runoffDestination: 'storm-water' | 'leachate';

@@ -122,3 +122,15 @@ export const coverTypeTemplates: readonly CoverTypeTemplate[] = [
     source: `1.2 m of clay loam, 250 mm/m; ${soilSource}; ${runoffSource}`,
   },
 ];
+
+/**
+ * Share of rain and melt that runs off, by soil, slope and season (dry to wet).
+ * @source Fenn, Hanley & DeGeare 1975, US EPA/530/SW-168, Table 3, after Chow and Salvato (from memory)
+ */
+export const runoffShareTable = {
+  slopes: ['to 2 %', '2 to 7 %', 'above 7 %'],
+  rows: [
+    { soil: 'sandy', shares: ['0.05–0.10', '0.10–0.15', '0.15–0.20'] },
+    { soil: 'heavy', shares: ['0.13–0.17', '0.18–0.22', '0.25–0.35'] },
+  ],
+} as const;

@@ -1,7 +1,14 @@
-import { dayOfYear, monthDays } from '../calendar/day.ts';
-import { monthName, daysInMonth, monthParts, type Month } from '../calendar/month.ts';
+import { addDays, dayOfYear, firstDay, monthDays } from '../calendar/day.ts';
+import { daysInMonth, monthName, monthParts, type Month } from '../calendar/month.ts';
 import type { BalanceParameters, MonthClimate } from './engine-input.ts';
 import { hargreavesMmPerDay } from './hargreaves.ts';
+import {
+  monthlySoilHeatFlux,
+  monthlySoilHeatFluxSoFar,
+  penmanMonteith,
+  saturationPressureKPa,
+  type Substitution,
+} from './penman-monteith.ts';
 import { daylightHours, declinationRad, extraterrestrialRadiation } from './solar-geometry.ts';
 import { annualHeatIndex, thornthwaiteMm } from './thornthwaite.ts';
 
@@ -18,6 +25,12 @@ export function longTermMeansC(climate: readonly MonthClimate[]): number[] | nul
   return means;
 }
 
+/** Annual heat index of a record, or null when it does not cover the year. */
+export function recordHeatIndex(climate: readonly MonthClimate[]): number | null {
+  const means = longTermMeansC(climate);
+  return means && annualHeatIndex(means);
+}
+
 /** Mean extraterrestrial radiation over the days of a month, MJ/m²·d. */
 export function monthlyRadiation(latitudeDeg: number, month: Month): number {
   const days = monthDays(month);
@@ -29,55 +42,171 @@ export function monthlyRadiation(latitudeDeg: number, month: Month): number {
 /** Why a month has no PET, as a sentence. */
 export class PetMissing extends Error {}
 
-/**
- * Reference PET of a month, mm, by the method of the parameter set; the cover's factor comes later.
- * @param heatIndex annual heat index over the record, needed by Thornthwaite only
- * @throws PetMissing naming the month and what to bring
- */
-export function referencePetMm(
-  row: MonthClimate,
-  latitudeDeg: number,
-  parameters: Pick<BalanceParameters, 'petMethod' | 'hotMonths' | 'petFactor'>,
-  heatIndex: number | null,
-): number {
-  const dayCount = daysInMonth(row.month);
-  if (parameters.petMethod === 'given') {
-    if (row.petMm === null)
-      throw new PetMissing(`${monthName(row.month)} has no given PET. Upload it, or choose another method.`);
-    return row.petMm * parameters.petFactor;
-  }
-  if (parameters.petMethod === 'hargreaves') {
-    if (row.tMinC === null || row.tMaxC === null)
-      throw new PetMissing(
-        `${monthName(row.month)} has no minimum and maximum temperature, which Hargreaves–Samani needs.`,
-      );
-    const radiationMjPerM2Day = monthlyRadiation(latitudeDeg, row.month);
-    return (
-      hargreavesMmPerDay({ tMinC: row.tMinC, tMaxC: row.tMaxC, radiationMjPerM2Day }) *
-      dayCount *
-      parameters.petFactor
-    );
-  }
-  if (row.tMeanC === null)
-    throw new PetMissing(`${monthName(row.month)} has no mean temperature, which Thornthwaite needs.`);
-  if (heatIndex === null)
-    throw new PetMissing(
-      'Thornthwaite needs every month of the year at least once in the record for its heat index.',
-    );
-  const middle = declinationRad(dayOfYear(`${row.month}-15`));
-  return (
-    thornthwaiteMm({
-      tMeanC: row.tMeanC,
-      heatIndex,
-      daylightHours: daylightHours(latitudeDeg, middle),
-      dayCount,
-      hotMonths: parameters.hotMonths,
-    }) * parameters.petFactor
-  );
+/** Beyond this latitude the radiation formulas lose their hold in winter, degrees. Source: FAO-56 p. 48. */
+const radiationLatitudeDeg = 55;
+
+export interface MonthPet {
+  petMm: number;
+  /** PET of each day where the method runs on days; null where the month is the unit. */
+  days: number[] | null;
+  substitutions: Substitution[];
+  isOutsideRadiation: boolean;
 }
 
-/** Annual heat index of a record, or null when it does not cover the year. */
-export function recordHeatIndex(climate: readonly MonthClimate[]): number | null {
-  const means = longTermMeansC(climate);
-  return means && annualHeatIndex(means);
+export type PetSettings = Pick<
+  BalanceParameters,
+  'petMethod' | 'hotMonths' | 'panCoefficient' | 'windMPerS' | 'radiationCoefficient'
+>;
+
+interface PetSite {
+  latitudeDeg: number;
+  elevationM: number;
+  /** Annual heat index over the record, needed by Thornthwaite only. */
+  heatIndex: number | null;
+}
+
+const isWinter = (latitudeDeg: number, month: Month): boolean => {
+  const { monthOfYear } = monthParts(month);
+  return latitudeDeg >= 0 ? monthOfYear <= 2 || monthOfYear >= 11 : monthOfYear >= 5 && monthOfYear <= 8;
+};
+
+const temperatureRange = (row: MonthClimate, method: string) => {
+  if (row.tMinC === null || row.tMaxC === null)
+    throw new PetMissing(
+      `${monthName(row.month)} has no minimum and maximum temperature, which ${method} needs.`,
+    );
+  return { tMinC: row.tMinC, tMaxC: row.tMaxC };
+};
+
+function hargreavesMonth(row: MonthClimate, { latitudeDeg }: PetSite): Pick<MonthPet, 'petMm' | 'days'> {
+  const first = dayOfYear(firstDay(row.month));
+  const { tMinC, tMaxC } = row.days ?? {};
+  if (tMinC && tMaxC) {
+    const days = tMinC.map((low, index) =>
+      hargreavesMmPerDay({
+        tMinC: low,
+        tMaxC: tMaxC[index]!,
+        radiationMjPerM2Day: extraterrestrialRadiation(latitudeDeg, first + index),
+      }),
+    );
+    return { petMm: sum(days), days };
+  }
+  const range = temperatureRange(row, 'Hargreaves–Samani');
+  const radiationMjPerM2Day = monthlyRadiation(latitudeDeg, row.month);
+  return {
+    petMm: hargreavesMmPerDay({ ...range, radiationMjPerM2Day }) * daysInMonth(row.month),
+    days: null,
+  };
+}
+
+const sum = (values: readonly number[]) => values.reduce((total, value) => total + value, 0);
+
+const vapourPressureKPa = (tMinC: number, tMaxC: number, humidityPercent: number | null | undefined) =>
+  humidityPercent === null || humidityPercent === undefined
+    ? null
+    : (humidityPercent / 100) * ((saturationPressureKPa(tMinC) + saturationPressureKPa(tMaxC)) / 2);
+
+function penmanMonteithMonth(
+  row: MonthClimate,
+  { latitudeDeg, elevationM }: PetSite,
+  settings: PetSettings,
+  neighbours: { before: MonthClimate | undefined; after: MonthClimate | undefined },
+): Pick<MonthPet, 'petMm' | 'days' | 'substitutions'> {
+  const site = { latitudeDeg, elevationM, defaults: settings };
+  const first = dayOfYear(firstDay(row.month));
+  const { tMinC: lows, tMaxC: highs } = row.days ?? {};
+  if (lows && highs) {
+    const days = lows.map((tMinC, index) =>
+      penmanMonteith({
+        ...site,
+        dayOfYear: first + index,
+        tMinC,
+        tMaxC: highs[index]!,
+        vapourPressureKPa: vapourPressureKPa(
+          tMinC,
+          highs[index]!,
+          row.days?.relativeHumidityPercent?.[index],
+        ),
+        windMPerS: row.days?.windMPerS?.[index] ?? null,
+        sunshineHours: row.days?.sunshineHours?.[index] ?? null,
+        soilHeatFlux: 0,
+      }),
+    );
+    const depths = days.map((day) => day.mmPerDay);
+    return { petMm: sum(depths), days: depths, substitutions: days[0]!.substitutions };
+  }
+  const range = temperatureRange(row, 'Penman–Monteith');
+  const tBeforeC = neighbours.before?.tMeanC ?? null;
+  const tAfterC = neighbours.after?.tMeanC ?? null;
+  const soilHeatFlux =
+    tBeforeC === null || row.tMeanC === null
+      ? 0
+      : tAfterC === null
+        ? monthlySoilHeatFluxSoFar(tBeforeC, row.tMeanC)
+        : monthlySoilHeatFlux(tBeforeC, tAfterC);
+  const day = penmanMonteith({
+    ...site,
+    ...range,
+    dayOfYear: dayOfYear(addDays(firstDay(row.month), 14)),
+    vapourPressureKPa: vapourPressureKPa(range.tMinC, range.tMaxC, row.relativeHumidityPercent),
+    windMPerS: row.windMPerS,
+    sunshineHours: row.sunshineHours,
+    soilHeatFlux,
+  });
+  return { petMm: day.mmPerDay * daysInMonth(row.month), days: null, substitutions: day.substitutions };
+}
+
+/**
+ * Reference PET of a month, mm, by the method of the parameter set; the factors of set and cover come later.
+ * @throws PetMissing naming the month and what to bring
+ */
+export function referencePet(
+  row: MonthClimate,
+  site: PetSite,
+  settings: PetSettings,
+  neighbours: { before: MonthClimate | undefined; after: MonthClimate | undefined },
+): MonthPet {
+  const plain = { days: null, substitutions: [], isOutsideRadiation: false };
+  const usesRadiation = settings.petMethod === 'hargreaves' || settings.petMethod === 'penman-monteith';
+  const isOutsideRadiation =
+    usesRadiation &&
+    Math.abs(site.latitudeDeg) > radiationLatitudeDeg &&
+    isWinter(site.latitudeDeg, row.month);
+  switch (settings.petMethod) {
+    case 'given':
+      if (row.petMm === null)
+        throw new PetMissing(
+          `${monthName(row.month)} has no given PET. Upload it, or choose another method.`,
+        );
+      return { ...plain, petMm: row.petMm };
+    case 'pan':
+      if (row.panMm === null)
+        throw new PetMissing(
+          `${monthName(row.month)} has no pan evaporation. Upload it, or choose another method.`,
+        );
+      return { ...plain, petMm: row.panMm * settings.panCoefficient };
+    case 'hargreaves':
+      return { ...plain, ...hargreavesMonth(row, site), isOutsideRadiation };
+    case 'penman-monteith':
+      return { ...penmanMonteithMonth(row, site, settings, neighbours), isOutsideRadiation };
+    case 'thornthwaite': {
+      if (row.tMeanC === null)
+        throw new PetMissing(`${monthName(row.month)} has no mean temperature, which Thornthwaite needs.`);
+      if (site.heatIndex === null)
+        throw new PetMissing(
+          'Thornthwaite needs every month of the year at least once in the record for its heat index.',
+        );
+      const middle = declinationRad(dayOfYear(`${row.month}-15`));
+      return {
+        ...plain,
+        petMm: thornthwaiteMm({
+          tMeanC: row.tMeanC,
+          heatIndex: site.heatIndex,
+          daylightHours: daylightHours(site.latitudeDeg, middle),
+          dayCount: daysInMonth(row.month),
+          hotMonths: settings.hotMonths,
+        }),
+      };
+    }
+  }
 }

@@ -15,19 +15,18 @@ export interface SoilStep {
  * Equal availability: AET = PET until the store is empty. Linear: withdrawal (PET − I)·S₋/AWC.
  * AWC = 0: AET = min(I, PET), percolation = max(0, D); no exponential.
  *
- * @param input.infiltrationMm water entering the soil in the step, mm
- * @param input.isFrozen percolation 0, the excess runs off
+ * @param infiltrationMm water entering the soil in the step, mm
+ * @param isFrozen percolation 0, the excess runs off
  * @source method section 5
  */
-export function soilStep(input: {
-  storeBeforeMm: number;
-  infiltrationMm: number;
-  petMm: number;
-  capacityMm: number;
-  law: SoilLaw;
-  isFrozen: boolean;
-}): SoilStep {
-  const { storeBeforeMm, infiltrationMm, petMm, capacityMm, law, isFrozen } = input;
+export function soilStep(
+  storeBeforeMm: number,
+  infiltrationMm: number,
+  petMm: number,
+  capacityMm: number,
+  law: SoilLaw,
+  isFrozen: boolean,
+): SoilStep {
   const surplus = infiltrationMm - petMm;
   if (capacityMm === 0) {
     const drained = Math.max(0, surplus);
@@ -47,17 +46,22 @@ export function soilStep(input: {
       frozenExcessMm: isFrozen ? excess : 0,
     };
   }
-  const none = { percolationMm: 0, frozenExcessMm: 0 };
   if (law === 'exponential') {
     return {
       aetMm: infiltrationMm + storeBeforeMm * -Math.expm1(surplus / capacityMm),
       storeMm: storeBeforeMm * Math.exp(surplus / capacityMm),
-      ...none,
+      percolationMm: 0,
+      frozenExcessMm: 0,
     };
   }
   const withdrawn =
     law === 'equal-availability'
       ? Math.min(storeBeforeMm, -surplus)
       : Math.min(storeBeforeMm, (-surplus * storeBeforeMm) / capacityMm);
-  return { aetMm: infiltrationMm + withdrawn, storeMm: storeBeforeMm - withdrawn, ...none };
+  return {
+    aetMm: infiltrationMm + withdrawn,
+    storeMm: storeBeforeMm - withdrawn,
+    percolationMm: 0,
+    frozenExcessMm: 0,
+  };
 }

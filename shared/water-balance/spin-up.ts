@@ -26,7 +26,7 @@ export function spinUpSoilStore(
   for (let cycleCount = 1; cycleCount <= cyclesMax; cycleCount += 1) {
     const before = storeMm;
     for (const month of year)
-      storeMm = soilStep({ storeBeforeMm: storeMm, ...month, capacityMm, law }).storeMm;
+      storeMm = soilStep(storeMm, month.infiltrationMm, month.petMm, capacityMm, law, month.isFrozen).storeMm;
     if (Math.abs(storeMm - before) < repeatsWithinMm) return { storeMm, cycleCount };
   }
   throw new RangeError(

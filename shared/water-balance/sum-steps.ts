@@ -1,10 +1,6 @@
 import { daysInMonth } from '../calendar/month.ts';
 import type { StepResult } from './run-water-balance.ts';
-import { termRegister, type StepTerms, type TermName } from './terms.ts';
-
-/** Terms that are amounts at an instant, not flows of a step: they are not added over time. */
-const stateTerms = new Set<TermName>(['soilStoreMm', 'wasteStoreMm', 'wasteDeficitMm']);
-const termNames = Object.keys(termRegister) as TermName[];
+import { stateTerms, termNames, type StepTerms, type TermName } from './terms.ts';
 
 /** Volumes of a group of steps, m³, under the terms' own names. */
 export interface SummedTerms {
@@ -81,7 +77,8 @@ export interface HeadLine {
 export function headLine({ volumesM3: v }: SummedTerms): HeadLine {
   return {
     rainM3: v.precipitationMm,
-    otherInM3: v.surfaceReturnMm + v.returnToWasteMm + v.soilWaterBroughtMm + v.freeMoistureMm,
+    otherInM3:
+      v.surfaceReturnMm + v.returnToWasteMm + v.soilWaterBroughtMm + v.freeMoistureMm + v.condensateMm,
     runoffM3: v.runoffToStormMm + v.coverDrainMm,
     evapotranspirationM3: v.aetMm,
     intoStorageM3: v.dSnowMm + v.dSoilMm + v.dWasteMm + v.absorbedMm,

@@ -24,8 +24,11 @@ export interface StepTerms {
   wasteStoreMm: number;
   wasteDeficitMm: number;
   drainedMm: number;
+  condensateMm: number;
   collectedMm: number;
   leakedMm: number;
+  /** Head on the liner that the leakage rests on, mm: measured, else the computed maximum. */
+  headMm: number;
   /** Collected + runoff to leachate: what is expected at the sump. */
   leachateMm: number;
 }
@@ -91,7 +94,7 @@ export const termRegister: Record<TermName, { name: string; words: string; sourc
   },
   passedMm: {
     name: 'Through the membrane',
-    words: 'percolation × entered share (all of it without a membrane)',
+    words: 'percolation × entered share, or through defects by the head (all of it without a membrane)',
     source: 'method 6',
   },
   coverDrainMm: { name: 'Cover drain', words: 'percolation × (1 − entered share)', source: 'method 6' },
@@ -122,7 +125,38 @@ export const termRegister: Record<TermName, { name: string; words: string; sourc
     source: 'method 7',
   },
   drainedMm: { name: 'Drained', words: 'inflow × (1 − φ) + before × (1 − exp(−c·t))', source: 'method 7' },
-  collectedMm: { name: 'Collected', words: 'drained × (1 − leak share)', source: 'method 8' },
-  leakedMm: { name: 'Leaked', words: 'drained × leak share', source: 'method 8' },
+  collectedMm: { name: 'Collected', words: '(drained + condensate) × (1 − leak share)', source: 'method 8' },
+  leakedMm: {
+    name: 'Leaked',
+    words: '(drained + condensate) × leak share, or through defects by the head',
+    source: 'Giroud 1997 (from memory)',
+  },
+  condensateMm: {
+    name: 'Condensate to the drain',
+    words: 'volume ÷ area of the cell',
+    source: 'ledger',
+  },
+  headMm: {
+    name: 'Head on the liner',
+    words: 'measured mean of the month, else the largest depth by Giroud et al.',
+    source: 'Giroud et al. 2000 (from memory)',
+  },
   leachateMm: { name: 'Leachate at the sump', words: 'collected + runoff to leachate', source: 'method 1' },
 };
+
+export const termNames = Object.keys(termRegister) as TermName[];
+
+/** Terms that are amounts at an instant, not flows of a step: they are not added over time. */
+export const stateTerms: ReadonlySet<TermName> = new Set([
+  'soilStoreMm',
+  'wasteStoreMm',
+  'wasteDeficitMm',
+  'headMm',
+]);
+
+/** Every term at zero: what a step writes into. */
+export const zeroTerms = (): StepTerms =>
+  Object.fromEntries(termNames.map((name) => [name, 0])) as unknown as StepTerms;
+
+/** Stored terms; a term that an earlier engine did not have is zero. */
+export const asTerms = (stored: unknown): StepTerms => ({ ...zeroTerms(), ...(stored as StepTerms) });

@@ -43,7 +43,7 @@ export function tryBalance(input: TryBalanceInputs): {
       : { storeMm: Math.min(capacityMm, input.start), cycleCount: 0 };
   let before = spun.storeMm;
   const months = year.map((month, index): TryBalanceMonth => {
-    const step = soilStep({ storeBeforeMm: before, ...month, capacityMm, law: soilLaw });
+    const step = soilStep(before, month.infiltrationMm, month.petMm, capacityMm, soilLaw, month.isFrozen);
     const runoffMm = precipitationMm[index]! * runoffCoefficient[index]!;
     const dStoreMm = step.storeMm - before;
     before = step.storeMm;

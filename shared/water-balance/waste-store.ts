@@ -25,21 +25,16 @@ export interface ReservoirStep {
 /**
  * Linear reservoir over a step of constant inflow.
  * store = store₋·e^(−cΔt) + i·Δt·φ; drained = i·Δt·(1 − φ) + store₋·(1 − e^(−cΔt)); φ = (1 − e^(−cΔt))/(cΔt), 1 at c = 0.
- * @param input.recessionPerMonth c, 1/month @param input.durationMonths Δt @param input.inflowMm i·Δt, mm
+ * @param recessionPerMonth c, 1/month @param durationMonths Δt @param inflowMm i·Δt, mm
  * @source method section 7; Chow, Maidment & Mays 1988 (definition, from memory)
- * @example reservoirStep({ storeBeforeMm: 100, inflowMm: 0, recessionPerMonth: 0.5, durationMonths: 1 }).storeMm // 60.65
+ * @example reservoirStep(100, 0, 0.5, 1).storeMm // 60.65
  */
-export function reservoirStep({
-  storeBeforeMm,
-  inflowMm,
-  recessionPerMonth,
-  durationMonths,
-}: {
-  storeBeforeMm: number;
-  inflowMm: number;
-  recessionPerMonth: number;
-  durationMonths: number;
-}): ReservoirStep {
+export function reservoirStep(
+  storeBeforeMm: number,
+  inflowMm: number,
+  recessionPerMonth: number,
+  durationMonths: number,
+): ReservoirStep {
   const exponent = recessionPerMonth * durationMonths;
   const lost = -Math.expm1(-exponent);
   const kept = exponent === 0 ? 1 : lost / exponent;
@@ -48,3 +43,22 @@ export function reservoirStep({
     drainedMm: inflowMm * (1 - kept) + storeBeforeMm * lost,
   };
 }
+
+export interface WasteLayer {
+  depthM: number;
+  fieldCapacityFraction: number;
+  /** Water by volume as placed; 0 supposes dry waste. */
+  moistureFraction: number;
+}
+
+/**
+ * Years until soil and waste reach field capacity under a steady percolation: a check, not a promise.
+ * @param layers soil and waste from the top @param percolationMmPerYear what enters the top
+ * @returns Infinity where nothing percolates
+ * @source Vesilind et al., Environmental Engineering, worked example (from memory); method section 7
+ */
+export const yearsToFirstLeachate = (layers: readonly WasteLayer[], percolationMmPerYear: number): number =>
+  layers.reduce(
+    (sum, layer) => sum + layer.depthM * 1000 * (layer.fieldCapacityFraction - layer.moistureFraction),
+    0,
+  ) / percolationMmPerYear;

@@ -14,6 +14,8 @@ export const cover = (change: Partial<EngineCover> = {}): EngineCover => ({
   name: 'working area',
   availableWaterMm: 60,
   membranePassFraction: null,
+  membraneDefects: null,
+  curveNumber: null,
   runoffCoefficientWet: 0,
   runoffCoefficientDry: 0,
   runoffDestination: 'leachate',
@@ -42,6 +44,8 @@ export const cell = (change: Partial<EngineCell> = {}): EngineCell => ({
   plots: [plot()],
   placedDeficitM3: {},
   returns: [],
+  condensateM3: {},
+  measuredHeadM: {},
   ...change,
 });
 
@@ -52,7 +56,11 @@ export const climateMonth = (month: Month, change: Partial<MonthClimate> = {}): 
   tMinC: 8,
   tMaxC: 16,
   petMm: 40,
-  dailyPrecipitationMm: null,
+  panMm: null,
+  windMPerS: null,
+  relativeHumidityPercent: null,
+  sunshineHours: null,
+  days: null,
   ...change,
 });
 

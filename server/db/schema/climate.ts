@@ -26,6 +26,9 @@ const values = {
   tMeanC: exact('t_mean_c', 3),
   petMm: exact('pet_mm', 3),
   panMm: exact('pan_mm', 3),
+  windMPerS: exact('wind_m_per_s', 3),
+  relativeHumidityPercent: exact('relative_humidity_percent', 3),
+  sunshineHours: exact('sunshine_hours', 3),
 };
 
 /** One day of a station. A missing value is null; a trace is zero with its kind. */

@@ -1,14 +1,16 @@
 import { dayOfYear } from '#shared/calendar/day.ts';
-import { daysInMonth, type Month } from '#shared/calendar/month.ts';
+import { daysInMonth, monthName, type Month } from '#shared/calendar/month.ts';
 import { Problem } from '#shared/problems.ts';
 import { checkClosure } from '#shared/water-balance/check-closure.ts';
-import type { BalanceParameters, EngineInput } from '#shared/water-balance/engine-input.ts';
+import { isWetMonth, runoffShare } from '#shared/water-balance/compute-step.ts';
+import { recordPet } from '#shared/water-balance/month-forcing.ts';
+import { petMethodNames, soilLawNames } from '#shared/water-balance/method-names.ts';
+import { readStoredInput } from '#shared/water-balance/stored-input.ts';
 import { explainStep } from '#shared/water-balance/explain-step.ts';
 import { recordHeatIndex } from '#shared/water-balance/potential-evapotranspiration.ts';
-import { stepCover } from '#shared/water-balance/run-water-balance.ts';
 import { daylightHours, declinationRad } from '#shared/water-balance/solar-geometry.ts';
 import { headLine, sumSteps } from '#shared/water-balance/sum-steps.ts';
-import { termRegister, type StepTerms, type TermName } from '#shared/water-balance/terms.ts';
+import { asTerms, termRegister, type TermName } from '#shared/water-balance/terms.ts';
 import type { BalanceView, WorkingView } from '#shared/views/balance-view.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
@@ -18,7 +20,7 @@ import * as repository from './balance-repository.ts';
 import { currentParameters, workingRun } from './run-service.ts';
 
 type StepRow = Awaited<ReturnType<typeof repository.listSteps>>[number];
-const asStep = (row: StepRow) => ({ ...row, terms: row.terms as StepTerms });
+const asStep = (row: StepRow) => ({ ...row, terms: asTerms(row.terms) });
 
 /** Largest residual of each line over a group of steps, in mm, against its tolerance. */
 function closureOf(steps: readonly ReturnType<typeof asStep>[]) {
@@ -110,15 +112,6 @@ export async function readBalance(
   };
 }
 
-/** What the PET of a month rests on by the method in force. */
-function petOf(input: EngineInput, month: Month, { petMethod }: BalanceParameters) {
-  return {
-    tMeanC: petMethod === 'given' ? null : (input.climate.find((row) => row.month === month)?.tMeanC ?? null),
-    heatIndex: petMethod === 'thornthwaite' ? recordHeatIndex(input.climate) : null,
-    daylightHours: daylightHours(input.latitudeDeg, declinationRad(dayOfYear(`${month}-15`))),
-  };
-}
-
 /** The working of one number: a term of one plot and step. */
 export async function readWorking(
   tx: Transaction,
@@ -139,10 +132,13 @@ export async function readWorking(
     const sets = await repository.listParameterSets(tx, siteId);
     const set =
       sets.find((one) => one.id === run.parameterSetId) ?? (await currentParameters(tx, context, deps));
-    const parameters = set.values as BalanceParameters;
-    const cover = working.input.covers[step.coverTypeId];
-    const frozenInput = (await repository.findRun(tx, siteId, run.id))?.input;
-    if (!cover) throw new Problem('not-found', 'The cover of this step is no longer part of the site.');
+    const stored = (await repository.findRun(tx, siteId, run.id))?.input;
+    const input = stored ? readStoredInput(stored) : working.input;
+    const { parameters } = input;
+    const cover = input.covers[step.coverTypeId];
+    const index = input.climate.findIndex((row) => row.month === step.month);
+    if (!cover || index < 0)
+      throw new Problem('not-found', 'What this step was computed from is no longer part of the record.');
     return {
       title: termRegister[term as TermName].name,
       plotName: record.plots.find((plot) => plot.id === step.plotId)?.name ?? '',
@@ -156,26 +152,16 @@ export async function readWorking(
         dayCount: step.dayCount,
         daysInMonth: daysInMonth(step.month),
         cover,
-        runoffCoefficient: stepCover(cover, step.month, parameters).runoffCoefficient,
-        recessionPerMonth: parameters.recessionPerMonth,
-        channelledFraction: parameters.channelledFraction,
-        leakFraction: parameters.leakFraction,
-        pet: petOf(
-          frozenInput ? (JSON.parse(frozenInput) as EngineInput) : working.input,
-          step.month,
-          parameters,
-        ),
+        runoffCoefficient: runoffShare(cover, isWetMonth(step.month, parameters), parameters.runoffFactor),
+        parameters,
+        climate: input.climate[index]!,
+        pet: recordPet(input)[index]!,
+        heatIndex: recordHeatIndex(input.climate),
+        daylightHours: daylightHours(input.latitudeDeg, declinationRad(dayOfYear(`${step.month}-15`))),
       }),
-      law: {
-        exponential: 'Exponential soil drying, Thornthwaite and Mather 1957',
-        'equal-availability': 'Equal availability',
-        linear: 'Linear withdrawal',
-      }[parameters.soilLaw],
-      petMethod: {
-        thornthwaite: 'Thornthwaite 1948',
-        hargreaves: 'Hargreaves–Samani 1985, FAO-56 eq. 52',
-        given: 'given values',
-      }[parameters.petMethod],
+      law: soilLawNames[parameters.soilLaw],
+      petMethod: petMethodNames[parameters.petMethod],
+      warnings: (run.warnings as string[]).filter((sentence) => sentence.includes(monthName(step.month))),
       parameterSet: { name: set.name, version: set.version, isConfirmed: set.confirmedAt !== null },
       run: {
         kind: run.kind,

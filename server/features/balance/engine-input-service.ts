@@ -1,17 +1,55 @@
 import { dayName, monthOfDay } from '#shared/calendar/day.ts';
 import { monthName, type Month } from '#shared/calendar/month.ts';
 import { Problem } from '#shared/problems.ts';
+import { headOnLinerM } from '#shared/ledger/leak-detection.ts';
 import { placedWasteDeficitM3 } from '#shared/water-balance/waste-store.ts';
-import type { CoverKind } from '#shared/water-balance/cover-types.ts';
 import type { BalanceParameters, EngineCell, EngineInput } from '#shared/water-balance/engine-input.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import { listSiteClimate, type SiteMonthClimate } from '../climate/climate-service.ts';
-import { listReturns } from '../ledger/entry-repository.ts';
+import { listCondensate, listReturns, listSumpLevels } from '../ledger/entry-repository.ts';
 import type { SiteRecord } from '../sites/site-service.ts';
+import { engineCover } from './engine-cover.ts';
+
+interface SumpReadings {
+  condensate: Awaited<ReturnType<typeof listCondensate>>;
+  levels: Awaited<ReturnType<typeof listSumpLevels>>;
+}
 
 const number = (text: string | null) => (text === null ? null : Number(text));
 
-function engineCells(record: SiteRecord, returns: Awaited<ReturnType<typeof listReturns>>): EngineCell[] {
+/** Volumes of condensate and mean heads of a cell by month, from what its primary sumps were read at. */
+function sumpMonths(record: SiteRecord, cellId: string, readings: SumpReadings) {
+  const sumps = record.sumps.filter((sump) => sump.cellId === cellId && sump.kind === 'primary');
+  const condensateM3: Record<Month, number> = {};
+  for (const row of readings.condensate)
+    if (row.kind === 'condensate' && sumps.some((sump) => sump.id === row.sumpId))
+      condensateM3[row.month] = (condensateM3[row.month] ?? 0) + Number(row.volumeM3);
+  const heads = new Map<Month, number[]>();
+  for (const row of readings.levels) {
+    const sump = sumps.find((one) => one.id === row.sumpId);
+    if (!sump) continue;
+    const headM = headOnLinerM({
+      levelM: Number(row.levelM),
+      sensorAboveFloorM: Number(sump.sensorAboveFloorM),
+      linerLowPointAboveFloorM: Number(sump.linerLowPointAboveFloorM),
+    });
+    const month = monthOfDay(row.siteDay);
+    heads.set(month, [...(heads.get(month) ?? []), headM]);
+  }
+  const measuredHeadM = Object.fromEntries(
+    [...heads].map(([month, values]) => [
+      month,
+      values.reduce((sum, value) => sum + value, 0) / values.length,
+    ]),
+  );
+  return { condensateM3, measuredHeadM };
+}
+
+function engineCells(
+  record: SiteRecord,
+  returns: Awaited<ReturnType<typeof listReturns>>,
+  readings: SumpReadings,
+): EngineCell[] {
   return record.cells.map((cell) => {
     const placedDeficitM3: Record<Month, number> = {};
     for (const row of record.wastePlaced.filter((one) => one.cellId === cell.id)) {
@@ -54,6 +92,7 @@ function engineCells(record: SiteRecord, returns: Awaited<ReturnType<typeof list
           isAtSurface: one.method === 'surface' || one.method === 'tanker-at-face',
           volumeM3: Number(one.volumeM3),
         })),
+      ...sumpMonths(record, cell.id, readings),
     };
   });
 }
@@ -106,21 +145,12 @@ export async function buildEngineInput(
         `There is no complete month of climate since ${dayName(firstPlotOn)}. Upload a climate record under Site.`,
     );
   const returns = await listReturns(tx, record.site.id, '0001-01-01', '9999-12-31');
-  const covers = Object.fromEntries(
-    record.coverTypes.map((type) => [
-      type.id,
-      {
-        kind: type.kind as CoverKind,
-        name: type.name,
-        availableWaterMm: Number(type.availableWaterMm),
-        membranePassFraction: number(type.membranePassFraction),
-        runoffCoefficientWet: Number(type.runoffCoefficientWet),
-        runoffCoefficientDry: Number(type.runoffCoefficientDry),
-        runoffDestination: type.runoffDestination,
-        petFactor: Number(type.petFactor),
-      },
-    ]),
-  );
+  const sumpIds = record.sumps.map((sump) => sump.id);
+  const readings = {
+    condensate: await listCondensate(tx, sumpIds),
+    levels: await listSumpLevels(tx, sumpIds),
+  };
+  const covers = Object.fromEntries(record.coverTypes.map((type) => [type.id, engineCover(type)]));
   return {
     input: {
       latitudeDeg: Number(record.site.latitudeDeg),
@@ -132,10 +162,14 @@ export async function buildEngineInput(
         tMinC: settled!.tMinC,
         tMaxC: settled!.tMaxC,
         petMm: settled!.petMm,
-        dailyPrecipitationMm: settled!.dailyPrecipitationMm,
+        panMm: settled!.panMm,
+        windMPerS: settled!.windMPerS,
+        relativeHumidityPercent: settled!.relativeHumidityPercent,
+        sunshineHours: settled!.sunshineHours,
+        days: settled!.days,
       })),
       covers,
-      cells: engineCells(record, returns),
+      cells: engineCells(record, returns, readings),
       parameters,
     },
     climate,

@@ -1,9 +1,9 @@
 import type { Month } from '#shared/calendar/month.ts';
-import { parameterTemplate, type BalanceParameters } from '#shared/water-balance/engine-input.ts';
+import { completeParameters, type BalanceParameters } from '#shared/water-balance/engine-input.ts';
 import {
   PetMissing,
   recordHeatIndex,
-  referencePetMm,
+  referencePet,
 } from '#shared/water-balance/potential-evapotranspiration.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import { listSiteClimate } from '../climate/climate-service.ts';
@@ -20,11 +20,22 @@ export async function referencePetOfMonth(
   const climate = (await listSiteClimate(tx, siteId)).flatMap((row) => (row.settled ? [row.settled] : []));
   const row = climate.find((one) => one.month === month);
   if (!site || !row) return null;
-  const parameters =
-    ((await findCurrentParameterSet(tx, siteId))?.values as BalanceParameters | undefined) ??
-    parameterTemplate;
+  const parameters = completeParameters(
+    ((await findCurrentParameterSet(tx, siteId))?.values ?? {}) as Partial<BalanceParameters>,
+  );
+  const index = climate.indexOf(row);
   try {
-    return referencePetMm(row, Number(site.latitudeDeg), parameters, recordHeatIndex(climate));
+    const { petMm } = referencePet(
+      row,
+      {
+        latitudeDeg: Number(site.latitudeDeg),
+        elevationM: Number(site.elevationM),
+        heatIndex: recordHeatIndex(climate),
+      },
+      parameters,
+      { before: climate[index - 1], after: climate[index + 1] },
+    );
+    return petMm * parameters.petFactor;
   } catch (error) {
     if (error instanceof PetMissing) return null;
     throw error;

@@ -2,12 +2,14 @@ import type * as z from 'zod';
 import { Problem, fieldProblem } from '#shared/problems.ts';
 import type { freezeInput, parameterSetInput } from '#shared/schemas/balance.ts';
 import {
+  completeParameters,
   engineVersion,
   parameterTemplate,
   type BalanceParameters,
   type EngineInput,
 } from '#shared/water-balance/engine-input.ts';
 import { runWaterBalance, type StepResult } from '#shared/water-balance/run-water-balance.ts';
+import { readStoredInput } from '#shared/water-balance/stored-input.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import { sha256Of } from '../../files/file-store.ts';
@@ -93,7 +95,7 @@ export async function workingRun(
   const { input, climate, stopped } = await buildEngineInput(
     tx,
     record,
-    parameters.values as BalanceParameters,
+    completeParameters(parameters.values as Partial<BalanceParameters>),
     today,
   );
   const inputSha256 = sha256Of(engineVersion + canonicalJson(input));
@@ -208,7 +210,7 @@ export async function recheckRun(tx: Transaction, context: Context, runId: strin
   const run = await repository.findRun(tx, siteOf(context), runId);
   if (!run?.input) throw new Problem('not-found', 'There is no such frozen run at this site.');
   const steps = await repository.listSteps(tx, runId);
-  const again = runWaterBalance(JSON.parse(run.input) as EngineInput).steps;
+  const again = runWaterBalance(readStoredInput(run.input)).steps;
   const byKey = new Map(again.map((step) => [`${step.plotId} ${step.fromOn}`, step]));
   let worst = steps.length === again.length ? 0 : Infinity;
   for (const step of steps) {
@@ -257,7 +259,10 @@ export async function createParameterSet(
   const before = await currentParameters(tx, context, deps);
   const record = await readSite(tx, siteId);
   const problem = await problemWith(tx, deps, record, input.values);
-  if (problem && !(await problemWith(tx, deps, record, before.values as BalanceParameters)))
+  if (
+    problem &&
+    !(await problemWith(tx, deps, record, completeParameters(before.values as Partial<BalanceParameters>)))
+  )
     throw fieldProblem('/values/petMethod', `The balance could not be computed with this set: ${problem}`);
   const version =
     Math.max(
@@ -291,8 +296,12 @@ export async function createParameterSet(
 
 /** The set in force and every earlier one, newest first. */
 export async function readParameterSets(tx: Transaction, context: Context, deps: Dependencies) {
+  const complete = <T extends { values: unknown }>(set: T) => ({
+    ...set,
+    values: completeParameters(set.values as Partial<BalanceParameters>),
+  });
   return {
-    current: await currentParameters(tx, context, deps),
-    sets: await repository.listParameterSets(tx, siteOf(context)),
+    current: complete(await currentParameters(tx, context, deps)),
+    sets: (await repository.listParameterSets(tx, siteOf(context))).map(complete),
   };
 }

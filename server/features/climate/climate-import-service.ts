@@ -175,7 +175,6 @@ export async function confirmClimate(
     importId,
     stationId: row.stationId!,
   };
-  const empty = { precipitationMm: null, tMinC: null, tMaxC: null, tMeanC: null, petMm: null };
   if (mapping.kind === 'daily') {
     const known = new Map(
       (await repository.listLiveDays(tx, [row.stationId!])).map((one) => [one.siteDay, one]),
@@ -186,7 +185,6 @@ export async function confirmClimate(
         ...fact,
         id: deps.newId(),
         siteDay: one.when,
-        ...empty,
         ...one.values,
         supersedesId: known.get(one.when)?.id ?? null,
         reason: known.has(one.when) ? `Import of ${row.fileName}` : null,
@@ -202,7 +200,6 @@ export async function confirmClimate(
         ...fact,
         id: deps.newId(),
         month: one.when,
-        ...empty,
         ...one.values,
         supersedesId: known.get(one.when)?.id ?? null,
         reason: known.has(one.when) ? `Import of ${row.fileName}` : null,

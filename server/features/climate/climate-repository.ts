@@ -33,6 +33,10 @@ const dayColumns = {
   tMaxC: climateDays.tMaxC,
   tMeanC: climateDays.tMeanC,
   petMm: climateDays.petMm,
+  panMm: climateDays.panMm,
+  windMPerS: climateDays.windMPerS,
+  relativeHumidityPercent: climateDays.relativeHumidityPercent,
+  sunshineHours: climateDays.sunshineHours,
 };
 
 export const listLiveDays = (

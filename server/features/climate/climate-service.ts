@@ -4,6 +4,7 @@ import { monthOfDay } from '#shared/calendar/day.ts';
 import { monthName, monthParts, monthRange, type Month } from '#shared/calendar/month.ts';
 import {
   monthFromRecord,
+  noClimate,
   settleGap,
   summariseMonth,
   type ClimateValues,
@@ -11,7 +12,7 @@ import {
 } from '#shared/climate/month-climate.ts';
 import { fieldProblem } from '#shared/problems.ts';
 import type { gapChoiceInput } from '#shared/schemas/climate.ts';
-import type { MonthClimate } from '#shared/water-balance/engine-input.ts';
+import type { MonthClimate, MonthDays } from '#shared/water-balance/engine-input.ts';
 import type { ClimateView } from '#shared/views/site-view.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import { remembered } from '../../db/remembered-reads.ts';
@@ -38,20 +39,11 @@ interface StationRecord {
   monthsWithDays: Set<Month>;
 }
 
-const toNumber = (text: string | null) => (text === null ? null : Number(text));
-const valuesOf = (row: {
-  precipitationMm: string | null;
-  tMinC: string | null;
-  tMaxC: string | null;
-  tMeanC: string | null;
-  petMm: string | null;
-}): ClimateValues => ({
-  precipitationMm: toNumber(row.precipitationMm),
-  tMinC: toNumber(row.tMinC),
-  tMaxC: toNumber(row.tMaxC),
-  tMeanC: toNumber(row.tMeanC),
-  petMm: toNumber(row.petMm),
-});
+const fields = Object.keys(noClimate) as (keyof ClimateValues)[];
+const valuesOf = (row: Record<keyof ClimateValues, string | null>): ClimateValues =>
+  Object.fromEntries(
+    fields.map((field) => [field, row[field] === null ? null : Number(row[field])]),
+  ) as unknown as ClimateValues;
 
 /** An accumulated reading is spread over its days and stays marked; its sum is kept. */
 function spreadAccumulated(
@@ -101,6 +93,11 @@ function monthOfStation(station: StationRecord, month: Month): MonthSummary | nu
   return station.monthsWithDays.has(month) ? summariseMonth(month, station.days) : null;
 }
 
+/** Days of rain from one station with the temperatures and weather of another, as far as both have them. */
+function joinDays(rain: MonthDays | null, warm: MonthDays | null): MonthDays | null {
+  return rain && { ...rain, ...(warm ? { ...warm, precipitationMm: rain.precipitationMm } : {}) };
+}
+
 /** Rain from the first station that has any, temperature from the first that has any; both are named. */
 function joinStations(
   stations: StationRecord[],
@@ -111,7 +108,8 @@ function joinStations(
     .filter((one) => one.summary !== null);
   const rain = found.find(({ summary }) => summary!.rainDayCount > 0);
   const warm = found.find(({ summary }) => summary!.temperatureDayCount > 0);
-  const pet = found.find(({ summary }) => summary!.petMm !== null);
+  const first = (field: 'petMm' | 'panMm' | 'windMPerS' | 'relativeHumidityPercent' | 'sunshineHours') =>
+    found.find(({ summary }) => summary![field] !== null)?.summary![field] ?? null;
   const base = rain?.summary ?? warm?.summary;
   if (!base) return null;
   return {
@@ -119,7 +117,12 @@ function joinStations(
     tMeanC: warm?.summary!.tMeanC ?? null,
     tMinC: warm?.summary!.tMinC ?? null,
     tMaxC: warm?.summary!.tMaxC ?? null,
-    petMm: pet?.summary!.petMm ?? null,
+    petMm: first('petMm'),
+    panMm: first('panMm'),
+    windMPerS: first('windMPerS'),
+    relativeHumidityPercent: first('relativeHumidityPercent'),
+    sunshineHours: first('sunshineHours'),
+    days: joinDays(rain?.summary?.days ?? null, warm?.summary?.days ?? null),
     temperatureDayCount: warm?.summary!.temperatureDayCount ?? 0,
     isComplete:
       base.rainDayCount === base.dayCount && (warm?.summary!.temperatureDayCount ?? 0) === base.dayCount,
@@ -144,7 +147,11 @@ function stationNormal(months: readonly MonthSummary[], month: Month): MonthClim
     tMinC: mean((row) => row.tMinC),
     tMaxC: mean((row) => row.tMaxC),
     petMm: mean((row) => row.petMm),
-    dailyPrecipitationMm: null,
+    panMm: mean((row) => row.panMm),
+    windMPerS: mean((row) => row.windMPerS),
+    relativeHumidityPercent: mean((row) => row.relativeHumidityPercent),
+    sunshineHours: mean((row) => row.sunshineHours),
+    days: null,
   };
 }
 
@@ -234,7 +241,7 @@ export async function readClimate(tx: Transaction, context: Context): Promise<Cl
   const climate = await listSiteClimate(tx, siteOf(context));
   const uploads = await listImports(tx, siteOf(context), 'climate', null);
   return {
-    months: climate.map(({ settled, dailyPrecipitationMm: _daily, ...row }) => ({
+    months: climate.map(({ settled, days: _days, ...row }) => ({
       ...row,
       isSettled: settled !== null,
     })),

@@ -8,7 +8,7 @@ import { correlationAtLag, fitStatistics } from '#shared/reconciliation/fit-stat
 import type { Finding } from '#shared/findings.ts';
 import type { compareNoteInput } from '#shared/schemas/balance.ts';
 import { coverKindNames, type CoverKind } from '#shared/water-balance/cover-types.ts';
-import type { BalanceParameters } from '#shared/water-balance/engine-input.ts';
+import { completeParameters, type BalanceParameters } from '#shared/water-balance/engine-input.ts';
 import type { StepResult } from '#shared/water-balance/run-water-balance.ts';
 import { sumSteps } from '#shared/water-balance/sum-steps.ts';
 import type { CompareView } from '#shared/views/balance-view.ts';
@@ -150,7 +150,9 @@ export async function readCompare(
   const cell = record.cells.find((one) => one.code === cellCode) ?? record.cells[0];
   if (!cell) throw fieldProblem('/query/cell', 'There is no cell to compare yet. Make one under Site.');
   const { run, isAccepted, isOutOfDate } = await predictionRun(tx, context, deps, record);
-  const parameters = (await currentParameters(tx, context, deps)).values as BalanceParameters;
+  const parameters = completeParameters(
+    (await currentParameters(tx, context, deps)).values as Partial<BalanceParameters>,
+  );
   const steps = (await balanceRepository.listSteps(tx, run.id)).map((row) => ({
     ...row,
     terms: row.terms as StepResult['terms'],

@@ -1,5 +1,5 @@
 import { and, asc, eq, gte, inArray, isNull, lte, sql, type SQL } from 'drizzle-orm';
-import { entries, loadsOut, pendingChanges, returns } from '../../db/schema/ledger.ts';
+import { condensate, entries, levels, loadsOut, pendingChanges, returns } from '../../db/schema/ledger.ts';
 import { monthClosings } from '../../db/schema/reporting.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import { isLive } from '../readings/reading-repository.ts';
@@ -152,3 +152,18 @@ export const listReturns = (tx: Transaction, siteId: string, firstDay: string, l
         isLive(returns),
       ),
     );
+
+/** Condensate and wash-down led to the sumps, as it stands. */
+export const listCondensate = (tx: Transaction, sumpIds: string[]) =>
+  tx
+    .select()
+    .from(condensate)
+    .where(and(inArray(condensate.sumpId, sumpIds), isLive(condensate)));
+
+/** Levels read in the sumps, as they stand. */
+export const listSumpLevels = (tx: Transaction, sumpIds: string[]) =>
+  tx
+    .select({ sumpId: levels.sumpId, siteDay: levels.siteDay, levelM: levels.levelM })
+    .from(levels)
+    .where(and(inArray(levels.sumpId, sumpIds), isLive(levels)))
+    .orderBy(asc(levels.siteDay));

@@ -1,12 +1,12 @@
 import { firstDay, lastDay } from '#shared/calendar/day.ts';
 import { monthRange, addMonths, daysInMonth, type Month } from '#shared/calendar/month.ts';
 import { leakDetectionRate } from '#shared/ledger/leak-detection.ts';
-import type { BalanceParameters, EngineCover } from '#shared/water-balance/engine-input.ts';
-import type { StepTerms } from '#shared/water-balance/terms.ts';
-import { stepCover } from '#shared/water-balance/run-water-balance.ts';
-import type { CoverKind } from '#shared/water-balance/cover-types.ts';
+import type { BalanceParameters } from '#shared/water-balance/engine-input.ts';
+import { asTerms } from '#shared/water-balance/terms.ts';
+import { isWetMonth, runoffShare } from '#shared/water-balance/compute-step.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import * as balanceRepository from '../balance/balance-repository.ts';
+import { engineCover } from '../balance/engine-cover.ts';
 import { measuredByCell, type MeasuredMonth } from '../compare/measured-service.ts';
 import * as entryRepository from '../ledger/entry-repository.ts';
 import type { SiteRecord } from '../sites/site-service.ts';
@@ -23,16 +23,7 @@ export async function stepsOf(
   return rows
     .map((row) => {
       const type = record.coverTypes.find((one) => one.id === row.coverTypeId)!;
-      const cover: EngineCover = {
-        kind: type.kind as CoverKind,
-        name: type.name,
-        availableWaterMm: Number(type.availableWaterMm),
-        membranePassFraction: type.membranePassFraction === null ? null : Number(type.membranePassFraction),
-        runoffCoefficientWet: Number(type.runoffCoefficientWet),
-        runoffCoefficientDry: Number(type.runoffCoefficientDry),
-        runoffDestination: type.runoffDestination,
-        petFactor: Number(type.petFactor),
-      };
+      const cover = engineCover(type);
       return {
         cellCode: record.cells.find((one) => one.id === row.cellId)!.code,
         plotName: record.plots.find((one) => one.id === row.plotId)!.name,
@@ -43,8 +34,8 @@ export async function stepsOf(
         fromOn: row.fromOn,
         dayCount: row.dayCount,
         areaM2: row.areaM2,
-        runoffCoefficient: stepCover(cover, row.month, parameters).runoffCoefficient,
-        terms: row.terms as StepTerms,
+        runoffCoefficient: runoffShare(cover, isWetMonth(row.month, parameters), parameters.runoffFactor),
+        terms: asTerms(row.terms),
       };
     })
     .sort(
@@ -92,10 +83,7 @@ export async function historyOf(
   const predicted = new Map<string, number>();
   for (const step of await balanceRepository.listSteps(tx, runId, months[0], last)) {
     const key = `${step.cellId} ${step.month}`;
-    predicted.set(
-      key,
-      (predicted.get(key) ?? 0) + ((step.terms as StepTerms).leachateMm * step.areaM2) / 1000,
-    );
+    predicted.set(key, (predicted.get(key) ?? 0) + (asTerms(step.terms).leachateMm * step.areaM2) / 1000);
   }
   const measured = await measuredByCell(tx, record, months[0]!, last, predicted);
   return months.flatMap((month) => {

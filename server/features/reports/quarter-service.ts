@@ -1,7 +1,7 @@
 import { addDays, firstDay, lastDay } from '#shared/calendar/day.ts';
 import { addMonths, daysInMonth, quarterMonths } from '#shared/calendar/month.ts';
 import { Problem } from '#shared/problems.ts';
-import type { BalanceParameters } from '#shared/water-balance/engine-input.ts';
+import { completeParameters, type BalanceParameters } from '#shared/water-balance/engine-input.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
 import * as balanceRepository from '../balance/balance-repository.ts';
@@ -31,7 +31,7 @@ export async function collectQuarter(
   const set = (await balanceRepository.listParameterSets(tx, siteId)).find(
     (one) => one.id === run.parameterSetId,
   )!;
-  const parameters = set.values as BalanceParameters;
+  const parameters = completeParameters(set.values as Partial<BalanceParameters>);
   const steps = await stepsOf(tx, record, run.id, months, parameters);
   const predicted = new Map<string, { volumeM3: number; areaM2: number }>();
   for (const step of steps) {

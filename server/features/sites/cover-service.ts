@@ -156,6 +156,7 @@ export async function createCoverType(
       hasSoilStore: Number(input.availableWaterMm) > 0,
       ...input,
       membranePassFraction: input.membranePassFraction ?? null,
+      curveNumber: input.curveNumber ?? null,
     },
   ]);
   await recordChange(tx, context, {

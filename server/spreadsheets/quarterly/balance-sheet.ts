@@ -48,6 +48,8 @@ const names = [
   'inflow',
   'wasteAfter',
   'drained',
+  'condensate',
+  'leakShare',
   'leaked',
   'collected',
   'toLeachate',
@@ -94,6 +96,8 @@ const columns: Record<Name, ColumnSpec> = {
   inflow: { header: 'Into waste, mm', format: formats.mm },
   wasteAfter: { header: 'Waste store after, mm', format: formats.mm },
   drained: { header: 'Drained, mm', format: formats.mm },
+  condensate: { header: 'Condensate to the drain, mm', format: formats.mm },
+  leakShare: { header: 'Share leaked', format: formats.share },
   leaked: { header: 'Leaked, mm', format: formats.mm },
   collected: { header: 'Collected, mm', format: formats.mm },
   toLeachate: { header: 'Runoff to leachate, mm', format: formats.mm },
@@ -105,13 +109,16 @@ const columns: Record<Name, ColumnSpec> = {
 
 export const balanceColumn = (name: Name): string => letters(names.indexOf(name) + 1);
 
+/** Runoff at the surface, by share or by curve number: what did not enter the soil. */
+const surfaceRunoffOf = ({ terms: t }: QuarterStep): number =>
+  t.rainMm + t.meltMm + t.surfaceReturnMm - t.infiltrationMm;
+
 /** Water that frozen ground or a separated floor sends away: not a soil percolation, so it is given, not computed. */
-function excessOf(step: QuarterStep): number {
-  const { terms } = step;
-  return (
-    terms.runoffToStormMm + terms.runoffToLeachateMm - step.runoffCoefficient * (terms.rainMm + terms.meltMm)
-  );
-}
+const excessOf = (step: QuarterStep): number =>
+  step.terms.runoffToStormMm + step.terms.runoffToLeachateMm - surfaceRunoffOf(step);
+
+/** A part as a share of its whole; the set share where there is nothing to share. */
+const shareOf = (part: number, whole: number, set: number): number => (whole > 0 ? part / whole : set);
 
 /** The soil formulas of the run's law; the same text in every row. */
 function soilFormulas(law: Quarter['parameters']['soilLaw'], at: (name: Name) => string) {
@@ -171,9 +178,9 @@ function rowOf(
     snowfall: t.snowfallMm,
     dSnow: t.dSnowMm,
     pet: t.petMm,
-    runoffShare: step.runoffCoefficient,
+    runoffShare: shareOf(surfaceRunoffOf(step), t.rainMm + t.meltMm, step.runoffCoefficient),
     capacity: step.cover.availableWaterMm,
-    pass: step.cover.membranePassFraction ?? 1,
+    pass: shareOf(t.passedMm, t.percolationMm, step.cover.membranePassFraction ?? 1),
     returned: t.surfaceReturnMm,
     brought: t.soilWaterBroughtMm,
     returnWaste: t.returnToWasteMm,
@@ -207,8 +214,13 @@ function rowOf(
     drained: hasWaste
       ? live(`${at('inflow')}*(1-${kept})+${at('wasteBefore')}*(1-${decay})`, t.drainedMm)
       : live(at('inflow'), t.drainedMm),
-    leaked: live(`${at('drained')}*Leak_share`, t.leakedMm),
-    collected: live(`${at('drained')}*(1-Leak_share)`, t.collectedMm),
+    condensate: t.condensateMm,
+    leakShare:
+      quarter.parameters.leakMethod === 'fraction'
+        ? live('Leak_share', quarter.parameters.leakFraction)
+        : shareOf(t.leakedMm, t.drainedMm + t.condensateMm, 0),
+    leaked: live(`(${at('drained')}+${at('condensate')})*${at('leakShare')}`, t.leakedMm),
+    collected: live(`(${at('drained')}+${at('condensate')})*(1-${at('leakShare')})`, t.collectedMm),
     toLeachate: isToLeachate ? live(at('runoff'), t.runoffToLeachateMm) : 0,
     leachateMm: live(`${at('collected')}+${at('toLeachate')}`, t.leachateMm),
     leachateM3: live(`${at('leachateMm')}*${at('area')}/1000`, (t.leachateMm * step.areaM2) / 1000),
@@ -239,6 +251,7 @@ const inputNames: readonly Name[] = [
   'free',
   'deficit',
   'excess',
+  'condensate',
 ];
 export const balanceFirstRow = 4;
 

@@ -1,36 +1,30 @@
 import { useState } from 'react';
 import { Link } from 'react-router';
-import { freezeInput, parameterSetInput, type ParameterSetInput } from '#shared/schemas/balance.ts';
-import type { BalanceParameters, BalanceView, ParameterSetsView } from '#shared/views/balance-view.ts';
+import { freezeInput } from '#shared/schemas/balance.ts';
+import { petMethodNames, runoffMethodNames, soilLawNames } from '#shared/water-balance/method-names.ts';
+import type { BalanceView, ParameterSetsView } from '#shared/views/balance-view.ts';
 import { usePlace } from '../../app/place.ts';
-import { CheckField, ChoiceField, RecordForm, TextField } from '../../components/form.tsx';
+import { RecordForm, TextField } from '../../components/form.tsx';
 import { Section } from '../../components/page.tsx';
 import { Viewed } from '../../components/state.tsx';
 import { Template, Word } from '../../components/words.tsx';
 import { formatInstant } from '../../lib/format-quantity.ts';
 import { newId } from '../../lib/new-id.ts';
 import { useRecord, useWrite } from '../../lib/record.ts';
+import { ParameterForm } from './parameter-form.tsx';
 
 function Parameters() {
   const { site, can } = usePlace();
   const query = useRecord<ParameterSetsView>(site.id, '/parameter-sets');
   const [isEditing, setIsEditing] = useState(false);
-  const save = useWrite<ParameterSetInput>(site.id, '/parameter-sets');
   return (
     <Viewed query={query}>
       {({ current }) => {
-        const p = current.values as BalanceParameters;
+        const p = current.values;
         const rows: [string, string, string][] = [
-          [
-            'Potential ET',
-            {
-              thornthwaite: 'Thornthwaite 1948',
-              hargreaves: 'Hargreaves–Samani 1985',
-              given: 'given values',
-            }[p.petMethod],
-            '',
-          ],
-          ['Soil law', p.soilLaw.replace('-', ' '), ''],
+          ['Potential ET', petMethodNames[p.petMethod], ''],
+          ['Runoff', runoffMethodNames[p.runoffMethod], ''],
+          ['Soil law', soilLawNames[p.soilLaw], ''],
           ['Runoff factor', String(p.runoffFactor), ''],
           ['PET factor', String(p.petFactor), ''],
           [
@@ -43,88 +37,13 @@ function Parameters() {
           ['Frozen ground', p.isFrostOn ? `percolation stops at or below ${p.tFrostC} °C` : 'off', ''],
           ['Recession constant of the waste', String(p.recessionPerMonth), '1/month'],
           ['Channelled share', String(p.channelledFraction), ''],
-          ['Leak share', String(p.leakFraction), ''],
+          p.leakMethod === 'fraction'
+            ? ['Leak share', String(p.leakFraction), '']
+            : ['Leakage', `${p.liner.defectsPerHa} defects a hectare of ${p.liner.defectAreaM2} m²`, ''],
           ['First store', p.isSpunUp ? 'spun up on the first year' : 'entered, or half', ''],
           ['Percent muted under', String(p.percentFloorMm), 'mm'],
         ];
-        if (isEditing) {
-          return (
-            <RecordForm<ParameterSetInput>
-              schema={parameterSetInput}
-              defaults={{
-                id: newId(),
-                name: current.name === 'Template' ? 'Site set' : current.name,
-                values: p,
-              }}
-              submitLabel="Save as a new set"
-              onSubmit={(values) => save.mutateAsync(values)}
-              onDone={() => setIsEditing(false)}
-            >
-              <TextField name="name" label="Name of the set" />
-              <ChoiceField
-                name="values.petMethod"
-                label="Potential evapotranspiration"
-                options={[
-                  { value: 'thornthwaite', label: 'Thornthwaite 1948' },
-                  { value: 'hargreaves', label: 'Hargreaves–Samani 1985' },
-                  { value: 'given', label: 'given values' },
-                ]}
-                hint="Available water of the covers and the method belong together: look at both when one changes."
-              />
-              <ChoiceField
-                name="values.soilLaw"
-                label="Soil law"
-                options={[
-                  { value: 'exponential', label: 'exponential (Thornthwaite and Mather 1957)' },
-                  { value: 'equal-availability', label: 'equal availability' },
-                  { value: 'linear', label: 'linear' },
-                ]}
-              />
-              <TextField
-                name="values.runoffFactor"
-                label="Factor on every runoff share"
-                inputMode="decimal"
-              />
-              <TextField
-                name="values.petFactor"
-                label="Factor on potential evapotranspiration"
-                inputMode="decimal"
-              />
-              <TextField
-                name="values.recessionPerMonth"
-                label="Recession constant of the waste"
-                unit="1/month"
-                inputMode="decimal"
-                hint="Template 0.5: our choice, no published constant exists."
-              />
-              <TextField
-                name="values.channelledFraction"
-                label="Channelled share of percolation"
-                inputMode="decimal"
-              />
-              <TextField
-                name="values.leakFraction"
-                label="Share of drained water that leaks"
-                inputMode="decimal"
-              />
-              <CheckField name="values.snow.isOn" label="Snow" />
-              <TextField name="values.snow.tSnowC" label="All snow at or below" unit="°C" inputMode="text" />
-              <TextField name="values.snow.tRainC" label="All rain at or above" unit="°C" inputMode="text" />
-              <TextField
-                name="values.snow.meltMaxFraction"
-                label="Largest share of the snow that melts in a month"
-                inputMode="decimal"
-              />
-              <CheckField name="values.isFrostOn" label="Frozen ground stops percolation" />
-              <CheckField name="values.isSpunUp" label="Spin the first soil store up on the first year" />
-              <p>
-                <button type="button" className="link" onClick={() => setIsEditing(false)}>
-                  Leave as it is
-                </button>
-              </p>
-            </RecordForm>
-          );
-        }
+        if (isEditing) return <ParameterForm current={current} onDone={() => setIsEditing(false)} />;
         return (
           <div className="sheet pad">
             <p className="font-semibold">

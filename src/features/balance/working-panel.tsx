@@ -1,6 +1,7 @@
 import { dayNameShort } from '#shared/calendar/day.ts';
 import { monthName } from '#shared/calendar/month.ts';
 import type { WorkingView } from '#shared/views/balance-view.ts';
+import type { WorkingLine } from '#shared/water-balance/explain-step.ts';
 import type { TermName } from '#shared/water-balance/terms.ts';
 import { usePlace } from '../../app/place.ts';
 import { Panel } from '../../components/dialog.tsx';
@@ -8,6 +9,12 @@ import { Viewed } from '../../components/state.tsx';
 import { Template } from '../../components/words.tsx';
 import { formatInstant, formatNumber } from '../../lib/format-quantity.ts';
 import { useRecord } from '../../lib/record.ts';
+
+/** Very small numbers, like conductivities, keep their power of ten. */
+const formatWorking = ({ value, unit }: WorkingLine) =>
+  value !== 0 && Math.abs(value) < 1e-4
+    ? value.toExponential(2).replaceAll('-', '−')
+    : formatNumber(value, unit === 'm³' ? 1 : unit === '' ? 3 : 2);
 
 function Sheet({ stepId, term }: { stepId: string; term: TermName }) {
   const { site } = usePlace();
@@ -37,15 +44,23 @@ function Sheet({ stepId, term }: { stepId: string; term: TermName }) {
                   <td>{line.line}</td>
                   <th scope="row">
                     {line.what} <span className="text-muted font-normal">{line.how}</span>
+                    {line.withValues && <span className="block font-normal">= {line.withValues}</span>}
                     {line.source && <span className="hint block">{line.source}</span>}
                   </th>
                   <td className="r">
-                    {formatNumber(line.value, line.unit === 'm³' ? 1 : line.unit === '' ? 3 : 2)} {line.unit}
+                    {formatWorking(line)} {line.unit}
                   </td>
                 </tr>
               ))}
             </tbody>
           </table>
+          {view.warnings.length > 0 && (
+            <ul className="list-disc pl-5 mt-4 text-sm">
+              {view.warnings.map((sentence) => (
+                <li key={sentence}>{sentence}</li>
+              ))}
+            </ul>
+          )}
           <dl className="grid grid-cols-[130px_1fr] gap-x-4 gap-y-1 mt-4 text-sm">
             <dt className="text-muted">Soil law</dt>
             <dd>{view.law}</dd>

@@ -1,4 +1,5 @@
-import type { ComputedCase, ComputedValue } from '#shared/method/published-cases.ts';
+import type { ComputedCase } from '#shared/method/published-cases.ts';
+import type { ComputedValue } from '#shared/method/published-values.ts';
 import { ScrollBox, Section } from '../../components/page.tsx';
 import { formatNumber, formatSigned } from '../../lib/format-quantity.ts';
 
@@ -105,11 +106,15 @@ export function CaseTable({ one }: { one: ComputedCase }) {
   );
 }
 
-export function ValueTable({ values }: { values: readonly ComputedValue[] }) {
+/** One digit more than the tolerance asks for. */
+const decimalsOf = ({ tolerance }: ComputedValue) =>
+  Math.min(6, Math.max(1, Math.ceil(-Math.log10(tolerance)) + 1));
+
+export function ValueTable({ label, values }: { label: string; values: readonly ComputedValue[] }) {
   return (
-    <ScrollBox label="Single published values">
+    <ScrollBox label={label}>
       <table className="tbl tbl-tight">
-        <caption className="sr-only">Single published values beside what is computed here</caption>
+        <caption className="sr-only">{label} beside what is computed here</caption>
         <thead>
           <tr>
             <th scope="col">What</th>
@@ -134,8 +139,8 @@ export function ValueTable({ values }: { values: readonly ComputedValue[] }) {
                 <span className="hint block">{one.title}</span>
               </th>
               <td className="r">{one.printed}</td>
-              <td className="r font-medium">{formatNumber(one.computed, 2)}</td>
-              <td className="r text-muted">{formatSigned(one.computed - one.printed, 2)}</td>
+              <td className="r font-medium">{formatNumber(one.computed, decimalsOf(one))}</td>
+              <td className="r text-muted">{formatSigned(one.computed - one.printed, decimalsOf(one))}</td>
               <td>{one.unit}</td>
               <td className="text-sm text-muted min-w-[24em]!">
                 {one.source}

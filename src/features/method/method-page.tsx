@@ -1,10 +1,8 @@
 import balanceCases from '#data/published/balance-cases.json';
 import hydrologyCases from '#data/published/hydrology-cases.json';
-import {
-  computePublishedCases,
-  computePublishedValues,
-  type PublishedCase,
-} from '#shared/method/published-cases.ts';
+import { computePublishedCases, type PublishedCase } from '#shared/method/published-cases.ts';
+import { computeLinerValues } from '#shared/method/liner-values.ts';
+import { computePublishedValues } from '#shared/method/published-values.ts';
 import { engineVersion } from '#shared/water-balance/engine-input.ts';
 import { PageHead, Section } from '../../components/page.tsx';
 import { formatNumber } from '../../lib/format-quantity.ts';
@@ -15,6 +13,7 @@ const cases = computePublishedCases(balanceCases as PublishedCase[]);
 const values = computePublishedValues(
   hydrologyCases as unknown as Parameters<typeof computePublishedValues>[0],
 );
+const linerValues = computeLinerValues(balanceCases as unknown as PublishedCase[]);
 const cincinnati = (balanceCases as PublishedCase[]).find((one) => one.id === 'fenn1975-cincinnati')!;
 const texts = (name: string) => (cincinnati.inputs[name] as number[]).map(String);
 const first = {
@@ -27,28 +26,31 @@ const first = {
 const method = [
   [
     'Rain and snow',
-    'Monthly precipitation; snow below a temperature and rain above another, linear between; melt in proportion to the warmth (McCabe and Markstrom 2007, USGS OFR 2007-1088; equations from memory).',
+    'Monthly: snow below a temperature and rain above another, linear between; melt in proportion to the warmth (McCabe and Markstrom 2007, USGS OFR 2007-1088; equations from memory). With daily temperatures: snow at or below freezing, melt by degree-days (USDA-NRCS NEH-630 ch. 11, second-hand).',
   ],
   [
     'Potential evapotranspiration',
-    'Thornthwaite 1948, or Hargreaves–Samani 1985 as FAO-56 eq. 52, or given. Thornthwaite tends to be low.',
+    'Thornthwaite 1948; Hargreaves–Samani 1985 as FAO-56 eq. 52; Penman–Monteith, FAO-56 eq. 6, monthly or daily, with what is missing by its chapter 3 and each substitution said; pan × coefficient; or given. Thornthwaite tends to be low. Available water and method belong together: look at both when one changes.',
   ],
   [
     'Runoff',
-    'A share of rain and melt by cover and season (Fenn, Hanley and DeGeare 1975, Table 3; from memory). Runoff of an open working area is contact water and goes to leachate.',
+    'A share of rain and melt by cover and season (Fenn, Hanley and DeGeare 1975, Table 3; from memory), or the curve number on each day’s rain with the five days before (TR-55, NEH-630 ch. 10), never on a month’s total; melt keeps the share. Runoff of an open working area is contact water and goes to leachate.',
   ],
   [
     'Soil of the cover',
-    'Thornthwaite and Mather 1957: the store dries by the exponential law and percolates above the available water.',
+    'Thornthwaite and Mather 1957: the store dries by the exponential law and percolates above the available water. Labelled alternatives: equal availability, linear withdrawal. The first store is spun up on the first year. Frozen months, where a site sets them, percolate nothing. A balance of average months understates percolation against the mean of yearly balances.',
   ],
-  ['Through a membrane', 'An entered fraction of what reaches it; the rest drains off above it.'],
+  [
+    'Through a membrane',
+    'An entered fraction of what reaches it, or leakage through defects (Giroud 1997, from memory) with the head in the cover’s own drain; the rest drains off above it.',
+  ],
   [
     'Waste',
     'Placed waste takes up water to field capacity; what drains follows a linear reservoir. The recession constant 0.5 a month is our choice: no published constant exists.',
   ],
   [
     'Liner',
-    'An entered share of what drains is counted as leaked. Head and leakage are design checks, not a proof that a liner is sound.',
+    'An entered share of what drains is counted as leaked, or leakage through defects by the head: the measured mean of the month, else the steady maximum by Giroud et al. 2000, an upper estimate, beside McEnroe 1993. Head and leakage are design checks, not a proof that a liner is sound.',
   ],
   ['Left out', 'Biochemical gain or loss of water is neglected.'],
 ];
@@ -67,7 +69,13 @@ export function MethodPage() {
         <CaseTable key={one.id} one={one} />
       ))}
       <Section title="Single values">
-        <ValueTable values={values} />
+        <ValueTable label="Single published values" values={values} />
+      </Section>
+      <Section
+        title="Liner and waste"
+        aside="figures computed from the formulas elsewhere; no worked example of their authors could be read"
+      >
+        <ValueTable label="Values of liner and waste formulas" values={linerValues} />
       </Section>
       <Section title="Try a balance" aside="one soil cover, twelve months; nothing is stored" id="try">
         <TryBalanceForm first={first} />

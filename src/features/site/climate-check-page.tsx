@@ -3,6 +3,8 @@ import { Link, useParams } from 'react-router';
 import {
   climateFieldNames,
   climateFields,
+  climateUnitNames,
+  climateUnitsOf,
   type ClimateField,
   type ClimateMapping,
   type ClimateUnit,
@@ -13,19 +15,6 @@ import { usePlace } from '../../app/place.ts';
 import { PageHead, ScrollBox, Section } from '../../components/page.tsx';
 import { Viewed } from '../../components/state.tsx';
 import { useRecord, useWrite } from '../../lib/record.ts';
-
-const depthUnits: [ClimateUnit, string][] = [
-  ['mm', 'mm'],
-  ['cm', 'cm'],
-  ['in', 'inches'],
-  ['mm-tenths', 'tenths of mm'],
-  ['in-hundredths', 'hundredths of an inch'],
-];
-const temperatureUnits: [ClimateUnit, string][] = [
-  ['C', '°C'],
-  ['F', '°F'],
-];
-const unitsOf = (field: ClimateField) => (field.startsWith('t') ? temperatureUnits : depthUnits);
 
 function Mapping({ view, isOpen }: { view: ClimateImportView; isOpen: boolean }) {
   const { site } = usePlace();
@@ -57,7 +46,7 @@ function Mapping({ view, isOpen }: { view: ClimateImportView; isOpen: boolean })
       <div className="grid gap-3 sm:grid-cols-2 lg:grid-cols-3">
         {climateFields.map((field) => {
           const column = columnOf(field);
-          const units = unitsOf(field);
+          const units = climateUnitsOf[field];
           return (
             <fieldset key={field} className="box grid gap-2" disabled={!isOpen}>
               <legend className="font-semibold px-1">{climateFieldNames[field]}</legend>
@@ -72,7 +61,7 @@ function Mapping({ view, isOpen }: { view: ClimateImportView; isOpen: boolean })
                   put(
                     field,
                     event.target.value === '' ? null : Number(event.target.value),
-                    column?.unit ?? units[0]![0],
+                    column?.unit ?? units[0]!,
                   )
                 }
               >
@@ -85,12 +74,12 @@ function Mapping({ view, isOpen }: { view: ClimateImportView; isOpen: boolean })
               <select
                 id={`unit-${field}`}
                 className="input"
-                value={column?.unit ?? units[0]![0]}
+                value={column?.unit ?? units[0]}
                 onChange={(event) => column && put(field, column.column, event.target.value as ClimateUnit)}
               >
-                {units.map(([value, label]) => (
-                  <option key={value} value={value}>
-                    {label}
+                {units.map((unit) => (
+                  <option key={unit} value={unit}>
+                    {climateUnitNames[unit]}
                   </option>
                 ))}
               </select>
@@ -130,7 +119,7 @@ function Rows({ rows, fields }: { rows: ClimateImportView['rows']; fields: Clima
             <th scope="col">Day or month</th>
             {fields.map((field) => (
               <th key={field} scope="col" className="r">
-                {climateFieldNames[field]}, {field.startsWith('t') ? '°C' : 'mm'}
+                {climateFieldNames[field]}, {climateUnitNames[climateUnitsOf[field][0]!]}
               </th>
             ))}
             <th scope="col">Noticed</th>

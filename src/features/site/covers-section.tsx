@@ -1,5 +1,8 @@
+import { useFormContext } from 'react-hook-form';
 import { coverTypeInput, type CoverTypeInput } from '#shared/schemas/sites.ts';
-import { coverKindNames, coverKinds } from '#shared/water-balance/cover-types.ts';
+import { coverKindNames, coverKinds, runoffShareTable } from '#shared/water-balance/cover-types.ts';
+import { parameterTemplate } from '#shared/water-balance/engine-input.ts';
+import { DefectFields } from '../../components/defect-fields.tsx';
 import { usePlace } from '../../app/place.ts';
 import { ChoiceField, RecordForm, TextField } from '../../components/form.tsx';
 import { ScrollBox, Section } from '../../components/page.tsx';
@@ -7,6 +10,59 @@ import { Template, Word } from '../../components/words.tsx';
 import { newId } from '../../lib/new-id.ts';
 import { useWrite } from '../../lib/record.ts';
 import { FormLink, type SectionProps } from './site-parts.tsx';
+
+/** Leakage through defects instead of a share, with the head in the cover's own drain. */
+function MembraneLeakage() {
+  const { watch, setValue } = useFormContext<CoverTypeInput>();
+  const hasDefects = Boolean(watch('membraneDefects'));
+  return (
+    <>
+      {hasDefects && <DefectFields prefix="membraneDefects" />}
+      <p>
+        <button
+          type="button"
+          className="link"
+          onClick={() => setValue('membraneDefects', hasDefects ? null : parameterTemplate.liner)}
+        >
+          {hasDefects ? 'Use the share instead' : 'Compute the leakage through defects instead of a share'}
+        </button>
+      </p>
+    </>
+  );
+}
+
+/** The published runoff shares beside the boxes they go into. */
+function RunoffTable() {
+  return (
+    <table className="tbl tbl-tight sheet">
+      <caption className="!p-2 text-sm">
+        Runoff share by soil and slope: Fenn, Hanley and DeGeare 1975, Table 3 (from memory)
+      </caption>
+      <thead>
+        <tr>
+          <th scope="col">Soil</th>
+          {runoffShareTable.slopes.map((slope) => (
+            <th key={slope} scope="col" className="r">
+              {slope}
+            </th>
+          ))}
+        </tr>
+      </thead>
+      <tbody>
+        {runoffShareTable.rows.map(({ soil, shares }) => (
+          <tr key={soil}>
+            <th scope="row">{soil}</th>
+            {shares.map((share) => (
+              <td key={share} className="r">
+                {share}
+              </td>
+            ))}
+          </tr>
+        ))}
+      </tbody>
+    </table>
+  );
+}
 
 function CoverTypeForm({ onDone }: { onDone: () => void }) {
   const { site } = usePlace();
@@ -19,6 +75,8 @@ function CoverTypeForm({ onDone }: { onDone: () => void }) {
         name: '',
         availableWaterMm: '',
         membranePassFraction: '',
+        membraneDefects: null,
+        curveNumber: '',
         runoffCoefficientWet: '',
         runoffCoefficientDry: '',
         petFactor: '1',
@@ -48,8 +106,17 @@ function CoverTypeForm({ onDone }: { onDone: () => void }) {
         hint="Share of one; empty without a membrane."
         isOptional
       />
+      <MembraneLeakage />
+      <RunoffTable />
       <TextField name="runoffCoefficientWet" label="Runoff share, wet season" inputMode="decimal" />
       <TextField name="runoffCoefficientDry" label="Runoff share, dry season" inputMode="decimal" />
+      <TextField
+        name="curveNumber"
+        label="Curve number, average condition"
+        inputMode="decimal"
+        hint="Used where the parameter set asks for it and daily rain exists (TR-55)."
+        isOptional
+      />
       <ChoiceField
         name="runoffDestination"
         label="Runoff goes to"
@@ -122,9 +189,14 @@ export function CoversSection({ view }: SectionProps) {
                   <span className="hint block max-w-[44ch]">{type.source}</span>
                 </th>
                 <td className="r">{type.availableWaterMm}</td>
-                <td className="r">{type.membranePassFraction ?? 'no membrane'}</td>
+                <td className="r">
+                  {type.membraneDefects
+                    ? `by ${type.membraneDefects.defectsPerHa} defects/ha`
+                    : (type.membranePassFraction ?? 'no membrane')}
+                </td>
                 <td className="r">
                   {type.runoffCoefficientWet} / {type.runoffCoefficientDry}
+                  {type.curveNumber && <span className="hint block">curve number {type.curveNumber}</span>}
                 </td>
                 <td>{type.runoffDestination === 'leachate' ? 'leachate' : 'storm water'}</td>
                 <td className="r">{type.petFactor}</td>

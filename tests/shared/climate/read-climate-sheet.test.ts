@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { detectClimateMapping, readClimateSheet } from '#shared/climate/read-climate-sheet.ts';
-import { settleGap, summariseMonth } from '#shared/climate/month-climate.ts';
+import { settleGap, summariseMonth, noClimate } from '#shared/climate/month-climate.ts';
 import { sheetOf } from '../../factories/sheets.ts';
 
 const read = (rows: (string | number | null)[][]) => {
@@ -67,13 +67,7 @@ describe('climate sheets', () => {
 });
 
 describe('a month with missing days', () => {
-  const day = (precipitationMm: number | null) => ({
-    precipitationMm,
-    tMinC: 4,
-    tMaxC: 8,
-    tMeanC: null,
-    petMm: null,
-  });
+  const day = (precipitationMm: number | null) => ({ ...noClimate, precipitationMm, tMinC: 4, tMaxC: 8 });
   const days = new Map(
     Array.from(
       { length: 30 },
