@@ -1,3 +1,5 @@
+import type { MassBreak } from '../reconciliation/double-mass.ts';
+import type { PeriodTotal } from '../reconciliation/period-totals.ts';
 import type { BalanceParameters } from '../water-balance/engine-input.ts';
 import type { WorkingLine } from '../water-balance/explain-step.ts';
 import type { HeadLine } from '../water-balance/sum-steps.ts';
@@ -122,6 +124,9 @@ export interface CompareView {
   cells: { code: string; name: string }[];
   run: BalanceRunView & { isAccepted: boolean; isOutOfDate: boolean };
   percentFloorMm: number;
+  /** First month of the balance of the cell: sums run from it. */
+  firstMonth: string | null;
+  periods: PeriodTotal[];
   rows: ComparedRow[];
   statistics: {
     pairCount: number;
@@ -130,6 +135,8 @@ export interface CompareView {
     nashSutcliffe: number | null;
     leftOutCount: number;
   };
+  lags: { lagMonths: number; r: number; pairCount: number }[];
+  massBreak: MassBreak | null;
   findings: {
     code: string;
     severity: 'stops' | 'ask' | 'note';

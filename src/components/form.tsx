@@ -191,11 +191,16 @@ export function TextField({
   );
 }
 
-export function ChoiceField({
-  options,
-  ...props
-}: FieldProps & { options: { value: string; label: string }[] }) {
+interface Choice {
+  value: string;
+  label: string;
+  /** Heading it stands under; choices of one heading follow each other. */
+  group?: string;
+}
+
+export function ChoiceField({ options, ...props }: FieldProps & { options: readonly Choice[] }) {
   const { register, error, hintId, errorId } = useField(props.name);
+  const groups = [...new Set(options.map((option) => option.group))];
   return (
     <FieldFrame {...props} error={error} hintId={hintId} errorId={errorId}>
       <select
@@ -206,11 +211,22 @@ export function ChoiceField({
         {...register(props.name)}
       >
         <option value="">Choose …</option>
-        {options.map((option) => (
-          <option key={option.value} value={option.value}>
-            {option.label}
-          </option>
-        ))}
+        {groups.map((group) => {
+          const own = options
+            .filter((option) => option.group === group)
+            .map((option) => (
+              <option key={option.value} value={option.value}>
+                {option.label}
+              </option>
+            ));
+          return group ? (
+            <optgroup key={group} label={group}>
+              {own}
+            </optgroup>
+          ) : (
+            own
+          );
+        })}
       </select>
     </FieldFrame>
   );

@@ -106,7 +106,7 @@ describe('the environmental engineer', () => {
     await held.visit.go(`${site}/compare/2026-02?cell=C3`);
     await page.getByRole('button', { name: 'Jan 2026' }).click();
     const panel = page.getByRole('dialog');
-    await panel.getByLabel('Cause').selectOption('storage of the waste');
+    await panel.getByLabel('Cause').selectOption('waste storage filling (young cell)');
     await panel.getByLabel('Evidence').fill('Fresh lift still takes up water');
     await panel.getByRole('button', { name: 'Save the note' }).click();
     await expect.poll(() => page.getByRole('dialog').count()).toBe(0);

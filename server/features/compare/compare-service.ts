@@ -1,16 +1,19 @@
 import { desc, eq } from 'drizzle-orm';
 import type * as z from 'zod';
 import { dayNameShort, monthOfDay } from '#shared/calendar/day.ts';
-import { addMonths, monthName, monthRange, type Month } from '#shared/calendar/month.ts';
+import { monthName, type Month } from '#shared/calendar/month.ts';
 import { fieldProblem } from '#shared/problems.ts';
 import { compareMonths } from '#shared/reconciliation/compare-months.ts';
+import { findMassBreak } from '#shared/reconciliation/double-mass.ts';
+import { compareFindings } from '#shared/reconciliation/findings.ts';
 import { correlationAtLag, fitStatistics } from '#shared/reconciliation/fit-statistics.ts';
+import { periodTotals } from '#shared/reconciliation/period-totals.ts';
 import type { Finding } from '#shared/findings.ts';
 import type { compareNoteInput } from '#shared/schemas/balance.ts';
 import { coverKindNames, type CoverKind } from '#shared/water-balance/cover-types.ts';
 import { completeParameters, type BalanceParameters } from '#shared/water-balance/engine-input.ts';
-import type { StepResult } from '#shared/water-balance/run-water-balance.ts';
 import { sumSteps } from '#shared/water-balance/sum-steps.ts';
+import { asTerms, type StepTerms } from '#shared/water-balance/terms.ts';
 import type { CompareView } from '#shared/views/balance-view.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import { compareNotes } from '../../db/schema/balance.ts';
@@ -19,110 +22,16 @@ import type { Context, Dependencies } from '../../http/route.ts';
 import * as balanceRepository from '../balance/balance-repository.ts';
 import { currentParameters, predictionRun } from '../balance/run-service.ts';
 import { readSite, siteOf, type SiteRecord } from '../sites/site-service.ts';
-import { measuredByCell } from './measured-service.ts';
+import { cellEvents } from './cell-events.ts';
+import { measuredByCell, type MeasuredMonth } from './measured-service.ts';
 
 export const listNotes = (tx: Transaction, siteId: string) =>
   tx.select().from(compareNotes).where(eq(compareNotes.siteId, siteId)).orderBy(desc(compareNotes.writtenAt));
 
-/** What happened at a cell: cover changes and meter events, each on its day. */
-function eventsOf(record: SiteRecord, cellId: string): { onDay: string; sentence: string }[] {
-  const plotIds = new Set(record.plots.filter((plot) => plot.cellId === cellId).map((plot) => plot.id));
-  const first = new Map<string, string>();
-  for (const period of record.coverPeriods)
-    if (!first.has(period.plotId)) first.set(period.plotId, period.id);
-  const covers = record.coverPeriods
-    .filter(
-      (period) =>
-        plotIds.has(period.plotId) &&
-        period.fromOn > record.cells.find((cell) => cell.id === cellId)!.openedOn,
-    )
-    .filter((period) => {
-      const plot = record.plots.find((one) => one.id === period.plotId)!;
-      const parentCover = record.coverPeriods
-        .filter((one) => one.plotId === plot.parentId)
-        .at(-1)?.coverTypeId;
-      return first.get(period.plotId) !== period.id || parentCover !== period.coverTypeId;
-    })
-    .map((period) => {
-      const plot = record.plots.find((one) => one.id === period.plotId)!;
-      const type = record.coverTypes.find((one) => one.id === period.coverTypeId)!;
-      return {
-        onDay: period.fromOn,
-        sentence: `${(Number(plot.areaM2) / 10_000).toFixed(1)} ha became ${type.name}`,
-      };
-    });
-  const sumpIds = new Set(record.sumps.filter((sump) => sump.cellId === cellId).map((sump) => sump.id));
-  const meters = record.meters.filter((meter) => meter.sumpId && sumpIds.has(meter.sumpId));
-  const meterEvents = record.meterEvents
-    .filter((event) => meters.some((meter) => meter.id === event.meterId))
-    .map((event) => ({
-      onDay: event.siteDay,
-      sentence: `${meters.find((meter) => meter.id === event.meterId)!.code} meter: ${event.kind.replace('-', ' ')}`,
-    }));
-  return [...covers, ...meterEvents].sort((a, b) => (a.onDay < b.onDay ? -1 : 1));
-}
+/** The double-mass curve is searched over the last three years. @assumed our choice */
+const massMonths = 36;
 
-const round = (value: number) => Math.round(value).toLocaleString('en-GB').replaceAll(',', '\u2009');
-const signed = (value: number) => `${value < 0 ? '\u2212' : '+'}${round(Math.abs(value))}`;
-
-function findingsOf(rows: ReturnType<typeof compareMonths>, cellCode: string): Finding[] {
-  const last = rows.findLast((row) => row.measuredM3 !== null);
-  if (!last)
-    return [
-      {
-        code: 'nothing-measured',
-        severity: 'ask',
-        sentence: `Nothing was measured at ${cellCode} in these months.`,
-      },
-    ];
-  const { rolling } = last;
-  const difference = rolling.measuredM3 - rolling.predictedM3;
-  const tolerance = Math.abs(rolling.predictedM3) * 0.1;
-  const findings: Finding[] = [
-    {
-      code: 'rolling-twelve',
-      severity: Math.abs(difference) <= tolerance ? 'note' : 'ask',
-      difference,
-      tolerance,
-      unit: 'm³',
-      when: last.month,
-      sentence: `${rolling.monthCount} of 12 months to ${monthName(last.month)}: ${round(rolling.measuredM3)} m³ pumped against ${round(rolling.predictedM3)} predicted${rolling.percent === null ? '' : `, ${rolling.percent < 0 ? '\u2212' : '+'}${Math.abs(rolling.percent).toFixed(1)} %`}.`,
-    },
-  ];
-  let streak = 0;
-  for (const row of [...rows].reverse()) {
-    if (row.measuredM3 === null) continue;
-    if (row.isInside !== false || Math.sign(row.differenceM3!) !== Math.sign(last.differenceM3!)) break;
-    streak += 1;
-  }
-  if (streak >= 3) {
-    findings.push({
-      code: 'months-in-a-row',
-      severity: 'ask',
-      difference: last.differenceM3!,
-      tolerance: last.tolerance!.valueM3,
-      unit: 'm³',
-      when: last.month,
-      sentence: `${streak} months in a row ${last.differenceM3! > 0 ? 'more' : 'less'} was pumped than predicted; ${monthName(last.month)} by ${signed(last.differenceM3!)} m³.`,
-    });
-  }
-  const pairs = rows
-    .filter((row) => row.measuredM3 !== null)
-    .map((row) => ({ predicted: row.predictedM3, measured: row.measuredM3! }));
-  const lags = [0, 1, 2, 3]
-    .map((lag) => ({ lag, found: correlationAtLag(pairs, lag) }))
-    .filter((one) => one.found);
-  const best = [...lags].sort((a, b) => b.found!.r - a.found!.r)[0];
-  const none = lags.find((one) => one.lag === 0);
-  if (best && none && best.lag > 0) {
-    findings.push({
-      code: 'lag',
-      severity: 'note',
-      sentence: `Pumped follows predicted ${best.lag} ${best.lag === 1 ? 'month' : 'months'} later: correlation ${best.found!.r.toFixed(3)} against ${none.found!.r.toFixed(3)} without delay (${best.found!.pairCount} pairs).`,
-    });
-  }
-  return findings;
-}
+type CompareStep = Awaited<ReturnType<typeof balanceRepository.listSteps>>[number] & { terms: StepTerms };
 
 /** A header divided by the prediction cannot tell its cells apart; the reader must know before believing a match. */
 const circularFinding = (cellCode: string, monthCount: number): Finding[] =>
@@ -136,7 +45,24 @@ const circularFinding = (cellCode: string, monthCount: number): Finding[] =>
         },
       ];
 
-/** Predicted against measured for one cell, the months up to the chosen one. */
+const perMm = (value: number, areaM2: number) => (value / areaM2) * 1000;
+
+/** Steps of the prediction by cell and month, summed. */
+async function summedSteps(tx: Transaction, runId: string) {
+  const byKey = new Map<string, CompareStep[]>();
+  for (const row of await balanceRepository.listSteps(tx, runId)) {
+    const key = `${row.cellId} ${row.month}`;
+    const step = { ...row, terms: asTerms(row.terms) };
+    const group = byKey.get(key);
+    if (group) group.push(step);
+    else byKey.set(key, [step]);
+  }
+  return { byKey, summed: new Map([...byKey].map(([key, group]) => [key, sumSteps(group)])) };
+}
+
+/**
+ * Predicted against measured for one cell. Sums run from the first month of the balance; the rows are the last ones.
+ */
 export async function readCompare(
   tx: Transaction,
   context: Context,
@@ -150,65 +76,65 @@ export async function readCompare(
   const cell = record.cells.find((one) => one.code === cellCode) ?? record.cells[0];
   if (!cell) throw fieldProblem('/query/cell', 'There is no cell to compare yet. Make one under Site.');
   const { run, isAccepted, isOutOfDate } = await predictionRun(tx, context, deps, record);
-  const parameters = completeParameters(
+  const { percentFloorMm } = completeParameters(
     (await currentParameters(tx, context, deps)).values as Partial<BalanceParameters>,
   );
-  const steps = (await balanceRepository.listSteps(tx, run.id)).map((row) => ({
-    ...row,
-    terms: row.terms as StepResult['terms'],
-  }));
-  const byKey = new Map<string, typeof steps>();
-  for (const step of steps)
-    byKey.set(`${step.cellId} ${step.month}`, [...(byKey.get(`${step.cellId} ${step.month}`) ?? []), step]);
-  const summed = new Map([...byKey].map(([key, group]) => [key, sumSteps(group)]));
+  const { byKey, summed } = await summedSteps(tx, run.id);
   const predicted = new Map([...summed].map(([key, sum]) => [key, sum.volumesM3.leachateMm]));
-  const available = [
-    ...new Set(steps.filter((step) => step.cellId === cell.id).map((step) => step.month)),
-  ].sort();
+  const available = [...predicted.keys()]
+    .filter((key) => key.startsWith(cell.id))
+    .map((key) => key.slice(-7))
+    .sort();
   const lastMonth = available.filter((month) => month <= last).at(-1) ?? available.at(-1);
-  const months = lastMonth
-    ? monthRange(addMonths(lastMonth, 1 - monthCount), lastMonth).filter((month) =>
-        predicted.has(`${cell.id} ${month}`),
-      )
-    : [];
+  const months = available.filter((month) => month <= (lastMonth ?? ''));
   const measured = months.length
     ? await measuredByCell(tx, record, months[0]!, months.at(-1)!, predicted)
-    : new Map();
-  const rows = compareMonths(
+    : new Map<string, MeasuredMonth>();
+  const all = compareMonths(
     months.map((month) => {
       const sum = summed.get(`${cell.id} ${month}`)!;
       return {
         month,
         areaM2: sum.meanAreaM2,
-        rainMm: (sum.volumesM3.precipitationMm / sum.meanAreaM2) * 1000,
+        rainMm: perMm(sum.volumesM3.precipitationMm, sum.meanAreaM2),
         predictedM3: sum.volumesM3.leachateMm,
         measuredM3: measured.get(`${cell.id} ${month}`)?.volumeM3 ?? null,
       };
     }),
-    parameters.percentFloorMm,
+    percentFloorMm,
   );
+  const rows = all.slice(-monthCount);
   const notes = (await listNotes(tx, siteId)).filter((note) => note.cellId === cell.id);
-  const events = eventsOf(record, cell.id);
-  const pairs = rows
-    .filter((row) => row.measuredM3 !== null)
-    .map((row) => ({ predicted: row.predictedM3, measured: row.measuredM3! }));
+  const events = cellEvents(record, cell.id);
+  const pairsOf = (from: typeof all) =>
+    from.flatMap((row) => (row.measuredM3 === null ? [] : [{ ...row, measuredM3: row.measuredM3 }]));
+  const pairs = pairsOf(rows).map((row) => ({ predicted: row.predictedM3, measured: row.measuredM3 }));
+  // A bend of months that all lie inside their tolerance is no question.
+  const recent = all.slice(-massMonths);
+  const massBreak = recent.some((row) => row.isInside === false)
+    ? findMassBreak(pairsOf(recent), events)
+    : null;
+  const dividedCount = rows.filter(
+    (row) => (measured.get(`${cell.id} ${row.month}`)?.dividedByPredictionM3 ?? 0) > 0,
+  ).length;
   return {
     cell: { id: cell.id, code: cell.code, name: cell.name },
     cells: record.cells.map((one) => ({ code: one.code, name: one.name })),
     run: { ...run, isAccepted, isOutOfDate },
-    percentFloorMm: parameters.percentFloorMm,
+    percentFloorMm,
+    firstMonth: months[0] ?? null,
+    periods: periodTotals(all, percentFloorMm),
     rows: rows.map((row) => {
       const sum = summed.get(`${cell.id} ${row.month}`)!;
-      const group = byKey.get(`${cell.id} ${row.month}`)!;
       const own = measured.get(`${cell.id} ${row.month}`);
-      const perMm = (value: number, areaM2: number) => (value / areaM2) * 1000;
+      const percentOf = (part: number) => (own && own.volumeM3 > 0 ? (100 * part) / own.volumeM3 : 0);
       return {
         ...row,
         aetMm: perMm(sum.volumesM3.aetMm, sum.meanAreaM2),
         storageMm: perMm(sum.volumesM3.soilStoreMm + sum.volumesM3.wasteStoreMm, sum.areaM2),
-        estimatedPercent: own && own.volumeM3 > 0 ? (100 * own.estimatedM3) / own.volumeM3 : 0,
-        allocatedPercent: own && own.volumeM3 > 0 ? (100 * own.allocatedM3) / own.volumeM3 : 0,
-        covers: coversOf(record, group),
+        estimatedPercent: percentOf(own?.estimatedM3 ?? 0),
+        allocatedPercent: percentOf(own?.allocatedM3 ?? 0),
+        covers: coversOf(record, byKey.get(`${cell.id} ${row.month}`)!),
         events: events
           .filter((event) => monthOfDay(event.onDay) === row.month)
           .map((event) => ({ ...event, when: dayNameShort(event.onDay) })),
@@ -216,14 +142,12 @@ export async function readCompare(
       };
     }),
     statistics: { ...fitStatistics(pairs), leftOutCount: rows.length - pairs.length },
-    findings: [
-      ...findingsOf(rows, cell.code),
-      ...circularFinding(
-        cell.code,
-        rows.filter((row) => (measured.get(`${cell.id} ${row.month}`)?.dividedByPredictionM3 ?? 0) > 0)
-          .length,
-      ),
-    ],
+    lags: [0, 1, 2, 3].flatMap((lagMonths) => {
+      const found = correlationAtLag(pairs, lagMonths);
+      return found ? [{ lagMonths, ...found }] : [];
+    }),
+    massBreak,
+    findings: [...compareFindings(rows, cell.code, massBreak), ...circularFinding(cell.code, dividedCount)],
   };
 }
 

@@ -18,7 +18,7 @@ const lineWords: Record<string, string> = {
   soil: 'rain + melt + returned + brought = runoff + evapotranspiration + into soil + percolation',
   cover: 'percolation = through the membrane + cover drain',
   waste: 'through the membrane + returned + free moisture = absorbed + into waste + drained',
-  drain: 'drained = collected + leaked',
+  drain: 'drained + condensate = collected + leaked',
 };
 
 function sentenceOf(view: BalanceView, group: BalanceGroup): string {

@@ -10,9 +10,12 @@ import { formatInstant, formatM3, formatSigned } from '../../lib/format-quantity
 import { useRecord } from '../../lib/record.ts';
 import { MonthNote } from './month-note.tsx';
 import { MonthTable } from './month-table.tsx';
+import { PeriodTable } from './period-table.tsx';
 import { RollingTable } from './rolling-table.tsx';
 
 const severityWords = { stops: 'Stops', ask: 'Ask', note: 'Agrees' } as const;
+/** Findings that say something about the months without agreeing or asking. */
+const noteWords: Record<string, string> = { lag: 'Delay', 'divided-by-prediction': 'Shared' };
 const severityLooks = { stops: 'bad', ask: 'ask', note: 'good' } as const;
 
 function Findings({ view }: { view: CompareView }) {
@@ -20,8 +23,8 @@ function Findings({ view }: { view: CompareView }) {
     <ul className="sheet lines px-4 list-none">
       {view.findings.map((finding) => (
         <li key={finding.code} className="flex flex-wrap gap-x-5 gap-y-1 items-baseline">
-          <Word look={finding.code === 'lag' ? 'open' : severityLooks[finding.severity]}>
-            {finding.code === 'lag' ? 'Delay' : severityWords[finding.severity]}
+          <Word look={noteWords[finding.code] ? 'open' : severityLooks[finding.severity]}>
+            {noteWords[finding.code] ?? severityWords[finding.severity]}
           </Word>
           <span className="flex-1 min-w-[240px]">{finding.sentence}</span>
           {finding.difference !== undefined && (
@@ -152,6 +155,14 @@ export function ComparePage() {
                   </button>
                 </div>
                 {isRolling ? <RollingTable view={data} /> : <MonthTable view={data} onOpen={setOpen} />}
+                {!isRolling && (
+                  <Section
+                    title="In every unit"
+                    aside={`to ${monthName(data.rows.at(-1)!.month)}; months without a reading count on neither side`}
+                  >
+                    <PeriodTable view={data} />
+                  </Section>
+                )}
                 <Section title="What is compared">
                   <p className="max-w-[80ch]">
                     Pumped is what left the cell’s sump, gross of any liquid returned to it. Liquid standing

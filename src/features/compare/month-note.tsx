@@ -1,4 +1,5 @@
 import { monthName } from '#shared/calendar/month.ts';
+import { causesFor } from '#shared/reconciliation/causes.ts';
 import { compareNoteInput, type CompareNoteInput } from '#shared/schemas/balance.ts';
 import type { ComparedRow } from '#shared/views/balance-view.ts';
 import { usePlace } from '../../app/place.ts';
@@ -10,18 +11,6 @@ import { newId } from '../../lib/new-id.ts';
 import { useWrite } from '../../lib/record.ts';
 
 export const noteLooks: Record<string, Look> = { open: 'ask', explained: 'good', reconciled: 'good' };
-
-const causes = [
-  'meter',
-  'liquid held in the sump',
-  'runoff coefficient',
-  'cover or area',
-  'storage of the waste',
-  'groundwater or surface water in',
-  'leak',
-  'climate',
-  'other',
-];
 
 function Numbers({ row }: { row: ComparedRow }) {
   return (
@@ -114,7 +103,9 @@ export function MonthNote({
               <ChoiceField
                 name="cause"
                 label="Cause"
-                options={causes.map((one) => ({ value: one, label: one }))}
+                options={causesFor(row.differenceM3).flatMap(({ title, causes }) =>
+                  causes.map((one) => ({ value: one, label: one, group: title })),
+                )}
               />
               <ChoiceField
                 name="state"

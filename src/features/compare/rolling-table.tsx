@@ -1,9 +1,8 @@
 import { monthName } from '#shared/calendar/month.ts';
-import { compareLinesChart } from '#shared/charts/compare-chart.ts';
 import type { CompareView } from '#shared/views/balance-view.ts';
 import { ScrollBox, Section } from '../../components/page.tsx';
-import { LineChart } from '../../components/line-chart.tsx';
 import { formatM3, formatNumber, formatPercent, formatSigned } from '../../lib/format-quantity.ts';
+import { BreakCauses, MassPicture } from './mass-picture.tsx';
 
 function Statistics({ view }: { view: CompareView }) {
   const { statistics: s } = view;
@@ -38,7 +37,7 @@ function Statistics({ view }: { view: CompareView }) {
     ],
   ];
   return (
-    <table className="tbl tbl-tight sheet max-w-[66ch]">
+    <table className="tbl tbl-tight sheet">
       <caption className="sr-only">Fit of the months shown</caption>
       <tbody>
         {rows.map(([name, value, words]) => (
@@ -53,21 +52,72 @@ function Statistics({ view }: { view: CompareView }) {
   );
 }
 
-/** Rolling twelve and cumulative, as a picture and as the table of the same numbers. */
+function Delay({ view }: { view: CompareView }) {
+  if (!view.lags.length)
+    return <p className="text-muted">A delay needs at least three months with both sides.</p>;
+  return (
+    <table className="tbl tbl-tight sheet">
+      <caption className="sr-only">Correlation of predicted with what was pumped some months later</caption>
+      <thead>
+        <tr>
+          <th scope="col">Months later</th>
+          <th scope="col" className="r">
+            r
+          </th>
+          <th scope="col" className="r">
+            r²
+          </th>
+          <th scope="col" className="r">
+            Pairs
+          </th>
+        </tr>
+      </thead>
+      <tbody>
+        {view.lags.map((lag) => (
+          <tr key={lag.lagMonths}>
+            <th scope="row">{lag.lagMonths}</th>
+            <td className="r">{formatSigned(lag.r, 3)}</td>
+            <td className="r">{formatNumber(lag.r * lag.r, 3)}</td>
+            <td className="r">{lag.pairCount}</td>
+          </tr>
+        ))}
+      </tbody>
+    </table>
+  );
+}
+
+/** Double mass, delay and fit, and the rolling twelve as a table. */
 export function RollingTable({ view }: { view: CompareView }) {
-  const last = view.rows.at(-1);
-  const gap = last && last.cumulativeMeasuredM3 - last.cumulativePredictedM3;
+  const { massBreak } = view;
   return (
     <>
-      <Section title="Cumulative" aside="m³">
-        <LineChart
-          config={compareLinesChart(view.rows)}
-          summary={`Cumulative volumes from ${monthName(view.rows[0]!.month)}. At the end ${formatM3(last?.cumulativeMeasuredM3 ?? 0)} m³ pumped against ${formatM3(last?.cumulativePredictedM3 ?? 0)} predicted, ${formatSigned(gap ?? 0)} m³. The table below has the same numbers.`}
-        />
-      </Section>
+      <div className="grid gap-8 lg:grid-cols-[minmax(0,7fr)_minmax(0,5fr)] [&>section]:mt-0">
+        <Section
+          title={
+            massBreak
+              ? `Each cubic metre predicted brought ${massBreak.slopeBefore.toFixed(2)} pumped before ${monthName(massBreak.month)}, ${massBreak.slopeAfter.toFixed(2)} after`
+              : 'Pumped against predicted, added up'
+          }
+        >
+          <div className="sheet pad">
+            <MassPicture view={view} />
+          </div>
+        </Section>
+        <div className="[&>section:first-child]:mt-0">
+          <Section title="What could explain the bend" aside="dated evidence first">
+            <BreakCauses view={view} />
+          </Section>
+          <Section title="Delay" aside="predicted against pumped, months later">
+            <Delay view={view} />
+          </Section>
+          <Section title="Fit">
+            <Statistics view={view} />
+          </Section>
+        </div>
+      </div>
       <Section
         title="Rolling twelve and cumulative, table"
-        aside="m³; months without a reading count on neither side"
+        aside={`m³; cumulative from ${view.firstMonth ? monthName(view.firstMonth) : 'the first month'}; months without a reading count on neither side`}
       >
         <ScrollBox label="Rolling twelve and cumulative">
           <table className="tbl tbl-tight">
@@ -122,9 +172,6 @@ export function RollingTable({ view }: { view: CompareView }) {
             </tbody>
           </table>
         </ScrollBox>
-      </Section>
-      <Section title="Fit">
-        <Statistics view={view} />
       </Section>
     </>
   );
