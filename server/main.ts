@@ -9,12 +9,14 @@ import { createDatabase, createPool } from './db/client.ts';
 import { migrateDatabase, prepareDatabase, type DatabaseUrls } from './db/migrate.ts';
 import { readEnv, type Env } from './env.ts';
 import { installationState, listDemoPeople } from './features/access/access-service.ts';
+import { createForecastJobs } from './features/forecast/forecast-jobs.ts';
 import { createLocalFileStore } from './files/file-store.ts';
 import type { Dependencies } from './http/route.ts';
 import { startMailCatcher } from './mail/mail-catcher.ts';
 import { createMailQueue, startMailWorker, startQueue } from './mail/mail-queue.ts';
 import { startSealing } from './audit/start-sealing.ts';
 import { loadDemo } from './demo/load-demo.ts';
+import { createModelPool } from './workers/model-pool.ts';
 
 function secretIn(folder: string): Uint8Array {
   const file = join(folder, 'session-secret');
@@ -61,6 +63,7 @@ async function main(): Promise<void> {
   const now = () => new Date();
   const catcher = env.SMTP_URL ? undefined : await startMailCatcher(join(env.DATA_FOLDER, 'mail'), now);
   await startMailWorker(boss, env.SMTP_URL ?? catcher!.url, env.MAIL_FROM, log);
+  const models = createModelPool();
   const deps: Dependencies = {
     database: createDatabase(pool),
     files: createLocalFileStore(join(env.DATA_FOLDER, 'files')),
@@ -71,6 +74,8 @@ async function main(): Promise<void> {
     newId: () => crypto.randomUUID(),
     publicUrl: env.PUBLIC_URL ?? `http://127.0.0.1:${env.PORT}`,
     isDemo: env.LOAD_DEMO ? env.LOAD_DEMO === 'yes' : !env.DATABASE_URL,
+    models,
+    forecasts: createForecastJobs(models),
     caughtMail: catcher?.list,
   };
   if (deps.isDemo) await loadDemo(deps);
@@ -94,6 +99,7 @@ async function main(): Promise<void> {
     await boss.stop({ graceful: false, close: true }).catch(() => undefined);
     await catcher?.stop();
     await pool.end();
+    await models.close();
     process.exit(0);
   };
   process.on('SIGINT', () => void stop());

@@ -1,4 +1,5 @@
 import { balanceRoutes } from './features/balance/balance-routes.ts';
+import { forecastRoutes } from './features/forecast/forecast-routes.ts';
 import { labRoutes } from './features/lab/lab-routes.ts';
 import { readingRoutes } from './features/readings/reading-routes.ts';
 import { reportRoutes } from './features/reports/report-routes.ts';
@@ -10,6 +11,7 @@ export const allRoutes: Route[] = [
   ...siteRoutes,
   ...readingRoutes,
   ...balanceRoutes,
+  ...forecastRoutes,
   ...labRoutes,
   ...reportRoutes,
 ];

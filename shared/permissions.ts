@@ -29,6 +29,7 @@ export const permissionTable = {
   'change:parameters': ['engineer'],
   'freeze:run': ['engineer'],
   'note:comparison': ['engineer'],
+  'run:forecast': ['engineer', 'manager', 'supervisor'],
   'upload:results': ['lab', 'supervisor', 'engineer'],
   'change:permit': ['engineer'],
   'confirm:limit': ['manager'],

@@ -5,7 +5,9 @@ import type { Permission, Role } from '#shared/permissions.ts';
 import type { Database } from '../db/client.ts';
 import type { Transaction } from '../db/transaction.ts';
 import type { FileStore } from '../files/file-store.ts';
+import type { ForecastJobs } from '../features/forecast/forecast-jobs.ts';
 import type { MailQueue } from '../mail/mail-queue.ts';
+import type { ModelPool } from '../workers/model-pool.ts';
 
 /** What the application is made of; the parts that touch the outside are handed in. */
 export interface Dependencies {
@@ -18,6 +20,8 @@ export interface Dependencies {
   newId: () => string;
   publicUrl: string;
   isDemo: boolean;
+  models: ModelPool;
+  forecasts: ForecastJobs;
   caughtMail?: (() => Promise<unknown[]>) | undefined;
 }
 

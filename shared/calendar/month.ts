@@ -36,6 +36,12 @@ export function addMonths(month: Month, count: number): Month {
   return monthOf(Math.floor(index / 12), (index % 12) + 1);
 }
 
+/** Months from one to another; negative when the second comes first. */
+export function monthsBetween(from: Month, to: Month): number {
+  const [a, b] = [monthParts(from), monthParts(to)];
+  return (b.year - a.year) * 12 + b.monthOfYear - a.monthOfYear;
+}
+
 /** Months from the first to the last, both included. */
 export function monthRange(first: Month, last: Month): Month[] {
   const months: Month[] = [];

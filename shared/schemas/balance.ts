@@ -65,6 +65,7 @@ export const balanceParameters = z.object({
   tFrostC: degrees('The frost temperature', -20, 5),
   recessionPerMonth: share('The recession constant', 5),
   channelledFraction: share('The channelled share'),
+  deficitFactor: share('The factor on the deficit of placed waste', 5),
   leakMethod: z.enum(['fraction', 'defects']),
   leakFraction: share('The leak share'),
   liner: defectLeakage,

@@ -33,6 +33,8 @@ export interface BalanceParameters {
   tFrostC: number;
   recessionPerMonth: number;
   channelledFraction: number;
+  /** Factor on the deficit to field capacity that placed waste brings. */
+  deficitFactor: number;
   /** Share of the drained water that leaks, or leakage through defects by the head on the liner. */
   leakMethod: 'fraction' | 'defects';
   leakFraction: number;
@@ -64,6 +66,7 @@ export const parameterTemplate: BalanceParameters = {
   tFrostC: 0,
   recessionPerMonth: 0.5,
   channelledFraction: 0.1,
+  deficitFactor: 1,
   leakMethod: 'fraction',
   leakFraction: 0,
   liner: {

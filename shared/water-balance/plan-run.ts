@@ -83,7 +83,9 @@ const wasteReceivers = new Set(['working-area', 'daily-cover']);
 
 /** Deficit of the month's waste over the ground that receives it, mm; by days for a step shorter than the month. */
 function placedDeficitMm(cell: EngineCell, input: EngineInput, month: MonthForcing, step: PlotStep): number {
-  const deficitM3 = cell.placedDeficitM3[month.row.month] ?? 0;
+  const placedM3 = cell.placedDeficitM3[month.row.month] ?? 0;
+  // Free moisture is water that is there: the factor speaks of the deficit only.
+  const deficitM3 = placedM3 > 0 ? placedM3 * input.parameters.deficitFactor : placedM3;
   if (deficitM3 === 0) return 0;
   const all = cell.plots.flatMap((plot) =>
     splitMonth(plot, month.span).map((one) => ({

@@ -1,8 +1,8 @@
 import type { Day } from '../calendar/day.ts';
 import type { Month } from '../calendar/month.ts';
-import { computeStep } from './compute-step.ts';
+import { computeStep, type GroundState } from './compute-step.ts';
 import type { EngineInput } from './engine-input.ts';
-import { prepareMonths, recordPet } from './month-forcing.ts';
+import { prepareMonths, recordPet, type MonthForcing } from './month-forcing.ts';
 import { planRun, type PlannedStep, type RunPlan } from './plan-run.ts';
 import { zeroTerms, type StepTerms } from './terms.ts';
 
@@ -25,12 +25,13 @@ export interface RunResult {
 /**
  * Runs a plan, carrying the water of the ground from step to step.
  * @param onStep called after every step; the terms are written over by the next one, so take what is needed
+ * @returns the ground of every plot as its last step left it, in the order of the plan's plots
  * @throws BalanceDoesNotClose naming the line
  */
 export function runPlan(
   { steps, starts, settings }: RunPlan,
   onStep: (step: PlannedStep, terms: Readonly<StepTerms>, index: number) => void,
-): void {
+): GroundState[] {
   const grounds = starts.map((start) => ({ ...start }));
   const terms = zeroTerms();
   for (let index = 0; index < steps.length; index += 1) {
@@ -40,12 +41,17 @@ export function runPlan(
     computeStep(ground, step.cover, step.forcing, settings, terms);
     onStep(step, terms, index);
   }
+  return grounds;
 }
 
 /** The steps of a site's record, laid out and ready to run. */
-export function planWaterBalance(input: EngineInput): { plan: RunPlan; warnings: string[] } {
+export function planWaterBalance(input: EngineInput): {
+  plan: RunPlan;
+  months: MonthForcing[];
+  warnings: string[];
+} {
   const { months, warnings } = prepareMonths(input, recordPet(input));
-  return { plan: planRun(input, months), warnings };
+  return { plan: planRun(input, months), months, warnings };
 }
 
 /**

@@ -11,6 +11,7 @@ export type Area =
   | 'lab'
   | 'limits'
   | 'report'
+  | 'ahead'
   | 'site'
   | 'trail'
   | 'method';
@@ -25,17 +26,18 @@ export const areas: { area: Area; name: string; permission: Permission }[] = [
   { area: 'lab', name: 'Lab', permission: 'read:lab' },
   { area: 'limits', name: 'Limits', permission: 'read:record' },
   { area: 'report', name: 'Report', permission: 'read:record' },
+  { area: 'ahead', name: 'Ahead', permission: 'read:record' },
   { area: 'site', name: 'Site', permission: 'read:record' },
   { area: 'trail', name: 'Trail', permission: 'read:trail' },
   { area: 'method', name: 'Method', permission: 'read:record' },
 ];
 
-/** Address of an area for a month: Round has days, Report has quarters, Site, Trail and Method have none. */
+/** Address of an area for a month: Round has days, Report has quarters, Ahead, Site, Trail and Method have none. */
 export function areaPath(slug: string, area: Area, month: string, today: string): string {
   const base = `/sites/${slug}/${area}`;
   if (area === 'round') return `${base}/${today.startsWith(month) ? today : lastDay(month)}`;
   if (area === 'report') return `${base}/${quarterOf(month)}`;
-  if (area === 'site' || area === 'trail' || area === 'method') return base;
+  if (area === 'ahead' || area === 'site' || area === 'trail' || area === 'method') return base;
   return `${base}/${month}`;
 }
 

@@ -87,6 +87,7 @@ export const router = createBrowserRouter([
             path: 'report/:quarter',
             element: page(() => import('../features/report/report-page.tsx'), 'ReportPage'),
           },
+          { path: 'ahead', element: page(() => import('../features/ahead/ahead-page.tsx'), 'AheadPage') },
           { path: 'site', element: page(() => import('../features/site/site-page.tsx'), 'SitePage') },
           {
             path: 'site/climate/:importId',

@@ -1,4 +1,6 @@
+import { createModelPool } from '#server/workers/model-pool.ts';
 import { monthRange, type Month } from '#shared/calendar/month.ts';
+import type { ForecastTask } from '#shared/forecast/draw-members.ts';
 import type { EngineInput } from '#shared/water-balance/engine-input.ts';
 import { planWaterBalance, runPlan } from '#shared/water-balance/run-water-balance.ts';
 import { cell, climateMonth, cover, engineInput, plot } from '../factories/engine-inputs.ts';
@@ -152,6 +154,7 @@ export async function benchEngine(): Promise<Figure[]> {
       bare: 'typed-array loop of the same arithmetic',
       bareValue: bareNs,
     },
+    ...(await benchMembers()),
     ...(await benchGrowth()),
   ];
 }
@@ -177,6 +180,63 @@ async function benchGrowth(): Promise<Figure[]> {
       unit: 'ms',
       bare: '10 cells × 10 years (linear: 100)',
       bareValue: small,
+    },
+  ];
+}
+
+const memberCount = 1000;
+
+/** Members of a forecast in the worker threads, beside the bare loop over as many plot-months on the same processors. */
+async function benchMembers(): Promise<Figure[]> {
+  const months = monthRange('1980-01', '2011-12');
+  const input = siteOf(monthRange('2012-01', '2012-12'), 8, 1);
+  const monthCount = 360;
+  const fixed = (low: number, high: number) => ({ low, high });
+  const task: ForecastTask = {
+    input: { ...input, climate: [] },
+    source: {
+      months,
+      precipitationMm: climateOf(months).map((row) => row.precipitationMm),
+      tMeanC: months.map(() => 12),
+      petMm: climateOf(months).map((row) => row.petMm!),
+    },
+    firstMonth: '2012-01',
+    monthCount,
+    grounds: {},
+    packMm: 0,
+    ranges: {
+      runoffFactor: fixed(0.8, 1.2),
+      petFactor: fixed(0.9, 1.1),
+      recessionPerMonth: fixed(0.3, 0.8),
+      channelledFraction: fixed(0, 0.2),
+    },
+    store: null,
+    seed: 1,
+  };
+  const pool = createModelPool();
+  const spanCount = pool.threadCount * 4;
+  const spans = Array.from({ length: spanCount }, (_, index) => ({
+    task,
+    from: Math.floor((index * memberCount) / spanCount),
+    to: Math.floor(((index + 1) * memberCount) / spanCount),
+  }));
+  const members = await timesMs(5, () => Promise.all(spans.map((span) => pool.drawSpan(span))));
+  await pool.close();
+  const rain = Float64Array.from({ length: monthCount }, (_, index) => 60 + 40 * Math.sin(index));
+  const pet = Float64Array.from({ length: monthCount }, (_, index) => 50 + 45 * Math.sin(index / 2));
+  const none = new Float64Array(monthCount);
+  const out = new Float64Array(8 * monthCount * termCount);
+  const bare = await timesMs(5, () => {
+    for (let member = 0; member < memberCount; member += 1)
+      bareLoop({ rain, snowfall: none, melt: none, pet }, 8, out);
+  });
+  return [
+    {
+      what: `${memberCount} members × 8 plots × ${monthCount} months in ${pool.threadCount} threads`,
+      value: median(members),
+      unit: 'ms',
+      bare: `the bare loop over as many, one thread, divided by ${pool.threadCount}`,
+      bareValue: median(bare) / pool.threadCount,
     },
   ];
 }

@@ -11,6 +11,8 @@ import { demoPeople } from '#server/demo/demo-people.ts';
 import { loadDemo } from '#server/demo/load-demo.ts';
 import { createLocalFileStore } from '#server/files/file-store.ts';
 import type { Dependencies } from '#server/http/route.ts';
+import { createForecastJobs } from '#server/features/forecast/forecast-jobs.ts';
+import { createModelPool } from '#server/workers/model-pool.ts';
 import { createMailQueue, startQueue } from '#server/mail/mail-queue.ts';
 import type { Role } from '#shared/permissions.ts';
 import { demoInstant } from '../setup/demo-instant.ts';
@@ -34,6 +36,7 @@ export async function openWorld(): Promise<World> {
   const log = pino({ level: 'silent' });
   const pool = createPool(urls.appUrl, () => undefined);
   const boss = await startQueue(urls.appUrl, log);
+  const models = createModelPool();
   const deps: Dependencies = {
     database: createDatabase(pool),
     files: createLocalFileStore(files),
@@ -44,6 +47,8 @@ export async function openWorld(): Promise<World> {
     newId: () => crypto.randomUUID(),
     publicUrl: 'http://127.0.0.1',
     isDemo: true,
+    models,
+    forecasts: createForecastJobs(models),
   };
   await loadDemo(deps);
   const server: Server = createApp(deps).listen(0, '127.0.0.1');
@@ -72,6 +77,7 @@ export async function openWorld(): Promise<World> {
       await new Promise((resolve) => server.close(resolve));
       await boss.stop({ graceful: false, close: true });
       await pool.end();
+      await models.close();
       await owner.end();
     },
   };

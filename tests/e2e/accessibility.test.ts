@@ -21,6 +21,7 @@ const pages: Record<string, [Role, string]> = {
   lab: ['lab', `${site}/lab/2026-03`],
   limits: ['manager', `${site}/limits/2026-03`],
   report: ['manager', `${site}/report/2025-Q4`],
+  ahead: ['engineer', `${site}/ahead`],
   site: ['engineer', `${site}/site`],
   people: ['admin', `${site}/site`],
   trail: ['auditor', `${site}/trail`],

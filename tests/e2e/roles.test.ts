@@ -101,6 +101,35 @@ describe('the environmental engineer', () => {
       .toBe(before + 1);
   });
 
+  it('fits the young cell, reads why not to trust it yet, and drops it', async () => {
+    const { page } = held.visit;
+    const before = await rowsOf('select 1 from parameter_sets');
+    await page.getByRole('button', { name: 'Fit to what was pumped' }).click();
+    const panel = page.getByRole('dialog');
+    await panel.getByLabel('Cell').selectOption({ label: 'C3 East' });
+    await panel.getByRole('button', { name: 'Fit to what was pumped' }).click();
+    await panel.getByText('Why it should not be trusted yet').waitFor();
+    await panel.getByText('Fewer than three years').waitFor();
+    await panel.getByRole('button', { name: 'Drop it' }).click();
+    await expect.poll(() => page.getByRole('dialog').count()).toBe(0);
+    expect(await rowsOf('select 1 from parameter_sets')).toBe(before);
+  });
+
+  it('plans a closure ahead and sees what it saves, with its uncertainty', async () => {
+    const { page } = held.visit;
+    await held.visit.go(`${site}/ahead`);
+    await page.getByRole('button', { name: 'Add a plan beside it' }).click();
+    const plan = page.locator('fieldset').filter({ hasText: 'Plan B' });
+    await plan.getByRole('button', { name: 'Cover some ground' }).click();
+    await plan.getByLabel('Plot').selectOption({ index: 3 });
+    await plan.getByLabel('Day').fill('2026-05-01');
+    await plan.getByLabel('New cover').selectOption({ label: 'final geomembrane' });
+    await plan.getByRole('button', { name: 'Take the whole plot' }).click();
+    await page.getByRole('button', { name: 'Look ahead' }).click();
+    await page.getByText(/Plan B saves .* m³ in the middle case/).waitFor();
+    await page.getByText(/8 draws in 10 fall inside/).waitFor();
+  });
+
   it('explains a month of the young cell, and the note stands beside it', async () => {
     const { page } = held.visit;
     await held.visit.go(`${site}/compare/2026-02?cell=C3`);
@@ -112,7 +141,7 @@ describe('the environmental engineer', () => {
     await expect.poll(() => page.getByRole('dialog').count()).toBe(0);
     await page
       .getByRole('row', { name: /Jan 2026/ })
-      .getByText('storage of the waste')
+      .getByText('waste storage filling')
       .waitFor();
   });
 

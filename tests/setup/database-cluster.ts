@@ -8,6 +8,8 @@ import { createDatabase, createPool } from '#server/db/client.ts';
 import { migrateDatabase, prepareDatabase } from '#server/db/migrate.ts';
 import { loadDemo } from '#server/demo/load-demo.ts';
 import { createLocalFileStore } from '#server/files/file-store.ts';
+import { createForecastJobs } from '#server/features/forecast/forecast-jobs.ts';
+import { createModelPool } from '#server/workers/model-pool.ts';
 import { createMailQueue, startQueue } from '#server/mail/mail-queue.ts';
 import { demoInstant } from './demo-instant.ts';
 
@@ -44,6 +46,7 @@ export default async function setup(project: TestProject): Promise<() => Promise
   const log = pino({ level: 'silent' });
   const pool = createPool(demoUrls.appUrl, () => undefined);
   const boss = await startQueue(demoUrls.appUrl, log);
+  const models = createModelPool();
   await loadDemo({
     database: createDatabase(pool),
     files: createLocalFileStore(filesFolder),
@@ -54,6 +57,8 @@ export default async function setup(project: TestProject): Promise<() => Promise
     newId: () => crypto.randomUUID(),
     publicUrl: 'http://127.0.0.1',
     isDemo: true,
+    models,
+    forecasts: createForecastJobs(models),
   });
   await boss.stop({ graceful: false, close: true });
   await pool.end();

@@ -9,7 +9,9 @@ import { createApp } from '#server/app.ts';
 import { createDatabase, createPool } from '#server/db/client.ts';
 import { prepareDatabase } from '#server/db/migrate.ts';
 import { createLocalFileStore } from '#server/files/file-store.ts';
+import { createForecastJobs } from '#server/features/forecast/forecast-jobs.ts';
 import type { Dependencies } from '#server/http/route.ts';
+import { createModelPool } from '#server/workers/model-pool.ts';
 import { createMailQueue, startMailWorker, startQueue } from '#server/mail/mail-queue.ts';
 import { startMailCatcher } from '#server/mail/mail-catcher.ts';
 import type { MeView } from '#shared/schemas/access.ts';
@@ -57,6 +59,7 @@ export async function openTestRecord(
     ? await startMailCatcher(join(inject('filesFolder'), name), () => now)
     : undefined;
   if (catcher) await startMailWorker(boss, catcher.url, 'Tallyweir <record@tallyweir.invalid>', log);
+  const models = createModelPool();
   const deps: Dependencies = {
     database: createDatabase(pool),
     files: createLocalFileStore(inject('filesFolder')),
@@ -67,6 +70,8 @@ export async function openTestRecord(
     newId: () => crypto.randomUUID(),
     publicUrl: 'http://127.0.0.1:5180',
     isDemo: template === 'demo_record',
+    models,
+    forecasts: createForecastJobs(models),
     caughtMail: catcher?.list,
   };
   const app = createApp(deps);
@@ -88,6 +93,7 @@ export async function openTestRecord(
     close: async () => {
       await boss.stop({ graceful: false, close: true }).catch(() => undefined);
       await catcher?.stop();
+      await models.close();
       await pool.end();
       await admin.end();
     },

@@ -12,14 +12,12 @@ import type { Finding } from '#shared/findings.ts';
 import type { compareNoteInput } from '#shared/schemas/balance.ts';
 import { coverKindNames, type CoverKind } from '#shared/water-balance/cover-types.ts';
 import { completeParameters, type BalanceParameters } from '#shared/water-balance/engine-input.ts';
-import { sumSteps } from '#shared/water-balance/sum-steps.ts';
-import { asTerms, type StepTerms } from '#shared/water-balance/terms.ts';
 import type { CompareView } from '#shared/views/balance-view.ts';
 import { recordChange } from '../../audit/record-change.ts';
 import { compareNotes } from '../../db/schema/balance.ts';
 import type { Transaction } from '../../db/transaction.ts';
 import type { Context, Dependencies } from '../../http/route.ts';
-import * as balanceRepository from '../balance/balance-repository.ts';
+import { volumesOfRun } from '../balance/predicted-volumes.ts';
 import { currentParameters, predictionRun } from '../balance/run-service.ts';
 import { readSite, siteOf, type SiteRecord } from '../sites/site-service.ts';
 import { cellEvents } from './cell-events.ts';
@@ -30,8 +28,6 @@ export const listNotes = (tx: Transaction, siteId: string) =>
 
 /** The double-mass curve is searched over the last three years. @assumed our choice */
 const massMonths = 36;
-
-type CompareStep = Awaited<ReturnType<typeof balanceRepository.listSteps>>[number] & { terms: StepTerms };
 
 /** A header divided by the prediction cannot tell its cells apart; the reader must know before believing a match. */
 const circularFinding = (cellCode: string, monthCount: number): Finding[] =>
@@ -46,19 +42,6 @@ const circularFinding = (cellCode: string, monthCount: number): Finding[] =>
       ];
 
 const perMm = (value: number, areaM2: number) => (value / areaM2) * 1000;
-
-/** Steps of the prediction by cell and month, summed. */
-async function summedSteps(tx: Transaction, runId: string) {
-  const byKey = new Map<string, CompareStep[]>();
-  for (const row of await balanceRepository.listSteps(tx, runId)) {
-    const key = `${row.cellId} ${row.month}`;
-    const step = { ...row, terms: asTerms(row.terms) };
-    const group = byKey.get(key);
-    if (group) group.push(step);
-    else byKey.set(key, [step]);
-  }
-  return { byKey, summed: new Map([...byKey].map(([key, group]) => [key, sumSteps(group)])) };
-}
 
 /**
  * Predicted against measured for one cell. Sums run from the first month of the balance; the rows are the last ones.
@@ -79,12 +62,8 @@ export async function readCompare(
   const { percentFloorMm } = completeParameters(
     (await currentParameters(tx, context, deps)).values as Partial<BalanceParameters>,
   );
-  const { byKey, summed } = await summedSteps(tx, run.id);
-  const predicted = new Map([...summed].map(([key, sum]) => [key, sum.volumesM3.leachateMm]));
-  const available = [...predicted.keys()]
-    .filter((key) => key.startsWith(cell.id))
-    .map((key) => key.slice(-7))
-    .sort();
+  const { steps, sums: summed, predicted, monthsOf } = await volumesOfRun(tx, run.id);
+  const available = monthsOf(cell.id);
   const lastMonth = available.filter((month) => month <= last).at(-1) ?? available.at(-1);
   const months = available.filter((month) => month <= (lastMonth ?? ''));
   const measured = months.length
@@ -134,7 +113,7 @@ export async function readCompare(
         storageMm: perMm(sum.volumesM3.soilStoreMm + sum.volumesM3.wasteStoreMm, sum.areaM2),
         estimatedPercent: percentOf(own?.estimatedM3 ?? 0),
         allocatedPercent: percentOf(own?.allocatedM3 ?? 0),
-        covers: coversOf(record, byKey.get(`${cell.id} ${row.month}`)!),
+        covers: coversOf(record, steps.get(`${cell.id} ${row.month}`)!),
         events: events
           .filter((event) => monthOfDay(event.onDay) === row.month)
           .map((event) => ({ ...event, when: dayNameShort(event.onDay) })),

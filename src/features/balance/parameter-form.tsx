@@ -117,6 +117,11 @@ export function ParameterForm({ current, onDone }: { current: ParameterSetView; 
         label="Channelled share of percolation"
         inputMode="decimal"
       />
+      <TextField
+        name="values.deficitFactor"
+        label="Factor on the deficit of placed waste"
+        inputMode="decimal"
+      />
       <LinerFields />
       <CheckField name="values.snow.isOn" label="Snow" />
       <TextField name="values.snow.tSnowC" label="All snow at or below" unit="°C" />

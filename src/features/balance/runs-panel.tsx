@@ -11,12 +11,14 @@ import { Template, Word } from '../../components/words.tsx';
 import { formatInstant } from '../../lib/format-quantity.ts';
 import { newId } from '../../lib/new-id.ts';
 import { useRecord, useWrite } from '../../lib/record.ts';
+import { CalibrationPanel } from './calibration-panel.tsx';
 import { ParameterForm } from './parameter-form.tsx';
 
-function Parameters() {
+function Parameters({ view }: { view: BalanceView }) {
   const { site, can } = usePlace();
   const query = useRecord<ParameterSetsView>(site.id, '/parameter-sets');
   const [isEditing, setIsEditing] = useState(false);
+  const [isFitting, setIsFitting] = useState(false);
   return (
     <Viewed query={query}>
       {({ current }) => {
@@ -37,6 +39,7 @@ function Parameters() {
           ['Frozen ground', p.isFrostOn ? `percolation stops at or below ${p.tFrostC} °C` : 'off', ''],
           ['Recession constant of the waste', String(p.recessionPerMonth), '1/month'],
           ['Channelled share', String(p.channelledFraction), ''],
+          ['Factor on the deficit of placed waste', String(p.deficitFactor), ''],
           p.leakMethod === 'fraction'
             ? ['Leak share', String(p.leakFraction), '']
             : ['Leakage', `${p.liner.defectsPerHa} defects a hectare of ${p.liner.defectAreaM2} m²`, ''],
@@ -60,12 +63,21 @@ function Parameters() {
               ))}
             </dl>
             {can('change:parameters') && (
-              <p className="mt-3">
+              <p className="mt-3 flex flex-wrap gap-2">
                 <button type="button" className="btn btn-second" onClick={() => setIsEditing(true)}>
                   Make a new set
                 </button>
+                <button type="button" className="btn btn-second" onClick={() => setIsFitting(true)}>
+                  Fit to what was pumped
+                </button>
               </p>
             )}
+            <CalibrationPanel
+              cells={view.cells}
+              current={current}
+              isOpen={isFitting}
+              onClose={() => setIsFitting(false)}
+            />
           </div>
         );
       }}
@@ -90,7 +102,7 @@ export function RunsPanel({ view }: { view: BalanceView }) {
   return (
     <div className="grid gap-8 lg:grid-cols-2 mt-10 no-print [&>section]:mt-0">
       <Section title="Parameters">
-        <Parameters />
+        <Parameters view={view} />
       </Section>
       <Section title="Runs">
         <div className="sheet pad grid gap-3">

@@ -1,5 +1,7 @@
 import { monthName } from '#shared/calendar/month.ts';
+import { compareLinesChart } from '#shared/charts/compare-chart.ts';
 import type { CompareView } from '#shared/views/balance-view.ts';
+import { LineChart } from '../../components/line-chart.tsx';
 import { ScrollBox, Section } from '../../components/page.tsx';
 import { formatM3, formatNumber, formatPercent, formatSigned } from '../../lib/format-quantity.ts';
 import { BreakCauses, MassPicture } from './mass-picture.tsx';
@@ -89,6 +91,7 @@ function Delay({ view }: { view: CompareView }) {
 /** Double mass, delay and fit, and the rolling twelve as a table. */
 export function RollingTable({ view }: { view: CompareView }) {
   const { massBreak } = view;
+  const last = view.rows.at(-1)!;
   return (
     <>
       <div className="grid gap-8 lg:grid-cols-[minmax(0,7fr)_minmax(0,5fr)] [&>section]:mt-0">
@@ -115,6 +118,12 @@ export function RollingTable({ view }: { view: CompareView }) {
           </Section>
         </div>
       </div>
+      <Section title="Cumulative by month" aside="m³">
+        <LineChart
+          config={compareLinesChart(view.rows)}
+          summary={`Cumulative volumes from ${monthName(view.firstMonth ?? view.rows[0]!.month)}. At the end ${formatM3(last.cumulativeMeasuredM3)} m³ pumped against ${formatM3(last.cumulativePredictedM3)} predicted, ${formatSigned(last.cumulativeMeasuredM3 - last.cumulativePredictedM3)} m³. The table below has the same numbers.`}
+        />
+      </Section>
       <Section
         title="Rolling twelve and cumulative, table"
         aside={`m³; cumulative from ${view.firstMonth ? monthName(view.firstMonth) : 'the first month'}; months without a reading count on neither side`}
