@@ -90,7 +90,7 @@ const fieldPatterns: [ClimateField, RegExp][] = [
   ['petMm', /^(pet|eto?)\b|evapotransp/i],
   ['windMPerS', /^(wind|u2|wspd)/i],
   ['relativeHumidityPercent', /^(rh|rel.{0,10}hum|humidity)/i],
-  ['sunshineHours', /^(sun(shine)?)\b|bright sun/i],
+  ['sunshineHours', /^sun(shine)?(_|\b)|bright sun/i],
   ['precipitationMm', /^(prcp|precip|rain|prec|ppt)/i],
 ];
 

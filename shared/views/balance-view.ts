@@ -119,6 +119,15 @@ export interface ComparedRow {
   note: { cause: string; state: string; note: string } | null;
 }
 
+/** Pumped less returned against the run without the return; never mixed with the gross pair. */
+export interface NetPair {
+  monthCount: number;
+  pumpedM3: number;
+  returnedM3: number;
+  netM3: number;
+  predictedM3: number;
+}
+
 export interface CompareView {
   cell: { id: string; code: string; name: string };
   cells: { code: string; name: string }[];
@@ -137,6 +146,11 @@ export interface CompareView {
   };
   lags: { lagMonths: number; r: number; pairCount: number }[];
   massBreak: MassBreak | null;
+  /** Null when nothing was returned in the months shown. */
+  net: NetPair | null;
+  /** Months shown in which the liquid standing in the sumps could be counted. */
+  sumpStorageCount: number;
+  receivedM3: number;
   findings: {
     code: string;
     severity: 'stops' | 'ask' | 'note';

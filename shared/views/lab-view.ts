@@ -93,6 +93,8 @@ export interface ClimateImportView {
   mapping: import('../climate/read-climate-sheet.ts').ClimateMapping;
   headers: string[];
   notes: string[];
+  /** What the columns look like as a whole, with the cure. */
+  doubts: string[];
   problems: import('../climate/read-climate-sheet.ts').ClimateRow[];
   rows: import('../climate/read-climate-sheet.ts').ClimateRow[];
   rowCount: number;

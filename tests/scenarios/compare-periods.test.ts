@@ -1,10 +1,16 @@
 import { describe, expect, it } from 'vitest';
+import { netPairOf } from '#server/features/compare/net-pair.ts';
 import hydrologyCases from '#data/published/hydrology-cases.json' with { type: 'json' };
 import { monthRange } from '#shared/calendar/month.ts';
 import { compareMonths, type ComparedInput } from '#shared/reconciliation/compare-months.ts';
 import { findMassBreak, type MassPair } from '#shared/reconciliation/double-mass.ts';
 import { compareFindings } from '#shared/reconciliation/findings.ts';
 import { periodTotals } from '#shared/reconciliation/period-totals.ts';
+import { sumpStorageChangeM3 } from '#shared/reconciliation/sump-storage.ts';
+import type { EngineInput } from '#shared/water-balance/engine-input.ts';
+import { runWaterBalance } from '#shared/water-balance/run-water-balance.ts';
+import { sumSteps } from '#shared/water-balance/sum-steps.ts';
+import { cell, engineInput } from '../factories/engine-inputs.ts';
 
 const areaM2 = 42_000;
 
@@ -133,4 +139,48 @@ it('double mass, constructed on Searcy & Hardison 1960: slopes 1.2 and 0.9 are f
   expect(found.slopeBefore).toBeCloseTo(1.2, 9);
   expect(found.slopeAfter).toBeCloseTo(0.9, 9);
   expect(found.ratio).toBeCloseTo(0.75, 9);
+});
+
+describe('20: liquid returned into a cell', () => {
+  const months = monthRange('2025-01', '2025-12');
+  const returns = [{ siteDay: '2025-05-10', plotIds: ['plot'], isAtSurface: false, volumeM3: 350 }];
+  const input = engineInput({ cells: [cell({ returns })], parameters: { recessionPerMonth: 0.5 } });
+  const measuredOf = (volumeM3: number) => ({
+    volumeM3,
+    estimatedM3: 0,
+    apportionedM3: 0,
+    allocatedM3: 0,
+    dividedByPredictionM3: 0,
+    receivedM3: 0,
+    sumpStorageM3: null,
+  });
+  const measured = new Map(months.map((month) => [`cell ${month}`, measuredOf(400)]));
+
+  it('the net pair takes the return off what was pumped and runs without it; the gross run has it', () => {
+    const net = netPairOf(input, 'cell', months, measured)!;
+    const total = (one: EngineInput) => sumSteps(runWaterBalance(one).steps).volumesM3.leachateMm;
+    expect(net).toMatchObject({ monthCount: 12, pumpedM3: 4800, returnedM3: 350, netM3: 4450 });
+    expect(net.predictedM3).toBeCloseTo(total({ ...input, cells: [cell()] }), 6);
+    expect(total(input)).toBeGreaterThan(net.predictedM3);
+  });
+
+  it('no return in the months, no net pair', () => {
+    expect(netPairOf(input, 'cell', ['2025-08'], measured)).toBeNull();
+  });
+});
+
+describe('liquid standing in a sump', () => {
+  const levels = [
+    { siteDay: '2026-03-01', levelM: 0.4 },
+    { siteDay: '2026-04-02', levelM: 0.9 },
+  ];
+
+  it('0.5 m more in 6 m² of stone with 40 % pores is 1.2 m³', () => {
+    expect(sumpStorageChangeM3({ areaM2: 6, porosityFraction: 0.4 }, levels, '2026-03')).toBeCloseTo(1.2, 9);
+  });
+
+  it('without its dimensions, or without a level near an end of the month, nothing is counted', () => {
+    expect(sumpStorageChangeM3({ areaM2: null, porosityFraction: 0.4 }, levels, '2026-03')).toBeNull();
+    expect(sumpStorageChangeM3({ areaM2: 6, porosityFraction: 0.4 }, levels, '2026-04')).toBeNull();
+  });
 });

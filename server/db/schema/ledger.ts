@@ -239,7 +239,7 @@ export const returns = pgTable(
   ],
 );
 
-/** Gas condensate or wash-down that reaches a sump. */
+/** Gas condensate or wash-down that reaches a sump, or condensate led to the drainage layer above it. */
 export const condensate = pgTable(
   'condensate',
   {
@@ -247,7 +247,7 @@ export const condensate = pgTable(
     sumpId: uuid('sump_id').notNull(),
     month: text('month').notNull(),
     volumeM3: volumeM3('volume_m3').notNull(),
-    kind: text('kind', { enum: ['condensate', 'wash-down'] }).notNull(),
+    kind: text('kind', { enum: ['condensate', 'wash-down', 'condensate-to-layer'] }).notNull(),
   },
   (t) => [
     ownedKey(t),

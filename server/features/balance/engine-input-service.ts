@@ -22,7 +22,7 @@ function sumpMonths(record: SiteRecord, cellId: string, readings: SumpReadings) 
   const sumps = record.sumps.filter((sump) => sump.cellId === cellId && sump.kind === 'primary');
   const condensateM3: Record<Month, number> = {};
   for (const row of readings.condensate)
-    if (row.kind === 'condensate' && sumps.some((sump) => sump.id === row.sumpId))
+    if (row.kind === 'condensate-to-layer' && sumps.some((sump) => sump.id === row.sumpId))
       condensateM3[row.month] = (condensateM3[row.month] ?? 0) + Number(row.volumeM3);
   const heads = new Map<Month, number[]>();
   for (const row of readings.levels) {

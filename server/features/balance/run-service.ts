@@ -188,7 +188,7 @@ export async function acceptRun(tx: Transaction, context: Context, deps: Depende
 
 /**
  * The run that predictions are taken from: the newest accepted one, else the working run.
- * @returns `isOutOfDate` when the record has changed since the accepted run was frozen
+ * @returns `isOutOfDate` when the record has changed since the accepted run was frozen; `readInput` its complete input
  */
 export async function predictionRun(
   tx: Transaction,
@@ -199,10 +199,16 @@ export async function predictionRun(
   const accepted = (await repository.listFrozenRuns(tx, siteOf(context))).find(
     (run) => run.acceptedAt !== null,
   );
-  const { run: working } = await workingRun(tx, context, deps, record);
-  if (accepted)
-    return { run: accepted, isAccepted: true, isOutOfDate: accepted.inputSha256 !== working.inputSha256 };
-  return { run: working, isAccepted: false, isOutOfDate: false };
+  const { run: working, input } = await workingRun(tx, context, deps, record);
+  if (!accepted)
+    return { run: working, isAccepted: false, isOutOfDate: false, readInput: () => Promise.resolve(input) };
+  return {
+    run: accepted,
+    isAccepted: true,
+    isOutOfDate: accepted.inputSha256 !== working.inputSha256,
+    readInput: async () =>
+      readStoredInput((await repository.findRun(tx, siteOf(context), accepted.id))!.input!),
+  };
 }
 
 /** Recomputes a frozen run from its stored input and says whether the results agree to 1e-9. */

@@ -6,6 +6,7 @@ import {
   type ClimateMapping,
   type ClimateRow,
 } from '#shared/climate/read-climate-sheet.ts';
+import { seriesDoubts } from '#shared/climate/series-doubts.ts';
 import { Problem } from '#shared/problems.ts';
 import type { climateMappingInput, climateUploadInput } from '#shared/schemas/climate.ts';
 import { cellText, type SheetFile } from '#shared/sheets/sheet.ts';
@@ -277,6 +278,7 @@ export async function readClimateImport(
     mapping,
     headers,
     notes,
+    doubts: seriesDoubts(rows, mapping),
     problems: rows.filter((one) => one.messages.length > 0),
     rows: rows.slice(0, 400),
     rowCount: rows.length,

@@ -1,6 +1,6 @@
 import { desc, eq } from 'drizzle-orm';
 import type * as z from 'zod';
-import { dayNameShort, monthOfDay } from '#shared/calendar/day.ts';
+import { dayNameShort, firstDay, lastDay, monthOfDay } from '#shared/calendar/day.ts';
 import { monthName, type Month } from '#shared/calendar/month.ts';
 import { fieldProblem } from '#shared/problems.ts';
 import { compareMonths } from '#shared/reconciliation/compare-months.ts';
@@ -20,8 +20,10 @@ import type { Context, Dependencies } from '../../http/route.ts';
 import { volumesOfRun } from '../balance/predicted-volumes.ts';
 import { currentParameters, predictionRun } from '../balance/run-service.ts';
 import { readSite, siteOf, type SiteRecord } from '../sites/site-service.ts';
+import { listReturns } from '../ledger/entry-repository.ts';
 import { cellEvents } from './cell-events.ts';
 import { measuredByCell, type MeasuredMonth } from './measured-service.ts';
+import { netPairOf } from './net-pair.ts';
 
 export const listNotes = (tx: Transaction, siteId: string) =>
   tx.select().from(compareNotes).where(eq(compareNotes.siteId, siteId)).orderBy(desc(compareNotes.writtenAt));
@@ -58,7 +60,7 @@ export async function readCompare(
   const record = await readSite(tx, siteId);
   const cell = record.cells.find((one) => one.code === cellCode) ?? record.cells[0];
   if (!cell) throw fieldProblem('/query/cell', 'There is no cell to compare yet. Make one under Site.');
-  const { run, isAccepted, isOutOfDate } = await predictionRun(tx, context, deps, record);
+  const { run, isAccepted, isOutOfDate, readInput } = await predictionRun(tx, context, deps, record);
   const { percentFloorMm } = completeParameters(
     (await currentParameters(tx, context, deps)).values as Partial<BalanceParameters>,
   );
@@ -83,6 +85,11 @@ export async function readCompare(
     percentFloorMm,
   );
   const rows = all.slice(-monthCount);
+  const returned = rows.length
+    ? (await listReturns(tx, siteId, firstDay(rows[0]!.month), lastDay(rows.at(-1)!.month))).filter(
+        (one) => one.cellId === cell.id,
+      )
+    : [];
   const notes = (await listNotes(tx, siteId)).filter((note) => note.cellId === cell.id);
   const events = cellEvents(record, cell.id);
   const pairsOf = (from: typeof all) =>
@@ -126,6 +133,21 @@ export async function readCompare(
       return found ? [{ lagMonths, ...found }] : [];
     }),
     massBreak,
+    net: returned.length
+      ? netPairOf(
+          await readInput(),
+          cell.id,
+          rows.map((row) => row.month),
+          measured,
+        )
+      : null,
+    sumpStorageCount: rows.filter(
+      (row) => (measured.get(`${cell.id} ${row.month}`)?.sumpStorageM3 ?? null) !== null,
+    ).length,
+    receivedM3: rows.reduce(
+      (sum, row) => sum + (measured.get(`${cell.id} ${row.month}`)?.receivedM3 ?? 0),
+      0,
+    ),
     findings: [...compareFindings(rows, cell.code, massBreak), ...circularFinding(cell.code, dividedCount)],
   };
 }

@@ -1,7 +1,8 @@
 import { firstDay, lastDay } from '#shared/calendar/day.ts';
 import type { Month } from '#shared/calendar/month.ts';
 import type { Transaction } from '../../db/transaction.ts';
-import { sumEntriesByMonth } from '../ledger/entry-repository.ts';
+import { sumpStorageChangeM3 } from '#shared/reconciliation/sump-storage.ts';
+import { listCondensate, listSumpLevels, sumEntriesByMonth } from '../ledger/entry-repository.ts';
 import type { SiteRecord } from '../sites/site-service.ts';
 
 /** What left a cell's primary sumps in a month. */
@@ -13,6 +14,10 @@ export interface MeasuredMonth {
   allocatedM3: number;
   /** Part of it that was divided in proportion to the prediction: it cannot test the prediction of one cell. */
   dividedByPredictionM3: number;
+  /** Condensate and wash-down led to its sumps, taken off. */
+  receivedM3: number;
+  /** Change of liquid standing in its sumps, counted; null where no sump has levels and dimensions for it. */
+  sumpStorageM3: number | null;
 }
 
 interface HeaderShare {
@@ -48,7 +53,7 @@ function headerShare(
 
 /**
  * Measured leachate per cell and month: pumped from its primary sumps, by the dated share of each shared header,
- * less what those sumps received. Liquid standing in the sump is not counted here (0, and said on the page).
+ * less what those sumps received, plus the change of liquid standing in them where levels and dimensions allow it.
  * @param predicted predicted volume by `cellId month`, m³, for headers shared in proportion to prediction
  * @returns by `cellId month`; a month without any entry of the cell's sumps is absent: missing, not zero
  * @source method section 9
@@ -70,6 +75,8 @@ export async function measuredByCell(
       apportionedM3: 0,
       allocatedM3: 0,
       dividedByPredictionM3: 0,
+      receivedM3: 0,
+      sumpStorageM3: null,
     };
     row.volumeM3 += volumeM3;
     if (basis === 'estimated') row.estimatedM3 += volumeM3;
@@ -94,5 +101,41 @@ export async function measuredByCell(
       if (share.fraction > 0) add(cell.id, row.month, volume * share.fraction, row.basis, share);
     }
   }
+  await correctForSumps(tx, record, result);
   return result;
+}
+
+/** Takes off condensate and wash-down, and counts the liquid standing in the sumps, where a month was measured. */
+async function correctForSumps(
+  tx: Transaction,
+  record: SiteRecord,
+  result: Map<string, MeasuredMonth>,
+): Promise<void> {
+  const sumps = record.sumps.filter((sump) => sump.kind === 'primary');
+  const ids = sumps.map((sump) => sump.id);
+  const cellOf = new Map(sumps.map((sump) => [sump.id, sump.cellId]));
+  for (const row of await listCondensate(tx, ids)) {
+    const month = result.get(`${cellOf.get(row.sumpId)} ${row.month}`);
+    if (!month || row.kind === 'condensate-to-layer') continue;
+    month.receivedM3 += Number(row.volumeM3);
+    month.volumeM3 -= Number(row.volumeM3);
+  }
+  const levels = await listSumpLevels(tx, ids);
+  for (const sump of sumps) {
+    const own = levels
+      .filter((level) => level.sumpId === sump.id)
+      .map((level) => ({ siteDay: level.siteDay, levelM: Number(level.levelM) }));
+    if (!own.length) continue;
+    const size = {
+      areaM2: sump.sumpAreaM2 === null ? null : Number(sump.sumpAreaM2),
+      porosityFraction: sump.stonePorosityFraction === null ? null : Number(sump.stonePorosityFraction),
+    };
+    for (const [key, month] of result) {
+      if (!key.startsWith(sump.cellId)) continue;
+      const changeM3 = sumpStorageChangeM3(size, own, key.slice(-7));
+      if (changeM3 === null) continue;
+      month.sumpStorageM3 = (month.sumpStorageM3 ?? 0) + changeM3;
+      month.volumeM3 += changeM3;
+    }
+  }
 }

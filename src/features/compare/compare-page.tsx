@@ -1,12 +1,12 @@
 import { useState } from 'react';
 import { Link, useParams, useSearchParams } from 'react-router';
 import { monthName } from '#shared/calendar/month.ts';
-import type { CompareView } from '#shared/views/balance-view.ts';
+import type { CompareView, NetPair } from '#shared/views/balance-view.ts';
 import { usePlace } from '../../app/place.ts';
 import { PageHead, Section } from '../../components/page.tsx';
 import { Empty, Viewed } from '../../components/state.tsx';
 import { Word } from '../../components/words.tsx';
-import { formatInstant, formatM3, formatSigned } from '../../lib/format-quantity.ts';
+import { formatInstant, formatM3, formatPercent, formatSigned } from '../../lib/format-quantity.ts';
 import { useRecord } from '../../lib/record.ts';
 import { MonthNote } from './month-note.tsx';
 import { MonthTable } from './month-table.tsx';
@@ -36,6 +36,24 @@ function Findings({ view }: { view: CompareView }) {
         </li>
       ))}
     </ul>
+  );
+}
+
+/** The other pair where liquid was returned; the two are never mixed. */
+function NetLine({ net }: { net: NetPair }) {
+  const difference = net.netM3 - net.predictedM3;
+  return (
+    <p className="box mb-4 max-w-[80ch]">
+      <strong>Net of what was returned:</strong> {formatM3(net.pumpedM3)} m³ pumped less{' '}
+      {formatM3(net.returnedM3)} returned is {formatM3(net.netM3)} m³, against {formatM3(net.predictedM3)}{' '}
+      predicted by the run without the return: {formatSigned(difference)} m³
+      {net.predictedM3 > 0 && ` (${formatPercent((100 * difference) / net.predictedM3)})`}. It assumes that
+      returned liquid drains within the month. Gross over the run without the return:{' '}
+      {net.predictedM3 > 0
+        ? formatPercent((100 * (net.pumpedM3 - net.predictedM3)) / net.predictedM3)
+        : 'not defined'}
+      . {net.monthCount} months counted.
+    </p>
   );
 }
 
@@ -164,11 +182,17 @@ export function ComparePage() {
                   </Section>
                 )}
                 <Section title="What is compared">
+                  {data.net && <NetLine net={data.net} />}
                   <p className="max-w-[80ch]">
-                    Pumped is what left the cell’s sump, gross of any liquid returned to it. Liquid standing
-                    in the sump is not counted. Where cells share a header the meter’s volume is split by the
-                    shares in force; such numbers carry the mark ⊕. A small difference is not a proof that a
-                    liner is sound.
+                    Pumped is what left the cell’s sump, gross of any liquid returned to it
+                    {data.receivedM3 > 0 &&
+                      `, less ${formatM3(data.receivedM3)} m³ of condensate and wash-down led to the sump`}
+                    . Liquid standing in the sump is{' '}
+                    {data.sumpStorageCount > 0
+                      ? `counted in ${data.sumpStorageCount} of ${data.rows.length} months, where its level was read`
+                      : 'not counted: it needs the sump’s dimensions and its levels'}
+                    . Where cells share a header the meter’s volume is split by the shares in force; such
+                    numbers carry the mark ⊕. A small difference is not a proof that a liner is sound.
                   </p>
                 </Section>
               </>

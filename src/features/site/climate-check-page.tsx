@@ -231,6 +231,16 @@ export function ClimateCheckPage() {
                     ))}
                   </ul>
                 )}
+                {data.doubts.length > 0 && (
+                  <div className="box box-warn mb-3">
+                    <p className="font-semibold">Look at this before it is written</p>
+                    <ul className="list-disc pl-5">
+                      {data.doubts.map((doubt) => (
+                        <li key={doubt}>{doubt}</li>
+                      ))}
+                    </ul>
+                  </div>
+                )}
                 <Mapping key={JSON.stringify(data.mapping)} view={data} isOpen={!data.confirmedAt} />
               </Section>
               <Act view={data} />
