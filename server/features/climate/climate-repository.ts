@@ -64,6 +64,19 @@ export const listLiveMonths = (tx: Transaction, stationIds: string[]) =>
     .where(and(inArray(climateMonths.stationId, stationIds), isLive(climateMonths)))
     .orderBy(asc(climateMonths.month));
 
+/**
+ * Changes whenever a day, a month or a choice of these stations does: the rows only grow, and a sequence number is
+ * never given twice.
+ */
+export async function climateStamp(tx: Transaction, siteId: string, stationIds: string[]): Promise<string> {
+  const found = await tx.execute<{ stamp: string }>(sql`
+    select concat_ws(' ',
+      (select concat(count(*), ':', max(sequence)) from climate_days where ${inArray(climateDays.stationId, stationIds)}),
+      (select concat(count(*), ':', max(sequence)) from climate_months where ${inArray(climateMonths.stationId, stationIds)}),
+      (select concat(count(*), ':', max(sequence)) from climate_gap_choices where site_id = ${siteId})) as stamp`);
+  return found.rows[0]!.stamp;
+}
+
 export async function insertDays(tx: Transaction, rows: (typeof climateDays.$inferInsert)[]): Promise<void> {
   for (let start = 0; start < rows.length; start += rowsPerInsert)
     await tx.insert(climateDays).values(rows.slice(start, start + rowsPerInsert));

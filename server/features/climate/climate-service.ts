@@ -159,7 +159,31 @@ function stationNormal(months: readonly MonthSummary[], month: Month): MonthClim
 export const listSiteClimate = (tx: Transaction, siteId: string): Promise<SiteMonthClimate[]> =>
   remembered(tx, `climate ${siteId}`, () => joinSiteClimate(tx, siteId));
 
+const joinedMax = 50;
+/** Months of the sites asked about last, each with the stamp of the rows they were made from. */
+const joinedBySite = new Map<string, { stamp: string; months: SiteMonthClimate[] }>();
+
+/** The same months again while no row of them has changed: a long daily record is read and added up once. */
 async function joinSiteClimate(tx: Transaction, siteId: string): Promise<SiteMonthClimate[]> {
+  const stations = await repository.listStations(tx, siteId);
+  if (!stations.length) return [];
+  const rows = await repository.climateStamp(
+    tx,
+    siteId,
+    stations.map((station) => station.id),
+  );
+  const stamp = `${stations.map((station) => `${station.id} ${station.priority} ${station.name}`).join()} ${rows}`;
+  const known = joinedBySite.get(siteId);
+  if (known?.stamp === stamp) return known.months;
+  const months = await readSiteClimate(tx, siteId);
+  joinedBySite.delete(siteId);
+  joinedBySite.set(siteId, { stamp, months });
+  for (const oldest of [...joinedBySite.keys()].slice(0, Math.max(0, joinedBySite.size - joinedMax)))
+    joinedBySite.delete(oldest);
+  return months;
+}
+
+async function readSiteClimate(tx: Transaction, siteId: string): Promise<SiteMonthClimate[]> {
   const stations = await readStations(tx, siteId);
   const named = stations.flatMap((station) => [...station.months.keys(), ...station.monthsWithDays]).sort();
   if (!named.length) return [];
