@@ -12,6 +12,8 @@ export interface BalanceGroup {
   volumesM3: Record<TermName, number>;
   headLine: HeadLine;
   pumpedM3: number | null;
+  /** What reached the waste in the twelve months to this one, m³; null where the run does not hold them all. */
+  passedYearM3: number | null;
 }
 
 export interface BalanceRunView {

@@ -1,5 +1,5 @@
 import { dayOfYear } from '#shared/calendar/day.ts';
-import { daysInMonth, monthName, type Month } from '#shared/calendar/month.ts';
+import { addMonths, daysInMonth, monthName, type Month } from '#shared/calendar/month.ts';
 import { Problem } from '#shared/problems.ts';
 import { checkClosure } from '#shared/water-balance/check-closure.ts';
 import { isWetMonth, runoffShare } from '#shared/water-balance/compute-step.ts';
@@ -49,8 +49,16 @@ export async function readBalance(
   const frozen = await repository.listFrozenRuns(tx, siteId);
   const run = runId ? frozen.find((one) => one.id === runId) : working.run;
   if (!run) throw new Problem('not-found', 'There is no such run at this site.');
-  const steps = (await repository.listSteps(tx, run.id, month, month)).map(asStep);
-  const group = (rows: typeof steps) => ({ ...sumSteps(rows), headLine: headLine(sumSteps(rows)) });
+  const year = (await repository.listSteps(tx, run.id, addMonths(month, -11), month)).map(asStep);
+  const steps = year.filter((step) => step.month === month);
+  const isWholeYear = new Set(year.map((step) => step.month)).size === 12;
+  const group = (rows: typeof steps, yearRows: typeof steps) => ({
+    ...sumSteps(rows),
+    headLine: headLine(sumSteps(rows)),
+    passedYearM3: isWholeYear
+      ? yearRows.reduce((sum, step) => sum + (step.terms.passedMm * step.areaM2) / 1000, 0)
+      : null,
+  });
   const predicted = new Map(
     record.cells.map((cell) => {
       const own = steps.filter((step) => step.cellId === cell.id);
@@ -66,7 +74,10 @@ export async function readBalance(
       id: cell.id,
       code: cell.code,
       name: cell.name,
-      ...group(own),
+      ...group(
+        own,
+        year.filter((step) => step.cellId === cell.id),
+      ),
       pumpedM3: measured.get(`${cell.id} ${month}`)?.volumeM3 ?? null,
       plots: own.map((step) => ({
         stepId: step.id,
@@ -97,7 +108,7 @@ export async function readBalance(
       choice: climate.choice,
     },
     site: {
-      ...group(steps),
+      ...group(steps, year),
       pumpedM3: pumped.length === cells.length ? pumped.reduce((sum, value) => sum + value, 0) : null,
     },
     cells,

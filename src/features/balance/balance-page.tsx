@@ -6,7 +6,7 @@ import type { TermName } from '#shared/water-balance/terms.ts';
 import { usePlace } from '../../app/place.ts';
 import { PageHead, ScrollBox, Section } from '../../components/page.tsx';
 import { Viewed } from '../../components/state.tsx';
-import { formatInstant, formatNumber } from '../../lib/format-quantity.ts';
+import { formatInstant, formatM3, formatMm, formatNumber } from '../../lib/format-quantity.ts';
 import { useRecord } from '../../lib/record.ts';
 import { RunsPanel } from './runs-panel.tsx';
 import { WorkingPanel } from './working-panel.tsx';
@@ -31,6 +31,23 @@ function sentenceOf(view: BalanceView, group: BalanceGroup): string {
   if (h.intoStorageM3 > h.leachateM3)
     return 'Most of what stayed went into storage: soil and waste took up water.';
   return `${formatNumber((100 * h.leachateM3) / h.rainM3, 0)} % of the rain reached the sump.`;
+}
+
+/** How much the waste can still take up, and how long that lasts: a check, not a promise. */
+function WasteCheck({ group }: { group: BalanceGroup }) {
+  const deficitM3 = group.volumesM3.wasteDeficitMm;
+  const deficitMm = (deficitM3 / group.areaM2) * 1000;
+  if (deficitMm < 0.05) return null;
+  const { passedYearM3 } = group;
+  return (
+    <p className="mt-4 max-w-[80ch]">
+      The waste can still take up {formatM3(deficitM3)} m³ ({formatMm(deficitMm)} mm) before it is at field
+      capacity.
+      {passedYearM3 !== null &&
+        passedYearM3 > 0 &&
+        ` At what reached it in the last twelve months, ${formatM3(passedYearM3)} m³, that is ${formatNumber(deficitM3 / passedYearM3, 1)} years: a check, not a promise, because a part runs through channels and waste goes on being placed.`}
+    </p>
+  );
 }
 
 /** Where the rain of the month went, per site, cell and plot; every number opens its working. */
@@ -122,6 +139,7 @@ export function BalancePage() {
                     is on the way and not added. Rows may not add because of rounding.
                   </p>
                 </Section>
+                <WasteCheck group={group} />
                 <Section title="Lines that must close" aside="largest left over of any plot and step, mm">
                   <ScrollBox label="Lines that must close">
                     <table className="tbl tbl-tight">

@@ -19,7 +19,7 @@ const volumes = (input: EngineInput) => sumSteps(runWaterBalance(input).steps).v
 const near = (a: number, b: number, relative = 1e-9) =>
   expect(Math.abs(a - b)).toBeLessThanOrEqual(relative * Math.max(1, Math.abs(a), Math.abs(b)));
 
-describe('what holds for every input', () => {
+describe('what holds for every input', { timeout: 5_000 + numRuns * 30 }, () => {
   it('conservation: every line of every step closes within 1e-9 of its terms', () => {
     fc.assert(
       fc.property(anyInput, (input) => {
