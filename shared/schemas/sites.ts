@@ -119,6 +119,12 @@ export const coverTypeInput = z.object({
 });
 export type CoverTypeInput = z.input<typeof coverTypeInput>;
 
+/** Other values for a cover that stands already, with the reason. */
+export const coverTypeChangeInput = coverTypeInput
+  .omit({ id: true, kind: true })
+  .extend({ reason: requiredText('why the values change') });
+export type CoverTypeChangeInput = z.input<typeof coverTypeChangeInput>;
+
 export const wasteInput = z.object({
   id: recordId,
   cellId: chosenId('the cell'),

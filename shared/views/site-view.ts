@@ -1,3 +1,4 @@
+import type { DefectLeakage } from '../water-balance/liner-leakage.ts';
 import type { CoverKind } from '../water-balance/cover-types.ts';
 
 /** A site and everything it is made of, as the API gives it. Exact numbers are text. */
@@ -40,7 +41,7 @@ export interface SiteStructureView {
     name: string;
     availableWaterMm: string;
     membranePassFraction: string | null;
-    membraneDefects: { defectsPerHa: number } | null;
+    membraneDefects: DefectLeakage | null;
     curveNumber: string | null;
     runoffCoefficientWet: string;
     runoffCoefficientDry: string;

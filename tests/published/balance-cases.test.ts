@@ -7,6 +7,7 @@ import hydrologyCases from '#data/published/hydrology-cases.json' with { type: '
 import { computePublishedCases, type PublishedCase } from '#shared/method/published-cases.ts';
 import { computeLinerValues } from '#shared/method/liner-values.ts';
 import { computePublishedValues } from '#shared/method/published-values.ts';
+import { tryBalance } from '#shared/water-balance/try-balance.ts';
 import { soilStep } from '#shared/water-balance/soil-store.ts';
 import { monthlyHeatIndex, thornthwaiteUnadjustedMm } from '#shared/water-balance/thornthwaite.ts';
 import { extraterrestrialRadiation, mmPerMegajoule } from '#shared/water-balance/solar-geometry.ts';
@@ -45,6 +46,37 @@ describe.each(
       );
     },
   );
+});
+
+describe('two wet spells that do not fill 125 mm, 7.14° S (teaching data, read; the steady cycle computed elsewhere)', () => {
+  const published = (balanceCases as unknown as PublishedCase[]).find(
+    (one) => one.id === 'pereira-two-dry-seasons',
+  )!;
+  const [rain, pet, stores] = [
+    published.inputs['p_mm'] as number[],
+    published.inputs['pet_mm'] as number[],
+    published.expected['st_mm'] as number[],
+  ];
+
+  it('repeating the year reaches the same stores', () => {
+    const { months } = tryBalance({
+      precipitationMm: rain,
+      petMm: pet,
+      runoffCoefficient: rain.map(() => 0),
+      capacityMm: 125,
+      soilLaw: 'exponential',
+      start: 'spin-up',
+    });
+    months.forEach((month, index) =>
+      expect(Math.abs(month.storeMm - stores[index]!), `month ${index + 1}`).toBeLessThanOrEqual(0.006),
+    );
+    const annual = (pick: (month: (typeof months)[number]) => number) =>
+      months.reduce((sum, month) => sum + pick(month), 0);
+    expect(annual((month) => month.aetMm + month.percolationMm)).toBeCloseTo(
+      rain.reduce((sum, one) => sum + one, 0),
+      4,
+    );
+  });
 });
 
 describe('annual totals of Cincinnati, Fenn, Hanley & DeGeare 1975 (from memory)', () => {

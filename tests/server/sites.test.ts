@@ -163,6 +163,34 @@ describe('a site and what it is made of', () => {
     expect(kept.rows).toEqual([{ n: 4 }]);
   });
 
+  it('the values of a cover are changed with a reason, confirmed by it, and not below water that was placed', async () => {
+    const type = (await site.view()).coverTypes.find((one) => one.kind === 'intermediate-soil')!;
+    const values = {
+      name: type.name,
+      availableWaterMm: '95',
+      membranePassFraction: '',
+      runoffCoefficientWet: '0.22',
+      runoffCoefficientDry: '0.18',
+      curveNumber: '84',
+      runoffDestination: 'storm-water',
+      petFactor: '1',
+      source: 'our own infiltrometer tests',
+    };
+    const put = (body: object) =>
+      site.engineer
+        .put(`/api/v1/sites/${site.siteId}/cover-types/${type.id}`)
+        .set('Idempotency-Key', id())
+        .send(body);
+    const without = await put(values).expect(422);
+    expect(fields(without.body as ProblemDocument)).toEqual(['/reason']);
+    await put({ ...values, reason: 'measured' }).expect(200);
+    const changed = (await site.view()).coverTypes.find((one) => one.id === type.id)!;
+    expect(changed).toMatchObject({ availableWaterMm: '95', curveNumber: '84', membranePassFraction: null });
+    expect(changed.confirmedAt).not.toBeNull();
+    const same = await put({ ...values, name: 'daily cover', reason: 'a slip' }).expect(422);
+    expect((same.body as ProblemDocument).detail).toContain('already a cover daily cover');
+  });
+
   it('a cell is renamed, but not to a code that stands', async () => {
     const [cell] = (await site.view()).cells;
     const rename = (code: string) => ({ cellId: cell!.id, code, name: 'North rim' });

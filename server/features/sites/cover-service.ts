@@ -1,7 +1,12 @@
 import type * as z from 'zod';
 import { dayName } from '#shared/calendar/day.ts';
 import { Problem, fieldProblem } from '#shared/problems.ts';
-import type { coverChangeInput, coverCorrectionInput, coverTypeInput } from '#shared/schemas/sites.ts';
+import type {
+  coverChangeInput,
+  coverCorrectionInput,
+  coverTypeChangeInput,
+  coverTypeInput,
+} from '#shared/schemas/sites.ts';
 import { splitPlot } from '#shared/site/split-plot.ts';
 import { withdrawCover } from '#shared/site/withdraw-cover.ts';
 import { recordChange } from '../../audit/record-change.ts';
@@ -180,13 +185,61 @@ export async function confirmCoverType(
   const type = record.coverTypes.find((one) => one.id === coverTypeId);
   if (!type) throw new Problem('not-found', 'There is no such cover at this site.');
   if (type.confirmedAt) throw new Problem('already-done', `${type.name} was confirmed already.`);
-  await repository.confirmCoverType(tx, coverTypeId, context.personId, deps.now().toISOString());
+  await repository.updateCoverType(tx, coverTypeId, {
+    confirmedById: context.personId,
+    confirmedAt: deps.now().toISOString(),
+  });
   await recordChange(tx, context, {
     action: 'confirm',
     subjectType: 'cover-types',
     subjectId: coverTypeId,
     sentence: `The values of ${type.name} were confirmed.`,
     after: type,
+  });
+  return { id: coverTypeId };
+}
+
+/**
+ * Gives a cover other values. They hold for all its periods: the working run follows, frozen runs keep theirs. An
+ * engineer who enters values confirms them.
+ */
+export async function changeCoverType(
+  tx: Transaction,
+  context: Context,
+  deps: Dependencies,
+  coverTypeId: string,
+  { reason, ...values }: z.output<typeof coverTypeChangeInput>,
+) {
+  const record = await readSite(tx, siteOf(context));
+  const before = record.coverTypes.find((one) => one.id === coverTypeId);
+  if (!before) throw new Problem('not-found', 'There is no such cover at this site.');
+  if (record.coverTypes.some((one) => one.id !== coverTypeId && one.name === values.name))
+    throw fieldProblem('/name', `There is already a cover ${values.name}. Choose another name.`);
+  const capacityMm = Number(values.availableWaterMm);
+  const wet = record.coverPeriods.find(
+    (period) => period.coverTypeId === coverTypeId && Number(period.initialSoilStoreMm ?? 0) > capacityMm,
+  );
+  if (wet)
+    throw fieldProblem(
+      '/availableWaterMm',
+      `On ${dayName(wet.fromOn)} soil of this cover was placed with ${wet.initialSoilStoreMm} mm of water, more than ${capacityMm} mm. Correct that entry first.`,
+    );
+  await repository.updateCoverType(tx, coverTypeId, {
+    ...values,
+    hasSoilStore: capacityMm > 0,
+    membranePassFraction: values.membranePassFraction ?? null,
+    curveNumber: values.curveNumber ?? null,
+    confirmedById: context.personId,
+    confirmedAt: deps.now().toISOString(),
+  });
+  await recordChange(tx, context, {
+    action: 'change',
+    subjectType: 'cover-types',
+    subjectId: coverTypeId,
+    sentence: `The values of ${before.name} were changed.`,
+    reason,
+    before,
+    after: values,
   });
   return { id: coverTypeId };
 }

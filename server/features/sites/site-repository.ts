@@ -206,8 +206,8 @@ export const updateCoverPeriods = (
 ) => tx.update(coverPeriods).set(row).where(inArray(coverPeriods.id, ids));
 export const insertCoverTypes = (tx: Transaction, rows: (typeof coverTypes.$inferInsert)[]) =>
   tx.insert(coverTypes).values(rows);
-export const confirmCoverType = (tx: Transaction, id: string, confirmedById: string, confirmedAt: string) =>
-  tx.update(coverTypes).set({ confirmedById, confirmedAt }).where(eq(coverTypes.id, id));
+export const updateCoverType = (tx: Transaction, id: string, row: Partial<typeof coverTypes.$inferInsert>) =>
+  tx.update(coverTypes).set(row).where(eq(coverTypes.id, id));
 export const insertWaste = (tx: Transaction, row: typeof wastePlaced.$inferInsert) =>
   tx.insert(wastePlaced).values(row);
 export const insertPlaces = (tx: Transaction, rows: (typeof places.$inferInsert)[]) =>

@@ -4,6 +4,7 @@ import {
   cellNameInput,
   coverChangeInput,
   coverCorrectionInput,
+  coverTypeChangeInput,
   coverTypeInput,
   meterInput,
   placeInput,
@@ -17,7 +18,13 @@ import { meterEventInput } from '#shared/schemas/readings.ts';
 import { route, type Route } from '../../http/route.ts';
 import { readMe } from '../access/access-service.ts';
 import { addWaste, createCell, renameCell } from './cell-service.ts';
-import { changeCover, confirmCoverType, correctCover, createCoverType } from './cover-service.ts';
+import {
+  changeCover,
+  changeCoverType,
+  confirmCoverType,
+  correctCover,
+  createCoverType,
+} from './cover-service.ts';
 import { addMeterEvent, createMeter, createPlace, createStore, createSump } from './metering-service.ts';
 import { createSite, readSiteStructure, updateSettings } from './site-service.ts';
 
@@ -96,6 +103,14 @@ export const siteRoutes: Route[] = [
     permission: 'change:parameters',
     params: siteRecordParams,
     handle: ({ tx, context, deps, params }) => confirmCoverType(tx, context, deps, params.id),
+  }),
+  route({
+    method: 'put',
+    path: '/sites/:siteId/cover-types/:id',
+    permission: 'change:parameters',
+    params: siteRecordParams,
+    body: coverTypeChangeInput,
+    handle: ({ tx, context, deps, params, body }) => changeCoverType(tx, context, deps, params.id, body),
   }),
   route({
     method: 'post',

@@ -178,6 +178,16 @@ function PlanTable({ view }: { view: ForecastView }) {
   );
 }
 
+/** Months in which the level is passed in more than a tenth of the draws, the worst named. */
+function overWords(view: ForecastView, summary: ForecastSummary): string {
+  const risky = summary.months
+    .map((month, index) => ({ share: month.overShare, month: addMonths(view.about.firstMonth, index) }))
+    .filter((one) => one.share > 0.1);
+  const worst = [...risky].sort((a, b) => b.share - a.share)[0];
+  if (!worst) return '';
+  return ` ${counted(risky.length, 'month', 'months')} with more than one draw in ten over it, most in ${monthName(worst.month)} (${inHundred(worst.share)} of 100).`;
+}
+
 function Says({ view }: { view: ForecastView }) {
   const { about, summaries } = view;
   const { store, storm } = about;
@@ -206,7 +216,7 @@ function Says({ view }: { view: ForecastView }) {
               {letters[index]} needs haulage in {inHundred(summary.haulShare)} of 100 draws.
             </strong>{' '}
             {summary.overShare > 0
-              ? `In ${inHundred(summary.overShare)} of 100 the operating level is passed all the same, at ${formatNumber(store.loadsPerDayMax, 0)} loads a day.`
+              ? `In ${inHundred(summary.overShare)} of 100 the operating level is passed all the same, at ${formatNumber(store.loadsPerDayMax, 0)} loads a day.${overWords(view, summary)}`
               : 'The operating level is never passed.'}
           </li>
         ))}

@@ -1,5 +1,11 @@
 import { useFormContext } from 'react-hook-form';
-import { coverTypeInput, type CoverTypeInput } from '#shared/schemas/sites.ts';
+import {
+  coverTypeChangeInput,
+  coverTypeInput,
+  type CoverTypeChangeInput,
+  type CoverTypeInput,
+} from '#shared/schemas/sites.ts';
+import type { SiteStructureView } from '#shared/views/site-view.ts';
 import { coverKindNames, coverKinds, runoffShareTable } from '#shared/water-balance/cover-types.ts';
 import { parameterTemplate } from '#shared/water-balance/engine-input.ts';
 import { DefectFields } from '../../components/defect-fields.tsx';
@@ -10,6 +16,8 @@ import { Template, Word } from '../../components/words.tsx';
 import { newId } from '../../lib/new-id.ts';
 import { useWrite } from '../../lib/record.ts';
 import { FormLink, type SectionProps } from './site-parts.tsx';
+
+type CoverType = SiteStructureView['coverTypes'][number];
 
 /** Leakage through defects instead of a share, with the head in the cover's own drain. */
 function MembraneLeakage() {
@@ -64,33 +72,9 @@ function RunoffTable() {
   );
 }
 
-function CoverTypeForm({ onDone }: { onDone: () => void }) {
-  const { site } = usePlace();
-  const save = useWrite<CoverTypeInput>(site.id, '/cover-types');
+function CoverFields() {
   return (
-    <RecordForm<CoverTypeInput>
-      schema={coverTypeInput}
-      defaults={{
-        id: newId(),
-        name: '',
-        availableWaterMm: '',
-        membranePassFraction: '',
-        membraneDefects: null,
-        curveNumber: '',
-        runoffCoefficientWet: '',
-        runoffCoefficientDry: '',
-        petFactor: '1',
-        source: '',
-      }}
-      submitLabel="Add the cover"
-      onSubmit={(values) => save.mutateAsync(values)}
-      onDone={onDone}
-    >
-      <ChoiceField
-        name="kind"
-        label="Kind"
-        options={coverKinds.map((kind) => ({ value: kind, label: coverKindNames[kind] }))}
-      />
+    <>
       <TextField name="name" label="Name" />
       <TextField
         name="availableWaterMm"
@@ -127,6 +111,71 @@ function CoverTypeForm({ onDone }: { onDone: () => void }) {
       />
       <TextField name="petFactor" label="Factor on potential evapotranspiration" inputMode="decimal" />
       <TextField name="source" label="Source of these values" isLong />
+    </>
+  );
+}
+
+function NewCoverForm({ onDone }: { onDone: () => void }) {
+  const { site } = usePlace();
+  const save = useWrite<CoverTypeInput>(site.id, '/cover-types');
+  return (
+    <RecordForm<CoverTypeInput>
+      schema={coverTypeInput}
+      defaults={{
+        id: newId(),
+        name: '',
+        availableWaterMm: '',
+        membranePassFraction: '',
+        membraneDefects: null,
+        runoffCoefficientWet: '',
+        runoffCoefficientDry: '',
+        curveNumber: '',
+        petFactor: '1',
+        source: '',
+      }}
+      submitLabel="Add the cover"
+      onSubmit={(values) => save.mutateAsync(values)}
+      onDone={onDone}
+    >
+      <ChoiceField
+        name="kind"
+        label="Kind"
+        options={coverKinds.map((kind) => ({ value: kind, label: coverKindNames[kind] }))}
+      />
+      <CoverFields />
+    </RecordForm>
+  );
+}
+
+function CoverValuesForm({ type, onDone }: { type: CoverType; onDone: () => void }) {
+  const { site } = usePlace();
+  const save = useWrite<CoverTypeChangeInput>(site.id, `/cover-types/${type.id}`, { method: 'PUT' });
+  return (
+    <RecordForm<CoverTypeChangeInput>
+      schema={coverTypeChangeInput}
+      defaults={{
+        name: type.name,
+        availableWaterMm: type.availableWaterMm,
+        membranePassFraction: type.membranePassFraction ?? '',
+        membraneDefects: type.membraneDefects,
+        runoffCoefficientWet: type.runoffCoefficientWet,
+        runoffCoefficientDry: type.runoffCoefficientDry,
+        curveNumber: type.curveNumber ?? '',
+        runoffDestination: type.runoffDestination,
+        petFactor: type.petFactor,
+        source: type.source,
+        reason: '',
+      }}
+      submitLabel="Save the values"
+      onSubmit={(values) => save.mutateAsync(values)}
+      onDone={onDone}
+    >
+      <p>
+        The values hold for all ground under this cover, also in the past. The working run follows; frozen
+        runs keep theirs.
+      </p>
+      <CoverFields />
+      <TextField name="reason" label="Why the values change" />
     </RecordForm>
   );
 }
@@ -155,7 +204,7 @@ export function CoversSection({ view }: SectionProps) {
       id="covers"
       aside={
         can('change:site') && (
-          <FormLink label="Add a cover type">{(onDone) => <CoverTypeForm onDone={onDone} />}</FormLink>
+          <FormLink label="Add a cover type">{(onDone) => <NewCoverForm onDone={onDone} />}</FormLink>
         )
       }
     >
@@ -208,6 +257,11 @@ export function CoversSection({ view }: SectionProps) {
                       <Template />
                       {can('change:parameters') && <Confirm id={type.id} name={type.name} />}
                     </>
+                  )}
+                  {can('change:parameters') && (
+                    <FormLink label="Change" title={`Values of ${type.name}`}>
+                      {(onDone) => <CoverValuesForm type={type} onDone={onDone} />}
+                    </FormLink>
                   )}
                 </td>
               </tr>

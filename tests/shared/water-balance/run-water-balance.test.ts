@@ -2,6 +2,7 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { monthRange } from '#shared/calendar/month.ts';
 import { recordHeatIndex } from '#shared/water-balance/potential-evapotranspiration.ts';
+import { checkClosure } from '#shared/water-balance/check-closure.ts';
 import { runWaterBalance } from '#shared/water-balance/run-water-balance.ts';
 import { sumSteps } from '#shared/water-balance/sum-steps.ts';
 import type { EngineInput } from '#shared/water-balance/engine-input.ts';
@@ -109,6 +110,16 @@ describe('laws of a step', () => {
       }),
     ).steps[0]!.terms;
     expect(terms).toMatchObject({ percolationMm: 0, runoffToLeachateMm: 90 });
+  });
+
+  it('a line that does not close gives no result, and is named', () => {
+    const terms = runWaterBalance(engineInput()).steps[0]!.terms;
+    expect(checkClosure(terms).every((one) => one.isClosed)).toBe(true);
+    expect(checkClosure({ ...terms, aetMm: terms.aetMm + 0.001 }).find((one) => !one.isClosed)!.line).toBe(
+      'soil',
+    );
+    const holed = engineInput({ climate: [climateMonth('2025-01', { precipitationMm: NaN })] });
+    expect(() => runWaterBalance(holed)).toThrow(/The .*soil.* line does not close/);
   });
 
   it('a month without the temperature its method needs is refused with the month named', () => {
