@@ -49,11 +49,11 @@ export const termRegister: Record<TermName, { name: string; words: string; sourc
     words: 'pack × largest melt share × warmth',
     source: 'McCabe & Markstrom 2007',
   },
-  dSnowMm: { name: 'Into snow', words: 'pack after − pack before', source: 'method 2' },
+  dSnowMm: { name: 'Into snow', words: 'pack after − pack before', source: 'Method, Rain and snow' },
   petMm: {
     name: 'Potential ET',
     words: 'PET of the month × cover factor × share of days',
-    source: 'method 3',
+    source: 'Method, Potential evapotranspiration',
   },
   surfaceReturnMm: {
     name: 'Returned at the surface',
@@ -63,7 +63,7 @@ export const termRegister: Record<TermName, { name: string; words: string; sourc
   soilWaterBroughtMm: {
     name: 'Water brought with soil',
     words: 'store of the new soil − store of the old',
-    source: 'method 1',
+    source: 'Method, What is balanced',
   },
   runoffToStormMm: {
     name: 'Runoff to storm water',
@@ -73,15 +73,23 @@ export const termRegister: Record<TermName, { name: string; words: string; sourc
   runoffToLeachateMm: {
     name: 'Runoff to leachate',
     words: 'runoff share × (rain + melt), contact water',
-    source: 'method 4',
+    source: 'Method, Runoff',
   },
-  infiltrationMm: { name: 'Into the soil', words: 'rain + melt + returned − runoff', source: 'method 4' },
+  infiltrationMm: {
+    name: 'Into the soil',
+    words: 'rain + melt + returned − runoff',
+    source: 'Method, Runoff',
+  },
   aetMm: {
     name: 'Evapotranspiration',
     words: 'PET while the soil gains; what enters + what the soil gives while it dries',
     source: 'Thornthwaite & Mather 1957',
   },
-  dSoilMm: { name: 'Into soil', words: 'store at the end − end of the step before', source: 'method 5' },
+  dSoilMm: {
+    name: 'Into soil',
+    words: 'store at the end − end of the step before',
+    source: 'Method, Soil of the cover',
+  },
   soilStoreMm: {
     name: 'Soil store at the end',
     words: 'min(capacity, before + surplus), or before × exp(shortfall ÷ capacity)',
@@ -95,9 +103,13 @@ export const termRegister: Record<TermName, { name: string; words: string; sourc
   passedMm: {
     name: 'Through the membrane',
     words: 'percolation × entered share, or through defects by the head (all of it without a membrane)',
-    source: 'method 6',
+    source: 'Method, Through a membrane',
   },
-  coverDrainMm: { name: 'Cover drain', words: 'percolation × (1 − entered share)', source: 'method 6' },
+  coverDrainMm: {
+    name: 'Cover drain',
+    words: 'percolation × (1 − entered share)',
+    source: 'Method, Through a membrane',
+  },
   returnToWasteMm: {
     name: 'Returned into waste',
     words: 'volume ÷ area of the plots named',
@@ -106,26 +118,34 @@ export const termRegister: Record<TermName, { name: string; words: string; sourc
   freeMoistureMm: {
     name: 'Free moisture of placed waste',
     words: 'placed waste wetter than field capacity',
-    source: 'method 7',
+    source: 'Method, Waste',
   },
   absorbedMm: {
     name: 'Absorbed by waste',
     words: 'min(deficit, inflow × (1 − channelled share))',
-    source: 'method 7',
+    source: 'Method, Waste',
   },
-  dWasteMm: { name: 'Into waste', words: 'waste store after − before', source: 'method 7' },
+  dWasteMm: { name: 'Into waste', words: 'waste store after − before', source: 'Method, Waste' },
   wasteStoreMm: {
     name: 'Waste store at the end',
     words: 'before × exp(−c·t) + inflow × φ',
-    source: 'method 7',
+    source: 'Method, Waste',
   },
   wasteDeficitMm: {
     name: 'Deficit to field capacity',
     words: 'before + placed − absorbed',
-    source: 'method 7',
+    source: 'Method, Waste',
   },
-  drainedMm: { name: 'Drained', words: 'inflow × (1 − φ) + before × (1 − exp(−c·t))', source: 'method 7' },
-  collectedMm: { name: 'Collected', words: '(drained + condensate) × (1 − leak share)', source: 'method 8' },
+  drainedMm: {
+    name: 'Drained',
+    words: 'inflow × (1 − φ) + before × (1 − exp(−c·t))',
+    source: 'Method, Waste',
+  },
+  collectedMm: {
+    name: 'Collected',
+    words: '(drained + condensate) × (1 − leak share)',
+    source: 'Method, Liner',
+  },
   leakedMm: {
     name: 'Leaked',
     words: '(drained + condensate) × leak share, or through defects by the head',
@@ -141,7 +161,11 @@ export const termRegister: Record<TermName, { name: string; words: string; sourc
     words: 'measured mean of the month, else the largest depth by Giroud et al.',
     source: 'Giroud et al. 2000 (from memory)',
   },
-  leachateMm: { name: 'Leachate at the sump', words: 'collected + runoff to leachate', source: 'method 1' },
+  leachateMm: {
+    name: 'Leachate at the sump',
+    words: 'collected + runoff to leachate',
+    source: 'Method, What is balanced',
+  },
 };
 
 export const termNames = Object.keys(termRegister) as TermName[];

@@ -25,6 +25,10 @@ const first = {
 
 const method = [
   [
+    'What is balanced',
+    'Each plot, by steps of a month under one cover: snow, soil, cover, waste and drain each close by a line of their own, every term by its own formula, to a billionth of what it adds up. A step that does not close gives no result. Leachate at the sump is what is collected over the liner and the runoff that is contact water.',
+  ],
+  [
     'Rain and snow',
     'Monthly: snow below a temperature and rain above another, linear between; melt in proportion to the warmth (McCabe and Markstrom 2007, USGS OFR 2007-1088; equations from memory). With daily temperatures: snow at or below freezing, melt by degree-days (USDA-NRCS NEH-630 ch. 11, second-hand).',
   ],
