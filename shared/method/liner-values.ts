@@ -36,7 +36,7 @@ const leakValues = (one: PublishedCase): ComputedValue[] =>
       one,
       `Leakage, set ${index + 1}, 10⁻⁹`,
       'm³/s',
-      (one.expected['q_m3_per_s'] as number[])[index]! * 1e9,
+      Number(((one.expected['q_m3_per_s'] as number[])[index]! * 1e9).toPrecision(6)),
       defectLeakageM3PerS(set.h_m, {
         contact: set.c_qo < 1 ? 'good' : 'poor',
         soilThicknessM: set.t_m,

@@ -48,12 +48,10 @@ function PlanHead({ view, leachateMax }: { view: ForecastView; leachateMax: numb
       <tr>
         {scenarios.map((plan, index) => (
           <Fragment key={plan.name}>
-            <th aria-hidden className="border-l border-line">
-              leachate, 0 to {formatM3(leachateMax)}
+            <th scope="col" className="r border-l border-line">
+              leachate, m³
             </th>
-            <th scope="col" className="r">
-              {letters[index]}, m³
-            </th>
+            <th aria-hidden>0 to {formatM3(leachateMax)}</th>
             {store && (
               <>
                 <th scope="col">level, 0 to {formatNumber(store.crestLevelM, 2)} m</th>
@@ -84,7 +82,10 @@ function PlanCells({
   const month = summary.months[row]!;
   return (
     <>
-      <td className="!p-0 border-l border-line">
+      <td className="r border-l border-line">
+        <SpreadNumber spread={month.leachateM3} />
+      </td>
+      <td className="!p-0">
         <SpreadTrack
           spreads={summary.months.map((one) => one.leachateM3)}
           index={row}
@@ -93,9 +94,6 @@ function PlanCells({
           max={leachateMax}
           colour={seriesLooks.predicted.colour}
         />
-      </td>
-      <td className="r">
-        <SpreadNumber spread={month.leachateM3} />
       </td>
       {store && (
         <>
@@ -157,10 +155,10 @@ function PlanTable({ view }: { view: ForecastView }) {
             </th>
             {summaries.map((summary, index) => (
               <Fragment key={index}>
-                <td className="border-l border-line" />
-                <td className="r">
+                <td className="r border-l border-line">
                   <SpreadNumber spread={summary.total.leachateM3} />
                 </td>
+                <td />
                 {about.store && (
                   <>
                     <td />

@@ -5,7 +5,7 @@ import { causesWithoutEvent } from '#shared/reconciliation/double-mass.ts';
 import type { CompareView } from '#shared/views/balance-view.ts';
 import { formatM3 } from '../../lib/format-quantity.ts';
 
-const [width, height, left, bottom] = [560, 420, 70, 44];
+const [width, height, left, bottom] = [440, 350, 62, 44];
 
 const niceStep = (max: number) => {
   const power = 10 ** Math.floor(Math.log10(max || 1));
@@ -41,7 +41,7 @@ export function MassPicture({ view }: { view: CompareView }) {
     <svg
       role="img"
       viewBox={`0 0 ${width} ${height}`}
-      className="w-full max-w-[720px]"
+      className="w-full max-w-[640px]"
       aria-label={`Pumped against predicted, added up from ${monthName(view.rows[0]!.month)}: at the end ${formatM3(last.measured)} m³ against ${formatM3(last.predicted)}. ${massBreak ? `The slope changes in ${monthName(massBreak.month)} from ${massBreak.slopeBefore.toFixed(2)} to ${massBreak.slopeAfter.toFixed(2)}.` : 'No bend stands out.'} The table below has the numbers.`}
     >
       {ticks.map((tick) => (

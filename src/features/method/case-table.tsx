@@ -111,9 +111,10 @@ const decimalsOf = ({ tolerance }: ComputedValue) =>
   Math.min(6, Math.max(1, Math.ceil(-Math.log10(tolerance)) + 1));
 
 export function ValueTable({ label, values }: { label: string; values: readonly ComputedValue[] }) {
+  const titles = [...new Set(values.map((one) => one.title))];
   return (
     <ScrollBox label={label}>
-      <table className="tbl tbl-tight">
+      <table className="tbl tbl-tight [&_td]:!py-1 [&_th]:!py-1">
         <caption className="sr-only">{label} beside what is computed here</caption>
         <thead>
           <tr>
@@ -128,27 +129,35 @@ export function ValueTable({ label, values }: { label: string; values: readonly 
               Differs
             </th>
             <th scope="col">Unit</th>
-            <th scope="col">Source</th>
           </tr>
         </thead>
-        <tbody>
-          {values.map((one) => (
-            <tr key={one.id}>
-              <th scope="row">
-                {one.what}
-                <span className="hint block">{one.title}</span>
-              </th>
-              <td className="r">{one.printed}</td>
-              <td className="r font-medium">{formatNumber(one.computed, decimalsOf(one))}</td>
-              <td className="r text-muted">{formatSigned(one.computed - one.printed, decimalsOf(one))}</td>
-              <td>{one.unit}</td>
-              <td className="text-sm text-muted min-w-[24em]!">
-                {one.source}
-                {one.isFromMemory ? ' (from memory)' : ''}
-              </td>
-            </tr>
-          ))}
-        </tbody>
+        {titles.map((title) => {
+          const own = values.filter((one) => one.title === title);
+          return (
+            <tbody key={title} className="border-t border-edge">
+              <tr>
+                <th scope="rowgroup" colSpan={5} className="!pt-3">
+                  <span className="font-semibold">{title}</span>
+                  <span className="hint block max-w-[100ch]">
+                    {own[0]!.source}
+                    {own[0]!.isFromMemory ? ' (from memory)' : ''}
+                  </span>
+                </th>
+              </tr>
+              {own.map((one) => (
+                <tr key={one.id}>
+                  <th scope="row">{one.what}</th>
+                  <td className="r">{one.printed}</td>
+                  <td className="r font-medium">{formatNumber(one.computed, decimalsOf(one))}</td>
+                  <td className="r text-muted">
+                    {formatSigned(one.computed - one.printed, decimalsOf(one))}
+                  </td>
+                  <td>{one.unit}</td>
+                </tr>
+              ))}
+            </tbody>
+          );
+        })}
       </table>
     </ScrollBox>
   );

@@ -59,6 +59,13 @@ const method = [
   ['Left out', 'Biochemical gain or loss of water is neglected.'],
 ];
 
+const parts = [
+  ['try', 'Try a balance'],
+  ['values', 'Single values'],
+  ['liner', 'Liner and waste'],
+  ['computed', 'What is computed'],
+] as const;
+
 /** How it is computed, checked against published examples in this browser; and a balance to try. */
 export function MethodPage() {
   const worst = cases.map((one) => ({ one, ...largestDifference(one) }));
@@ -69,14 +76,22 @@ export function MethodPage() {
         crumb={`Engine version ${engineVersion}`}
         sentence={`Computed in this browser just now. ${worst.map(({ one, differs, unit }) => `${one.title.split(/[,:(]/)[1]?.trim() ?? one.title}: largest difference ${formatNumber(differs, differs < 0.01 ? 4 : 2)}${unit ? ` ${unit}` : ''}`).join('; ')}.`}
       />
+      <nav aria-label="Parts of this page" className="flex flex-wrap gap-x-5 gap-y-2 mb-6 no-print">
+        {parts.map(([id, name]) => (
+          <a key={id} href={`#${id}`} className="link inline-flex items-center min-h-6">
+            {name}
+          </a>
+        ))}
+      </nav>
       {cases.map((one) => (
         <CaseTable key={one.id} one={one} />
       ))}
-      <Section title="Single values">
+      <Section title="Single values" id="values">
         <ValueTable label="Single published values" values={values} />
       </Section>
       <Section
         title="Liner and waste"
+        id="liner"
         aside="figures computed from the formulas elsewhere; no worked example of their authors could be read"
       >
         <ValueTable label="Values of liner and waste formulas" values={linerValues} />
@@ -84,7 +99,7 @@ export function MethodPage() {
       <Section title="Try a balance" aside="one soil cover, twelve months; nothing is stored" id="try">
         <TryBalanceForm first={first} />
       </Section>
-      <Section title="What is computed">
+      <Section title="What is computed" id="computed">
         <dl className="sheet pad grid gap-x-6 gap-y-3 md:grid-cols-[220px_1fr]">
           {method.map(([name, words]) => (
             <div key={name} className="contents">
