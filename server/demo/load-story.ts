@@ -114,9 +114,9 @@ export async function tellStory(
     id: random.id(),
     cellId: ids.cells.C3,
     month: issuedMonths[2]!,
-    cause: 'waste storage filling (young cell)',
+    cause: 'condensate, wash water or tank-farm rain',
     state: 'explained',
-    note: 'Fresh waste of the last lift takes up water; the model starts nearer to field capacity.',
+    note: 'The header was flushed on two days; the water went through the sump and stands in the shift notes.',
   });
   await openExceedances(tx, manager, actors.at(`${signDay}T08:30:00Z`), [...issuedMonths]);
   await signReport(tx, manager, actors.at(`${signDay}T09:00:00Z`), plan.issuedQuarter, {

@@ -42,6 +42,8 @@ const monthsMin = 8;
 const boundTolerance = 0.005;
 const reachMin = 0.02;
 const monthsForTrust = 36;
+const biasMaxPercent = 5;
+const iterationsMax = 200;
 
 /** Too few months with both sides; its name survives the way back from a worker thread. */
 export class TooFewMonths extends Error {
@@ -49,7 +51,7 @@ export class TooFewMonths extends Error {
 }
 
 function doubtsOf(result: Omit<Calibration, 'doubts'>, isDivided: boolean): string[] {
-  const { values, fitted, heldBack, notToldApart } = result;
+  const { values, fitted, heldBack, notToldApart, iterations } = result;
   const label = (name: CalibratedName) => calibratedRegister[name].label.toLowerCase();
   const doubts: string[] = [];
   const months = fitted.monthCount + heldBack.monthCount;
@@ -62,6 +64,13 @@ function doubtsOf(result: Omit<Calibration, 'doubts'>, isDivided: boolean): stri
     doubts.push(
       `The held-back months fit worse after it than before: RMSE ${rmse.after.toFixed(0)} m³ against ${rmse.before.toFixed(0)}.`,
     );
+  const bias = heldBack.after.pbiasPercent ?? 0;
+  if (Math.abs(bias) > biasMaxPercent)
+    doubts.push(
+      `After it the model is ${Math.abs(bias).toFixed(1)} % too ${bias > 0 ? 'high' : 'low'} on the held-back months.`,
+    );
+  if (iterations >= iterationsMax)
+    doubts.push(`The fit stopped after ${iterationsMax} steps without settling.`);
   for (const value of values.filter((one) => one.isAtBound))
     doubts.push(
       `The ${label(value.name)} ran into its bound of ${value.after === value.low ? value.low : value.high}.`,
@@ -119,7 +128,7 @@ export function calibrate(
       gradientDifference: 1e-3,
       centralDifference: true,
       damping: 0.1,
-      maxIterations: 200,
+      maxIterations: iterationsMax,
       errorTolerance: 1e-8,
       improvementThreshold: 1e-6,
     },

@@ -71,15 +71,18 @@ export function summariseMonth(month: Month, byDay: ReadonlyMap<Day, ClimateValu
     windMPerS: meanOf('windMPerS'),
     relativeHumidityPercent: meanOf('relativeHumidityPercent'),
     sunshineHours: meanOf('sunshineHours'),
-    days: whole(rainDays) && {
-      precipitationMm: rainDays,
-      tMinC: whole(of('tMinC')),
-      tMaxC: whole(of('tMaxC')),
-      tMeanC: whole(means),
-      windMPerS: whole(of('windMPerS')),
-      relativeHumidityPercent: whole(of('relativeHumidityPercent')),
-      sunshineHours: whole(of('sunshineHours')),
-    },
+    days:
+      byDay.size === 0
+        ? null
+        : {
+            precipitationMm: whole(rainDays),
+            tMinC: whole(of('tMinC')),
+            tMaxC: whole(of('tMaxC')),
+            tMeanC: whole(means),
+            windMPerS: whole(of('windMPerS')),
+            relativeHumidityPercent: whole(of('relativeHumidityPercent')),
+            sunshineHours: whole(of('sunshineHours')),
+          },
     rainDayCount: rainDays.length,
     temperatureDayCount: means.length,
     dayCount,
@@ -123,7 +126,7 @@ export function settleGap(
     return {
       ...summary,
       precipitationMm: (summary.precipitationMm * summary.dayCount) / summary.rainDayCount,
-      days: null,
+      days: summary.days && { ...summary.days, precipitationMm: null },
     };
   }
   if (choice === 'other-station') return other?.isComplete ? other : null;

@@ -3,6 +3,7 @@ import { isDay, type Day } from '../calendar/day.ts';
 import { isMonth, monthOf, type Month } from '../calendar/month.ts';
 import { parseNumber } from '../ledger/parse-number.ts';
 import { cellText, columnLetter, type Sheet, type SheetCell } from '../sheets/sheet.ts';
+import { windAt2m } from '../water-balance/penman-monteith.ts';
 import { depthUnitsMm, fahrenheitToCelsius, type DepthUnit } from '../units/unit-factors.ts';
 
 export const climateFields = [
@@ -29,7 +30,8 @@ export const climateFieldNames: Record<ClimateField, string> = {
   sunshineHours: 'bright sunshine a day',
 };
 
-export type ClimateUnit = DepthUnit | 'C' | 'F' | 'm/s' | 'km/h' | 'mph' | '%' | 'h';
+export type ClimateUnit =
+  DepthUnit | 'C' | 'F' | 'm/s' | 'km/h' | 'mph' | 'm/s at 10 m' | 'km/h at 10 m' | '%' | 'h';
 
 const depthChoices: readonly ClimateUnit[] = ['mm', 'cm', 'in', 'mm-tenths', 'in-hundredths'];
 const temperatureChoices: readonly ClimateUnit[] = ['C', 'F'];
@@ -42,7 +44,7 @@ export const climateUnitsOf: Record<ClimateField, readonly ClimateUnit[]> = {
   tMeanC: temperatureChoices,
   petMm: depthChoices,
   panMm: depthChoices,
-  windMPerS: ['m/s', 'km/h', 'mph'],
+  windMPerS: ['m/s', 'km/h', 'mph', 'm/s at 10 m', 'km/h at 10 m'],
   relativeHumidityPercent: ['%'],
   sunshineHours: ['h'],
 };
@@ -58,6 +60,8 @@ export const climateUnitNames: Record<ClimateUnit, string> = {
   'm/s': 'm/s',
   'km/h': 'km/h',
   mph: 'miles an hour',
+  'm/s at 10 m': 'm/s, measured at 10 m',
+  'km/h at 10 m': 'km/h, measured at 10 m',
   '%': '%',
   h: 'hours',
 };
@@ -145,11 +149,17 @@ function whenOf(cells: (SheetCell | null)[], mapping: ClimateMapping): string {
 
 const missingMarks = new Set(['', '-', '--', 'NA', 'N/A', 'null', '-9999', '-99.9', 'M']);
 
-/** A value in the unit the record keeps, as exact text. 1 mile an hour is 0.44704 m/s exactly. */
+/** A value in the unit the record keeps, as exact text. 1 mile an hour is 0.44704 m/s exactly; wind at 10 m by FAO-56 eq. 47. */
 function convert(value: string, unit: ClimateUnit): string {
   if (unit === 'C' || unit === 'm/s' || unit === '%' || unit === 'h') return new Decimal(value).toFixed();
   if (unit === 'F') return fahrenheitToCelsius(value).toDecimalPlaces(3).toFixed();
   if (unit === 'km/h') return new Decimal(value).div(3.6).toDecimalPlaces(3).toFixed();
+  if (unit === 'm/s at 10 m' || unit === 'km/h at 10 m')
+    return new Decimal(value)
+      .div(unit === 'm/s at 10 m' ? 1 : 3.6)
+      .times(windAt2m(1, 10))
+      .toDecimalPlaces(3)
+      .toFixed();
   if (unit === 'mph') return new Decimal(value).times(0.44704).toDecimalPlaces(3).toFixed();
   return new Decimal(value).times(depthUnitsMm[unit]).toDecimalPlaces(3).toFixed();
 }

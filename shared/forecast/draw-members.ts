@@ -40,6 +40,8 @@ export interface Members {
   levelM: Float64Array;
   loads: Float64Array;
   isOver: Uint8Array;
+  /** What would run over the crest of the store, m³. */
+  spillM3: Float64Array;
 }
 
 /** Climate of a placeholder year for the layout: only its calendar is used. */
@@ -61,7 +63,7 @@ function layOut(task: ForecastTask): PlannedStep[] {
   }));
   const parameters = { ...input.parameters, isSpunUp: false, runoffMethod: 'coefficient' as const };
   const laidOut = { ...input, climate, parameters };
-  const none: MonthPet = { petMm: 0, days: null, substitutions: [], isOutsideRadiation: false };
+  const none: MonthPet = { petMm: 0, days: null, substitutions: [], isOutsideRadiation: false, parts: [] };
   const { months: forcing } = prepareMonths(
     laidOut,
     climate.map(() => none),
@@ -128,6 +130,7 @@ const emptyMembers = (size: number): Members => ({
   levelM: new Float64Array(size),
   loads: new Float64Array(size),
   isOver: new Uint8Array(size),
+  spillM3: new Float64Array(size),
 });
 
 /**

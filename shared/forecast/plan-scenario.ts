@@ -7,8 +7,16 @@ export type PlannedChange =
   | { kind: 'cover'; plotId: string; onDay: Day; coverTypeId: string; areaM2: number }
   | { kind: 'cell'; code: string; onDay: Day; coverTypeId: string; areaM2: number };
 
-/** A plan that cannot be: one sentence. */
-export class PlanRefused extends Error {}
+/** A plan that cannot be: one sentence, and the change and field it is about. */
+export class PlanRefused extends Error {
+  constructor(
+    sentence: string,
+    readonly changeIndex: number,
+    readonly field: 'plotId' | 'onDay' | 'coverTypeId' | 'areaM2',
+  ) {
+    super(sentence);
+  }
+}
 
 const period = (coverTypeId: string, fromOn: Day) => ({
   coverTypeId,
@@ -27,28 +35,41 @@ function liveOn(plots: readonly EnginePlot[], plotId: string, onDay: Day): Engin
   return plot;
 }
 
-function coverPart(cell: EngineCell, change: Extract<PlannedChange, { kind: 'cover' }>): EngineCell {
-  const { plotId, onDay, coverTypeId } = change;
+function coverPart(
+  cell: EngineCell,
+  change: Extract<PlannedChange, { kind: 'cover' }>,
+  changeIndex: number,
+): EngineCell {
+  const { plotId, onDay, coverTypeId, areaM2 } = change;
   const plot = liveOn(cell.plots, plotId, onDay);
-  if (!plot) throw new PlanRefused(`No part of this plot is left on ${dayName(onDay)}.`);
+  if (!plot)
+    throw new PlanRefused(`No part of this plot is left on ${dayName(onDay)}.`, changeIndex, 'plotId');
   const current = plot.periods.at(-1)!;
   if (onDay <= current.fromOn)
     throw new PlanRefused(
       `The ground already changes its cover on ${dayName(current.fromOn)}. Plan the changes of one plot in order.`,
+      changeIndex,
+      'onDay',
+    );
+  if (areaM2 > plot.areaM2)
+    throw new PlanRefused(
+      `${plot.areaM2} m² of this plot are left on ${dayName(onDay)}; ${areaM2} m² cannot be covered on it.`,
+      changeIndex,
+      'areaM2',
     );
   const split = splitPlot(
     { areaM2: String(plot.areaM2), fromOn: plot.fromOn, toOn: plot.toOn, name: 'chosen' },
-    { areaM2: String(Math.min(change.areaM2, plot.areaM2)), onDay },
+    { areaM2: String(areaM2), onDay },
   );
-  if ('refused' in split) throw new PlanRefused(split.refused);
+  if ('refused' in split) throw new PlanRefused(split.refused, changeIndex, 'onDay');
   const ended = plot.periods.map((one) => (one === current ? { ...one, toOn: onDay } : one));
   const others = cell.plots.filter((one) => one !== plot);
   if (split.restAreaM2 === null)
     return { ...cell, plots: [...others, { ...plot, periods: [...ended, period(coverTypeId, onDay)] }] };
-  const child = (part: 'covered' | 'rest', areaM2: string, type: string): EnginePlot => ({
+  const child = (part: 'covered' | 'rest', childM2: string, type: string): EnginePlot => ({
     id: `${plot.id}/${part}`,
     parentId: plot.id,
-    areaM2: Number(areaM2),
+    areaM2: Number(childM2),
     fromOn: onDay,
     toOn: null,
     periods: [period(type, onDay)],
@@ -94,15 +115,17 @@ export function planScenario(
   { cells, covers }: Pick<EngineInput, 'cells' | 'covers'>,
   changes: readonly PlannedChange[],
 ): EngineCell[] {
-  return [...changes]
-    .sort((a, b) => (a.onDay < b.onDay ? -1 : 1))
+  return changes
+    .map((change, index) => ({ change, index }))
+    .sort((a, b) => (a.change.onDay < b.change.onDay ? -1 : 1))
     .reduce<EngineCell[]>(
-      (planned, change) => {
-        if (!covers[change.coverTypeId]) throw new PlanRefused('Choose a cover of this site.');
+      (planned, { change, index }) => {
+        if (!covers[change.coverTypeId])
+          throw new PlanRefused('Choose a cover of this site.', index, 'coverTypeId');
         if (change.kind === 'cell') return [...planned, newCell(change)];
         const at = planned.findIndex((cell) => cell.plots.some((plot) => plot.id === change.plotId));
-        if (at < 0) throw new PlanRefused('Choose a plot of this site.');
-        return planned.map((cell, index) => (index === at ? coverPart(cell, change) : cell));
+        if (at < 0) throw new PlanRefused('Choose a plot of this site.', index, 'plotId');
+        return planned.map((cell, position) => (position === at ? coverPart(cell, change, index) : cell));
       },
       [...cells],
     );

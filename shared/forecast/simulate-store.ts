@@ -6,6 +6,7 @@ export interface StorePlan {
   points: StrappingPoint[];
   startLevelM: number;
   operatingLevelM: number;
+  crestLevelM: number;
   linedAreaM2: number;
   evaporationFactor: number;
   isCovered: boolean;
@@ -34,15 +35,17 @@ export function levelOfVolume(points: readonly StrappingPoint[], volumeM3: numbe
 /**
  * One store through months of inflow: rain and evaporation on it, the plant up to its capacity, then loads down to the
  * operating level, as many as can be hauled.
- * @param out level at the end of each month, m; loads; and 1 where the operating level is passed all the same
+ * @param out level at the end of each month, m; loads; 1 where the operating level is passed all the same; and what
+ * would run over the crest, m³: it does not come back
  */
 export function simulateStore(
   plan: StorePlan,
   months: readonly StoreMonth[],
-  out: { levelM: Float64Array; loads: Float64Array; isOver: Uint8Array },
+  out: { levelM: Float64Array; loads: Float64Array; isOver: Uint8Array; spillM3: Float64Array },
   offset: number,
 ): void {
   const limitM3 = storeAtLevel(plan.points, plan.operatingLevelM)!.volumeM3;
+  const crestM3 = storeAtLevel(plan.points, plan.crestLevelM)?.volumeM3 ?? plan.points.at(-1)!.volumeM3;
   let volumeM3 = storeAtLevel(plan.points, plan.startLevelM)!.volumeM3;
   months.forEach((month, index) => {
     const levelM = levelOfVolume(plan.points, volumeM3);
@@ -54,6 +57,8 @@ export function simulateStore(
     const wanted = plan.loadM3 > 0 ? Math.ceil(Math.max(0, volumeM3 - limitM3) / plan.loadM3) : 0;
     const loads = Math.min(wanted, Math.floor(plan.loadsPerDayMax * month.dayCount));
     volumeM3 = Math.max(0, volumeM3 - loads * plan.loadM3);
+    out.spillM3[offset + index] = Math.max(0, volumeM3 - crestM3);
+    volumeM3 = Math.min(volumeM3, crestM3);
     out.levelM[offset + index] = levelOfVolume(plan.points, volumeM3);
     out.loads[offset + index] = loads;
     out.isOver[offset + index] = volumeM3 > limitM3 + 1e-9 ? 1 : 0;

@@ -20,7 +20,9 @@ export interface ForecastSummary {
   memberCount: number;
   months: ForecastMonth[];
   /** Over the whole span; a year of lows is rarer than one low month, so these are no sums of the months. */
-  total: { leachateM3: Spread; loads: Spread };
+  total: { leachateM3: Spread; loads: Spread; spillM3: Spread };
+  /** Share of the members in which something runs over the crest. */
+  spillShare: number;
   haulShare: number;
   overShare: number;
 }
@@ -34,11 +36,12 @@ function spreadOf(values: number[]): Spread {
 /** Puts the members of all workers, in order, into percentiles by month. */
 export function summariseMembers(parts: readonly Members[], monthCount: number): ForecastSummary {
   const joined = (name: keyof Members) => parts.flatMap((part) => Array.from(part[name]));
-  const [leachate, level, loads, over] = [
+  const [leachate, level, loads, over, spill] = [
     joined('leachateM3'),
     joined('levelM'),
     joined('loads'),
     joined('isOver'),
+    joined('spillM3'),
   ];
   const memberCount = leachate.length / monthCount;
   const column = (values: readonly number[], month: number) =>
@@ -56,7 +59,12 @@ export function summariseMembers(parts: readonly Members[], monthCount: number):
       loads: spreadOf(column(loads, month)),
       overShare: share(column(over, month)),
     })),
-    total: { leachateM3: spreadOf(totals(leachate)), loads: spreadOf(totals(loads)) },
+    total: {
+      leachateM3: spreadOf(totals(leachate)),
+      loads: spreadOf(totals(loads)),
+      spillM3: spreadOf(totals(spill)),
+    },
+    spillShare: share(totals(spill)),
     haulShare: share(totals(loads)),
     overShare: share(totals(over)),
   };

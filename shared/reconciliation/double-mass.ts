@@ -27,8 +27,8 @@ export interface MassBreak {
 }
 
 const monthsMin = 3;
-/** @assumed our choice: about the 1 % point of F with 1 and 10 to 30 degrees of freedom */
-const fMin = 8;
+/** About the 5 % point for a break at an unknown place, one slope. Source: Andrews 1993, Table 1 (from memory). */
+const fMin = 8.6;
 /** @assumed our choice: a change of slope under 10 % is within what meters and model do by themselves */
 const changeMin = 0.1;
 const nearDays = 45;

@@ -5,6 +5,7 @@ import { dayNameShort } from '../calendar/day.ts';
 import type { Finding } from '../findings.ts';
 import type { ComparedMonth } from './compare-months.ts';
 import { causesWithoutEvent, type MassBreak } from './double-mass.ts';
+import { compareTolerance } from './tolerance.ts';
 import { correlationAtLag } from './fit-statistics.ts';
 
 const round = (value: number) => Math.round(value).toLocaleString('en-GB').replaceAll(',', '\u2009');
@@ -18,7 +19,12 @@ function rollingFinding(rows: readonly ComparedMonth[]): Finding[] {
   const last = rows.findLast(isMeasured)!;
   const { rolling } = last;
   const difference = rolling.measuredM3 - rolling.predictedM3;
-  const tolerance = Math.abs(rolling.predictedM3) * 0.1;
+  const { valueM3: tolerance } = compareTolerance({
+    predictedM3: rolling.predictedM3,
+    measuredM3: rolling.measuredM3,
+    areaM2: last.areaM2,
+    monthCount: rolling.monthCount,
+  });
   const percent =
     rolling.percent === null
       ? ''

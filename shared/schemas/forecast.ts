@@ -51,6 +51,7 @@ export const forecastInput = z.object({
   loadM3: number('the volume of a load', 'm³', 0.1, 100),
   loadsPerDayMax: number('the most loads a day', '', 0, 1000),
   stormMm: number('the design storm', 'mm', 0, 1000),
+  stormAreaM2: number('the open ground that drains to the store', 'm²', 0, 10_000_000),
   stormShare: number('the share of the storm that arrives from open ground', '', 0, 1),
   ranges: z.object({
     runoffFactor: range('the runoff factor', 3),

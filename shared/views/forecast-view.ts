@@ -57,6 +57,8 @@ export interface ForecastStartView {
     recessionPerMonth: number;
     channelledFraction: number;
   };
+  /** Working area and lined floor that drain to leachate today, m². */
+  openAreaM2: number;
   /** Mean volume that left the store a day over the last twelve months, m³/d; null where nothing was read. */
   treatedM3PerDay: number | null;
   plots: { id: string; cellCode: string; name: string; areaM2: string; coverName: string }[];

@@ -37,7 +37,7 @@ export function antecedentCurveNumber(
 }
 
 /** Mean temperature from which a month counts as growing season, °C. @assumed our choice, common practice, no source */
-export const growingFromC = 5;
+export const growingFromC = 10;
 
 /**
  * Runoff of each day of a month, mm.

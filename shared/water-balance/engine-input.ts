@@ -93,7 +93,7 @@ export const completeParameters = (stored: Partial<BalanceParameters>): BalanceP
 
 /** Values of the days of a month, in order; a series with a gap is null. */
 export interface MonthDays {
-  precipitationMm: number[];
+  precipitationMm: number[] | null;
   tMinC: number[] | null;
   tMaxC: number[] | null;
   tMeanC: number[] | null;
@@ -113,7 +113,7 @@ export interface MonthClimate {
   windMPerS: number | null;
   relativeHumidityPercent: number | null;
   sunshineHours: number | null;
-  /** Days of the month where a daily record of precipitation without gaps exists. */
+  /** Days of the month where a daily record exists; each of its series without gaps, or null. */
   days: MonthDays | null;
 }
 

@@ -1,5 +1,5 @@
 import type { BalanceParameters, EngineCover, MonthClimate } from './engine-input.ts';
-import { giroudHeadM, mcEnroeHeadM } from './liner-leakage.ts';
+import { defectLeakageM3PerS, giroudHeadM, mcEnroeHeadM } from './liner-leakage.ts';
 import type { MonthPet } from './potential-evapotranspiration.ts';
 import type { StepTerms, TermName } from './terms.ts';
 import { termRegister } from './terms.ts';
@@ -100,7 +100,7 @@ const surfaceRunoffMm = (t: StepTerms) => t.rainMm + t.meltMm + t.surfaceReturnM
 const hasCurveRunoff = (step: StepForWorking) =>
   step.parameters.runoffMethod === 'curve-number' &&
   step.cover.curveNumber !== null &&
-  step.climate.days !== null;
+  Boolean(step.climate.days?.precipitationMm);
 
 /** The soil at the start of drying or filling: as the step before left it, with the soil placed on this day. */
 const soilStartMm = (t: StepTerms) => t.soilStoreMm - t.dSoilMm + t.soilWaterBroughtMm;
@@ -167,8 +167,7 @@ function valuesOf(term: TermName, step: StepForWorking): string | null {
       if (cover.kind === 'lined-floor') return 'no waste: what arrives drains';
       return `${mm(wasteInflow(t))} × (1 − ${plain(kept)}) + ${mm(t.wasteStoreMm - t.dWasteMm)} × (1 − ${plain(decay)})`;
     case 'leakedMm':
-      if (isByDefects(step))
-        return `min(${mm(t.drainedMm + t.condensateMm)}, leakage through defects by the head)`;
+      if (isByDefects(step)) return leakFormula(step);
       return `(${mm(t.drainedMm)} + ${mm(t.condensateMm)}) × ${plain(parameters.leakFraction)}`;
     case 'collectedMm':
       return `${mm(t.drainedMm)} + ${mm(t.condensateMm)} − ${mm(t.leakedMm)}`;
@@ -215,6 +214,9 @@ function parameterSettings(uses: ReadonlySet<TermName>, step: StepForWorking): R
     set('Area of a defect', liner.defectAreaM2 * 10_000, 'cm²'),
     set('Conductivity of the soil under it', liner.soilConductivityMPerS, 'm/s'),
     set('Thickness of that soil', liner.soilThicknessM, 'm'),
+    set('Length of the drain', liner.drainLengthM, 'm'),
+    set('Slope of the drain, rise over run', liner.slope, ''),
+    set('Conductivity of the drain', liner.drainConductivityMPerS, 'm/s'),
   ];
 }
 
@@ -281,6 +283,7 @@ function petStart(step: StepForWorking): Row[] {
       add('Bright sunshine a day', 'climate record', climate.sunshineHours, 'h');
     }
   }
+  for (const part of pet.parts) rows.push(input(part.what, part.how, part.value, part.unit));
   rows.push(
     input(
       'PET of the month',
@@ -290,6 +293,18 @@ function petStart(step: StepForWorking): Row[] {
     ),
   );
   return rows;
+}
+
+/** Giroud's leakage with the values of the step: per defect, over all defects of a hectare, over the days. */
+function leakFormula({ terms: t, parameters, dayCount }: StepForWorking): string {
+  const { liner } = parameters;
+  const headM = t.headMm / 1000;
+  const perDefect = defectLeakageM3PerS(headM, liner);
+  const contact = liner.contact === 'good' ? '0.21' : '1.15';
+  return (
+    `min(${mm(t.drainedMm + t.condensateMm)}, ${plain(perDefect)} m³/s × ${plain(liner.defectsPerHa)}/ha × ${dayCount} d × 8640), ` +
+    `${plain(perDefect)} = ${contact} × (1 + 0.1 × (${plain(headM)} ÷ ${plain(liner.soilThicknessM)})^0.95) × ${plain(liner.defectAreaM2)}^0.1 × ${plain(headM)}^0.9 × ${plain(liner.soilConductivityMPerS)}^0.74`
+  );
 }
 
 /** Both published head formulas beside each other, for the impingement of the step. */
@@ -313,6 +328,16 @@ function headStart(step: StepForWorking): Row[] {
       'McEnroe 1993 (from memory)',
     ),
   ];
+}
+
+/** Where a term's law comes from, by the method in force. */
+function sourceOf(name: TermName, step: StepForWorking): string {
+  if (name.startsWith('runoff') && hasCurveRunoff(step))
+    return 'USDA-NRCS TR-55 (1986), each day; melt by share';
+  const isDaily = Boolean(step.climate.days?.precipitationMm && step.climate.days.tMeanC);
+  if (['rainMm', 'snowfallMm', 'meltMm'].includes(name) && step.parameters.snow.isOn && isDaily)
+    return 'degree-day by days, NEH-630 ch. 11 (second-hand)';
+  return termRegister[name].source;
 }
 
 /** What the terms of a working begin from. */
@@ -339,7 +364,7 @@ export function explainStep(term: TermName, step: StepForWorking): WorkingLine[]
     withValues: valuesOf(name, step),
     value: step.terms[name],
     unit: 'mm',
-    source: termRegister[name].source,
+    source: sourceOf(name, step),
   });
   const volumeM3 = (step.terms[term] * step.areaM2) / 1000;
   const rows: Row[] = [

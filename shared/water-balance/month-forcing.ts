@@ -1,7 +1,7 @@
 import { monthName } from '../calendar/month.ts';
 import { isWetMonth } from './compute-step.ts';
 import { growingFromC, monthCurveRunoffMm } from './curve-number.ts';
-import type { EngineInput, MonthClimate } from './engine-input.ts';
+import type { EngineCover, EngineInput, MonthClimate } from './engine-input.ts';
 import { substitutionWords, type Substitution } from './penman-monteith.ts';
 import { recordHeatIndex, referencePet, type MonthPet } from './potential-evapotranspiration.ts';
 import { computeDailySnow, computeSnow, type SnowMonth } from './snow.ts';
@@ -29,7 +29,7 @@ export function recordPet(input: EngineInput): MonthPet[] {
 }
 
 function snowOf(packMm: number, row: MonthClimate, { snow }: EngineInput['parameters']): SnowMonth {
-  if (snow.isOn && row.days?.tMeanC)
+  if (snow.isOn && row.days?.precipitationMm && row.days.tMeanC)
     return computeDailySnow(packMm, row.days.precipitationMm, row.days.tMeanC, snow.meltMmPerCDay);
   return computeSnow(packMm, row.precipitationMm, row.tMeanC ?? 20, snow);
 }
@@ -37,18 +37,21 @@ function snowOf(packMm: number, row: MonthClimate, { snow }: EngineInput['parame
 /** Rain of the days of a month: as computed by days, or the recorded depth × the month's share of rain. */
 function rainDays(row: MonthClimate, snow: SnowMonth): number[] | null {
   if (snow.days) return snow.days.rainMm;
-  if (!row.days) return null;
+  if (!row.days?.precipitationMm) return null;
   const share = row.precipitationMm > 0 ? snow.rainMm / row.precipitationMm : 0;
   return row.days.precipitationMm.map((depth) => depth * share);
 }
 
+const coversInUse = ({ cells, covers }: EngineInput): EngineCover[] =>
+  [
+    ...new Set(
+      cells.flatMap((cell) => cell.plots.flatMap((plot) => plot.periods.map((period) => period.coverTypeId))),
+    ),
+  ].map((id) => covers[id]!);
+
 const curveNumbersOf = (input: EngineInput): number[] =>
   input.parameters.runoffMethod === 'curve-number'
-    ? [
-        ...new Set(
-          Object.values(input.covers).flatMap((cover) => (cover.curveNumber ? [cover.curveNumber] : [])),
-        ),
-      ]
+    ? [...new Set(coversInUse(input).flatMap((cover) => (cover.curveNumber ? [cover.curveNumber] : [])))]
     : [];
 
 const listed = (months: readonly string[]) =>
@@ -85,12 +88,17 @@ function warningsOf(input: EngineInput, months: readonly MonthForcing[]): string
     (words) => `${words}: counted as frozen; no percolation, the excess runs off.`,
   );
   if (input.parameters.runoffMethod === 'curve-number') {
-    say(
-      named(({ curveRunoffMm }) => curveRunoffMm === null),
-      (words) => `${words}: no daily rain, so the covers’ runoff shares were used, not the curve number.`,
-    );
-    if (Object.values(input.covers).some((cover) => cover.curveNumber === null))
-      sentences.push('A cover without a curve number keeps its runoff share.');
+    const inUse = coversInUse(input);
+    const without = inUse.filter((cover) => cover.curveNumber === null);
+    if (without.length)
+      sentences.push(
+        `${without.map((cover) => cover.name).join(', ')}: no curve number, so the runoff share is used. Enter it under Site, cover types.`,
+      );
+    if (without.length < inUse.length)
+      say(
+        named(({ curveRunoffMm }) => curveRunoffMm === null),
+        (words) => `${words}: no daily rain, so the covers’ runoff shares were used, not the curve number.`,
+      );
   }
   return sentences;
 }

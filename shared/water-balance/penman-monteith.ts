@@ -87,6 +87,10 @@ export interface PenmanMonteithDay {
   solarRadiation: number;
   clearSky: number;
   netLongwave: number;
+  extraterrestrial: number;
+  vapourPressureKPa: number;
+  slope: number;
+  gamma: number;
   substitutions: Substitution[];
 }
 
@@ -135,6 +139,10 @@ export function penmanMonteith(input: PenmanMonteithInput): PenmanMonteithDay {
     solarRadiation,
     clearSky,
     netLongwave,
+    extraterrestrial,
+    vapourPressureKPa,
+    slope,
+    gamma,
     substitutions,
   };
 }

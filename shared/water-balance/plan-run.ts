@@ -58,7 +58,7 @@ function forcingOf(month: MonthForcing, fromOn: Day, dayCount: number, own: OwnF
   const part = (total: number, days: readonly number[] | null | undefined) =>
     days && share < 1 ? sumOfDays(days, fromOn, dayCount) : total * share;
   const rainShare =
-    row.days && share < 1 && row.precipitationMm > 0
+    row.days?.precipitationMm && share < 1 && row.precipitationMm > 0
       ? sumOfDays(row.days.precipitationMm, fromOn, dayCount) / row.precipitationMm
       : share;
   const rainMm = snow.days ? part(snow.rainMm, snow.days.rainMm) : snow.rainMm * rainShare;

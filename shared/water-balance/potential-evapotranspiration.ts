@@ -10,7 +10,12 @@ import {
   type Substitution,
 } from './penman-monteith.ts';
 import { daylightHours, declinationRad, extraterrestrialRadiation } from './solar-geometry.ts';
-import { annualHeatIndex, thornthwaiteMm } from './thornthwaite.ts';
+import {
+  annualHeatIndex,
+  thornthwaiteExponent,
+  thornthwaiteMm,
+  thornthwaiteUnadjustedMm,
+} from './thornthwaite.ts';
 
 /** Twelve long-term monthly means of temperature over a record, °C; null when a month of the year never occurs. */
 export function longTermMeansC(climate: readonly MonthClimate[]): number[] | null {
@@ -51,6 +56,15 @@ export interface MonthPet {
   days: number[] | null;
   substitutions: Substitution[];
   isOutsideRadiation: boolean;
+  /** What the month's figure was put together from, for its working; empty where it was made of days. */
+  parts: PetPart[];
+}
+
+export interface PetPart {
+  what: string;
+  how: string;
+  value: number;
+  unit: string;
 }
 
 export type PetSettings = Pick<
@@ -111,7 +125,7 @@ function penmanMonteithMonth(
   { latitudeDeg, elevationM }: PetSite,
   settings: PetSettings,
   neighbours: { before: MonthClimate | undefined; after: MonthClimate | undefined },
-): Pick<MonthPet, 'petMm' | 'days' | 'substitutions'> {
+): Pick<MonthPet, 'petMm' | 'days' | 'substitutions' | 'parts'> {
   const site = { latitudeDeg, elevationM, defaults: settings };
   const first = dayOfYear(firstDay(row.month));
   const { tMinC: lows, tMaxC: highs } = row.days ?? {};
@@ -133,7 +147,7 @@ function penmanMonteithMonth(
       }),
     );
     const depths = days.map((day) => day.mmPerDay);
-    return { petMm: sum(depths), days: depths, substitutions: days[0]!.substitutions };
+    return { petMm: sum(depths), days: depths, substitutions: days[0]!.substitutions, parts: [] };
   }
   const range = temperatureRange(row, 'Penman–Monteith');
   const tBeforeC = neighbours.before?.tMeanC ?? null;
@@ -153,7 +167,36 @@ function penmanMonteithMonth(
     sunshineHours: row.sunshineHours,
     soilHeatFlux,
   });
-  return { petMm: day.mmPerDay * daysInMonth(row.month), days: null, substitutions: day.substitutions };
+  const part = (what: string, how: string, value: number, unit = 'MJ/m²·d'): PetPart => ({
+    what,
+    how,
+    value,
+    unit,
+  });
+  return {
+    petMm: day.mmPerDay * daysInMonth(row.month),
+    days: null,
+    substitutions: day.substitutions,
+    parts: [
+      part('Extraterrestrial radiation, Ra', 'of the 15th, FAO-56 eq. 21', day.extraterrestrial),
+      part(
+        'Solar radiation, Rs',
+        'from sunshine, eq. 35, or the temperature range, eq. 50',
+        day.solarRadiation,
+      ),
+      part('Net radiation, Rn', '0.77 × Rs − net longwave, eq. 39 and 40', day.netRadiation),
+      part('Soil heat flux, G', 'from the months around it, eq. 43 or 44', soilHeatFlux),
+      part(
+        'Actual vapour pressure, ea',
+        'eq. 19, or at the minimum temperature, eq. 48',
+        day.vapourPressureKPa,
+        'kPa',
+      ),
+      part('Slope of the vapour pressure, Δ', 'eq. 13', day.slope, 'kPa/°C'),
+      part('Psychrometric constant, γ', 'eq. 8', day.gamma, 'kPa/°C'),
+      part('Reference evapotranspiration', 'radiation part + aerodynamic part, eq. 6', day.mmPerDay, 'mm/d'),
+    ],
+  };
 }
 
 /**
@@ -166,7 +209,7 @@ export function referencePet(
   settings: PetSettings,
   neighbours: { before: MonthClimate | undefined; after: MonthClimate | undefined },
 ): MonthPet {
-  const plain = { days: null, substitutions: [], isOutsideRadiation: false };
+  const plain = { days: null, substitutions: [], isOutsideRadiation: false, parts: [] };
   const usesRadiation = settings.petMethod === 'hargreaves' || settings.petMethod === 'penman-monteith';
   const isOutsideRadiation =
     usesRadiation &&
@@ -197,15 +240,30 @@ export function referencePet(
           'Thornthwaite needs every month of the year at least once in the record for its heat index.',
         );
       const middle = declinationRad(dayOfYear(`${row.month}-15`));
+      const daylight = daylightHours(site.latitudeDeg, middle);
       return {
         ...plain,
         petMm: thornthwaiteMm({
           tMeanC: row.tMeanC,
           heatIndex: site.heatIndex,
-          daylightHours: daylightHours(site.latitudeDeg, middle),
+          daylightHours: daylight,
           dayCount: daysInMonth(row.month),
           hotMonths: settings.hotMonths,
         }),
+        parts: [
+          {
+            what: 'Exponent, a',
+            how: '6.75·10⁻⁷ I³ − 7.71·10⁻⁵ I² + 0.01792 I + 0.49239',
+            value: thornthwaiteExponent(site.heatIndex),
+            unit: '',
+          },
+          {
+            what: 'PET of 30 days of 12 hours',
+            how: '16 × (10 T ÷ I)^a, 0 at or below freezing; the hot months as set',
+            value: thornthwaiteUnadjustedMm(row.tMeanC, site.heatIndex, settings.hotMonths),
+            unit: 'mm',
+          },
+        ],
       };
     }
   }

@@ -5,7 +5,7 @@ export interface TryBalanceMonth {
   runoffMm: number;
   infiltrationMm: number;
   surplusMm: number;
-  /** Accumulated potential water loss AWC·ln(S/AWC), negative; null at an empty store. */
+  /** Accumulated potential water loss AWC·ln(S/AWC), negative; null at an empty store and under another law. */
   apwlMm: number | null;
   storeMm: number;
   dStoreMm: number;
@@ -51,7 +51,10 @@ export function tryBalance(input: TryBalanceInputs): {
       runoffMm,
       infiltrationMm: month.infiltrationMm,
       surplusMm: month.infiltrationMm - month.petMm,
-      apwlMm: step.storeMm > 0 && capacityMm > 0 ? capacityMm * Math.log(step.storeMm / capacityMm) : null,
+      apwlMm:
+        soilLaw === 'exponential' && step.storeMm > 0 && capacityMm > 0
+          ? capacityMm * Math.log(step.storeMm / capacityMm)
+          : null,
       storeMm: step.storeMm,
       dStoreMm,
       aetMm: step.aetMm,

@@ -31,6 +31,7 @@ describe('forecast and calibration of the demo', () => {
     loadM3: '20.82',
     loadsPerDayMax: '10',
     stormMm: '127',
+    stormAreaM2: '16000',
     stormShare: '0.9',
     ranges: {
       runoffFactor: range('0.8', '1.2'),

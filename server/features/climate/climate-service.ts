@@ -95,7 +95,8 @@ function monthOfStation(station: StationRecord, month: Month): MonthSummary | nu
 
 /** Days of rain from one station with the temperatures and weather of another, as far as both have them. */
 function joinDays(rain: MonthDays | null, warm: MonthDays | null): MonthDays | null {
-  return rain && { ...rain, ...(warm ? { ...warm, precipitationMm: rain.precipitationMm } : {}) };
+  if (!rain && !warm) return null;
+  return { ...(rain ?? warm)!, ...warm, precipitationMm: rain?.precipitationMm ?? null };
 }
 
 /** Rain from the first station that has any, temperature from the first that has any; both are named. */

@@ -87,6 +87,7 @@ async function storeOf(
     points: strapping(record, store.id),
     startLevelM: Number(level.levelM),
     operatingLevelM: Number(store.operatingLevelM),
+    crestLevelM: Number(store.crestLevelM),
     linedAreaM2: Number(store.linedAreaM2),
     evaporationFactor: Number(store.evaporationFactor),
     isCovered: store.isCovered,
@@ -98,11 +99,18 @@ async function storeOf(
   return { store: { ...store, name }, plan, level };
 }
 
-/** Ground of the working area, m²: what a storm falls on beside the store. */
+/** Working area and lined floor whose water goes to leachate, m²: what a storm falls on beside the store. */
 const openAreaM2 = ({ cells, covers }: EngineInput): number =>
   cells
     .flatMap((cell) => cell.plots)
-    .filter((plot) => plot.toOn === null && covers[plot.periods.at(-1)!.coverTypeId]!.kind === 'working-area')
+    .filter((plot) => {
+      const { kind, runoffDestination } = covers[plot.periods.at(-1)!.coverTypeId]!;
+      return (
+        plot.toOn === null &&
+        (kind === 'working-area' || kind === 'lined-floor') &&
+        runoffDestination === 'leachate'
+      );
+    })
     .reduce((sum, plot) => sum + plot.areaM2, 0);
 
 function scenarioView(
@@ -162,7 +170,8 @@ function plannedCells(
   try {
     return { changes, cells: planScenario(input, changes) };
   } catch (error) {
-    if (error instanceof PlanRefused) throw fieldProblem(`/scenarios/${index}/changes`, error.message);
+    if (error instanceof PlanRefused)
+      throw fieldProblem(`/scenarios/${index}/changes/${error.changeIndex}/${error.field}`, error.message);
     throw error;
   }
 }
@@ -242,7 +251,7 @@ export async function startForecast(
     sourceLast: source.months.at(-1)!,
     scenarios: planned.map(({ name, changes, cells }) => scenarioView(record, base, name, changes, cells)),
     store: chosen && storeAbout(chosen),
-    storm: chosen && stormAbout(base, chosen.plan, input),
+    storm: chosen && stormAbout(chosen.plan, input),
     parameterSet: { name: set.name, version: set.version },
     cautions: cautionsOf(base, yearCount, chosen !== null),
   };
@@ -268,8 +277,8 @@ function storeAbout({ store, plan, level }: NonNullable<Awaited<ReturnType<typeo
   };
 }
 
-function stormAbout(base: EngineInput, plan: StorePlan, input: Input): ForecastAbout['storm'] {
-  const [stormMm, share, open] = [Number(input.stormMm), Number(input.stormShare), openAreaM2(base)];
+function stormAbout(plan: StorePlan, input: Input): ForecastAbout['storm'] {
+  const [stormMm, share, open] = [Number(input.stormMm), Number(input.stormShare), Number(input.stormAreaM2)];
   const found = stormHeadroom({
     stormMm,
     contributing: [
@@ -331,6 +340,7 @@ export async function readForecastStart(
   return {
     firstMonth: addMonths(lastMonth, 1),
     parameters: { runoffFactor, petFactor, recessionPerMonth, channelledFraction },
+    openAreaM2: openAreaM2(input),
     treatedM3PerDay: left.length ? left.reduce((sum, row) => sum + Number(row.volumeM3), 0) / dayCount : null,
     plots: record.plots
       .filter((plot) => plot.toOn === null || plot.toOn > addDays(lastDay(lastMonth), 1))

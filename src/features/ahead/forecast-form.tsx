@@ -26,6 +26,7 @@ const defaultsOf = (start: ForecastStartView): ForecastInput => {
     loadM3: '20.8',
     loadsPerDayMax: '6',
     stormMm: '127',
+    stormAreaM2: String(Math.round(start.openAreaM2)),
     stormShare: '0.9',
     ranges: {
       runoffFactor: around(p.runoffFactor, 0.8, 1.2),
@@ -212,6 +213,13 @@ export function ForecastForm({
         unit="mm"
         inputMode="decimal"
         hint="The permit’s own: often 24 hours in 25 years."
+      />
+      <TextField
+        name="stormAreaM2"
+        label="Open ground that drains to the store, in square metres"
+        unit="m²"
+        inputMode="decimal"
+        hint="Working area and lined floor of today; the store’s own catchment is counted beside it."
       />
       <TextField
         name="stormShare"

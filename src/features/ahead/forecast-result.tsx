@@ -46,7 +46,7 @@ function PlanHead({ view, leachateMax }: { view: ForecastView; leachateMax: numb
         ))}
       </tr>
       <tr>
-        {scenarios.map((plan, index) => (
+        {scenarios.map((plan) => (
           <Fragment key={plan.name}>
             <th scope="col" className="r border-l border-line">
               leachate, m³
@@ -216,6 +216,14 @@ function Says({ view }: { view: ForecastView }) {
             {summary.overShare > 0
               ? `In ${inHundred(summary.overShare)} of 100 the operating level is passed all the same, at ${formatNumber(store.loadsPerDayMax, 0)} loads a day.${overWords(view, summary)}`
               : 'The operating level is never passed.'}
+            {summary.spillShare > 0 && (
+              <strong>
+                {' '}
+                In {inHundred(summary.spillShare)} of 100 draws it runs over its crest of{' '}
+                {formatNumber(store.crestLevelM, 2)} m, by up to {formatM3(summary.total.spillM3.high)} m³ in
+                nine of ten.
+              </strong>
+            )}
           </li>
         ))}
       {storm && store && (

@@ -1,6 +1,7 @@
 import { useState } from 'react';
 import { Link, useParams, useSearchParams } from 'react-router';
 import { monthName } from '#shared/calendar/month.ts';
+import { counted } from '#shared/count-words.ts';
 import type { BalanceGroup, BalanceView } from '#shared/views/balance-view.ts';
 import type { TermName } from '#shared/water-balance/terms.ts';
 import { usePlace } from '../../app/place.ts';
@@ -184,7 +185,7 @@ export function BalancePage() {
                 {data.run.warnings.length > 0 && (
                   <details className="mt-4">
                     <summary className="cursor-pointer font-medium">
-                      {data.run.warnings.length} warnings of the run
+                      {counted(data.run.warnings.length, 'warning', 'warnings')} of the run
                     </summary>
                     <ul className="list-disc pl-5">
                       {data.run.warnings.map((warning) => (

@@ -12,7 +12,7 @@ import { useRecord } from '../../lib/record.ts';
 
 /** Very small numbers, like conductivities, keep their power of ten. */
 const formatWorking = ({ value, unit }: WorkingLine) =>
-  value !== 0 && Math.abs(value) < 1e-4
+  value !== 0 && Math.abs(value) < 0.005
     ? value.toExponential(2).replaceAll('-', '−')
     : formatNumber(value, unit === 'm³' ? 1 : unit === '' ? 3 : 2);
 

@@ -101,7 +101,8 @@ export function BreakCauses({ view }: { view: CompareView }) {
   if (!massBreak)
     return (
       <p className="text-muted">
-        No bend stands out in the last three years: one slope fits the months as well as two.
+        No change of slope by a tenth or more stands out in the last three years. Smaller ones are within what
+        meters and model do by themselves.
       </p>
     );
   return (

@@ -1,4 +1,5 @@
 import { useState } from 'react';
+import { counted } from '#shared/count-words.ts';
 import { parseNumber } from '#shared/ledger/parse-number.ts';
 import { tryBalanceInput } from '#shared/schemas/balance.ts';
 import { tryBalance, type TryBalanceMonth } from '#shared/water-balance/try-balance.ts';
@@ -169,7 +170,7 @@ export function TryBalanceForm({ first }: { first: Typed & { capacity: string } 
           </div>
         )}
       </div>
-      {answer.result && (
+      {answer.result && !answer.problems && (
         <>
           <ScrollBox label="Every term of the twelve months">
             <table className="tbl tbl-tight">
@@ -215,8 +216,10 @@ export function TryBalanceForm({ first }: { first: Typed & { capacity: string } 
           </ScrollBox>
           <p className="hint">
             Soil water before January: {formatNumber(answer.result.startMm, 2)} mm
-            {answer.result.cycleCount ? `, after ${answer.result.cycleCount} repeated years` : ''}. Rain −
-            runoff − evapotranspiration − change − percolation is at most{' '}
+            {answer.result.cycleCount
+              ? `, after ${counted(answer.result.cycleCount, 'repeated year', 'repeated years')}`
+              : ''}
+            . Rain − runoff − evapotranspiration − change − percolation is at most{' '}
             {Math.max(...answer.result.months.map((month) => Math.abs(month.residualMm))).toExponential(1)} mm
             in any month. Nothing here is stored.
           </p>

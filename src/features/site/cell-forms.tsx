@@ -138,7 +138,7 @@ export function CoverForm({ view, plotId, onDone }: SectionProps & { plotId: str
         label="Water in the placed soil"
         unit="mm"
         inputMode="decimal"
-        hint="Empty: half of the available water of the new cover, our template."
+        hint="Empty: half of the available water of the new cover, our template. The difference from what the old soil held is its own term of the balance: enter what is really there."
         isOptional
       />
       <TextField name="evidence" label="Evidence" hint="A survey, a photo or a certificate." />

@@ -179,11 +179,12 @@ function Act({ view }: { view: ClimateImportView }) {
         <p className="flex flex-wrap gap-3">
           <button
             type="button"
-            className="btn"
+            className={view.doubts.length ? 'btn btn-second' : 'btn'}
             disabled={confirm.isPending}
             onClick={() => confirm.mutate({})}
           >
             Write {view.counts.ok + view.counts.warned} {view.mapping.kind === 'daily' ? 'days' : 'months'}
+            {view.doubts.length > 0 && ' all the same'}
           </button>
           <Link className="btn btn-second" to={`/sites/${site.slug}/site#climate`}>
             Leave without writing

@@ -66,6 +66,25 @@ describe('climate sheets', () => {
   });
 });
 
+describe('a station without rain', () => {
+  it('keeps its days of temperature; rain of another station stands beside them', () => {
+    const days = new Map(
+      Array.from(
+        { length: 30 },
+        (_, index) =>
+          [
+            `2026-06-${String(index + 1).padStart(2, '0')}`,
+            { ...noClimate, tMinC: 4, tMaxC: 8 + index / 10 },
+          ] as const,
+      ),
+    );
+    const month = summariseMonth('2026-06', days);
+    expect(month.days).toMatchObject({ precipitationMm: null });
+    expect(month.days!.tMaxC).toHaveLength(30);
+    expect(month.isComplete).toBe(false);
+  });
+});
+
 describe('a month with missing days', () => {
   const day = (precipitationMm: number | null) => ({ ...noClimate, precipitationMm, tMinC: 4, tMaxC: 8 });
   const days = new Map(

@@ -118,7 +118,7 @@ describe('members of a forecast', () => {
     const values = Float64Array.from([50, 0, 100, 30, 20, 10, 40, 60, 90, 80, 70]);
     const zero = new Float64Array(11);
     const { months, memberCount } = summariseMembers(
-      [{ leachateM3: values, levelM: zero, loads: zero, isOver: new Uint8Array(11) }],
+      [{ leachateM3: values, levelM: zero, loads: zero, isOver: new Uint8Array(11), spillM3: zero }],
       1,
     );
     expect(memberCount).toBe(11);
@@ -135,6 +135,7 @@ describe('a store ahead', () => {
     points,
     startLevelM: 1,
     operatingLevelM: 2,
+    crestLevelM: 2.8,
     linedAreaM2: 1000,
     evaporationFactor: 1,
     isCovered: false,
@@ -142,7 +143,12 @@ describe('a store ahead', () => {
     loadM3: 20,
     loadsPerDayMax: 1,
   };
-  const out = { levelM: new Float64Array(2), loads: new Float64Array(2), isOver: new Uint8Array(2) };
+  const out = {
+    levelM: new Float64Array(2),
+    loads: new Float64Array(2),
+    isOver: new Uint8Array(2),
+    spillM3: new Float64Array(2),
+  };
 
   it('fills, is treated, and hauls what stands above the operating level, as far as trucks go', () => {
     // Month 1, by hand: 1000 + 1500 + 100 − 50 − 300 = 2250; above 2000 by 250, 13 loads of 20, ends at 1990.
@@ -160,6 +166,19 @@ describe('a store ahead', () => {
     expect(out.levelM[0]).toBeCloseTo(1.99, 9);
     expect(out.levelM[1]).toBeCloseTo(2.61, 9);
     expect([...out.isOver]).toEqual([0, 1]);
+    expect([...out.spillM3]).toEqual([0, 0]);
+  });
+
+  it('what does not fit under the crest runs over and is counted', () => {
+    // By hand: 1000 + 2500 − 300 = 3200, no truck; the crest holds 2800, so 400 run over.
+    simulateStore(
+      { ...plan, loadsPerDayMax: 0 },
+      [{ inflowM3: 2500, rainMm: 0, petMm: 0, dayCount: 30 }],
+      out,
+      0,
+    );
+    expect(out.spillM3[0]).toBeCloseTo(400, 9);
+    expect(out.levelM[0]).toBeCloseTo(2.8, 9);
   });
 });
 
@@ -231,5 +250,8 @@ describe('planned cover changes', () => {
   it('a plot of another site and a change before the last one are refused in words', () => {
     expect(() => planScenario(input, [{ ...close, plotId: 'other' }])).toThrow(PlanRefused);
     expect(() => planScenario(input, [{ ...close, onDay: '2024-12-01' }])).toThrow('in order');
+    expect(() => planScenario(input, [{ ...close, areaM2: 10_001 }])).toThrow(
+      /10000 m² of this plot are left .* 10001 m² cannot be covered/,
+    );
   });
 });

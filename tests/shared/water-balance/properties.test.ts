@@ -226,7 +226,7 @@ describe('what holds for every input', { timeout: 5_000 + numRuns * 30 }, () => 
           if (at !== index) return row;
           const days = row.days && {
             ...row.days,
-            precipitationMm: row.days.precipitationMm.map((rain, day, all) =>
+            precipitationMm: row.days.precipitationMm!.map((rain, day, all) =>
               day === all.length - 1 ? rain + moreMm : rain,
             ),
           };

@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { monthRange } from '#shared/calendar/month.ts';
 import { recordHeatIndex } from '#shared/water-balance/potential-evapotranspiration.ts';
 import { checkClosure } from '#shared/water-balance/check-closure.ts';
+import { curveNumberRunoffMm, monthCurveRunoffMm } from '#shared/water-balance/curve-number.ts';
 import { runWaterBalance } from '#shared/water-balance/run-water-balance.ts';
 import { sumSteps } from '#shared/water-balance/sum-steps.ts';
 import type { EngineInput } from '#shared/water-balance/engine-input.ts';
@@ -110,6 +111,17 @@ describe('laws of a step', () => {
       }),
     ).steps[0]!.terms;
     expect(terms).toMatchObject({ percolationMm: 0, runoffToLeachateMm: 90 });
+  });
+
+  it('60 mm on curve number 80 run off by the five days before: 4.90 mm on dry ground, 36.16 on wet, in the growing season', () => {
+    // By hand: dry, number 62.69, S 151.19 mm, (60 − 30.24)² ÷ (29.76 + 151.19); wet, 90.20, S 27.61, 54.48² ÷ 82.09.
+    const storm = [0, 0, 0, 0, 0, 60];
+    expect(monthCurveRunoffMm(storm, [], 80, true).at(-1)).toBeCloseTo(4.895, 3);
+    const wet = [12, 12, 12, 12, 12, 60];
+    expect(monthCurveRunoffMm(wet, [], 80, true).at(-1)).toBeCloseTo(36.155, 2);
+    // Without the days before, the average condition stands; those of the month before count where they are known.
+    expect(monthCurveRunoffMm([60], [], 80, true)[0]).toBeCloseTo(curveNumberRunoffMm(60, 80), 12);
+    expect(monthCurveRunoffMm([60], [0, 0, 0, 0, 0], 80, true)[0]).toBeCloseTo(4.895, 3);
   });
 
   it('a line that does not close gives no result, and is named', () => {
