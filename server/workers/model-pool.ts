@@ -2,17 +2,14 @@ import { availableParallelism } from 'node:os';
 import { fileURLToPath } from 'node:url';
 import { Piscina } from 'piscina';
 import type { Calibration } from '#shared/calibration/calibrate.ts';
-import type { ForecastTask, Members } from '#shared/forecast/draw-members.ts';
-import type { CalibrationTask } from './model-worker.ts';
+import type { Members } from '#shared/forecast/draw-members.ts';
+import type { CalibrationTask, SpanTask } from './model-worker.ts';
 
 /** Long computations of the model, in threads of their own; a call that is aborted stops its thread. */
 export interface ModelPool {
   threadCount: number;
   calibrate: (task: CalibrationTask) => Promise<Calibration>;
-  drawSpan: (
-    span: { task: ForecastTask; from: number; to: number },
-    signal?: AbortSignal,
-  ) => Promise<Members>;
+  drawSpan: (span: SpanTask, signal?: AbortSignal) => Promise<Members>;
   close: () => Promise<void>;
 }
 

@@ -36,6 +36,18 @@ export function calibrateCell(task: CalibrationTask): Calibration {
   return calibrate(choices, start, task.measuredM3, predict, task.isDivided);
 }
 
+export interface SpanTask {
+  /** Names the scenario of one forecast, so that a thread lays it out once and not for every span. */
+  scenarioId: string;
+  task: ForecastTask;
+  from: number;
+  to: number;
+}
+
+let laidOut: { scenarioId: string; draw: (from: number, to: number) => Members } | null = null;
+
 /** Members from one number up to another of one scenario. */
-export const drawSpan = ({ task, from, to }: { task: ForecastTask; from: number; to: number }): Members =>
-  createForecaster(task)(from, to);
+export function drawSpan({ scenarioId, task, from, to }: SpanTask): Members {
+  if (laidOut?.scenarioId !== scenarioId) laidOut = { scenarioId, draw: createForecaster(task) };
+  return laidOut.draw(from, to);
+}

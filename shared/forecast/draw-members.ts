@@ -97,6 +97,8 @@ function drawSettings({ input, ranges }: ForecastTask, random: Random): StepSett
 function createRunner(task: ForecastTask, weather: MemberWeather) {
   const steps = layOut(task);
   const stepMonths = Int32Array.from(steps, (step) => monthsBetween(task.firstMonth, step.month.row.month));
+  // Steps of whole months share one forcing, so the weather is written once a month and not once a plot.
+  const forcings = [...new Map(steps.map((step, index) => [step.forcing, stepMonths[index]!]))];
   const firstSteps = steps.filter(
     (step, index) => steps.findIndex((one) => one.plotIndex === step.plotIndex) === index,
   );
@@ -105,12 +107,7 @@ function createRunner(task: ForecastTask, weather: MemberWeather) {
   return (settings: StepSettings, out: Float64Array, offset: number): void => {
     for (const step of firstSteps)
       grounds[step.plotIndex] = { ...(task.grounds[step.plot.id] ?? fresh(step)) };
-    for (let index = 0; index < steps.length; index += 1) {
-      const step = steps[index]!;
-      const month = stepMonths[index]!;
-      const ground = grounds[step.plotIndex]!;
-      if (step.takesOverFrom >= 0) Object.assign(ground, grounds[step.takesOverFrom]);
-      const { forcing } = step;
+    for (const [forcing, month] of forcings) {
       const share = forcing.durationMonths;
       forcing.rainMm = weather.rainMm[month]! * share;
       forcing.snowfallMm = weather.snowfallMm[month]! * share;
@@ -119,7 +116,13 @@ function createRunner(task: ForecastTask, weather: MemberWeather) {
       forcing.dSnowMm = weather.dSnowMm[month]! * share;
       forcing.referencePetMm = weather.petMm[month]! * share;
       forcing.isFrozen = weather.isFrozen[month] === 1;
-      computeStep(ground, step.cover, forcing, settings, terms);
+    }
+    for (let index = 0; index < steps.length; index += 1) {
+      const step = steps[index]!;
+      const month = stepMonths[index]!;
+      const ground = grounds[step.plotIndex]!;
+      if (step.takesOverFrom >= 0) Object.assign(ground, grounds[step.takesOverFrom]);
+      computeStep(ground, step.cover, step.forcing, settings, terms);
       out[offset + month] = out[offset + month]! + (terms.leachateMm * step.plot.areaM2) / 1000;
     }
   };

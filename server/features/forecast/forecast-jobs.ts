@@ -28,7 +28,7 @@ export interface ForecastJobs {
 }
 
 const keptMax = 40;
-/** Small enough that progress moves and a cancel is felt, large enough that laying out does not count. */
+/** Small enough that progress moves and a cancel is felt. */
 const spanSize = 25;
 
 export function createForecastJobs(pool: ModelPool): ForecastJobs {
@@ -40,8 +40,9 @@ export function createForecastJobs(pool: ModelPool): ForecastJobs {
     tasks: readonly ForecastTask[],
     memberCount: number,
   ): Promise<void> {
-    for (const task of tasks) {
+    for (const [taskIndex, task] of tasks.entries()) {
       const spans = Array.from({ length: Math.ceil(memberCount / spanSize) }, (_, index) => ({
+        scenarioId: `${job.id} ${taskIndex}`,
         task,
         from: index * spanSize,
         to: Math.min(memberCount, (index + 1) * spanSize),
