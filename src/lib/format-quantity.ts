@@ -19,6 +19,9 @@ export function formatSigned(value: number, decimals = 0): string {
 }
 
 export const formatPercent = (value: number): string => `${formatSigned(value, 1)}\u00a0%`;
+/** Very small or very large numbers, as a power of ten. */
+export const formatExponent = (value: number, decimals = 1): string =>
+  value.toExponential(decimals).replaceAll('-', '−');
 export const formatMm = (value: number): string => formatNumber(value, 1);
 export const formatM3 = (value: number): string => formatNumber(value, 0);
 export const formatHa = (areaM2: number): string => formatNumber(areaM2 / 10_000, 1);

@@ -7,7 +7,7 @@ import type { ForecastSummary, Spread } from '#shared/forecast/summarise-members
 import type { ForecastView } from '#shared/views/forecast-view.ts';
 import { ScrollBox, Section } from '../../components/page.tsx';
 import { formatM3, formatNumber, formatSigned } from '../../lib/format-quantity.ts';
-import { largest, rowHeight, SpreadTrack } from './plan-tracks.tsx';
+import { largest, SpreadTrack } from './plan-tracks.tsx';
 
 const letters = 'ABC';
 const inHundred = (share: number) => Math.round(share * 100);
@@ -85,7 +85,7 @@ function PlanCells({
       <td className="r border-l border-line">
         <SpreadNumber spread={month.leachateM3} />
       </td>
-      <td className="!p-0">
+      <td className="relative !p-0">
         <SpreadTrack
           spreads={summary.months.map((one) => one.leachateM3)}
           index={row}
@@ -97,7 +97,7 @@ function PlanCells({
       </td>
       {store && (
         <>
-          <td className="!p-0">
+          <td className="relative !p-0">
             <span className="sr-only">
               {formatNumber(month.levelM.middle, 2)} m,{' '}
               {span(month.levelM, (value) => formatNumber(value, 2))}
@@ -135,7 +135,7 @@ function PlanTable({ view }: { view: ForecastView }) {
         <PlanHead view={view} leachateMax={leachateMax} />
         <tbody>
           {months.map((month, row) => (
-            <tr key={month} style={{ height: rowHeight }}>
+            <tr key={month} className="h-11">
               <th scope="row" className="whitespace-nowrap !min-w-0 !py-0">
                 {monthShortName(month)}{' '}
                 {(row === 0 || month.endsWith('-01')) && (

@@ -1,7 +1,7 @@
 import type { ForecastSummary, Spread } from '#shared/forecast/summarise-members.ts';
+import { Marks, Running, Track, trackHeight } from '../../components/track.tsx';
 
-export const rowHeight = 44;
-const middle = rowHeight / 2;
+const middle = trackHeight / 2;
 
 interface TrackProps {
   spreads: readonly Spread[];
@@ -25,39 +25,36 @@ export function SpreadTrack({ spreads, index, width, min, max, colour, limit }: 
     [
       [half(before, end), 0],
       [x(here[end]), middle],
-      [half(after, end), rowHeight],
+      [half(after, end), trackHeight],
     ].filter((point): point is [number, number] => point[0] !== null);
   const points = (list: [number, number][]) => list.map((point) => point.join(',')).join(' ');
   return (
-    <svg aria-hidden width={width} height={rowHeight} className="block">
-      <polygon points={points([...edge('low'), ...edge('high').reverse()])} fill={colour} opacity="0.2" />
-      <polyline
-        points={points(edge('middle'))}
-        fill="none"
-        stroke={colour}
-        strokeWidth="2"
-        strokeDasharray="7 4"
-      />
-      <rect
-        x={x(here.middle) - 4}
-        y={middle - 4}
-        width="8"
-        height="8"
-        fill="#fff"
-        stroke={colour}
-        strokeWidth="2"
-      />
+    <Track width={width}>
+      <Running width={width}>
+        <polygon points={points([...edge('low'), ...edge('high').reverse()])} fill={colour} opacity="0.2" />
+        <polyline
+          points={points(edge('middle'))}
+          fill="none"
+          stroke={colour}
+          strokeWidth="2"
+          strokeDasharray="7 4"
+        />
+      </Running>
       {limit !== undefined && (
-        <line
-          x1={x(limit)}
-          x2={x(limit)}
-          y1="0"
-          y2={rowHeight}
-          stroke="var(--color-s-limit)"
+        <line x1={x(limit)} x2={x(limit)} y1="0" y2="100%" stroke="var(--color-s-limit)" strokeWidth="2" />
+      )}
+      <Marks>
+        <rect
+          x={x(here.middle) - 4}
+          y="-4"
+          width="8"
+          height="8"
+          fill="#fff"
+          stroke={colour}
           strokeWidth="2"
         />
-      )}
-    </svg>
+      </Marks>
+    </Track>
   );
 }
 

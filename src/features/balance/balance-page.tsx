@@ -7,7 +7,13 @@ import type { TermName } from '#shared/water-balance/terms.ts';
 import { usePlace } from '../../app/place.ts';
 import { PageHead, ScrollBox, Section } from '../../components/page.tsx';
 import { Viewed } from '../../components/state.tsx';
-import { formatInstant, formatM3, formatMm, formatNumber } from '../../lib/format-quantity.ts';
+import {
+  formatExponent,
+  formatInstant,
+  formatM3,
+  formatMm,
+  formatNumber,
+} from '../../lib/format-quantity.ts';
 import { useRecord } from '../../lib/record.ts';
 import { RunsPanel } from './runs-panel.tsx';
 import { WorkingPanel } from './working-panel.tsx';
@@ -163,9 +169,9 @@ export function BalancePage() {
                             <th scope="row">{line.line}</th>
                             <td>{lineWords[line.line]}</td>
                             <td className="r">
-                              {line.residualMm === 0 ? '0' : line.residualMm.toExponential(1)}
+                              {line.residualMm === 0 ? '0' : formatExponent(line.residualMm)}
                             </td>
-                            <td className="r">{line.toleranceMm.toExponential(1)}</td>
+                            <td className="r">{formatExponent(line.toleranceMm)}</td>
                           </tr>
                         ))}
                       </tbody>

@@ -7,13 +7,13 @@ import { usePlace } from '../../app/place.ts';
 import { Panel } from '../../components/dialog.tsx';
 import { Viewed } from '../../components/state.tsx';
 import { Template } from '../../components/words.tsx';
-import { formatInstant, formatNumber } from '../../lib/format-quantity.ts';
+import { formatExponent, formatInstant, formatNumber } from '../../lib/format-quantity.ts';
 import { useRecord } from '../../lib/record.ts';
 
 /** Very small numbers, like conductivities, keep their power of ten. */
 const formatWorking = ({ value, unit }: WorkingLine) =>
   value !== 0 && Math.abs(value) < 0.005
-    ? value.toExponential(2).replaceAll('-', '−')
+    ? formatExponent(value, 2)
     : formatNumber(value, unit === 'm³' ? 1 : unit === '' ? 3 : 2);
 
 function Sheet({ stepId, term }: { stepId: string; term: TermName }) {

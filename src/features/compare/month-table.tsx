@@ -66,7 +66,7 @@ export function MonthTable({ view, onOpen }: { view: CompareView; onOpen: (month
   const kinds = [
     ...new Map(rows.flatMap((row) => row.covers.map((cover) => [cover.kind, cover] as const))).values(),
   ];
-  const cell = '!py-0 !align-middle';
+  const cell = 'relative !py-0 !align-middle';
   return (
     <>
       <HatchDefs />
@@ -111,7 +111,7 @@ export function MonthTable({ view, onOpen }: { view: CompareView; onOpen: (month
           <tbody>
             {rows.map((row, index) => (
               <tr key={row.month} className="h-11">
-                <th scope="row" className={`${cell} sticky left-0 bg-surface`}>
+                <th scope="row" className={`${cell} !sticky left-0 z-10 bg-surface`}>
                   <button
                     type="button"
                     className="number-button whitespace-nowrap"

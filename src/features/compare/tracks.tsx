@@ -1,27 +1,27 @@
 import type { ComparedRow } from '#shared/views/balance-view.ts';
 import type { CoverShare } from '#shared/views/site-view.ts';
+import { Marks, Running, Track, trackHeight } from '../../components/track.tsx';
 import { hatchFill } from './hatches.tsx';
 
-const height = 44;
-const middle = height / 2;
+const middle = trackHeight / 2;
 
 /** Share of the cell under each cover, as hatches side by side. */
 export function CoverTrack({ covers, width = 66 }: { covers: readonly CoverShare[]; width?: number }) {
   const starts = covers.map((_, index) => covers.slice(0, index).reduce((sum, one) => sum + one.share, 0));
   return (
-    <svg aria-hidden width={width} height={height} className="block">
+    <Track width={width}>
       {covers.map((cover, index) => (
         <rect
           key={cover.kind}
           x={starts[index]! * width}
           width={cover.share * width}
-          height={height}
+          height="100%"
           fill={hatchFill(cover.kind)}
           stroke="var(--color-edge)"
           strokeWidth="1"
         />
       ))}
-    </svg>
+    </Track>
   );
 }
 
@@ -41,19 +41,21 @@ export function BarTrack({
 }) {
   const length = max > 0 ? Math.max(0, (value / max) * width) : 0;
   return (
-    <svg aria-hidden width={width} height={height} className="block">
-      <line x1="0.5" x2="0.5" y1="0" y2={height} stroke="var(--color-line)" />
-      <rect
-        x="1"
-        y={middle - 8}
-        width={length}
-        height="16"
-        fill={isDashed ? 'none' : colour}
-        stroke={colour}
-        strokeWidth={isDashed ? 1.5 : 0}
-        strokeDasharray={isDashed ? '3 3' : undefined}
-      />
-    </svg>
+    <Track width={width}>
+      <line x1="0.5" x2="0.5" y1="0" y2="100%" stroke="var(--color-line)" />
+      <Marks>
+        <rect
+          x="1"
+          y="-8"
+          width={length}
+          height="16"
+          fill={isDashed ? 'none' : colour}
+          stroke={colour}
+          strokeWidth={isDashed ? 1.5 : 0}
+          strokeDasharray={isDashed ? '3 3' : undefined}
+        />
+      </Marks>
+    </Track>
   );
 }
 
@@ -78,7 +80,7 @@ function Segment({
   if (point.value === null) return null;
   const here = `${x(point.value)} ${middle}`;
   const half = (other: number) => (x(other) + x(point.value!)) / 2;
-  const path = `${point.before === null ? `M${here}` : `M${half(point.before)} 0L${here}`}${point.after === null ? '' : `L${half(point.after)} ${height}`}`;
+  const path = `${point.before === null ? `M${here}` : `M${half(point.before)} 0L${here}`}${point.after === null ? '' : `L${half(point.after)} ${trackHeight}`}`;
   return <path d={path} fill="none" stroke={colour} strokeWidth="2" strokeDasharray={dash} />;
 }
 
@@ -107,11 +109,15 @@ export function StorageTrack({
   const point = pointOf(rows, index, (row) => row.storageMm);
   const at = x(point.value!);
   return (
-    <svg aria-hidden width={width} height={height} className="block">
-      <line x1="0.5" x2="0.5" y1="0" y2={height} stroke="var(--color-line)" />
-      <Segment point={point} x={x} colour="var(--color-s-storage)" dash="12 3 3 3" />
-      <path d={`M${at} ${middle - 5}l5 5-5 5-5-5z`} fill="var(--color-s-storage)" />
-    </svg>
+    <Track width={width}>
+      <line x1="0.5" x2="0.5" y1="0" y2="100%" stroke="var(--color-line)" />
+      <Running width={width}>
+        <Segment point={point} x={x} colour="var(--color-s-storage)" dash="12 3 3 3" />
+      </Running>
+      <Marks>
+        <path d={`M${at} -5l5 5-5 5-5-5z`} fill="var(--color-s-storage)" />
+      </Marks>
+    </Track>
   );
 }
 
@@ -130,33 +136,35 @@ export function VolumeTrack({
   const predicted = pointOf(rows, index, (row) => row.predictedM3);
   const measured = pointOf(rows, index, (row) => row.measuredM3);
   return (
-    <svg aria-hidden width={width} height={height} className="block">
+    <Track width={width}>
       {[0, 0.25, 0.5, 0.75, 1].map((share) => (
         <line
           key={share}
           x1={x(share * max)}
           x2={x(share * max)}
           y1="0"
-          y2={height}
+          y2="100%"
           stroke="var(--color-line)"
           strokeWidth={share === 0 ? 1.5 : 1}
         />
       ))}
-      <Segment point={predicted} x={x} colour="var(--color-s-leachate)" dash="7 4" />
-      <Segment point={measured} x={x} colour="var(--color-s-pumped)" />
-      <rect
-        x={x(predicted.value!) - 5}
-        y={middle - 5}
-        width="10"
-        height="10"
-        fill="#fff"
-        stroke="var(--color-s-leachate)"
-        strokeWidth="2"
-      />
-      {measured.value !== null && (
-        <circle cx={x(measured.value)} cy={middle} r="5.5" fill="var(--color-s-pumped)" />
-      )}
-    </svg>
+      <Running width={width}>
+        <Segment point={predicted} x={x} colour="var(--color-s-leachate)" dash="7 4" />
+        <Segment point={measured} x={x} colour="var(--color-s-pumped)" />
+      </Running>
+      <Marks>
+        <rect
+          x={x(predicted.value!) - 5}
+          y="-5"
+          width="10"
+          height="10"
+          fill="#fff"
+          stroke="var(--color-s-leachate)"
+          strokeWidth="2"
+        />
+        {measured.value !== null && <circle cx={x(measured.value)} r="5.5" fill="var(--color-s-pumped)" />}
+      </Marks>
+    </Track>
   );
 }
 
@@ -167,23 +175,25 @@ export function GapTrack({ row, max }: { row: ComparedRow; max: number }) {
   const band = row.tolerance?.valueM3 ?? 0;
   const gap = row.differenceM3;
   return (
-    <svg aria-hidden width={width} height={height} className="block">
+    <Track width={width}>
       <rect
         x={x(-Math.min(band, max))}
         width={x(Math.min(band, max)) - x(-Math.min(band, max))}
-        height={height}
+        height="100%"
         fill="var(--color-sunken)"
       />
+      <line x1={width / 2} x2={width / 2} y1="0" y2="100%" stroke="var(--color-ink)" />
       {gap !== null && (
-        <rect
-          x={Math.min(x(0), x(gap))}
-          y={middle - 8}
-          width={Math.max(1, Math.abs(x(gap) - x(0)))}
-          height="16"
-          fill={row.isInside ? 'var(--color-edge)' : 'var(--color-ink)'}
-        />
+        <Marks>
+          <rect
+            x={Math.min(x(0), x(gap))}
+            y="-8"
+            width={Math.max(1, Math.abs(x(gap) - x(0)))}
+            height="16"
+            fill={row.isInside ? 'var(--color-edge)' : 'var(--color-ink)'}
+          />
+        </Marks>
       )}
-      <line x1={width / 2} x2={width / 2} y1="0" y2={height} stroke="var(--color-ink)" />
-    </svg>
+    </Track>
   );
 }

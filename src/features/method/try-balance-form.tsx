@@ -4,7 +4,7 @@ import { parseNumber } from '#shared/ledger/parse-number.ts';
 import { tryBalanceInput } from '#shared/schemas/balance.ts';
 import { tryBalance, type TryBalanceMonth } from '#shared/water-balance/try-balance.ts';
 import { ScrollBox } from '../../components/page.tsx';
-import { formatNumber } from '../../lib/format-quantity.ts';
+import { formatExponent, formatNumber } from '../../lib/format-quantity.ts';
 
 const monthNames = ['Jan', 'Feb', 'Mar', 'Apr', 'May', 'Jun', 'Jul', 'Aug', 'Sep', 'Oct', 'Nov', 'Dec'];
 const rows = [
@@ -220,7 +220,7 @@ export function TryBalanceForm({ first }: { first: Typed & { capacity: string } 
               ? `, after ${counted(answer.result.cycleCount, 'repeated year', 'repeated years')}`
               : ''}
             . Rain − runoff − evapotranspiration − change − percolation is at most{' '}
-            {Math.max(...answer.result.months.map((month) => Math.abs(month.residualMm))).toExponential(1)} mm
+            {formatExponent(Math.max(...answer.result.months.map((month) => Math.abs(month.residualMm))))} mm
             in any month. Nothing here is stored.
           </p>
         </>
