@@ -1,4 +1,5 @@
 import { cellText, type Sheet } from '../sheets/sheet.ts';
+import { splitHeader } from './read-samples-down.ts';
 
 export type LabColumn =
   | 'point'
@@ -14,7 +15,9 @@ export type LabColumn =
   | 'dilution'
   | 'kind'
   | 'laboratoryNumber'
-  | 'comment';
+  | 'comment'
+  | 'time'
+  | 'sampler';
 
 const headerWords: [LabColumn, RegExp][] = [
   ['reportingLimitUnit', /^(rl|reporting limit|pql) ?units?$/],
@@ -36,7 +39,9 @@ const headerWords: [LabColumn, RegExp][] = [
   ['dilution', /^(dil\.?|dilution|df|dilution factor)$/],
   ['kind', /^(kind|type|sample type|qc type)$/],
   ['laboratoryNumber', /^(lab no\.?|lab id|lab sample id|laboratory number|ref)$/],
-  ['comment', /^(comments?|remarks?|note)$/],
+  ['comment', /^(comments?|remarks?|notes?)$/],
+  ['time', /^(time|sample time|time sampled|uhrzeit)$/],
+  ['sampler', /^(sampler|sampled by|taken by|initials|init)$/],
 ];
 
 export interface LongLayout {
@@ -52,7 +57,24 @@ export interface CrosstabLayout {
   samples: { point: string; sampledText: string; valueColumn: number; limitColumn: number | null }[];
 }
 
-export type LabLayout = LongLayout | CrosstabLayout;
+/** Samples down, parameters across. */
+export interface SamplesDownLayout {
+  shape: 'samples-down';
+  headerRow: number;
+  columns: Partial<Record<LabColumn, number>>;
+  analytes: {
+    analyteText: string;
+    unitText: string;
+    valueColumn: number;
+    /** Columns that stand between this parameter and the next: its limit, its mark, its unit. */
+    own: Partial<Record<LabColumn, number>>;
+  }[];
+}
+
+export type LabLayout = LongLayout | CrosstabLayout | SamplesDownLayout;
+
+/** Columns that may stand beside each parameter. */
+const beside: ReadonlySet<LabColumn> = new Set(['reportingLimit', 'detectionLimit', 'qualifier', 'unit']);
 
 const columnOf = (text: string): LabColumn | null =>
   headerWords.find(([, pattern]) => pattern.test(text.toLowerCase()))?.[0] ?? null;
@@ -86,9 +108,21 @@ function crosstabSamples(sheet: Sheet, headerRow: number, headers: string[]): Cr
   });
 }
 
+/** Parameters of a header row with samples down: every header that is no column of another kind. */
+function analytesAcross(headers: readonly string[]): SamplesDownLayout['analytes'] {
+  const analytes: SamplesDownLayout['analytes'] = [];
+  headers.forEach((header, index) => {
+    const name = columnOf(header);
+    const last = analytes.at(-1);
+    if (header && name === null) analytes.push({ ...splitHeader(header), valueColumn: index, own: {} });
+    else if (name && last && beside.has(name)) last.own[name] ??= index;
+  });
+  return analytes;
+}
+
 /**
  * Finds the header row of a sheet and says how it is laid out; null when there is no table of results.
- * A long list has a result column; a crosstab has analytes down and samples across.
+ * A long list has a result column; a crosstab has analytes down and samples across, or the other way round.
  */
 export function detectLayout(sheet: Sheet): LabLayout | null {
   for (const row of sheet.rows.slice(0, 60)) {
@@ -98,7 +132,11 @@ export function detectLayout(sheet: Sheet): LabLayout | null {
       const name = columnOf(header);
       if (name && columns[name] === undefined) columns[name] = index;
     });
-    if (columns.analyte === undefined) continue;
+    if (columns.analyte === undefined) {
+      const analytes = analytesAcross(headers);
+      if (columns.sampled === undefined || columns.point === undefined || !analytes.length) continue;
+      return { shape: 'samples-down', headerRow: row.number, columns, analytes };
+    }
     if (columns.result !== undefined) return { shape: 'long-list', headerRow: row.number, columns };
     const samples = crosstabSamples(sheet, row.number, headers);
     if (samples.length) return { shape: 'crosstab', headerRow: row.number, columns, samples };

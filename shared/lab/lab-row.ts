@@ -20,6 +20,8 @@ export interface RawLabRow {
   dilutionText: string;
   kindText: string;
   laboratoryNumber: string;
+  /** What the laboratory wrote beside the row. */
+  commentText: string;
 }
 
 export type LabRowState = 'ok' | 'warned' | 'held' | 'skipped';
@@ -30,7 +32,7 @@ export interface LabRow extends RawLabRow {
   messages: string[];
   /** Question that holds the row, with what an answer would be remembered for. */
   question: {
-    kind: 'sample-point' | 'analyte' | 'unit' | 'qualifier' | 'limit' | 'value' | 'date';
+    kind: 'sample-point' | 'analyte' | 'unit' | 'qualifier' | 'limit' | 'equal-to-limit' | 'value' | 'date';
     text: string;
   } | null;
   samplePointId: string | null;
@@ -50,4 +52,17 @@ export interface LabRow extends RawLabRow {
   /** Result in the record that this row replaces, with its value as words. */
   supersedesId: string | null;
   supersedesWords: string | null;
+}
+
+/** Keeps a row out of the record until its question is answered. */
+export function hold(row: LabRow, kind: NonNullable<LabRow['question']>['kind'], text: string): void {
+  row.state = 'held';
+  row.messages.push(text);
+  row.question ??= { kind, text };
+}
+
+/** Says what was noticed; the row is written all the same. */
+export function warn(row: LabRow, text: string): void {
+  if (row.state === 'ok') row.state = 'warned';
+  row.messages.push(text);
 }

@@ -7,6 +7,7 @@ import {
   type LongLayout,
 } from './detect-layout.ts';
 import type { RawLabRow } from './lab-row.ts';
+import { readSamplesDown } from './read-samples-down.ts';
 
 export interface SkippedRow {
   sheet: string;
@@ -51,7 +52,7 @@ function rawRow(sheet: Sheet, row: SheetRow, columns: LongLayout['columns'], val
     rowNumber: row.number,
     cell: `${columnLetter(valueColumn)}${row.number}`,
     pointText: at('point'),
-    sampledText: at('sampled'),
+    sampledText: [at('sampled'), at('time')].filter(Boolean).join(' '),
     analyteText: at('analyte'),
     fractionText: '',
     cas: at('cas'),
@@ -65,6 +66,7 @@ function rawRow(sheet: Sheet, row: SheetRow, columns: LongLayout['columns'], val
     dilutionText: at('dilution'),
     kindText: at('kind'),
     laboratoryNumber: at('laboratoryNumber'),
+    commentText: at('comment'),
   };
 }
 
@@ -155,7 +157,18 @@ export function readLabSheets(sheets: readonly Sheet[]): LabReading {
     reading.layout ??= layout;
     reading.jobNumber ??= findJobNumber(sheet, layout.headerRow);
     if (layout.shape === 'long-list') readLongList(sheet, layout, reading);
-    else readCrosstab(sheet, layout, reading);
+    else if (layout.shape === 'crosstab') readCrosstab(sheet, layout, reading);
+    else {
+      const { rows, skipped } = readSamplesDown(sheet, layout, (row, valueColumn) =>
+        rawRow(sheet, row, layout.columns, valueColumn),
+      );
+      reading.rows.push(...rows);
+      for (const { row, why } of skipped) {
+        const text = rowText(row);
+        reading.qualifierKey.push(...keyOf(text));
+        reading.skipped.push({ sheet: sheet.name, rowNumber: row.number, text, why });
+      }
+    }
   }
   return reading;
 }

@@ -1,7 +1,9 @@
 import { Decimal } from 'decimal.js';
 import { daysBetween, type Day } from '../calendar/day.ts';
 import { basisFactor, readUnit } from './concentration-units.ts';
-import type { LabRow, RawLabRow } from './lab-row.ts';
+import { compareFractions } from './compare-fractions.ts';
+import { settleEqualToLimit, sheetsThatSayBelow, type EqualToLimit } from './equal-to-limit.ts';
+import { hold, warn, type LabRow, type RawLabRow } from './lab-row.ts';
 import { decimalMarkOf, isEitherWay, withPoint, type DecimalMark } from './decimal-mark.ts';
 import { parseResultText, type ResultText } from './parse-result-text.ts';
 import { decideDateOrder, readSampledDate } from './read-sampled-date.ts';
@@ -25,7 +27,8 @@ export interface LabCatalog {
   /** Live results of the site by `point analyte fraction day`. */
   existing: ReadonlyMap<string, { id: string; comparator: string; value: string | null; unit: string }>;
   receivedOn: Day;
-  answers: { dateOrder: 'day-first' | 'month-first' | null };
+  /** What a person said once for the whole file. */
+  answers: { dateOrder: 'day-first' | 'month-first' | null; equalToLimit: EqualToLimit | null };
 }
 
 export const tidyName = (text: string): string =>
@@ -86,17 +89,6 @@ function emptyRow(raw: RawLabRow): LabRow {
   };
 }
 
-function hold(row: LabRow, kind: NonNullable<LabRow['question']>['kind'], text: string): void {
-  row.state = 'held';
-  row.messages.push(text);
-  row.question ??= { kind, text };
-}
-
-function warn(row: LabRow, text: string): void {
-  if (row.state === 'ok') row.state = 'warned';
-  row.messages.push(text);
-}
-
 function resolvePoint(row: LabRow, catalog: LabCatalog): void {
   const tidy = tidyName(row.pointText);
   const mapped = catalog.mappings.get(mappingKey('sample-point', row.pointText));
@@ -125,17 +117,21 @@ function resolveAnalyte(
     );
   // "Total suspended solids" is a name of its own, not a fraction of "suspended solids".
   const whole = named(tidyName(row.analyteText));
+  // "Zn-T" and "Zn-D"; a name that ends like that itself, like 2,4-D, is found whole or not at all.
+  const [, stem = '', letter = ''] = /^(.+?)[-\s]([TD])$/.exec(split.name) ?? [];
   const analyte =
     catalog.analytes.find((one) => one.id === mapped) ??
     whole ??
     named(tidy) ??
+    (stem ? named(tidyName(stem)) : undefined) ??
     catalog.analytes.find((one) => one.cas !== null && one.cas === cas);
   if (!analyte) {
     hold(row, 'analyte', `Parameter "${row.analyteText}" is not known here.`);
     return null;
   }
   row.analyteId = analyte.id;
-  row.fraction = (whole ? '' : split.fraction) || row.fractionText || analyte.defaultFraction || '';
+  const suffix = letter === 'D' ? 'dissolved' : letter === 'T' ? 'total' : '';
+  row.fraction = (whole ? '' : split.fraction || suffix) || row.fractionText || analyte.defaultFraction || '';
   return {
     basis: analyte.basis,
     standardUnit: analyte.standardUnit,
@@ -153,16 +149,21 @@ function convert(valueText: string, factors: readonly string[]): string {
 const isPlainNumber = (text: string) => /^\d*\.?\d+$/.test(text.replace(/,/g, ''));
 const limitText = (text: string) => text.replace(/,/g, text.includes('.') || /,\d{3}$/.test(text) ? '' : '.');
 
+const lostSample = /\b(broken|lost|spilled|spilt|leaked|cracked)\b/i;
+
 function applyText(row: LabRow, text: ResultText, factors: string[], limitFactors: string[]): void {
   if (isPlainNumber(row.reportingLimitText))
     row.reportingLimit = convert(limitText(row.reportingLimitText), limitFactors);
   if (isPlainNumber(row.detectionLimitText))
     row.detectionLimit = convert(limitText(row.detectionLimitText), limitFactors);
   if (text.kind === 'missing') {
-    row.missingReason = text.reason;
+    row.missingReason =
+      !row.resultText && lostSample.test(row.commentText) ? 'sample broken or lost' : text.reason;
     warn(
       row,
-      text.reason === 'pending' ? 'Still pending: a late result to be filled.' : `No result: ${text.reason}.`,
+      text.reason === 'pending'
+        ? 'Still pending: a late result to be filled.'
+        : `No result: ${row.missingReason}.`,
     );
   } else if (text.kind === 'question') hold(row, 'value', text.sentence);
   else if (text.kind === 'below') {
@@ -333,6 +334,7 @@ function settleDoubles(rows: readonly LabRow[]): void {
 export function resolveLabRows(raws: readonly RawLabRow[], catalog: LabCatalog): LabRow[] {
   const markOf = decimalMarks(raws);
   const order = catalog.answers.dateOrder ?? decideDateOrder(raws.map((raw) => raw.sampledText));
+  const saysBelow = sheetsThatSayBelow(raws);
   const rows = raws.map((raw) => {
     const row = emptyRow(raw);
     if (qualityKinds.test(raw.kindText)) {
@@ -382,9 +384,12 @@ export function resolveLabRows(raws: readonly RawLabRow[], catalog: LabCatalog):
       }
     }
     resolveQualifier(row, catalog);
+    if (raw.commentText) row.messages.push(`The laboratory noted: ${raw.commentText}.`);
+    settleEqualToLimit(row, saysBelow, catalog.answers.equalToLimit);
     if (row.state !== 'held') compareWithRecord(row, catalog);
     return row;
   });
   settleDoubles(rows);
+  compareFractions(rows);
   return rows;
 }

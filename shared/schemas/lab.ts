@@ -11,7 +11,7 @@ export const laboratoryInput = z.object({
 export const labUploadInput = z.object({ id: recordId, laboratoryId: recordId });
 export const labAnswerInput = z
   .object({
-    kind: z.enum(['sample-point', 'analyte', 'unit', 'qualifier', 'date-order']),
+    kind: z.enum(['sample-point', 'analyte', 'unit', 'qualifier', 'date-order', 'equal-to-limit']),
     fromText: requiredText('the text of the sheet'),
     toValue: requiredText('the answer'),
   })
@@ -19,6 +19,7 @@ export const labAnswerInput = z
     const choices: Partial<Record<typeof input.kind, readonly string[]>> = {
       qualifier: qualifierMeanings,
       'date-order': ['day-first', 'month-first'],
+      'equal-to-limit': ['below', 'measured'],
     };
     if (choices[input.kind] && !choices[input.kind]!.includes(input.toValue))
       context.addIssue({ code: 'custom', path: ['toValue'], message: 'Choose one of the answers offered.' });

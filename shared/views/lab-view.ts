@@ -1,3 +1,4 @@
+import type { LabLayout } from '../lab/detect-layout.ts';
 import type { LabRow } from '../lab/lab-row.ts';
 import type { Verdict } from '../limits/evaluate-limit.ts';
 
@@ -68,7 +69,7 @@ export interface LabImportView {
   counts: ImportCounts;
   laboratoryId: string | null;
   reading: {
-    shape: string;
+    shape: LabLayout['shape'];
     jobNumber: string | null;
     notes: string[];
     skipped: { sheet: string; rowNumber: number; text: string; why: string }[];
@@ -77,6 +78,7 @@ export interface LabImportView {
     sheetName: string;
     headerRow: number;
     dateOrder: 'day-first' | 'month-first' | null;
+    equalToLimit?: 'below' | 'measured' | null;
   };
   rows: (LabRow & { pointCode: string | null; analyteName: string | null })[];
   points: { id: string; code: string; name: string }[];

@@ -1,26 +1,8 @@
 import { describe, expect, it } from 'vitest';
-import { analyteTemplates } from '#shared/lab/analyte-templates.ts';
 import { readLabSheets } from '#shared/lab/read-lab-sheet.ts';
-import { resolveLabRows, type LabCatalog } from '#shared/lab/resolve-lab-rows.ts';
+import { resolveLabRows } from '#shared/lab/resolve-lab-rows.ts';
+import { labCatalog } from '../factories/lab-catalog.ts';
 import { sheetOf } from '../factories/sheets.ts';
-
-const catalog = (change: Partial<LabCatalog> = {}): LabCatalog => ({
-  points: [
-    { id: 'eff', code: 'EFF-01', aliases: ['EFF'] },
-    { id: 'c1', code: 'LCH-C1', aliases: [] },
-    { id: 'c3', code: 'LCH-C3', aliases: [] },
-  ],
-  analytes: analyteTemplates.map((one) => ({ ...one, id: one.code })),
-  qualifiers: new Map([
-    ['U', 'non-detect'],
-    ['J', 'estimated-below-reporting'],
-  ]),
-  mappings: new Map(),
-  existing: new Map(),
-  receivedOn: '2026-03-19',
-  answers: { dateOrder: null },
-  ...change,
-});
 
 /** Shape 1 of the project's lab sheets: a long list under a letterhead; all rows invented. */
 const shape1 = sheetOf([
@@ -43,7 +25,7 @@ const shape1 = sheetOf([
 
 describe('shape 1: long list under a letterhead', () => {
   const reading = readLabSheets([shape1]);
-  const rows = resolveLabRows(reading.rows, catalog());
+  const rows = resolveLabRows(reading.rows, labCatalog());
   const row = (code: string) => rows.find((one) => one.analyteId === code)!;
 
   it('finds header row 9, four rows, the job, and the footnote as a key of letters', () => {
@@ -84,7 +66,7 @@ describe('shape 1: long list under a letterhead', () => {
   });
 
   it('a letter that is not in the laboratory’s table holds its row only', () => {
-    const strict = resolveLabRows(reading.rows, catalog({ qualifiers: new Map([['U', 'non-detect']]) }));
+    const strict = resolveLabRows(reading.rows, labCatalog({ qualifiers: new Map([['U', 'non-detect']]) }));
     expect(strict.filter((one) => one.state === 'held').map((one) => one.analyteId)).toEqual(['phenol']);
     expect(strict.find((one) => one.analyteId === 'phenol')!.question!.kind).toBe('qualifier');
   });
@@ -112,7 +94,7 @@ const shape2 = sheetOf(
 
 describe('shape 2: crosstab', () => {
   const reading = readLabSheets([shape2]);
-  const rows = resolveLabRows(reading.rows, catalog());
+  const rows = resolveLabRows(reading.rows, labCatalog());
   const row = (point: string, code: string) =>
     rows.find((one) => one.samplePointId === point && one.analyteId === code)!;
 
@@ -145,7 +127,7 @@ describe('23: what is held, and what is left as text', () => {
     resolveLabRows(
       readLabSheets([sheetOf([['Client ID', 'Sampled', 'Parameter', 'Result', 'Units', 'RL'], ...rows])])
         .rows,
-      catalog(),
+      labCatalog(),
     );
 
   it('a row without a unit, an ND without a limit and =2+5 are held; nothing is guessed', () => {
@@ -202,7 +184,7 @@ describe('23: what is held, and what is left as text', () => {
       resolveLabRows(
         readLabSheets([sheetOf([['Client ID', 'Sampled', 'Parameter', 'Result', 'Units', 'RL'], ...rows])])
           .rows,
-        catalog({
+        labCatalog({
           mappings: new Map([
             ['sample-point of1b', 'eff'],
             ['unit tss', 'mg/L'],
@@ -227,7 +209,7 @@ describe('marks, names and ranges', () => {
           ...rows.map(([name, result, unit]) => ['LCH-C1', '2026-03-03', name!, result!, unit!, '']),
         ]),
       ]).rows,
-      catalog(),
+      labCatalog(),
     );
 
   it('a decimal comma of one value decides the others of its column', () => {

@@ -102,6 +102,40 @@ describe('sheets of a laboratory, in the demo', () => {
     expect((await check(second)).counts.held).toBe(0);
   });
 
+  it('shape 3, limits printed for what was not found: one answer for the file, written as below the limit', async () => {
+    const day = (text: string) => new Date(`${text}T00:00:00Z`);
+    const bytes = await workbookOf({
+      S: [
+        ['Date', 'Site', 'BOD (mg/l)', 'Zn-T (ug/L)', 'Zn-D (ug/L)', 'Comments'],
+        ['RL', null, 2, 5, 5, null],
+        [day('2026-03-13'), 'EFF-1', 2, 61, 5, null],
+        [day('2026-03-14'), 'EFF-1', 6, 5, 5, 'dup taken'],
+      ],
+    });
+    const importId = (await upload(bytes, 'across.xlsx').expect(201)).body.id as string;
+    const view = await check(importId);
+    expect(view.reading.shape).toBe('samples-down');
+    expect(view.counts).toMatchObject({ read: 7, ok: 2, held: 4, skipped: 1 });
+    const kind = 'equal-to-limit';
+    await act(importId, 'answers', { kind, fromText: '2', toValue: 'perhaps' }).expect(422);
+    const answered = await act(importId, 'answers', { kind, fromText: '2', toValue: 'below' }).expect(201);
+    expect(answered.body.counts).toMatchObject({ ok: 2, warned: 4, held: 0 });
+    expect((await check(importId)).reading.equalToLimit).toBe('below');
+    await act(importId, 'confirmation').expect(201);
+    const written = (await results()).filter((row) => row.importId === importId);
+    expect(
+      written
+        .filter((row) => row.comparator === '<')
+        .map((row) => `${row.siteDay} ${row.analyteName} ${row.fraction} ${Number(row.value)}`)
+        .sort(),
+    ).toEqual([
+      '2026-03-13 BOD5  2',
+      '2026-03-13 Zinc dissolved 0.005',
+      '2026-03-14 Zinc dissolved 0.005',
+      '2026-03-14 Zinc total 0.005',
+    ]);
+  });
+
   it('a later sheet with another value supersedes and keeps the old one; undo voids', async () => {
     const list = (zinc: string) =>
       Buffer.from(

@@ -54,7 +54,7 @@ export async function restageResults(
     deps,
     importId,
     (await importRepository.listRows(tx, importId)).map((one) => one.payload as LabRow),
-    await catalogOf(tx, siteId, row.laboratoryId!, await today(tx, siteId, deps), reading.dateOrder),
+    await catalogOf(tx, siteId, row.laboratoryId!, await today(tx, siteId, deps), reading),
     reading.skipped.length,
   );
   return { id: importId, counts };
@@ -92,6 +92,7 @@ export async function uploadResults(
     qualifierKey: reading.qualifierKey,
     headerRow: reading.layout.headerRow,
     dateOrder: null,
+    equalToLimit: null,
     ...previewOf(read, reading),
   };
   await importRepository.insertImport(tx, {
@@ -115,7 +116,7 @@ export async function uploadResults(
     deps,
     input.id,
     reading.rows,
-    await catalogOf(tx, siteId, input.laboratoryId, await today(tx, siteId, deps), null),
+    await catalogOf(tx, siteId, input.laboratoryId, await today(tx, siteId, deps), stored),
     reading.skipped.length,
   );
   await recordChange(tx, context, {
@@ -151,6 +152,9 @@ export async function answerQuestion(
     });
   } else if (input.kind === 'date-order') {
     reading.dateOrder = input.toValue === 'month-first' ? 'month-first' : 'day-first';
+    await importRepository.updateImport(tx, importId, { reading });
+  } else if (input.kind === 'equal-to-limit') {
+    reading.equalToLimit = input.toValue === 'below' ? 'below' : 'measured';
     await importRepository.updateImport(tx, importId, { reading });
   } else {
     await repository.saveMapping(tx, {
@@ -229,8 +233,10 @@ export async function confirmResults(
   await refuseSameFile(tx, siteId, row.fileSha256);
   const staged = (await importRepository.listRows(tx, importId)).map((one) => one.payload as LabRow);
   const receivedOn = await today(tx, siteId, deps);
-  const { dateOrder } = row.reading as StoredReading;
-  const rows = resolveLabRows(staged, await catalogOf(tx, siteId, row.laboratoryId!, receivedOn, dateOrder));
+  const rows = resolveLabRows(
+    staged,
+    await catalogOf(tx, siteId, row.laboratoryId!, receivedOn, row.reading as StoredReading),
+  );
   if (rows.some((one, index) => !isSameOutcome(one, staged[index]!)))
     throw new Problem(
       'changed-meanwhile',

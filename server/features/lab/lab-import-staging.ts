@@ -1,3 +1,4 @@
+import type { LabLayout } from '#shared/lab/detect-layout.ts';
 import type { LabRow, RawLabRow } from '#shared/lab/lab-row.ts';
 import type { LabReading, SkippedRow } from '#shared/lab/read-lab-sheet.ts';
 import { resolveLabRows, tidyName, type LabCatalog } from '#shared/lab/resolve-lab-rows.ts';
@@ -10,7 +11,7 @@ import { siteDaysOf, siteOf } from '../sites/site-service.ts';
 import * as repository from './lab-repository.ts';
 
 export interface StoredReading {
-  shape: string;
+  shape: LabLayout['shape'];
   jobNumber: string | null;
   notes: string[];
   skipped: SkippedRow[];
@@ -18,7 +19,9 @@ export interface StoredReading {
   preview: { number: number; cells: string[] }[];
   sheetName: string;
   headerRow: number;
+  /** Answers for the whole file; uploads of before have none. */
   dateOrder: 'day-first' | 'month-first' | null;
+  equalToLimit?: 'below' | 'measured' | null;
 }
 
 const previewRowsMax = 24;
@@ -39,7 +42,7 @@ export async function catalogOf(
   siteId: string,
   laboratoryId: string,
   receivedOn: string,
-  dateOrder: StoredReading['dateOrder'],
+  { dateOrder, equalToLimit = null }: Pick<StoredReading, 'dateOrder' | 'equalToLimit'>,
 ): Promise<LabCatalog> {
   const mappings = await repository.listMappings(tx, laboratoryId);
   const live = await repository.listLiveResults(tx, siteId);
@@ -63,7 +66,7 @@ export async function catalogOf(
         ]),
     ),
     receivedOn,
-    answers: { dateOrder },
+    answers: { dateOrder, equalToLimit },
   };
 }
 

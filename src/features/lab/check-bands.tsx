@@ -45,6 +45,12 @@ export function Strip({ rows }: { rows: readonly Row[] }) {
   );
 }
 
+const shapeWords: Record<LabImportView['reading']['shape'], string> = {
+  'long-list': 'a long list, one result a row',
+  crosstab: 'parameters against sampling dates',
+  'samples-down': 'one sample a row, parameters across',
+};
+
 export function Preview({ view }: { view: LabImportView }) {
   const { reading } = view;
   const columnCount = Math.max(...reading.preview.map((row) => row.cells.length), 1);
@@ -81,8 +87,7 @@ export function Preview({ view }: { view: LabImportView }) {
       </ScrollBox>
       <p className="hint mt-2">
         Sheet “{reading.sheetName}”, the first {reading.preview.length} rows. Header in row{' '}
-        {reading.headerRow}. Read as{' '}
-        {reading.shape === 'crosstab' ? 'parameters against sampling dates' : 'a long list, one result a row'}
+        {reading.headerRow}. Read as {shapeWords[reading.shape]}
         {reading.jobNumber ? `; laboratory job ${reading.jobNumber}` : ''}.
       </p>
     </>
@@ -108,6 +113,12 @@ export function HowRead({ view }: { view: LabImportView }) {
             <li>
               Dates are read with the {reading.dateOrder === 'day-first' ? 'day' : 'month'} first, your
               answer.
+            </li>
+          )}
+          {reading.equalToLimit && (
+            <li>
+              Values that equal their limit are read as{' '}
+              {reading.equalToLimit === 'below' ? 'below it' : 'measured'}, your answer.
             </li>
           )}
           {reading.skipped.length > 0 && (

@@ -76,7 +76,7 @@ export function Rows({ rows }: { rows: readonly Row[] }) {
                     )}
                     {row.supersedesWords && <span className="hint block">was {row.supersedesWords}</span>}
                   </td>
-                  <td>
+                  <td className="min-w-[260px]">
                     <Word look={kinds[kind].look}>
                       {kind === 'noticed' ? 'New, noticed' : kind[0]!.toUpperCase() + kind.slice(1)}
                     </Word>

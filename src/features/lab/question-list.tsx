@@ -62,8 +62,21 @@ function answerOf(row: Row, view: LabImportView): Question['answer'] {
         { value: 'month-first', label: 'the month comes first' },
       ],
     };
+  if (question.kind === 'equal-to-limit')
+    return {
+      kind: 'equal-to-limit',
+      fromText: row.resultText,
+      label: 'In this file such values',
+      options: [
+        { value: 'below', label: 'were not found: below the limit' },
+        { value: 'measured', label: 'were measured' },
+      ],
+    };
   return null;
 }
+
+/** Answers that hold for the whole file, whatever the text of the row. */
+const fileKinds: readonly LabAnswerInput['kind'][] = ['date-order', 'equal-to-limit'];
 
 /** One question for all rows that ask the same. */
 export function questionsOf(view: LabImportView): Question[] {
@@ -71,7 +84,7 @@ export function questionsOf(view: LabImportView): Question[] {
   for (const row of view.rows.filter((one) => one.state === 'held' && one.question)) {
     const answer = answerOf(row, view);
     const key = answer
-      ? `${answer.kind} ${answer.kind === 'date-order' ? '' : answer.fromText}`
+      ? `${answer.kind} ${fileKinds.includes(answer.kind) ? '' : answer.fromText}`
       : `${row.sheet} ${row.rowNumber} ${row.cell}`;
     const known = questions.get(key);
     if (known) known.rows.push(row.rowNumber);
@@ -91,7 +104,7 @@ function QuestionItem({ question, importId }: { question: Question; importId: st
         <strong>
           {question.rows.length === 1
             ? `Row ${question.rows[0]}`
-            : `${question.rows.length} rows, first row ${question.rows[0]}`}
+            : `${question.rows.length} results, the first in row ${question.rows[0]}`}
           .
         </strong>{' '}
         {question.sentence}
