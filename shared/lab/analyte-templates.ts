@@ -63,5 +63,10 @@ export const analyteTemplates: readonly AnalyteTemplate[] = [
   one('p-cresol', 'p-Cresol', '106-44-5', 'mg/L', ['4-methylphenol']),
   one('terpineol', 'α-Terpineol', '98-55-5', 'mg/L', ['a-terpineol', 'alpha-terpineol']),
   one('benzene', 'Benzene', '71-43-2', 'mg/L', ['benzol']),
+  one('dichloromethane', 'Dichloromethane', '75-09-2', 'mg/L', ['methylene chloride', 'dichlormethan']),
+  one('vinyl-chloride', 'Vinyl chloride', '75-01-4', 'mg/L', ['chloroethene', 'vinylchlorid']),
+  one('trichloroethene', 'Trichloroethene', '79-01-6', 'mg/L', ['trichloroethylene', 'TCE', 'trichlorethen']),
+  one('aox', 'AOX', null, 'mg/L', ['adsorbable organic halogens', 'adsorbable organically bound halogens']),
+  one('phenol-index', 'Phenol index', null, 'mg/L', ['phenolindex']),
   one('toluene', 'Toluene', '108-88-3', 'mg/L', ['toluol']),
 ];

@@ -6,6 +6,8 @@ import { settleEqualToLimit, sheetsThatSayBelow, type EqualToLimit } from './equ
 import { hold, warn, type LabRow, type RawLabRow } from './lab-row.ts';
 import { decimalMarkOf, isEitherWay, withPoint, type DecimalMark } from './decimal-mark.ts';
 import { parseResultText, type ResultText } from './parse-result-text.ts';
+import { resolveAnalyte } from './resolve-analyte.ts';
+import { mappingKey, tidyName } from './tidy-name.ts';
 import { decideDateOrder, readSampledDate } from './read-sampled-date.ts';
 
 export interface LabCatalog {
@@ -31,38 +33,7 @@ export interface LabCatalog {
   answers: { dateOrder: 'day-first' | 'month-first' | null; equalToLimit: EqualToLimit | null };
 }
 
-export const tidyName = (text: string): string =>
-  text
-    .toLowerCase()
-    .normalize('NFKD')
-    .replace(/[^a-z0-9]+/g, '');
-const mappingKey = (kind: string, text: string) => `${kind} ${tidyName(text)}`;
 const daysBeforeReceiptMax = 180;
-
-/** Name, fraction and basis that a laboratory writes into one text: "Zinc, Total", "Ammonia (as N)". */
-export function splitAnalyteText(text: string): {
-  name: string;
-  fraction: string;
-  basis: string | null;
-  unit: string;
-} {
-  const unit = /\s((?:m|u|µ|μ|n)?g\/l)$/i.exec(text)?.[1] ?? '';
-  const withoutUnit = unit ? text.slice(0, -unit.length) : text;
-  const basis = /\(?\bas ([A-Za-z0-9]+)\)?/.exec(withoutUnit)?.[1] ?? null;
-  const fraction = /\bdissolved\b|\bdiss\.?/i.test(withoutUnit)
-    ? 'dissolved'
-    : /\btotal recoverable\b/i.test(withoutUnit)
-      ? 'total recoverable'
-      : /\btotal\b/i.test(withoutUnit)
-        ? 'total'
-        : '';
-  const name = withoutUnit
-    .replace(/\(?\bas [A-Za-z0-9]+\)?/, '')
-    .replace(/[,(]?\s*\b(total recoverable|total|dissolved|diss\.?)\b\)?/i, '')
-    .replace(/[,\s]+$/, '')
-    .trim();
-  return { name, fraction, basis, unit };
-}
 
 function emptyRow(raw: RawLabRow): LabRow {
   return {
@@ -101,43 +72,6 @@ function resolvePoint(row: LabRow, catalog: LabCatalog): void {
   if (!row.pointText) hold(row, 'sample-point', 'No sample point is given in this row.');
   else if (!point) hold(row, 'sample-point', `Sample point "${row.pointText}" is not known here.`);
   else row.samplePointId = point.id;
-}
-
-function resolveAnalyte(
-  row: LabRow,
-  catalog: LabCatalog,
-): { basis: string | null; standardUnit: string; reportedBasis: string | null; unitInName: string } | null {
-  const split = splitAnalyteText(row.analyteText);
-  const tidy = tidyName(split.name);
-  const mapped = catalog.mappings.get(mappingKey('analyte', row.analyteText));
-  const cas = row.cas.replace(/^0+/, '');
-  const named = (name: string) =>
-    catalog.analytes.find((one) =>
-      [one.name, one.code, ...one.aliases].some((own) => tidyName(own) === name),
-    );
-  // "Total suspended solids" is a name of its own, not a fraction of "suspended solids".
-  const whole = named(tidyName(row.analyteText));
-  // "Zn-T" and "Zn-D"; a name that ends like that itself, like 2,4-D, is found whole or not at all.
-  const [, stem = '', letter = ''] = /^(.+?)[-\s]([TD])$/.exec(split.name) ?? [];
-  const analyte =
-    catalog.analytes.find((one) => one.id === mapped) ??
-    whole ??
-    named(tidy) ??
-    (stem ? named(tidyName(stem)) : undefined) ??
-    catalog.analytes.find((one) => one.cas !== null && one.cas === cas);
-  if (!analyte) {
-    hold(row, 'analyte', `Parameter "${row.analyteText}" is not known here.`);
-    return null;
-  }
-  row.analyteId = analyte.id;
-  const suffix = letter === 'D' ? 'dissolved' : letter === 'T' ? 'total' : '';
-  row.fraction = (whole ? '' : split.fraction || suffix) || row.fractionText || analyte.defaultFraction || '';
-  return {
-    basis: analyte.basis,
-    standardUnit: analyte.standardUnit,
-    reportedBasis: split.basis,
-    unitInName: split.unit,
-  };
 }
 
 /** Converts a number text into the analyte's unit and basis, exact, without losing printed digits. */

@@ -239,3 +239,82 @@ describe('marks, names and ranges', () => {
     expect(read([['pH', 74, 'pH']])[0]).toMatchObject({ state: 'held' });
   });
 });
+
+describe('CAS numbers beside the names', () => {
+  const read = (rows: string[][]) =>
+    resolveLabRows(
+      readLabSheets([sheetOf([['Client ID', 'Sampled', 'CAS', 'Substance', 'Found', 'Unit'], ...rows])]).rows,
+      labCatalog(),
+    );
+  const row = (cas: string, name: string) => read([['EFF-01', '2026-03-04', cas, name, '5', 'ug/l']])[0]!;
+
+  it('a number that a spreadsheet turned into a date agrees with its name: written, with a warning', () => {
+    expect(row('2-Sep-75', 'Methylene chloride')).toMatchObject({
+      state: 'warned',
+      analyteId: 'dichloromethane',
+    });
+  });
+
+  it('a name and a number of two parameters hold the row', () => {
+    const held = row('7440-66-6', 'Benzene');
+    expect(held.question?.kind).toBe('analyte');
+    expect(held.messages.join(' ')).toContain('Zinc');
+  });
+
+  it('an unknown name is taken by its number, and said; a number that does not fit leaves the name', () => {
+    expect(row('79-01-6', 'Tri')).toMatchObject({ state: 'warned', analyteId: 'trichloroethene' });
+    expect(row('79-01-7', 'Tri').question?.kind).toBe('analyte');
+    expect(row('71-43-3', 'Benzene')).toMatchObject({ state: 'warned', analyteId: 'benzene' });
+  });
+
+  it('a name that ends in -D is not dissolved when it is known as it stands', () => {
+    const [herbicide] = resolveLabRows(
+      readLabSheets([
+        sheetOf([
+          ['Client ID', 'Sampled', 'Substance', 'Found', 'Unit'],
+          ['EFF-01', '2026-03-04', '2,4-D', '5', 'ug/l'],
+        ]),
+      ]).rows,
+      labCatalog({
+        analytes: [
+          {
+            id: '24d',
+            code: '24-d',
+            name: '2,4-D',
+            cas: '94-75-7',
+            basis: null,
+            defaultFraction: null,
+            standardUnit: 'mg/L',
+            aliases: [],
+          },
+        ],
+      }),
+    );
+    expect(herbicide).toMatchObject({ analyteId: '24d', fraction: '' });
+  });
+});
+
+/** Shape 5: semicolons, decimal commas, German names; all rows invented. */
+describe('shape 5: decimal commas and German names', () => {
+  const reading = readLabSheets([
+    sheetOf([
+      ['Probe', 'Datum', 'Parameter', 'Wert', 'Einheit', 'BG'],
+      ['EFF-01', '04.03.2026', 'Ammonium-N', '3,2', 'mg/l', '0,1'],
+      ['EFF-01', '04.03.2026', 'Zink gesamt', '< 0,05', 'mg/l', '0,05'],
+      ['EFF-01', '04.03.2026', 'Chlorid', '1.400', 'mg/l', '10'],
+      ['EFF-01', '04.03.2026', 'AOX', '412', 'µg/l', '10'],
+      ['EFF-01', '04.03.2026', 'Phenol-Index', 'n.n.', 'mg/l', '0,01'],
+    ]),
+  ]);
+  const rows = resolveLabRows(reading.rows, labCatalog());
+
+  it('reads 3.2, below 0.05, 1 400 shown as a decision, 0.412 and below 0.01', () => {
+    expect(rows.map((row) => [row.analyteId, row.comparator, Number(row.value), row.state])).toEqual([
+      ['ammonia', '=', 3.2, 'ok'],
+      ['zinc', '<', 0.05, 'ok'],
+      ['chloride', '=', 1400, 'warned'],
+      ['aox', '=', 0.412, 'ok'],
+      ['phenol-index', '<', 0.01, 'ok'],
+    ]);
+  });
+});

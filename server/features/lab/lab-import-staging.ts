@@ -1,7 +1,8 @@
 import type { LabLayout } from '#shared/lab/detect-layout.ts';
 import type { LabRow, RawLabRow } from '#shared/lab/lab-row.ts';
 import type { LabReading, SkippedRow } from '#shared/lab/read-lab-sheet.ts';
-import { resolveLabRows, tidyName, type LabCatalog } from '#shared/lab/resolve-lab-rows.ts';
+import { resolveLabRows, type LabCatalog } from '#shared/lab/resolve-lab-rows.ts';
+import { mappingKey } from '#shared/lab/tidy-name.ts';
 import { Problem } from '#shared/problems.ts';
 import { cellText, type SheetFile } from '#shared/sheets/sheet.ts';
 import type { Transaction } from '../../db/transaction.ts';
@@ -56,7 +57,7 @@ export async function catalogOf(
     qualifiers: new Map(
       (await repository.listQualifiers(tx, laboratoryId)).map((one) => [one.letter, one.meaning]),
     ),
-    mappings: new Map(mappings.map((one) => [`${one.kind} ${tidyName(one.fromText)}`, one.toValue])),
+    mappings: new Map(mappings.map((one) => [mappingKey(one.kind, one.fromText), one.toValue])),
     existing: new Map(
       live
         .filter((one) => one.isCounted)
