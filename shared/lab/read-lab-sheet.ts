@@ -51,7 +51,8 @@ function rawRow(sheet: Sheet, row: SheetRow, columns: LongLayout['columns'], val
     sheet: sheet.name,
     rowNumber: row.number,
     cell: `${columnLetter(valueColumn)}${row.number}`,
-    pointText: at('point'),
+    // Without a column of points the laboratory's own number has to name the sample.
+    pointText: columns.point === undefined ? at('laboratoryNumber') : at('point'),
     sampledText: [at('sampled'), at('time')].filter(Boolean).join(' '),
     analyteText: at('analyte'),
     fractionText: '',

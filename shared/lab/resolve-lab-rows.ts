@@ -1,5 +1,5 @@
 import { Decimal } from 'decimal.js';
-import { daysBetween, type Day } from '../calendar/day.ts';
+import type { Day } from '../calendar/day.ts';
 import { basisFactor, readUnit } from './concentration-units.ts';
 import { compareFractions } from './compare-fractions.ts';
 import { settleEqualToLimit, sheetsThatSayBelow, type EqualToLimit } from './equal-to-limit.ts';
@@ -8,7 +8,7 @@ import { decimalMarkOf, isEitherWay, withPoint, type DecimalMark } from './decim
 import { parseResultText, type ResultText } from './parse-result-text.ts';
 import { resolveAnalyte } from './resolve-analyte.ts';
 import { mappingKey, tidyName } from './tidy-name.ts';
-import { decideDateOrder, readSampledDate } from './read-sampled-date.ts';
+import { dateOrderOf, resolveDate } from './resolve-date.ts';
 
 export interface LabCatalog {
   points: { id: string; code: string; aliases: string[] }[];
@@ -29,11 +29,11 @@ export interface LabCatalog {
   /** Live results of the site by `point analyte fraction day`. */
   existing: ReadonlyMap<string, { id: string; comparator: string; value: string | null; unit: string }>;
   receivedOn: Day;
+  /** 'YYYY-MM-DDTHH:MM' on the site's wall clock. */
+  localTime: (instantMs: number) => string;
   /** What a person said once for the whole file. */
   answers: { dateOrder: 'day-first' | 'month-first' | null; equalToLimit: EqualToLimit | null };
 }
-
-const daysBeforeReceiptMax = 180;
 
 function emptyRow(raw: RawLabRow): LabRow {
   return {
@@ -60,16 +60,23 @@ function emptyRow(raw: RawLabRow): LabRow {
   };
 }
 
+/** A spreadsheet drops the zeros in front of a name made of digits. */
+const isSameName = (own: string, other: string): boolean =>
+  own === other || (/^\d+$/.test(own + other) && Number(own) === Number(other));
+
 function resolvePoint(row: LabRow, catalog: LabCatalog): void {
   const tidy = tidyName(row.pointText);
   const mapped = catalog.mappings.get(mappingKey('sample-point', row.pointText));
   const point = catalog.points.find(
-    (one) =>
-      one.id === mapped ||
-      tidyName(one.code) === tidy ||
-      one.aliases.some((alias) => tidyName(alias) === tidy),
+    (one) => one.id === mapped || [one.code, ...one.aliases].some((own) => isSameName(tidyName(own), tidy)),
   );
-  if (!row.pointText) hold(row, 'sample-point', 'No sample point is given in this row.');
+  if (/^\d(\.\d+)?e\+?\d+$/i.test(row.pointText))
+    hold(
+      row,
+      'value',
+      `"${row.pointText}" lost its last digits in a spreadsheet: it names no sample any more.`,
+    );
+  else if (!row.pointText) hold(row, 'sample-point', 'No sample point is given in this row.');
   else if (!point) hold(row, 'sample-point', `Sample point "${row.pointText}" is not known here.`);
   else row.samplePointId = point.id;
 }
@@ -185,28 +192,6 @@ function resolveQualifier(row: LabRow, catalog: LabCatalog): void {
   }
 }
 
-function resolveDate(row: LabRow, catalog: LabCatalog, order: ReturnType<typeof decideDateOrder>): void {
-  const read = readSampledDate(row.sampledText, order);
-  if (read === null)
-    return hold(
-      row,
-      'date',
-      row.sampledText ? `"${row.sampledText}" is not a date.` : 'No sampling date is given.',
-    );
-  if (read === 'ambiguous')
-    return hold(
-      row,
-      'date',
-      `"${row.sampledText}" can be read two ways, and nothing else in the file decides. Say which part is the day.`,
-    );
-  row.sampledOn = read.day;
-  row.sampledTime = read.time;
-  if (read.day > catalog.receivedOn)
-    hold(row, 'date', `Sampled on ${read.day}, after the file was received on ${catalog.receivedOn}.`);
-  else if (daysBetween(read.day, catalog.receivedOn) > daysBeforeReceiptMax)
-    warn(row, `Sampled on ${read.day}, more than ${daysBeforeReceiptMax} days before the file came.`);
-}
-
 /** Sheet and column letter of a result. */
 const columnKey = (raw: RawLabRow) => `${raw.sheet} ${raw.cell.replace(/\d+/, '')}`;
 
@@ -267,7 +252,10 @@ function settleDoubles(rows: readonly LabRow[]): void {
  */
 export function resolveLabRows(raws: readonly RawLabRow[], catalog: LabCatalog): LabRow[] {
   const markOf = decimalMarks(raws);
-  const order = catalog.answers.dateOrder ?? decideDateOrder(raws.map((raw) => raw.sampledText));
+  const order = dateOrderOf(
+    raws.map((raw) => raw.sampledText),
+    catalog,
+  );
   const saysBelow = sheetsThatSayBelow(raws);
   const rows = raws.map((raw) => {
     const row = emptyRow(raw);

@@ -1,3 +1,4 @@
+import { createSiteDays } from '#shared/calendar/site-days.ts';
 import { analyteTemplates } from '#shared/lab/analyte-templates.ts';
 import type { LabCatalog } from '#shared/lab/resolve-lab-rows.ts';
 
@@ -16,6 +17,9 @@ export const labCatalog = (change: Partial<LabCatalog> = {}): LabCatalog => ({
   mappings: new Map(),
   existing: new Map(),
   receivedOn: '2026-03-19',
+  localTime: createSiteDays([
+    { validFromOn: '2020-01-01', timeZone: 'America/Chicago', dayBoundary: '00:00' },
+  ]).localTime,
   answers: { dateOrder: null, equalToLimit: null },
   ...change,
 });

@@ -47,6 +47,7 @@ export async function catalogOf(
 ): Promise<LabCatalog> {
   const mappings = await repository.listMappings(tx, laboratoryId);
   const live = await repository.listLiveResults(tx, siteId);
+  const { localTime } = await siteDaysOf(tx, siteId);
   return {
     points: (await repository.listSamplePoints(tx, siteId)).map((one) => ({
       id: one.id,
@@ -67,6 +68,7 @@ export async function catalogOf(
         ]),
     ),
     receivedOn,
+    localTime,
     answers: { dateOrder, equalToLimit },
   };
 }
