@@ -1,7 +1,8 @@
 import { Decimal } from 'decimal.js';
 import type { Day } from '../calendar/day.ts';
 import { basisFactor, readUnit } from './concentration-units.ts';
-import { compareFractions } from './compare-fractions.ts';
+import { compareSamples } from './compare-sample.ts';
+import { compareWithHistory, type LabHistory } from './compare-with-history.ts';
 import { settleEqualToLimit, sheetsThatSayBelow, type EqualToLimit } from './equal-to-limit.ts';
 import { hold, warn, type LabRow, type RawLabRow } from './lab-row.ts';
 import { decimalMarkOf, isEitherWay, withPoint, type DecimalMark } from './decimal-mark.ts';
@@ -28,6 +29,7 @@ export interface LabCatalog {
   mappings: ReadonlyMap<string, string>;
   /** Live results of the site by `point analyte fraction day`. */
   existing: ReadonlyMap<string, { id: string; comparator: string; value: string | null; unit: string }>;
+  history: LabHistory;
   receivedOn: Day;
   /** 'YYYY-MM-DDTHH:MM' on the site's wall clock. */
   localTime: (instantMs: number) => string;
@@ -308,10 +310,13 @@ export function resolveLabRows(raws: readonly RawLabRow[], catalog: LabCatalog):
     resolveQualifier(row, catalog);
     if (raw.commentText) row.messages.push(`The laboratory noted: ${raw.commentText}.`);
     settleEqualToLimit(row, saysBelow, catalog.answers.equalToLimit);
-    if (row.state !== 'held') compareWithRecord(row, catalog);
+    if (row.state !== 'held') {
+      compareWithHistory(row, catalog.history);
+      compareWithRecord(row, catalog);
+    }
     return row;
   });
   settleDoubles(rows);
-  compareFractions(rows);
+  compareSamples(rows, catalog);
   return rows;
 }

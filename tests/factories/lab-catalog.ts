@@ -16,6 +16,7 @@ export const labCatalog = (change: Partial<LabCatalog> = {}): LabCatalog => ({
   ]),
   mappings: new Map(),
   existing: new Map(),
+  history: new Map(),
   receivedOn: '2026-03-19',
   localTime: createSiteDays([
     { validFromOn: '2020-01-01', timeZone: 'America/Chicago', dayBoundary: '00:00' },

@@ -38,6 +38,19 @@ export const countsOf = (rows: readonly LabRow[], skippedCount: number) => {
   };
 };
 
+/** Measured values that count, in order of sampling. */
+function historyOf(live: Awaited<ReturnType<typeof repository.listLiveResults>>): LabCatalog['history'] {
+  const history = new Map<string, { sampledOn: string; value: string }[]>();
+  const counted = live.filter((one) => one.isCounted && one.comparator === '=' && one.value !== null);
+  for (const one of counted.sort((a, b) => (a.sampledOn < b.sampledOn ? -1 : 1))) {
+    const key = `${one.samplePointId} ${one.analyteId} ${one.fraction}`;
+    const own = history.get(key) ?? [];
+    history.set(key, own);
+    own.push({ sampledOn: one.sampledOn, value: one.value! });
+  }
+  return history;
+}
+
 export async function catalogOf(
   tx: Transaction,
   siteId: string,
@@ -67,6 +80,7 @@ export async function catalogOf(
           { id: one.id, comparator: one.comparator, value: one.value, unit: one.unit },
         ]),
     ),
+    history: historyOf(live),
     receivedOn,
     localTime,
     answers: { dateOrder, equalToLimit },
