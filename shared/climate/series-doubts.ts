@@ -1,3 +1,4 @@
+import { mean, median } from 'simple-statistics';
 import { addDays, dayName, type Day } from '../calendar/day.ts';
 import { counted } from '../count-words.ts';
 import { addMonths, monthName, type Month } from '../calendar/month.ts';
@@ -10,10 +11,6 @@ import {
 
 const rowsMin = { daily: 60, monthly: 6 } as const;
 const wetDayMm = 0.05;
-
-const medianOf = (values: readonly number[]) =>
-  [...values].sort((a, b) => a - b)[Math.floor(values.length / 2)]!;
-const meanOf = (values: readonly number[]) => values.reduce((sum, value) => sum + value, 0) / values.length;
 
 /**
  * What depths look like as a whole: [median of wet days or months, largest], mm.
@@ -31,14 +28,14 @@ function depthDoubt(
 ): string | null {
   const wet = values.filter((value) => value > wetDayMm);
   if (wet.length < rowsMin[kind] / 3) return null;
-  const [median, max] = [medianOf(wet), Math.max(...wet)];
+  const [middle, max] = [median(wet), Math.max(...wet)];
   const looks = depthLooks[kind];
   const what = climateFieldNames[field];
   const unit = kind === 'daily' ? 'days' : 'months';
-  if (median < looks.inchMedian && max < looks.inchMax)
-    return `The ${what} looks like inches: wet ${unit} have ${median.toFixed(2)} mm in the middle and ${max.toFixed(1)} mm at most. Choose its unit above if it is.`;
-  if (median > looks.tenthsMedian)
-    return `The ${what} looks like tenths of a millimetre: wet ${unit} have ${median.toFixed(0)} mm in the middle. Choose its unit above if it is.`;
+  if (middle < looks.inchMedian && max < looks.inchMax)
+    return `The ${what} looks like inches: wet ${unit} have ${middle.toFixed(2)} mm in the middle and ${max.toFixed(1)} mm at most. Choose its unit above if it is.`;
+  if (middle > looks.tenthsMedian)
+    return `The ${what} looks like tenths of a millimetre: wet ${unit} have ${middle.toFixed(0)} mm in the middle. Choose its unit above if it is.`;
   return null;
 }
 
@@ -46,9 +43,9 @@ function depthDoubt(
 const meanMaxC = { tMinC: 30, tMeanC: 33, tMaxC: 40 } as const;
 
 function temperatureDoubt(field: 'tMinC' | 'tMeanC' | 'tMaxC', values: readonly number[]): string | null {
-  const mean = meanOf(values);
-  return mean > meanMaxC[field]
-    ? `The ${climateFieldNames[field]} looks like degrees Fahrenheit: it is ${mean.toFixed(0)} °C on average. Choose its unit above if it is.`
+  const average = mean(values);
+  return average > meanMaxC[field]
+    ? `The ${climateFieldNames[field]} looks like degrees Fahrenheit: it is ${average.toFixed(0)} °C on average. Choose its unit above if it is.`
     : null;
 }
 

@@ -1,4 +1,4 @@
-import { sampleCorrelation } from 'simple-statistics';
+import { median, sampleCorrelation } from 'simple-statistics';
 import { monthName } from '../calendar/month.ts';
 import { counted } from '../count-words.ts';
 import { dayNameShort } from '../calendar/day.ts';
@@ -115,9 +115,9 @@ function shapeFindings(rows: readonly Measured[]): Finding[] {
       severity: 'ask',
       sentence: `Dry months with far more flow than predicted: ${listed(dry)}. Groundwater, condensate, liquid returned or a pump on a timer are possible.`,
     });
-  const median = [...rows].sort((a, b) => a.predictedM3 - b.predictedM3)[Math.floor(rows.length / 2)]!;
+  const usualM3 = median(rows.map((row) => row.predictedM3));
   const silent = outside.filter(
-    (row) => row.predictedM3 > 2 * median.predictedM3 && row.measuredM3 < row.predictedM3 / muchOver,
+    (row) => row.predictedM3 > 2 * usualM3 && row.measuredM3 < row.predictedM3 / muchOver,
   );
   if (silent.length)
     findings.push({
