@@ -239,7 +239,8 @@ export function computePublishedValues(cases: readonly SingleCase[]): ComputedVa
         title: found.title,
         what,
         unit: expected.unit,
-        source: `${found.source}, ${found.locator}`,
+        // A case constructed by us stands on no page.
+        source: found.locator === '-' ? found.source : `${found.source}, ${found.locator}`,
         isFromMemory: found.read_or_memory.startsWith('memory'),
         printed: expected.value,
         tolerance: expected.tol,
