@@ -72,7 +72,8 @@ export function resolveAnalyte(
     hold(row, 'analyte', `Parameter "${row.analyteText}" is not known here.`);
     return null;
   }
-  if (row.cas) compareWithCas(row, analyte, byCas, byAnswer !== undefined);
+  // "n/a" and "-" beside a summary parameter are no number that could be wrong.
+  if (/\d/.test(row.cas)) compareWithCas(row, analyte, byCas, byAnswer !== undefined);
   if (!byAnswer && !byName) warn(row, `"${row.analyteText}" is taken for ${analyte.name} by its CAS number.`);
   row.analyteId = analyte.id;
   const suffix = byName?.letter === 'D' ? 'dissolved' : byName?.letter === 'T' ? 'total' : '';

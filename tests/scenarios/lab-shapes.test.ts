@@ -255,6 +255,10 @@ describe('CAS numbers beside the names', () => {
     });
   });
 
+  it.each(['', '-', 'n/a'])('"%s" beside BOD5, which has no number, is not remarked on', (cas) => {
+    expect(row(cas, 'BOD5').state).toBe('ok');
+  });
+
   it('a name and a number of two parameters hold the row', () => {
     const held = row('7440-66-6', 'Benzene');
     expect(held.question?.kind).toBe('analyte');
